@@ -41,7 +41,14 @@ export type ReferenceEvidence = {
 };
 
 export type ObserverEvidence =
-  | { readonly kind: "full"; readonly L: Rows; readonly residual: number; readonly bound: number; readonly poles: readonly PoleReport[]; readonly method: string }
+  | {
+      readonly kind: "full";
+      readonly L: Rows;
+      readonly residual: number;
+      readonly bound: number;
+      readonly poles: readonly PoleReport[];
+      readonly method: string;
+    }
   | {
       /**
        * Reduced order: w' = Fw w + Fy y + Fu u (sampled: w(k+1)), xhat = Gw w + Gy (y - D u).

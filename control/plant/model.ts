@@ -34,7 +34,11 @@ export type PlantModel = {
   readonly E: Rows;
   readonly H: Rows;
   readonly J: Rows;
-  readonly operatingPoint: { readonly states: readonly number[]; readonly inputs: readonly number[]; readonly outputs: readonly number[] };
+  readonly operatingPoint: {
+    readonly states: readonly number[];
+    readonly inputs: readonly number[];
+    readonly outputs: readonly number[];
+  };
 };
 
 export const SIZE_LIMITS = { states: 60, inputs: 12, outputs: 12, commanded: 12, disturbances: 12 } as const;

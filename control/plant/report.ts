@@ -1,7 +1,9 @@
 import type { Complex, Rows } from "./model";
 
 /** A computed part, or the reason why it could not be computed; one failed part never hides the others. */
-export type Part<T> = { readonly state: "computed"; readonly value: T } | { readonly state: "refused"; readonly code: string; readonly data: Readonly<Record<string, unknown>> };
+export type Part<T> =
+  | { readonly state: "computed"; readonly value: T }
+  | { readonly state: "refused"; readonly code: string; readonly data: Readonly<Record<string, unknown>> };
 
 export type ModeReport = {
   /** In the plant's plane; a pair is listed once, with im > 0. */
