@@ -1,0 +1,79 @@
+import { z } from "zod";
+import { Id, Name, PageQuery, Remark, Timestamp, Version } from "./common";
+import { ChecksReply, EvidenceReply, ResponseCurves, Summary } from "./evidence";
+import { PlantContent, PlantModel } from "./plant";
+import { Recipe } from "./recipe";
+
+export const DesignMethod = z.enum(["weights", "poles"]);
+
+export const DesignSummary = z.strictObject({
+  id: Id,
+  plantId: Id,
+  name: Name,
+  version: Version,
+  method: DesignMethod,
+  observer: z.enum(["none", "poles", "noise", "reduced"]),
+  currentRevision: z.strictObject({ id: Id, number: Version }),
+  plantRevision: z.strictObject({ id: Id, number: Version }),
+  /** The plant has a newer revision than the one this design was computed on. */
+  outdated: z.boolean(),
+  /** Worst figures with the observer where there is one, else with the full state; null when the responses were refused. */
+  summary: Summary.nullable(),
+  archivedAt: Timestamp.nullable(),
+  createdAt: Timestamp,
+  updatedAt: Timestamp,
+});
+export type DesignSummary = z.infer<typeof DesignSummary>;
+
+export const DesignRevisionEntry = z.strictObject({
+  id: Id,
+  designId: Id,
+  number: Version,
+  note: Remark,
+  createdBy: z.string().nullable(),
+  createdAt: Timestamp,
+});
+export type DesignRevisionEntry = z.infer<typeof DesignRevisionEntry>;
+
+/** A stored revision with everything needed to show it: its recipe, its plant and its evidence. */
+export const DesignRevision = DesignRevisionEntry.extend({
+  designName: Name,
+  plantId: Id,
+  plantName: Name,
+  plantRevision: z.strictObject({ id: Id, number: Version }),
+  outdated: z.boolean(),
+  recipe: Recipe,
+  model: PlantModel,
+  evidence: EvidenceReply,
+  cautions: z.array(z.string()),
+});
+export type DesignRevision = z.infer<typeof DesignRevision>;
+
+export const CreateDesign = z.strictObject({ name: Name, plantRevisionId: Id, recipe: Recipe, note: Remark.default("") });
+export type CreateDesign = z.infer<typeof CreateDesign>;
+/** `plantRevisionId` newer than the stored one carries the recipe over to it. */
+export const AddDesignRevision = z.strictObject({ plantRevisionId: Id, recipe: Recipe, note: Remark.default("") });
+export type AddDesignRevision = z.infer<typeof AddDesignRevision>;
+export const RenameDesign = z.strictObject({ name: Name });
+export const DuplicateDesign = z.strictObject({ name: Name });
+export const ArchiveDesign = z.strictObject({ archived: z.boolean() });
+export const DesignQuery = PageQuery.extend({ archived: z.enum(["no", "yes", "all"]).default("no") });
+export type DesignQuery = z.infer<typeof DesignQuery>;
+
+/** Computes without storing. The plant is a stored revision of the team, or content sent along. */
+export const Compute = z.strictObject({
+  plant: z.union([z.strictObject({ revisionId: Id }), z.strictObject({ content: PlantContent })]),
+  recipe: Recipe,
+});
+export type Compute = z.infer<typeof Compute>;
+
+export const Computation = z.strictObject({
+  model: PlantModel,
+  checks: ChecksReply,
+  evidence: EvidenceReply,
+  responses: z.array(ResponseCurves),
+  cautions: z.array(z.string()),
+});
+export type Computation = z.infer<typeof Computation>;
+
+export const CheckPlant = z.strictObject({ content: PlantContent });
