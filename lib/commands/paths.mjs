@@ -1,0 +1,22 @@
+import { createHash } from "node:crypto";
+import { realpathSync } from "node:fs";
+import { basename, join } from "node:path";
+import { fileURLToPath } from "node:url";
+
+export const root = realpathSync(fileURLToPath(new URL("../..", import.meta.url)));
+export const isRoot = process.getuid?.() === 0;
+
+/**
+ * Where data and secrets of one checkout live. PostgreSQL refuses to run as root and its account cannot enter root's
+ * folders, so root's data lies outside the checkout.
+ * @param {"start" | "dev"} use
+ */
+export function stateFolder(use) {
+  const chosen = process.env.GAINWRIGHT_STATE;
+  const own = createHash("sha256").update(root).digest("hex").slice(0, 8);
+  const base = chosen ?? (isRoot ? join("/var/lib/gainwright", `${basename(root)}-${own}`) : join(root, ".data"));
+  return use === "start" ? base : join(base, use);
+}
+
+/** @param {string} name a program that an installed package brings @param {string} path its script inside node_modules */
+export const script = (name, path) => join(root, "node_modules", name, path);

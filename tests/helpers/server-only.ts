@@ -1,0 +1,2 @@
+// Stands for the package `server-only`, whose only file throws outside a server bundle.
+export {};
