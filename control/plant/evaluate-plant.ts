@@ -1,0 +1,116 @@
+import { NumericalError } from "../errors";
+import { evaluateExpression } from "../expression/evaluate-expression";
+import { parsePlainNumber } from "../expression/plain-number";
+import type { EntryRows, PlantContent } from "./content";
+import { expressionMessage } from "./expression-message";
+import type { CommandedSignal, PlantModel } from "./model";
+import { parameterValues } from "./parameter-values";
+import { error, type PlantProblem } from "./plant-problem";
+import { signalProblems } from "./signal-problems";
+
+export type PlantEvaluation = {
+  /** Null while any error stands. */
+  readonly model: PlantModel | null;
+  readonly problems: readonly PlantProblem[];
+  /** Evaluated entries by matrix, null where an entry has no value. */
+  readonly values: Readonly<Record<MatrixName, (number | null)[][]>>;
+  readonly parameters: ReadonlyMap<string, number>;
+};
+
+export const MATRIX_NAMES = ["A", "B", "C", "D", "E", "H", "J"] as const;
+export type MatrixName = (typeof MATRIX_NAMES)[number];
+
+const zeros = (rows: number, columns: number): EntryRows =>
+  Array.from({ length: rows }, () => new Array<string>(columns).fill("0"));
+
+/** The commanded quantities of a plant that names none are its outputs. */
+export function commandedOf(content: PlantContent): readonly CommandedSignal[] {
+  return content.commanded ?? content.outputs.map(({ name, unit, axis, scale }) => ({ name, unit, axis, amplitude: scale ?? 1 }));
+}
+
+/** Every matrix with its defaults filled in and the shape it must have. */
+export function matricesOf(content: PlantContent): Record<MatrixName, { entries: EntryRows; rows: number; columns: number }> {
+  const [n, m, p, w] = [content.states.length, content.inputs.length, content.outputs.length, content.disturbances.length];
+  const outputsCommanded = content.commanded === null;
+  const q = commandedOf(content).length;
+  const D = content.D ?? zeros(p, m);
+  const shape = (entries: EntryRows, rows: number, columns: number) => ({ entries, rows, columns });
+  return {
+    A: shape(content.A, n, n),
+    B: shape(content.B, n, m),
+    C: shape(content.C, p, n),
+    D: shape(D, p, m),
+    E: shape(content.E ?? zeros(n, w), n, w),
+    H: shape(outputsCommanded ? content.C : (content.H ?? []), q, n),
+    J: shape(outputsCommanded ? D : (content.J ?? zeros(q, m)), q, m),
+  };
+}
+
+function evaluateMatrix(
+  name: MatrixName,
+  content: PlantContent,
+  parameters: ReadonlyMap<string, number>,
+  problems: PlantProblem[],
+) {
+  const { entries, rows, columns } = matricesOf(content)[name];
+  const derived = content.commanded === null && (name === "H" || name === "J");
+  const report = (pointer: string, message: string) => derived || problems.push(error(pointer, message));
+  if (entries.length !== rows) report(`/${name}`, `${name} needs ${rows} rows; it has ${entries.length}`);
+  return entries.map((row, i) => {
+    if (row.length !== columns) report(`/${name}/${i}`, `Row ${i + 1} of ${name} needs ${columns} entries; it has ${row.length}`);
+    return row.map((text, j) => {
+      const plain = parsePlainNumber(text);
+      if (plain !== null) return plain;
+      try {
+        return evaluateExpression(text, parameters);
+      } catch (cause) {
+        if (!(cause instanceof NumericalError)) throw cause;
+        report(`/${name}/${i}/${j}`, expressionMessage(cause));
+        return null;
+      }
+    });
+  });
+}
+
+/**
+ * Turns a plant as typed into the doubles that everything is computed from, or says at each field what is in the way.
+ *
+ * Shapes    as `PlantModel`; D and J default to zeros, commanded quantities to the outputs, the operating point to zero
+ * Units     entries keep the units of their signals; none is converted
+ * Throws    nothing: every defect is a `PlantProblem` with its place
+ * Accuracy  same doubles on server and in the browser: one walk over the expression, ECMAScript arithmetic
+ */
+export function evaluatePlant(content: PlantContent): PlantEvaluation {
+  const { values: parameters, problems } = parameterValues(content.parameters);
+  problems.push(...signalProblems(content));
+  const values = Object.fromEntries(
+    MATRIX_NAMES.map((name) => [name, evaluateMatrix(name, content, parameters, problems)]),
+  ) as Record<MatrixName, (number | null)[][]>;
+  problems.push(...idleSignals(content, values));
+  const blocked = problems.some(({ severity }) => severity === "error");
+  return { model: blocked ? null : assemble(content, values as Record<MatrixName, number[][]>), problems, values, parameters };
+}
+
+function idleSignals(content: PlantContent, values: Record<MatrixName, (number | null)[][]>): PlantProblem[] {
+  const found: PlantProblem[] = [];
+  content.inputs.forEach(({ name }, j) => {
+    const column = [...values.B, ...values.D].map((row) => row[j]);
+    if (column.length > 0 && column.every((entry) => entry === 0)) {
+      found.push({ pointer: `/B/0/${j}`, severity: "caution", message: `Input ${name} moves nothing: its whole column is zero` });
+    }
+  });
+  content.outputs.forEach(({ name }, i) => {
+    const row = [...(values.C[i] ?? []), ...(values.D[i] ?? [])];
+    if (row.length > 0 && row.every((entry) => entry === 0)) {
+      found.push({ pointer: `/C/${i}/0`, severity: "caution", message: `Output ${name} reads nothing: its whole row is zero` });
+    }
+  });
+  return found;
+}
+
+function assemble(content: PlantContent, matrices: Record<MatrixName, number[][]>): PlantModel {
+  const { timeBase, axes, states, inputs, outputs, disturbances } = content;
+  const rest = (signals: readonly unknown[]) => signals.map(() => 0);
+  const operatingPoint = content.operatingPoint ?? { states: rest(states), inputs: rest(inputs), outputs: rest(outputs) };
+  return { timeBase, axes, states, inputs, outputs, disturbances, commanded: commandedOf(content), ...matrices, operatingPoint };
+}
