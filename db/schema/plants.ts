@@ -1,0 +1,69 @@
+import { sql } from "drizzle-orm";
+import { check, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
+import type { PlantModel } from "@/control/plant/model";
+import type { PlantContent } from "@/lib/schemas/plant";
+import { createdAt, id, time, updatedAt, version } from "./columns";
+import { memberships, teams } from "./people";
+
+export const plants = pgTable(
+  "plants",
+  {
+    id: id(),
+    teamId: uuid("team_id")
+      .notNull()
+      .references(() => teams.id),
+    name: text("name").notNull(),
+    version: version(),
+    currentRevision: integer("current_revision").notNull().default(1),
+    archivedAt: time("archived_at"),
+    createdBy: uuid("created_by").notNull(),
+    createdAt: createdAt(),
+    updatedAt: updatedAt(),
+  },
+  (table) => [
+    unique("plants_team_id").on(table.teamId, table.id),
+    foreignKey({
+      name: "plants_author",
+      columns: [table.teamId, table.createdBy],
+      foreignColumns: [memberships.teamId, memberships.userId],
+    }),
+    index("plants_author_index").on(table.teamId, table.createdBy),
+    index("plants_by_update").on(table.teamId, table.updatedAt, table.id),
+    index("plants_by_name").on(table.teamId, table.name, table.id),
+    check("plants_name_length", sql`length(${table.name}) between 1 and 120`),
+    check("plants_version", sql`${table.version} >= 1 and ${table.currentRevision} >= 1`),
+  ],
+);
+
+/** Immutable: what was typed, and the doubles it was evaluated to, which are the plant. */
+export const plantRevisions = pgTable(
+  "plant_revisions",
+  {
+    id: id(),
+    teamId: uuid("team_id").notNull(),
+    plantId: uuid("plant_id").notNull(),
+    number: integer("number").notNull(),
+    content: jsonb("content").$type<PlantContent>().notNull(),
+    model: jsonb("model").$type<PlantModel>().notNull(),
+    note: text("note").notNull().default(""),
+    createdBy: uuid("created_by").notNull(),
+    createdAt: createdAt(),
+  },
+  (table) => [
+    unique("plant_revisions_number").on(table.plantId, table.number),
+    unique("plant_revisions_team_id").on(table.teamId, table.plantId, table.id),
+    foreignKey({
+      name: "plant_revisions_plant",
+      columns: [table.teamId, table.plantId],
+      foreignColumns: [plants.teamId, plants.id],
+    }),
+    foreignKey({
+      name: "plant_revisions_author",
+      columns: [table.teamId, table.createdBy],
+      foreignColumns: [memberships.teamId, memberships.userId],
+    }),
+    index("plant_revisions_author_index").on(table.teamId, table.createdBy),
+    check("plant_revisions_number_positive", sql`${table.number} >= 1`),
+    check("plant_revisions_note_length", sql`length(${table.note}) <= 2000`),
+  ],
+);

@@ -1,0 +1,34 @@
+import { sql } from "drizzle-orm";
+import { check, foreignKey, index, jsonb, pgTable, text, uuid } from "drizzle-orm/pg-core";
+import type { TemplateContent } from "@/lib/schemas/template";
+import { createdAt, id, time, updatedAt, version } from "./columns";
+import { memberships, teams } from "./people";
+
+export const templates = pgTable(
+  "templates",
+  {
+    id: id(),
+    teamId: uuid("team_id")
+      .notNull()
+      .references(() => teams.id),
+    name: text("name").notNull(),
+    description: text("description").notNull().default(""),
+    content: jsonb("content").$type<TemplateContent>().notNull(),
+    version: version(),
+    archivedAt: time("archived_at"),
+    createdBy: uuid("created_by").notNull(),
+    createdAt: createdAt(),
+    updatedAt: updatedAt(),
+  },
+  (table) => [
+    foreignKey({
+      name: "templates_author",
+      columns: [table.teamId, table.createdBy],
+      foreignColumns: [memberships.teamId, memberships.userId],
+    }),
+    index("templates_by_name").on(table.teamId, table.name, table.id),
+    index("templates_author_index").on(table.teamId, table.createdBy),
+    check("templates_name_length", sql`length(${table.name}) between 1 and 120`),
+    check("templates_description_length", sql`length(${table.description}) <= 2000`),
+  ],
+);
