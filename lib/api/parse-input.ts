@@ -1,0 +1,36 @@
+import type { z } from "zod";
+import { DomainError, NotFound } from "@/lib/errors";
+import { issuesOf, issueWords } from "@/lib/schemas/issues";
+import { refuseUnstorableText } from "./read-body";
+
+/** 422 with one line for each place that has to change. */
+export function parseBody<S extends z.ZodType>(schema: S, value: unknown): z.output<S> {
+  const parsed = schema.safeParse(value, { error: issueWords });
+  if (parsed.success) return parsed.data;
+  throw new DomainError("invalid", "Some of what was sent cannot be taken as it is.", {}, issuesOf(parsed.error));
+}
+
+/** A path that cannot name anything is answered like one that names nothing. */
+export function parseParams<S extends z.ZodType>(schema: S, value: unknown): z.output<S> {
+  const parsed = schema.safeParse(value);
+  if (parsed.success) return parsed.data;
+  throw new NotFound("What this address names");
+}
+
+/** Each name at most once: of two equal names one would be silently dropped. */
+export function parseQuery<S extends z.ZodType>(schema: S, search: URLSearchParams): z.output<S> {
+  const given: Record<string, string> = Object.create(null);
+  for (const [name, value] of search) {
+    refuseUnstorableText(name + value);
+    if (name in given) throw invalidQuery([{ name, detail: "This stands twice in the address" }]);
+    given[name] = value;
+  }
+  const parsed = schema.safeParse({ ...given }, { error: issueWords });
+  if (parsed.success) return parsed.data;
+  throw invalidQuery(issuesOf(parsed.error).map(({ pointer, detail }) => ({ name: pointer.slice(1), detail })));
+}
+
+function invalidQuery(problems: readonly { readonly name: string; readonly detail: string }[]): DomainError {
+  const issues = problems.map(({ name, detail }) => ({ pointer: "", detail: `${name || "The query"}: ${detail}` }));
+  return new DomainError("invalid", "Some of the query of this address cannot be taken as it is.", {}, issues);
+}
