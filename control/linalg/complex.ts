@@ -1,5 +1,10 @@
+import type { Matrix } from "ml-matrix";
 import type { Complex } from "../plant/model";
 import { pythagoras } from "./flat";
+
+/** Real and imaginary parts, of equal shape. */
+export type ComplexMatrix = { readonly re: Matrix; readonly im: Matrix };
+export type ComplexVector = { readonly re: Float64Array; readonly im: Float64Array };
 
 export function complexProduct(a: Complex, b: Complex): Complex {
   return { re: a.re * b.re - a.im * b.im, im: a.re * b.im + a.im * b.re };

@@ -1,6 +1,7 @@
 import { Matrix } from "ml-matrix";
 import type { Complex } from "../plant/model";
 import { type Balanced, balance } from "./balance";
+import type { ComplexMatrix } from "./complex";
 import { sortedOrder, unshift } from "./eigenvalues";
 import { largestEntry, toFlat } from "./flat";
 import { flatSchur } from "./real-schur";
@@ -8,10 +9,8 @@ import { requireFinite, requireSquare } from "./require";
 import { schurValues } from "./schur-values";
 import { triangularVectors } from "./triangular-vectors";
 
-export type ComplexColumns = { readonly re: Matrix; readonly im: Matrix };
-
 /** A v = value v with v column k of `right`; w* A = value w* with w column k of `left`; unit columns, same order as `values`. */
-export type Eigensystem = { readonly values: Complex[]; readonly right: ComplexColumns; readonly left: ComplexColumns };
+export type Eigensystem = { readonly values: Complex[]; readonly right: ComplexMatrix; readonly left: ComplexMatrix };
 
 /**
  * Eigenvalues with right and left eigenvectors. Of a defective eigenvalue the vectors come out nearly parallel, never NaN.
@@ -46,7 +45,7 @@ export function eigensystem(A: Matrix): Eigensystem {
   return { values: order.map((k) => unshift(values[k], balanced.shift)), right, left };
 }
 
-function emptyColumns(n: number): ComplexColumns {
+function emptyColumns(n: number): ComplexMatrix {
   return { re: Matrix.zeros(n, n), im: Matrix.zeros(n, n) };
 }
 
@@ -69,7 +68,7 @@ function backTransform(x: Float64Array, qt: Float64Array, n: number): Float64Arr
 
 /** Undoes order and scale (inverse scale for left vectors) and makes the column one unit long. */
 function putColumn(
-  to: ComplexColumns,
+  to: ComplexMatrix,
   column: number,
   re: Float64Array,
   im: Float64Array,

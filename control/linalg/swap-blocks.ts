@@ -15,9 +15,9 @@ export function swapBlocks(t: Float64Array, qt: Float64Array, n: number, k: numb
   const before = largestInside(t, n, k, size);
   const reflectors = columnsReflectors(sylvesterBasis(t, n, k, p, q), size, q);
   for (const { v, beta } of reflectors) {
-    reflectRows(t, n, k, v, beta);
-    reflectColumns(t, n, k, v, beta);
-    reflectRows(qt, n, k, v, beta);
+    reflectRows(t, n, k, v, beta, k);
+    reflectColumns(t, n, k, v, beta, k + size);
+    reflectRows(qt, n, k, v, beta, 0);
   }
   let left = 0;
   for (let i = q; i < size; i++) {
@@ -136,16 +136,16 @@ function columnsReflectors(basis: Float64Array, rows: number, columns: number): 
   return reflectors;
 }
 
-function reflectRows(h: Float64Array, n: number, k: number, v: Float64Array, beta: number): void {
-  for (let j = 0; j < n; j++) {
+function reflectRows(h: Float64Array, n: number, k: number, v: Float64Array, beta: number, first: number): void {
+  for (let j = first; j < n; j++) {
     let sum = 0;
     for (let i = 0; i < v.length; i++) sum += v[i] * h[(k + i) * n + j];
     for (let i = 0; i < v.length; i++) h[(k + i) * n + j] -= beta * sum * v[i];
   }
 }
 
-function reflectColumns(h: Float64Array, n: number, k: number, v: Float64Array, beta: number): void {
-  for (let i = 0; i < n; i++) {
+function reflectColumns(h: Float64Array, n: number, k: number, v: Float64Array, beta: number, last: number): void {
+  for (let i = 0; i < last; i++) {
     let sum = 0;
     for (let j = 0; j < v.length; j++) sum += h[i * n + k + j] * v[j];
     for (let j = 0; j < v.length; j++) h[i * n + k + j] -= beta * sum * v[j];
