@@ -44,5 +44,7 @@ export function flatSchur(a: Float64Array, n: number): FlatSchur {
   const qt = flatIdentity(n);
   reduceToHessenberg(t, n, qt);
   francisIteration(t, n, true, qt);
+  // What chasing leaves below are zeros of either sign.
+  for (let i = 2; i < n; i++) t.fill(0, i * n, i * n + i - 1);
   return { t, qt };
 }
