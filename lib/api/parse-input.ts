@@ -1,6 +1,6 @@
 import type { z } from "zod";
-import { DomainError, NotFound } from "@/lib/errors";
-import { issuesOf, issueWords } from "@/lib/schemas/issues";
+import { DomainError, type Issue, NotFound } from "@/lib/errors";
+import { issuesOf, issueWords, pointerTo } from "@/lib/schemas/issues";
 import { refuseUnstorableText } from "./read-body";
 
 /** 422 with one line for each place that has to change. */
@@ -17,20 +17,19 @@ export function parseParams<S extends z.ZodType>(schema: S, value: unknown): z.o
   throw new NotFound("What this address names");
 }
 
-/** Each name at most once: of two equal names one would be silently dropped. */
+/** Each name at most once: of two equal names one would be silently dropped. Pointers are into the query as an object. */
 export function parseQuery<S extends z.ZodType>(schema: S, search: URLSearchParams): z.output<S> {
-  const given: Record<string, string> = Object.create(null);
+  const given = new Map<string, string>();
   for (const [name, value] of search) {
     refuseUnstorableText(name + value);
-    if (name in given) throw invalidQuery([{ name, detail: "This stands twice in the address" }]);
-    given[name] = value;
+    if (given.has(name)) throw invalidQuery([{ pointer: pointerTo([name]), detail: "This stands twice in the address" }]);
+    given.set(name, value);
   }
-  const parsed = schema.safeParse({ ...given }, { error: issueWords });
+  const parsed = schema.safeParse(Object.fromEntries(given), { error: issueWords });
   if (parsed.success) return parsed.data;
-  throw invalidQuery(issuesOf(parsed.error).map(({ pointer, detail }) => ({ name: pointer.slice(1), detail })));
+  throw invalidQuery(issuesOf(parsed.error));
 }
 
-function invalidQuery(problems: readonly { readonly name: string; readonly detail: string }[]): DomainError {
-  const issues = problems.map(({ name, detail }) => ({ pointer: "", detail: `${name || "The query"}: ${detail}` }));
+function invalidQuery(issues: readonly Issue[]): DomainError {
   return new DomainError("invalid", "Some of the query of this address cannot be taken as it is.", {}, issues);
 }

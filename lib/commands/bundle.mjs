@@ -1,0 +1,47 @@
+import { existsSync, mkdirSync, renameSync, writeFileSync } from "node:fs";
+import { dirname, join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { root } from "./paths.mjs";
+
+/** What runs beside the pages: file in `dist/`, without its ending, by source. */
+const entries = {
+  migrate: "db/migrate.ts",
+  seed: "lib/commands/seed.ts",
+  worker: "lib/commands/worker.ts",
+  "numeric-worker": "lib/jobs/numeric-worker.ts",
+};
+
+/**
+ * Bundles from TypeScript into `dist/`: it takes a few hundredths of a second. Each file appears whole or not at all,
+ * since another process may be about to load it.
+ * @param {string[]} [names]
+ */
+export async function bundle(names = Object.keys(entries)) {
+  const { build } = await import("esbuild");
+  const { outputFiles } = await build({
+    entryPoints: Object.fromEntries(
+      Object.entries(entries).filter(([name, path]) => names.includes(name) && existsSync(join(root, path))),
+    ),
+    absWorkingDir: root,
+    outdir: "dist",
+    outExtension: { ".js": ".mjs" },
+    write: false,
+    bundle: true,
+    packages: "external",
+    // The package only throws outside a server bundle, which this is.
+    alias: { "server-only": join(root, "node_modules/server-only/empty.js") },
+    platform: "node",
+    format: "esm",
+    target: "node20",
+    sourcemap: "inline",
+    logLevel: "warning",
+  });
+  for (const { path, contents } of outputFiles) {
+    const unfinished = `${path}.${process.pid}`;
+    mkdirSync(dirname(path), { recursive: true });
+    writeFileSync(unfinished, contents);
+    renameSync(unfinished, path);
+  }
+}
+
+if (process.argv[1] === fileURLToPath(import.meta.url)) await bundle(process.argv.slice(2));
