@@ -15,8 +15,8 @@ const everywhere = [
 export default {
   poweredByHeader: false,
   productionBrowserSourceMaps: false,
-  outputFileTracingRoot: import.meta.dirname,
-  turbopack: { root: import.meta.dirname },
+  outputFileTracingRoot: process.cwd(),
+  turbopack: { root: process.cwd() },
   typescript: { tsconfigPath: "tsconfig.build.json" },
   // Resolves its own task files and SQL at run time.
   serverExternalPackages: ["graphile-worker"],

@@ -21,7 +21,6 @@ const Env = z.object({
   MAIL_FROM: z.string().min(3).default("Gainwright <no-reply@gainwright.example>"),
   /** Demo mode: the sign-in page shows the demo accounts and the outbox has a page. */
   GAINWRIGHT_DEMO: Flag,
-  LOG_LEVEL: z.enum(["fatal", "error", "warn", "info", "debug", "silent"]).default("info"),
 });
 export type Env = z.infer<typeof Env>;
 
@@ -41,3 +40,8 @@ export function env(): Env {
 /** Unlike `env()`, usable where no settings exist, such as in a build. */
 export const isDevelopment = () => process.env.NODE_ENV === "development";
 export const isProduction = () => process.env.NODE_ENV === "production";
+const LogLevel = z.enum(["fatal", "error", "warn", "info", "debug", "silent"]);
+
+/** Asked when the log is made, before any setting is needed. */
+export const logLevel = () =>
+  LogLevel.catch(process.env.NODE_ENV === "production" ? "info" : "warn").parse(process.env.LOG_LEVEL);

@@ -1,13 +1,11 @@
 import { spawnSync } from "node:child_process";
-import { randomBytes } from "node:crypto";
-import { chownSync, existsSync, mkdirSync, mkdtempSync, renameSync, rmSync, statfsSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { dirname, join } from "node:path";
+import { chownSync, existsSync, mkdirSync, renameSync, rmSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
 import { lastLines, startChild } from "./children.mjs";
 import { connect } from "./databases.mjs";
 import { freePort } from "./free-port.mjs";
 import { postgresAccount, postgresPrograms } from "./postgres-programs.mjs";
-import { Stop } from "./stop.mjs";
+import { codeOf, Stop } from "./stop.mjs";
 
 /** @typedef {{ adminUrl: string, stop: () => Promise<void>, child: import("./children.mjs").Child }} Cluster */
 
@@ -15,10 +13,11 @@ const host = "127.0.0.1";
 const admin = "postgres";
 
 /**
+ * Makes a folder that only PostgreSQL's account can enter.
  * @param {string} folder
  * @param {{ uid?: number, gid?: number }} account
  */
-function own(folder, { uid, gid }) {
+export function own(folder, { uid, gid }) {
   mkdirSync(folder, { recursive: true, mode: 0o700 });
   if (uid !== undefined && gid !== undefined) chownSync(folder, uid, gid);
 }
@@ -64,9 +63,8 @@ async function untilReady(child, url) {
       await client.end();
       return true;
     } catch (error) {
-      const code = error instanceof Error && "code" in error ? error.code : undefined;
-      if (code === "28P01")
-        throw new Stop("PostgreSQL refused the stored password: its data and the secrets file beside it do not belong together.");
+      if (codeOf(error) === "28P01")
+        throw new Stop("The data of PostgreSQL and the secrets file beside them do not belong together.");
       if (Date.now() > end) throw new Stop("PostgreSQL did not answer within 60 seconds. Its last words:", lastLines(child));
     }
     await new Promise((resolve) => setTimeout(resolve, 30));
@@ -106,44 +104,11 @@ export async function startCluster({ data, password, log, initdb = [], settings 
   throw new Stop("PostgreSQL does not start. Its last words:", child ? lastLines(child) : "");
 }
 
-/** The shared-memory file system where it is large enough (containers often give it 64 MB), else the temporary folder. */
-function fastFolder() {
-  try {
-    const { bavail, bsize } = statfsSync("/dev/shm");
-    if (bavail * bsize > 1.5e9) return mkdtempSync("/dev/shm/gainwright-");
-  } catch {
-    // No such file system here.
-  }
-  return mkdtempSync(join(tmpdir(), "gainwright-"));
-}
-
-/** A cluster for one test run: fast, unsafe against power loss, gone when stopped. @returns {Promise<Cluster>} */
-export async function startThrowAwayCluster() {
-  const folder = fastFolder();
-  own(folder, postgresAccount());
-  const remove = () => rmSync(folder, { recursive: true, force: true });
-  try {
-    const cluster = await startCluster({
-      data: join(folder, "pg"),
-      password: randomBytes(16).toString("hex"),
-      log: join(folder, "postgres.log"),
-      initdb: ["--no-sync"],
-      settings: ["fsync=off", "synchronous_commit=off", "full_page_writes=off", "max_wal_size=256MB"],
-    });
-    return { ...cluster, stop: () => cluster.stop().finally(remove) };
-  } catch (error) {
-    remove();
-    throw error;
-  }
-}
-
 /**
  * The lasting cluster of `npm start` or `npm run dev`.
  * @param {string} state
  * @param {string} password
  */
 export function startPrivateCluster(state, password) {
-  const data = join(state, "pg");
-  own(dirname(data), postgresAccount());
-  return startCluster({ data, password, log: join(state, "postgres.log") });
+  return startCluster({ data: join(state, "pg"), password, log: join(state, "postgres.log") });
 }

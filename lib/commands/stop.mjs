@@ -14,3 +14,6 @@ export class Stop extends Error {
 export function explain(error) {
   console.error(error instanceof Stop ? error.message : error);
 }
+
+/** The code of a system or database error. @param {unknown} error */
+export const codeOf = (error) => (error instanceof Error && "code" in error ? error.code : undefined);

@@ -1,6 +1,6 @@
 import type { TestProject } from "vitest/node";
-import { startThrowAwayCluster } from "@/lib/commands/cluster.mjs";
 import { prepareDatabase } from "@/lib/commands/databases.mjs";
+import { startThrowAwayCluster } from "@/lib/commands/throw-away-cluster.mjs";
 
 export type TestCluster = {
   readonly adminUrl: string;
