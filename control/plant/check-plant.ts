@@ -1,0 +1,68 @@
+import { NumericalError } from "../errors";
+import { eigensystem } from "../linalg/eigensystem";
+import { stabilityMargin } from "../structure/continuous-pole";
+import { couplingReport } from "../structure/coupling-report";
+import { describeModes } from "../structure/modes";
+import { reachOfInputs, sightOfOutputs } from "../structure/plant-reach";
+import { scalingReport } from "../structure/scaling-report";
+import { timeBaseSuspicion } from "../structure/time-base-suspicion";
+import { transmissionZeros } from "../structure/transmission-zeros";
+import type { PlantModel } from "./model";
+import type { Part, PlantChecks } from "./report";
+import { scalePlant } from "./scale-plant";
+
+/**
+ * Everything that is said about a plant before a design: modes, reach, sight, zeros, coupling, scaling, time base.
+ * A part that fails carries its reason and leaves the others alone.
+ *
+ * Shapes    see `PlantModel` and `PlantChecks`
+ * Units     rad/s and s; shares, distances and directions belong to signals divided by their largest acceptable deviations
+ * Throws    shape-mismatch; not-finite
+ * Accuracy  as stated by each part
+ */
+export function checkPlant(model: PlantModel): PlantChecks {
+  const scaled = scalePlant(model);
+  const spectrum = once(() => eigensystem(scaled.A));
+  const reach = once(() => reachOfInputs(scaled, spectrum().values));
+  const sight = once(() => sightOfOutputs(scaled, model.timeBase, spectrum().values));
+  const modes = once(() => describeModes(scaled, model.timeBase, spectrum(), reach(), sight()));
+  const suspicion = part(() => timeBaseSuspicion(spectrum().values, model.timeBase));
+  return {
+    modes: part(modes),
+    controllability: part(() => reach().report),
+    observability: part(() => sight().report),
+    stabilizable: part(() => modes().every((mode) => mode.stable || mode.controllable)),
+    detectable: part(() => modes().every((mode) => mode.stable || mode.observable)),
+    zeros: part(() =>
+      transmissionZeros(scaled).map((value) => ({ value, minimumPhase: stabilityMargin(value, model.timeBase) > 0 })),
+    ),
+    coupling: part(() => couplingReport(model, scaled)),
+    scaling: scalingReport(model, scaled),
+    timeBaseSuspicion: suspicion.state === "computed" ? suspicion.value : null,
+  };
+}
+
+function part<T>(compute: () => T): Part<T> {
+  try {
+    return { state: "computed", value: compute() };
+  } catch (error) {
+    if (error instanceof NumericalError) return { state: "refused", code: error.code, data: error.data };
+    throw error;
+  }
+}
+
+/** Computes at most once; a refusal is remembered like a result. */
+function once<T>(compute: () => T): () => T {
+  let outcome: { value: T } | { error: unknown } | null = null;
+  return () => {
+    if (outcome === null) {
+      try {
+        outcome = { value: compute() };
+      } catch (error) {
+        outcome = { error };
+      }
+    }
+    if ("error" in outcome) throw outcome.error;
+    return outcome.value;
+  };
+}
