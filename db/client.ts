@@ -1,4 +1,5 @@
 import "server-only";
+import { AsyncLocalStorage } from "node:async_hooks";
 import { sql } from "drizzle-orm";
 import { drizzle, type NodePgDatabase, type NodePgQueryResultHKT } from "drizzle-orm/node-postgres";
 import type { PgDatabase } from "drizzle-orm/pg-core";
@@ -51,9 +52,24 @@ export async function adopt(tx: Db, settings: Settings): Promise<void> {
   if (parts.length > 0) await tx.execute(sql`select ${sql.join(parts, sql`, `)}`);
 }
 
+export type Who = { readonly teamId: string; readonly userId: string };
+
 /** Work for a team and a person: all of it or nothing, again only where PostgreSQL itself asks for it. */
-export function inTransaction<T>(who: { readonly teamId: string; readonly userId: string }, work: (tx: Db) => Promise<T>) {
+export function inTransaction<T>(who: Who, work: (tx: Db) => Promise<T>): Promise<T> {
+  const whole = wholes.getStore();
+  if (whole?.teamId === who.teamId && whole.userId === who.userId) return whole.tx.transaction(work);
   return transact({ team_id: who.teamId, user_id: who.userId }, work);
+}
+
+const wholes = new AsyncLocalStorage<Who & { readonly tx: Db }>();
+
+/**
+ * Like `inTransaction`; whatever the same person does through `inTransaction` inside `work` becomes part of it, as a savepoint.
+ * So a verb and what is remembered about it are stored together or not at all.
+ */
+export function inOneTransaction<T>(who: Who, work: (tx: Db) => Promise<T>): Promise<T> {
+  const { teamId, userId } = who;
+  return inTransaction(who, (tx) => wholes.run({ teamId, userId, tx }, () => work(tx)));
 }
 
 /** Work before anybody is known (sign-in, a link from a mail, a job): sees only what `settings` open, nothing by default. */

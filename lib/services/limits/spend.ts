@@ -1,0 +1,65 @@
+import "server-only";
+import { RateLimiterPostgres, RateLimiterRes } from "rate-limiter-flexible";
+import { pool } from "@/db/client";
+import { DomainError } from "@/lib/errors";
+import type { Context } from "../context";
+
+/** What a request costs: `solve` runs the core. */
+export type Cost = "read" | "write" | "solve";
+
+const SECONDS = 60;
+
+/** Requests a minute, for one person and for a whole team. */
+const PER_MINUTE: Readonly<Record<Cost, { readonly person: number; readonly team: number }>> = {
+  read: { person: 600, team: 3_000 },
+  write: { person: 120, team: 600 },
+  solve: { person: 30, team: 90 },
+};
+
+/**
+ * Counts a request against its person and its team, in the database, so that every process counts alike.
+ * @throws DomainError `too-many-requests` with the seconds to wait
+ */
+export async function spend({ teamId, userId }: Pick<Context, "teamId" | "userId">, cost: Cost): Promise<void> {
+  const { person, team } = PER_MINUTE[cost];
+  await Promise.all([
+    take(`${cost}:person`, person, `${teamId}:${userId}`, "you"),
+    take(`${cost}:team`, team, teamId, "your team"),
+  ]);
+}
+
+/** For routes that anybody may call: all callers together, since a network address is no person. */
+export async function spendOfEverybody(name: string, perMinute: number): Promise<void> {
+  await take(`${name}:everybody`, perMinute, "all", "all callers");
+}
+
+/** By pool, because a limiter keeps the one it was made with. */
+const limiters = new WeakMap<object, Map<string, RateLimiterPostgres>>();
+
+function limiter(keyPrefix: string, points: number): RateLimiterPostgres {
+  const storeClient = pool();
+  const ofPool = limiters.get(storeClient) ?? new Map<string, RateLimiterPostgres>();
+  limiters.set(storeClient, ofPool);
+  const known = ofPool.get(keyPrefix);
+  if (known) return known;
+  const store = { storeClient, storeType: "pool", tableName: "rate_limits", tableCreated: true };
+  const made = new RateLimiterPostgres({ ...store, keyPrefix, points, duration: SECONDS });
+  ofPool.set(keyPrefix, made);
+  return made;
+}
+
+async function take(keyPrefix: string, points: number, key: string, who: string): Promise<void> {
+  try {
+    await limiter(keyPrefix, points).consume(key);
+  } catch (refusal) {
+    if (!(refusal instanceof RateLimiterRes)) throw refusal;
+    const retryAfter = Math.max(1, Math.ceil(refusal.msBeforeNext / 1000));
+    throw new DomainError(
+      "too-many-requests",
+      `At most ${points} requests of this kind a minute for ${who}. Wait ${retryAfter} s.`,
+      {
+        retryAfter,
+      },
+    );
+  }
+}
