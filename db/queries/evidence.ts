@@ -1,0 +1,66 @@
+import "server-only";
+import { and, asc, eq } from "drizzle-orm";
+import type { ResponseRecord } from "@/control/design/evidence";
+import type { Db } from "../client";
+import { evidence, responseRecords } from "../schema/evidence";
+import type { DesignRevisionKey } from "./design-revisions";
+
+export type EvidenceRow = {
+  readonly part: string;
+  readonly state: "computed" | "refused" | "running";
+  readonly content: unknown;
+};
+
+export async function insertEvidence(db: Db, { teamId, revisionId }: DesignRevisionKey, parts: readonly EvidenceRow[]) {
+  await db.insert(evidence).values(parts.map((part) => ({ ...part, teamId, designRevisionId: revisionId })));
+}
+
+export async function findEvidence(db: Db, { teamId, revisionId }: DesignRevisionKey): Promise<EvidenceRow[]> {
+  return db
+    .select({ part: evidence.part, state: evidence.state, content: evidence.content })
+    .from(evidence)
+    .where(and(eq(evidence.teamId, teamId), eq(evidence.designRevisionId, revisionId)));
+}
+
+// Float64Array keeps the order of the machine, and every machine we run on is little-endian.
+const toBytes = (values: Float64Array) => Buffer.from(values.buffer, values.byteOffset, values.byteLength);
+/** Copied, since a driver's buffer need not start on a multiple of eight. */
+const fromBytes = (bytes: Buffer) => new Float64Array(Uint8Array.from(bytes).buffer);
+
+export async function insertResponseRecords(
+  db: Db,
+  { teamId, revisionId }: DesignRevisionKey,
+  records: readonly ResponseRecord[],
+) {
+  if (records.length === 0) return;
+  await db.insert(responseRecords).values(
+    records.map(({ values, ...record }, position) => ({
+      ...record,
+      teamId,
+      designRevisionId: revisionId,
+      position,
+      values: toBytes(values),
+    })),
+  );
+}
+
+export async function findResponseRecords(
+  db: Db,
+  { teamId, revisionId }: DesignRevisionKey,
+  which: { readonly kind: ResponseRecord["kind"]; readonly loop: ResponseRecord["loop"] | "both" },
+): Promise<ResponseRecord[]> {
+  const { kind, loop, source, amplitude, samples, step, values } = responseRecords;
+  const rows = await db
+    .select({ kind, loop, source, amplitude, samples, step, values })
+    .from(responseRecords)
+    .where(
+      and(
+        eq(responseRecords.teamId, teamId),
+        eq(responseRecords.designRevisionId, revisionId),
+        eq(kind, which.kind),
+        which.loop === "both" ? undefined : eq(loop, which.loop),
+      ),
+    )
+    .orderBy(asc(responseRecords.position));
+  return rows.map((row) => ({ ...row, values: fromBytes(row.values) }));
+}

@@ -1,0 +1,96 @@
+import "server-only";
+import { and, eq, ilike, isNotNull, isNull, type SQL, sql } from "drizzle-orm";
+import type { Db } from "../client";
+import { designs } from "../schema/designs";
+import { plantRevisions, plants } from "../schema/plants";
+import { after, type Keyset, literalLike, type Order, ordered, sortValue } from "./keyset";
+
+export type PlantKey = { readonly teamId: string; readonly plantId: string };
+export type Archived = "no" | "yes" | "all";
+const owned = ({ teamId, plantId }: PlantKey) => and(eq(plants.teamId, teamId), eq(plants.id, plantId));
+
+const ORDERS = {
+  name: { by: plants.name, id: plants.id, type: "text", descending: false },
+  "-name": { by: plants.name, id: plants.id, type: "text", descending: true },
+  updated: { by: plants.updatedAt, id: plants.id, type: "timestamptz", descending: false },
+  "-updated": { by: plants.updatedAt, id: plants.id, type: "timestamptz", descending: true },
+} as const satisfies Record<string, Order>;
+export type PlantSort = keyof typeof ORDERS;
+
+const model = plantRevisions.model;
+const count = (list: string) => sql<number>`jsonb_array_length(${model} -> ${list})`;
+const row = {
+  id: plants.id,
+  name: plants.name,
+  version: plants.version,
+  revisionId: plantRevisions.id,
+  revisionNumber: plantRevisions.number,
+  axes: sql<{ name: string; tag: string }[]>`${model} -> 'axes'`,
+  timeBase: sql<{ kind: "continuous" } | { kind: "sampled"; period: number }>`${model} -> 'timeBase'`,
+  order: count("states"),
+  inputCount: count("inputs"),
+  outputCount: count("outputs"),
+  designCount: sql<number>`(select count(*)::int from ${designs} where ${designs.teamId} = ${plants.teamId}
+    and ${designs.plantId} = ${plants.id} and ${designs.archivedAt} is null)`,
+  archivedAt: plants.archivedAt,
+  createdAt: plants.createdAt,
+  updatedAt: plants.updatedAt,
+};
+const withCurrent = and(
+  eq(plantRevisions.teamId, plants.teamId),
+  eq(plantRevisions.plantId, plants.id),
+  eq(plantRevisions.number, plants.currentRevision),
+);
+
+export async function findPlant(db: Db, key: PlantKey) {
+  const [found] = await db.select(row).from(plants).innerJoin(plantRevisions, withCurrent).where(owned(key));
+  return found;
+}
+export type PlantRow = NonNullable<Awaited<ReturnType<typeof findPlant>>>;
+
+export async function listPlants(
+  db: Db,
+  teamId: string,
+  query: { search: string; sort: PlantSort; archived: Archived; limit: number; place: Keyset | null },
+) {
+  const order = ORDERS[query.sort];
+  const conditions: (SQL | undefined)[] = [
+    eq(plants.teamId, teamId),
+    query.search === "" ? undefined : ilike(plants.name, literalLike(query.search)),
+    query.archived === "all" ? undefined : query.archived === "yes" ? isNotNull(plants.archivedAt) : isNull(plants.archivedAt),
+    after(order, query.place),
+  ];
+  return db
+    .select({ ...row, sortValue: sortValue(order) })
+    .from(plants)
+    .innerJoin(plantRevisions, withCurrent)
+    .where(and(...conditions))
+    .orderBy(...ordered(order))
+    .limit(query.limit);
+}
+
+export async function insertPlant(db: Db, values: { teamId: string; name: string; createdBy: string }) {
+  const [made] = await db.insert(plants).values(values).returning({ id: plants.id, version: plants.version });
+  return made;
+}
+
+/** One statement, so of two writers only one wins. Undefined: absent, another team's, or no longer at `version`. */
+async function changeAt(
+  db: Db,
+  key: PlantKey,
+  version: number,
+  change: { name?: string; archivedAt?: Date | null; currentRevision?: SQL },
+) {
+  const [saved] = await db
+    .update(plants)
+    .set({ ...change, version: sql`${plants.version} + 1`, updatedAt: sql`now()` })
+    .where(and(owned(key), eq(plants.version, version)))
+    .returning({ id: plants.id, version: plants.version, currentRevision: plants.currentRevision });
+  return saved;
+}
+
+export const renamePlantAt = (db: Db, key: PlantKey, version: number, name: string) => changeAt(db, key, version, { name });
+export const archivePlantAt = (db: Db, key: PlantKey, version: number, archivedAt: Date | null) =>
+  changeAt(db, key, version, { archivedAt });
+export const advancePlantAt = (db: Db, key: PlantKey, version: number) =>
+  changeAt(db, key, version, { currentRevision: sql`${plants.currentRevision} + 1` });

@@ -1,0 +1,36 @@
+import "server-only";
+import type { PlantModel } from "@/control/plant/model";
+import { CAUTIONS } from "@/control/words/cautions";
+import { inTransaction } from "@/db/client";
+import { findPlantRevision } from "@/db/queries/plant-revisions";
+import { NotFound } from "@/lib/errors";
+import { allow } from "@/lib/permissions/allow";
+import type { Computation, Compute } from "@/lib/schemas/design";
+import type { Context } from "../context";
+import { evidenceReply, evidenceRows } from "../designs/evidence-reply";
+import { solveOrRefuse } from "../designs/solve-or-refuse";
+import { toCurves } from "../designs/to-curves";
+import { evaluateOrRefuse } from "../plants/evaluate-or-refuse";
+import { checkModel } from "./check-plant";
+
+async function modelOf(ctx: Context, plant: Compute["plant"]): Promise<PlantModel> {
+  if ("content" in plant) return evaluateOrRefuse(plant.content, "/plant/content");
+  const found = await inTransaction(ctx, (tx) => findPlantRevision(tx, { teamId: ctx.teamId, revisionId: plant.revisionId }));
+  if (!found) throw new NotFound("Plant revision");
+  return found.model;
+}
+
+/** Checks, gains, poles, residuals, responses and the cautions of a plant and a recipe. Stores nothing. */
+export async function compute(ctx: Context, { plant, recipe }: Compute, signal?: AbortSignal): Promise<Computation> {
+  allow(ctx, "compute:use");
+  const model = await modelOf(ctx, plant);
+  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const records = evidence.responses.state === "computed" ? evidence.responses.value.records : [];
+  return {
+    model: model as Computation["model"],
+    checks: await checkModel(ctx, model, signal),
+    evidence: evidenceReply(evidenceRows(evidence), evidence.methodVersion, model),
+    responses: records.map((record) => toCurves(record, model, ["commanded", "output", "input"])),
+    cautions: [...CAUTIONS],
+  };
+}

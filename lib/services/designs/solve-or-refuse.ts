@@ -1,0 +1,30 @@
+import "server-only";
+import type { Evidence } from "@/control/design/evidence";
+import type { Recipe } from "@/control/design/recipe";
+import { recipeProblems } from "@/control/design/recipe-problems";
+import type { PlantModel } from "@/control/plant/model";
+import { DomainError } from "@/lib/errors";
+import { runNumeric } from "@/lib/jobs/run-numeric";
+import type { Context } from "../context";
+import { inWords } from "./evidence-reply";
+
+/** @throws DomainError invalid, where the recipe does not fit the plant, with a pointer below `at` for each field */
+export function requireFittingRecipe(recipe: Recipe, model: PlantModel, at = "/recipe"): void {
+  const issues = recipeProblems(recipe, model).map(({ pointer, message }) => ({ pointer: at + pointer, detail: message }));
+  if (issues.length > 0) throw new DomainError("invalid", "The recipe does not fit this plant", {}, issues);
+}
+
+/**
+ * Evidence whose gains stand. A design without gains is not stored: its refusal is the answer.
+ *
+ * @throws DomainError unsolvable, in the plant's own signal names; invalid; busy
+ */
+export async function solveOrRefuse(ctx: Context, model: PlantModel, recipe: Recipe, signal?: AbortSignal): Promise<Evidence> {
+  requireFittingRecipe(recipe, model);
+  const evidence = await runNumeric({ kind: "design", model, recipe }, { teamId: ctx.teamId, signal });
+  if (evidence.gains.state === "refused") {
+    const { code, data, title, sentence, nextStep } = inWords(evidence.gains, model);
+    throw new DomainError("unsolvable", `${sentence} ${nextStep}`, { code, data, title });
+  }
+  return evidence;
+}

@@ -1,0 +1,21 @@
+import "server-only";
+import { insertPlantRevision } from "@/db/queries/plant-revisions";
+import { advancePlantAt } from "@/db/queries/plants";
+import { allow } from "@/lib/permissions/allow";
+import type { AddPlantRevision } from "@/lib/schemas/plant";
+import type { Context } from "../context";
+import { changePlantAt } from "./change-at-version";
+import { evaluateOrRefuse } from "./evaluate-or-refuse";
+
+/** `version` is the plant's version that the edit started from; designs pinned to older revisions are outdated from now on. */
+export function addPlantRevision(ctx: Context, plantId: string, version: number, { content, note }: AddPlantRevision) {
+  allow(ctx, "plant:write");
+  const model = evaluateOrRefuse(content);
+  return changePlantAt(ctx, plantId, version, "plant.revised", async (tx, key) => {
+    const saved = await advancePlantAt(tx, key, version);
+    if (saved) {
+      await insertPlantRevision(tx, { ...key, number: saved.currentRevision, content, model, note, createdBy: ctx.userId });
+    }
+    return saved;
+  });
+}

@@ -1,0 +1,33 @@
+import "server-only";
+import { inTransaction } from "@/db/client";
+import { designsOnOtherRevisions } from "@/db/queries/designs";
+import { findPlantRevision } from "@/db/queries/plant-revisions";
+import { NotFound } from "@/lib/errors";
+import { allow } from "@/lib/permissions/allow";
+import type { PlantDifference } from "@/lib/schemas/plant";
+import type { Context } from "../context";
+import { contentDifferences } from "./content-differences";
+import { toRevision, toRevisionEntry } from "./to-plant";
+
+/** What differs between two revisions of a plant, and which designs are pinned to another than `to`. */
+export async function comparePlantRevisions(
+  ctx: Context,
+  plantId: string,
+  range: { from: string; to: string },
+): Promise<PlantDifference> {
+  allow(ctx, "plant:read");
+  const { teamId } = ctx;
+  return inTransaction(ctx, async (tx) => {
+    const [from, to] = [
+      await findPlantRevision(tx, { teamId, revisionId: range.from }),
+      await findPlantRevision(tx, { teamId, revisionId: range.to }),
+    ];
+    if (from?.plantId !== plantId || to?.plantId !== plantId) throw new NotFound("Plant revision");
+    return {
+      from: toRevisionEntry(from),
+      to: toRevisionEntry(to),
+      changes: contentDifferences(toRevision(from).content, toRevision(to).content),
+      outdates: await designsOnOtherRevisions(tx, { teamId, plantId }, range.to),
+    };
+  });
+}

@@ -1,0 +1,15 @@
+import "server-only";
+import { inTransaction } from "@/db/client";
+import { findPlant } from "@/db/queries/plants";
+import { NotFound } from "@/lib/errors";
+import { allow } from "@/lib/permissions/allow";
+import type { PlantSummary } from "@/lib/schemas/plant";
+import type { Context } from "../context";
+import { toPlantSummary } from "./to-plant";
+
+export async function readPlant(ctx: Context, plantId: string): Promise<PlantSummary> {
+  allow(ctx, "plant:read");
+  const found = await inTransaction(ctx, (tx) => findPlant(tx, { teamId: ctx.teamId, plantId }));
+  if (!found) throw new NotFound("Plant");
+  return toPlantSummary(found);
+}

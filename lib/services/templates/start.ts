@@ -1,0 +1,35 @@
+import "server-only";
+import { inTransaction } from "@/db/client";
+import { DomainError } from "@/lib/errors";
+import { allow } from "@/lib/permissions/allow";
+import type { StartFromTemplate } from "@/lib/schemas/template";
+import type { Context } from "../context";
+import { insertWithFirstDesignRevision } from "../designs/create";
+import { solveOrRefuse } from "../designs/solve-or-refuse";
+import { insertWithFirstRevision } from "../plants/create";
+import { evaluateOrRefuse } from "../plants/evaluate-or-refuse";
+import { fillIn } from "./fill-in";
+import { readTemplate } from "./read";
+
+/** A plant and its first design from a template: both or neither. */
+export async function startFromTemplate(
+  ctx: Context,
+  templateId: string,
+  { plantName, designName, values }: StartFromTemplate,
+  signal?: AbortSignal,
+) {
+  allow(ctx, "template:use");
+  const template = await readTemplate(ctx, templateId);
+  if (template.archivedAt) throw new DomainError("conflict", "This template has been archived; ask a lead which one follows it.");
+  const { content, issues } = fillIn(template.content, values);
+  if (issues.length > 0) throw new DomainError("invalid", "Some values lie outside what the template allows", {}, issues);
+  const model = evaluateOrRefuse(content, "/values");
+  const { recipe } = template.content;
+  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const note = `From template ${template.name}`;
+  return inTransaction(ctx, async (tx) => {
+    const { plantId, revisionId } = await insertWithFirstRevision(tx, ctx, { name: plantName, content, model, note });
+    const revision = { plantId, plantRevisionId: revisionId, recipe, note, name: designName };
+    return { plantId, designId: await insertWithFirstDesignRevision(tx, ctx, revision, evidence) };
+  });
+}
