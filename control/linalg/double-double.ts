@@ -1,0 +1,101 @@
+/** Unevaluated sum hi + lo of two doubles per entry, |lo| ≤ ulp(hi) / 2: about 32 decimal digits. */
+export type Wide = { readonly hi: Float64Array; readonly lo: Float64Array };
+
+/** A matrix of doubles with each entry split into two halves of at most 26 bits, once, for exact products. */
+export type Split = { readonly value: Float64Array; readonly head: Float64Array; readonly tail: Float64Array };
+
+const SPLITTER = 134217729; // 2^27 + 1 (Veltkamp)
+
+/** Entries must be below 2^990, or the split overflows. */
+export function split(value: Float64Array): Split {
+  const head = new Float64Array(value.length);
+  const tail = new Float64Array(value.length);
+  for (let i = 0; i < value.length; i++) {
+    const c = SPLITTER * value[i];
+    head[i] = c - (c - value[i]);
+    tail[i] = value[i] - head[i];
+  }
+  return { value, head, tail };
+}
+
+export function widen(value: Float64Array): Wide {
+  return { hi: value.slice(), lo: new Float64Array(value.length) };
+}
+
+/**
+ * Product of a matrix of doubles and a wide one, as if summed with twice the working precision and then rounded to it.
+ *
+ * Shapes    a rows×inner, b inner×columns → rows×columns
+ * Accuracy  |error| ≤ (γ²_inner + ε²) |a||b| per entry; needs arithmetic without extended precision, as ECMAScript has
+ * Source    Ogita, Rump & Oishi, Accurate sum and dot product, SIAM J. Sci. Comput. 26 (2005) 1955-1988, algorithm 5.3
+ */
+export function wideProduct(a: Split, b: Wide, rows: number, inner: number, columns: number): Wide {
+  const right = split(b.hi);
+  const hi = new Float64Array(rows * columns);
+  const lo = new Float64Array(rows * columns);
+  for (let i = 0; i < rows; i++) {
+    const out = i * columns;
+    for (let k = 0; k < inner; k++) {
+      const x = a.value[i * inner + k];
+      if (x === 0) continue;
+      const xh = a.head[i * inner + k];
+      const xt = a.tail[i * inner + k];
+      for (let j = 0, at = k * columns; j < columns; j++, at++) {
+        const product = x * right.value[at];
+        const below = xt * right.tail[at] - (product - xh * right.head[at] - xt * right.head[at] - xh * right.tail[at]);
+        const sum = hi[out + j];
+        const total = sum + product;
+        const part = total - sum;
+        lo[out + j] += sum - (total - part) + (product - part) + (below + x * b.lo[at]);
+        hi[out + j] = total;
+      }
+    }
+  }
+  renormalise(hi, lo);
+  return { hi, lo };
+}
+
+/** x + sign·y into x. */
+export function addWide(x: Wide, y: Wide, sign: 1 | -1): void {
+  for (let i = 0; i < x.hi.length; i++) {
+    const term = sign * y.hi[i];
+    const sum = x.hi[i];
+    const total = sum + term;
+    const part = total - sum;
+    x.lo[i] += sum - (total - part) + (term - part) + sign * y.lo[i];
+    x.hi[i] = total;
+  }
+  renormalise(x.hi, x.lo);
+}
+
+export function addNarrow(x: Wide, y: Float64Array, sign: 1 | -1): void {
+  for (let i = 0; i < x.hi.length; i++) {
+    const term = sign * y[i];
+    const sum = x.hi[i];
+    const total = sum + term;
+    const part = total - sum;
+    x.lo[i] += sum - (total - part) + (term - part);
+    x.hi[i] = total;
+  }
+  renormalise(x.hi, x.lo);
+}
+
+export function wideTranspose(x: Wide, rows: number, columns: number): Wide {
+  const hi = new Float64Array(x.hi.length);
+  const lo = new Float64Array(x.hi.length);
+  for (let i = 0; i < rows; i++) {
+    for (let j = 0; j < columns; j++) {
+      hi[j * rows + i] = x.hi[i * columns + j];
+      lo[j * rows + i] = x.lo[i * columns + j];
+    }
+  }
+  return { hi, lo };
+}
+
+function renormalise(hi: Float64Array, lo: Float64Array): void {
+  for (let i = 0; i < hi.length; i++) {
+    const total = hi[i] + lo[i];
+    lo[i] -= total - hi[i];
+    hi[i] = total;
+  }
+}
