@@ -17,7 +17,7 @@ const entries = {
  * @param {string[]} [names]
  */
 export async function bundle(names = Object.keys(entries)) {
-  const { build } = await import("esbuild");
+  const { build, stop } = await import("esbuild");
   const { outputFiles } = await build({
     entryPoints: Object.fromEntries(
       Object.entries(entries).filter(([name, path]) => names.includes(name) && existsSync(join(root, path))),
@@ -36,6 +36,7 @@ export async function bundle(names = Object.keys(entries)) {
     sourcemap: "inline",
     logLevel: "warning",
   });
+  await stop();
   for (const { path, contents } of outputFiles) {
     const unfinished = `${path}.${process.pid}`;
     mkdirSync(dirname(path), { recursive: true });
