@@ -1,0 +1,53 @@
+import { largestEntry } from "../linalg/flat";
+import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { balanceSystem } from "../structure/balance-system";
+
+/** A plant in exact powers of two of its units: a = D⁻¹ A D · time, b = D⁻¹ B diag(input), so that K = diag(input) Ks D⁻¹ / time. */
+export type ScaledPlant = {
+  readonly n: number;
+  readonly m: number;
+  readonly a: Float64Array;
+  readonly b: Float64Array;
+  readonly state: Float64Array;
+  readonly input: Float64Array;
+  readonly time: number;
+};
+
+/**
+ * Brings time, inputs and, when asked, states of (A, B) to like sizes by powers of two.
+ *
+ * Shapes    A n×n, B n×m, row-major; `fastest` is the largest part of a wanted pole
+ * Units     any; time and inputs come out with entries of size one
+ * Throws    nothing: finite entries are the caller's duty
+ * Accuracy  exact but for underflow of entries negligible beside others
+ * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304
+ */
+export function scalePlant(
+  A: Float64Array,
+  B: Float64Array,
+  n: number,
+  m: number,
+  fastest: number,
+  balanced: boolean,
+): ScaledPlant {
+  const none = new Float64Array(0);
+  const state = balanced ? balanceSystem({ n, m, p: 0, a: A, b: B, c: none, d: none }).stateScale : new Float64Array(n).fill(1);
+  const a = new Float64Array(n * n);
+  const b = new Float64Array(n * m);
+  const input = new Float64Array(m);
+  const size = unitPower(largestEntry(A));
+  for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) a[i * n + j] = (A[i * n + j] * size * state[j]) / state[i];
+  const time = unitPower(Math.max(largestEntry(a) / size, fastest));
+  for (let i = 0; i < a.length; i++) a[i] *= time / size;
+  for (let j = 0; j < m; j++) {
+    let largest = 0;
+    for (let i = 0; i < n; i++) largest = Math.max(largest, Math.abs(B[i * m + j] / state[i]));
+    input[j] = unitPower(largest);
+    for (let i = 0; i < n; i++) b[i * m + j] = (B[i * m + j] / state[i]) * input[j];
+  }
+  return { n, m, a, b, state, input, time };
+}
+
+function unitPower(size: number): number {
+  return size === 0 ? 1 : powerOfTwo(-exponentOf(size));
+}

@@ -1,0 +1,104 @@
+import type { WantedPole } from "./wanted-poles";
+import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
+
+/** One elimination: rows `pivot` and `row` changed places, then multiples of row `pivot` left the rows below it. */
+type Step = { readonly pivot: number; readonly row: number; readonly factors: WideRows };
+
+/**
+ * The one gain that places the poles of a plant with a single input, with some 32 digits carried throughout:
+ * elimination to Hessenberg form with the input on the first state, then one row of the wanted polynomial.
+ *
+ * Shapes    a n×n row-major, b n, blocks covering n poles → n; null when the input does not reach every state
+ * Units     gain in input per state of the plant given
+ * Throws    nothing
+ * Accuracy  each entry the double next to the exact one or its neighbour while the reachability matrix has condition below
+ *           about 1e15; the plant's own sensitivity to rounding of the gain remains
+ * Source    Ackermann 1972; the row recursion on a Hessenberg form after Datta, Numerical Methods for Linear Control
+ *           Systems, 2004 (from memory)
+ */
+export function singleInputGain(a: Float64Array, b: Float64Array, n: number, blocks: readonly WantedPole[]): Float64Array | null {
+  const h: WideRows = { hi: a.slice(), lo: new Float64Array(n * n) };
+  const input: WideRows = { hi: b.slice(), lo: new Float64Array(n) };
+  const steps: Step[] = [];
+  const divisors: WideNumber[] = [];
+  for (let pivot = 0; pivot < n; pivot++) {
+    // The column to clear is the input first, then column pivot - 1 of the matrix.
+    const step = eliminate(h, n, pivot, (i) => (pivot === 0 ? wideAt(input, i) : wideAt(h, i * n + pivot - 1)));
+    if (!step) return null;
+    if (pivot === 0) divisors.push(wideAt(input, step.row));
+    else divisors.push(wideAt(h, pivot * n + pivot - 1));
+    steps.push(step);
+  }
+  const row = polynomialRow(h, n, blocks, divisors);
+  for (const { pivot, row: other, factors } of steps.toReversed()) {
+    for (let i = pivot + 1; i < n; i++) addMultiple(row, pivot, row, i, 1, 1, negative(wideAt(factors, i)));
+    swapEntries(row, pivot, other);
+  }
+  return row.hi.every(Number.isFinite) ? row.hi : null;
+}
+
+/** Similarity that leaves only the pivot in the given column below row `pivot` - 1; null when nothing is there. */
+function eliminate(h: WideRows, n: number, pivot: number, column: (i: number) => WideNumber): Step | null {
+  let row = pivot;
+  for (let i = pivot + 1; i < n; i++) if (Math.abs(column(i).hi) > Math.abs(column(row).hi)) row = i;
+  const top = column(row);
+  if (top.hi === 0) return null;
+  const factors = wideZeros(n);
+  for (let i = pivot + 1; i < n; i++) {
+    const { hi, lo } = divideWide(column(i === row ? pivot : i), top);
+    factors.hi[i] = hi;
+    factors.lo[i] = lo;
+  }
+  for (let j = 0; j < n && row !== pivot; j++) swapEntries(h, pivot * n + j, row * n + j);
+  for (let i = 0; i < n && row !== pivot; i++) swapEntries(h, i * n + pivot, i * n + row);
+  for (let i = pivot + 1; i < n; i++) {
+    const factor = wideAt(factors, i);
+    if (factor.hi === 0) continue;
+    addMultiple(h, i * n, h, pivot * n, n, 1, negative(factor));
+    addMultiple(h, pivot, h, i, n, n, factor);
+  }
+  return { pivot, row, factors };
+}
+
+/** Last row of the wanted polynomial of H over the product of the divisors, which are used from the last to the first. */
+function polynomialRow(h: WideRows, n: number, blocks: readonly WantedPole[], divisors: WideNumber[]): WideRows {
+  let row = wideZeros(n);
+  row.hi[n - 1] = 1;
+  let used = n;
+  for (const { re, im, width } of blocks) {
+    let next = timesShifted(row, h, n, re);
+    if (width === 2) {
+      next = timesShifted(next, h, n, re);
+      addMultiple(next, 0, row, 0, n, 1, squareOf(im));
+    }
+    for (let k = 0; k < width; k++) {
+      used--;
+      for (let j = 0; j < n; j++) {
+        const { hi, lo } = divideWide(wideAt(next, j), divisors[used]);
+        next.hi[j] = hi;
+        next.lo[j] = lo;
+      }
+    }
+    row = next;
+  }
+  return row;
+}
+
+/** row (H - shift I) */
+function timesShifted(row: WideRows, h: WideRows, n: number, shift: number): WideRows {
+  const next = wideZeros(n);
+  for (let i = 0; i < n; i++) if (row.hi[i] !== 0) addMultiple(next, 0, h, i * n, n, 1, wideAt(row, i));
+  addMultiple(next, 0, row, 0, n, 1, { hi: -shift, lo: 0 });
+  return next;
+}
+
+function squareOf(x: number): WideNumber {
+  const square = wideZeros(1);
+  addMultiple(square, 0, { hi: Float64Array.of(x), lo: new Float64Array(1) }, 0, 1, 1, { hi: x, lo: 0 });
+  return wideAt(square, 0);
+}
+
+function swapEntries(x: WideRows, i: number, j: number): void {
+  [x.hi[i], x.hi[j]] = [x.hi[j], x.hi[i]];
+  [x.lo[i], x.lo[j]] = [x.lo[j], x.lo[i]];
+}

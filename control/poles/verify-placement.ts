@@ -1,0 +1,180 @@
+import { Matrix } from "ml-matrix";
+import { balance } from "../linalg/balance";
+import { modulus } from "../linalg/complex";
+import { eigenvalues } from "../linalg/eigenvalues";
+import { flatIdentity, flatProduct, flatTranspose, pythagoras, toFlat } from "../linalg/flat";
+import { factorLu, solveLu } from "../linalg/lu";
+import { flatNorm, frobeniusNorm } from "../linalg/norms";
+import { powerOfTwo } from "../linalg/power-of-two";
+import { singularValues } from "../linalg/singular-values";
+import type { Complex } from "../plant/model";
+import { modeDistance } from "../structure/mode-distance";
+import { residualColumns } from "./gain-from-vectors";
+import { matchPoles } from "./match-poles";
+import type { ScaledPlant } from "./scale-plant";
+import { multiplicityOf, polesOf, type WantedPole } from "./wanted-poles";
+
+export type PlacementCheck = {
+  /** Eigenvalues of A - B K, in the order of the blocks. */
+  readonly achieved: readonly Complex[];
+  /** Largest error of a pole over its size, and what rounding of the loop and of its eigenvalues can account for. */
+  readonly poleError: number;
+  readonly poleBound: number;
+  /** Every pole within its own bound, and the equation within its. */
+  readonly holds: boolean;
+  readonly conditioning: number | null;
+  readonly residual: number;
+  readonly bound: number;
+  readonly poleShiftPerGainDigit: number | null;
+};
+
+export type Placed = {
+  readonly A: Matrix;
+  readonly B: Matrix;
+  readonly K: Matrix;
+  readonly blocks: readonly WantedPole[];
+  /** Unit eigenvectors in the real form of a frame; null where no full set exists. */
+  readonly X: Matrix | null;
+  /** Units in which the gain was solved for; null when it was found with more digits than K keeps. */
+  readonly madeIn: ScaledPlant | null;
+};
+
+type Loop = Pick<Placed, "A" | "B" | "K" | "madeIn"> & { readonly closed: Matrix; readonly n: number };
+
+/** Roundings counted per entry of a bound. */
+const SLACK = 16;
+
+/**
+ * Checks a gain against the poles it was made for: eigenvalues of A - B K, residual, conditioning, sensitivity.
+ *
+ * Shapes    A n×n, B n×m, K m×n, X n×n
+ * Units     those of the plant as given
+ * Throws    no-convergence; not-finite
+ * Accuracy  bounds are first order in ε with the factor 16 n; without eigenvectors they grow like the root a defective pole takes
+ * Source    Wilkinson, The Algebraic Eigenvalue Problem, 1965, chapter 2
+ */
+export function verifyPlacement(
+  A: Matrix,
+  B: Matrix,
+  K: Matrix,
+  blocks: readonly WantedPole[],
+  X: Matrix | null,
+): PlacementCheck {
+  const loop = { A, B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows };
+  const wanted = polesOf(blocks);
+  const achieved = matchPoles(wanted, eigenvalues(loop.closed));
+  const errors = wanted.map((pole, k) => modulus({ re: pole.re - achieved[k].re, im: pole.im - achieved[k].im }));
+  const floor = frobeniusNorm(loop.closed) || 1;
+  const sizes = wanted.map((pole) => modulus(pole) || floor);
+  const duals = X && inverseOf(X);
+  const { bounds, shifts } = X && duals ? simpleBounds(loop, blocks, toFlat(X), duals) : defectiveBounds(loop, blocks);
+  const { residual, bound } = X && duals ? vectorResidual(loop, X, blocks) : distanceResidual(loop, blocks);
+  const values = X && duals ? singularValues(X) : [1, 0];
+  const condition = values[0] / values[loop.n - 1];
+  return {
+    achieved,
+    poleError: Math.max(...errors.map((error, k) => error / sizes[k])),
+    poleBound: Math.max(...bounds.map((limit, k) => limit / sizes[k])),
+    holds: residual <= bound && errors.every((error, k) => error <= bounds[k]),
+    conditioning: condition * loop.n * Number.EPSILON < 1 ? condition : null,
+    residual,
+    bound,
+    poleShiftPerGainDigit: shifts && Math.max(...shifts.map((shift, k) => shift / sizes[k])),
+  };
+}
+
+function inverseOf(X: Matrix): Float64Array | null {
+  const factors = factorLu(toFlat(X), X.rows);
+  if (factors.zeroPivot >= 0) return null;
+  const inverse = solveLu(factors, flatIdentity(X.rows), X.rows);
+  return inverse.every(Number.isFinite) ? inverse : null;
+}
+
+/**
+ * Per pole: its condition times rounding of the loop, in the units its eigenvalues are computed in and in those the gain
+ * was solved for in, and |y|'|B||K||x|.
+ */
+function simpleBounds({ B, K, closed, n, madeIn }: Loop, blocks: readonly WantedPole[], x: Float64Array, y: Float64Array) {
+  const { matrix, order, scale: ordered, shift } = balance(toFlat(closed), n);
+  const norm = flatNorm(matrix) * powerOfTwo(-shift);
+  const scale = new Float64Array(n);
+  order.forEach((i, place) => {
+    scale[i] = ordered[place];
+  });
+  const columns = flatTranspose(x, n, n);
+  const absB = toFlat(B).map(Math.abs);
+  const absK = toFlat(K).map(Math.abs);
+  const bounds: number[] = [];
+  const shifts: number[] = [];
+  for (const { column, width } of blocks) {
+    const right = modulusOf(columns, column, width, n);
+    const left = modulusOf(y, column, width, n);
+    const ofEigenvalue = norm * productOfNorms(right, left, (i) => scale[i]);
+    const ofGain = madeIn ? sizeIn(madeIn, K) * productOfNorms(right, left, (i) => madeIn.state[i]) : 0;
+    const effort = flatProduct(absK, right, B.columns, n, 1);
+    const moved = flatProduct(flatProduct(left, absB, 1, n, B.columns), effort, 1, B.columns, 1)[0];
+    for (let k = 0; k < width; k++) {
+      bounds.push(SLACK * n * Number.EPSILON * (ofEigenvalue + ofGain + moved));
+      shifts.push(moved);
+    }
+  }
+  return { bounds, shifts };
+}
+
+/** |D⁻¹x| |D y| */
+function productOfNorms(right: Float64Array, left: Float64Array, unit: (i: number) => number): number {
+  return flatNorm(right.map((entry, i) => entry / unit(i))) * flatNorm(left.map((entry, i) => entry * unit(i)));
+}
+
+/** |A| + |B| |K| in scaled states and inputs. */
+function sizeIn({ n, a, b, state, input, time }: ScaledPlant, K: Matrix): number {
+  const gain = toFlat(K).map((entry, at) => (entry * state[at % n]) / input[Math.floor(at / n)]);
+  return flatNorm(a) / time + flatNorm(b) * flatNorm(gain);
+}
+
+/** |x| of one real vector, or of (u + i v) / √2 for the two rows of a pair. */
+function modulusOf(rows: Float64Array, row: number, width: number, n: number): Float64Array {
+  const at = row * n;
+  return Float64Array.from({ length: n }, (_, i) => {
+    return width === 1 ? Math.abs(rows[at + i]) : pythagoras(rows[at + i], rows[at + n + i]) * Math.SQRT1_2;
+  });
+}
+
+/** A pole of multiplicity k moves like the k-th root of a rounding. */
+function defectiveBounds({ closed, n }: Loop, blocks: readonly WantedPole[]) {
+  const { matrix, shift } = balance(toFlat(closed), n);
+  const norm = flatNorm(matrix) * powerOfTwo(-shift);
+  const repeated = blocks.map((block) => multiplicityOf(block, blocks));
+  const bounds = blocks.flatMap(({ width }, k) => {
+    const order = Math.max(...repeated) === 1 ? n : repeated[k];
+    return new Array<number>(width).fill(SLACK * norm * rootOf(n * Number.EPSILON, order));
+  });
+  return { bounds, shifts: null };
+}
+
+/** The k-th root of 0 < x < 1, from above, by bisection. */
+function rootOf(x: number, k: number): number {
+  let low = 0;
+  let high = 1;
+  for (let step = 0; step < 60; step++) {
+    const middle = (low + high) / 2;
+    let power = 1;
+    for (let i = 0; i < k; i++) power *= middle;
+    if (power < x) low = middle;
+    else high = middle;
+  }
+  return high;
+}
+
+function vectorResidual({ A, B, K, closed, n }: Loop, X: Matrix, blocks: readonly WantedPole[]) {
+  const size = (frobeniusNorm(A) + frobeniusNorm(B) * frobeniusNorm(K)) * frobeniusNorm(X);
+  const left = flatNorm(residualColumns(toFlat(closed), toFlat(X), blocks, n));
+  return { residual: size === 0 ? 0 : left / size, bound: SLACK * n * Number.EPSILON };
+}
+
+/** Largest distance, relative, from A - B K to a matrix that has one of the poles exactly. */
+function distanceResidual({ closed, n }: Loop, blocks: readonly WantedPole[]) {
+  const none = new Float64Array(0);
+  const distances = blocks.map(({ re, im }) => modeDistance(toFlat(closed), none, n, 0, { re, im }).relative);
+  return { residual: Math.max(...distances), bound: SLACK * n * Number.EPSILON };
+}

@@ -1,0 +1,61 @@
+import { NumericalError } from "../errors";
+import type { Complex } from "../plant/model";
+
+/** One wanted real pole, or one conjugate pair with im > 0, and the columns its eigenvectors take. */
+export type WantedPole = { readonly re: number; readonly im: number; readonly column: number; readonly width: 1 | 2 };
+
+/** NEARLY_EQUAL · ε is how far apart two poles may be, relative to their size, and still count as one repeated pole. */
+const NEARLY_EQUAL = 8;
+
+/**
+ * Sorts wanted poles into real ones and exactly conjugate pairs.
+ *
+ * Shapes    n poles → blocks whose widths add up to n
+ * Units     those of the plant's plane
+ * Throws    pole-count; not-finite; poles-not-conjugate { index, pole } for a complex pole without its exact partner
+ * Accuracy  exact
+ * Source    a real loop has poles in conjugate pairs
+ */
+export function groupPoles(poles: readonly Complex[], expected: number): WantedPole[] {
+  if (poles.length !== expected) throw new NumericalError("pole-count", { expected, given: poles.length });
+  const partnerTaken = new Array<boolean>(poles.length).fill(false);
+  const blocks: WantedPole[] = [];
+  let column = 0;
+  poles.forEach((pole, index) => {
+    if (!Number.isFinite(pole.re) || !Number.isFinite(pole.im)) {
+      throw new NumericalError("not-finite", { matrix: "poles", row: index, column: 0 });
+    }
+    if (partnerTaken[index]) return;
+    if (pole.im !== 0) {
+      const partner = poles.findIndex(
+        (other, k) => k > index && !partnerTaken[k] && other.re === pole.re && other.im === -pole.im,
+      );
+      if (partner < 0) throw new NumericalError("poles-not-conjugate", { index, pole });
+      partnerTaken[partner] = true;
+    }
+    const width = pole.im === 0 ? 1 : 2;
+    blocks.push({ re: pole.re, im: Math.abs(pole.im), column, width });
+    column += width;
+  });
+  return blocks;
+}
+
+/** The blocks as a list of poles, column by column. */
+export function polesOf(blocks: readonly WantedPole[]): Complex[] {
+  return blocks.flatMap(({ re, im, width }) =>
+    width === 1
+      ? [{ re, im: 0 }]
+      : [
+          { re, im },
+          { re, im: -im },
+        ],
+  );
+}
+
+/** How often the pole of a block is wanted, counting poles that differ by rounding only. */
+export function multiplicityOf(block: WantedPole, blocks: readonly WantedPole[]): number {
+  const tolerance = NEARLY_EQUAL * Number.EPSILON * (Math.abs(block.re) + block.im);
+  return blocks.filter(({ re, im, width }) => {
+    return width === block.width && Math.abs(re - block.re) + Math.abs(im - block.im) <= tolerance;
+  }).length;
+}
