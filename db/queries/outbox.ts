@@ -17,13 +17,12 @@ export async function enqueueMail(db: Db, id: string): Promise<void> {
   await db.execute(sql`select app.enqueue_mail(${id}::uuid)`);
 }
 
-/** Needs the setting `outbox_id`. Locked, so that no second job sends the same mail meanwhile. */
-export async function lockUnsentMail(db: Db, id: string): Promise<OutboxRow | undefined> {
+/** Needs the setting `outbox_id`. */
+export async function findUnsentMail(db: Db, id: string): Promise<OutboxRow | undefined> {
   const [row] = await db
     .select()
     .from(outbox)
-    .where(and(eq(outbox.id, id), isNull(outbox.sentAt)))
-    .for("update");
+    .where(and(eq(outbox.id, id), isNull(outbox.sentAt)));
   return row;
 }
 

@@ -9,6 +9,15 @@ export async function insertReset(db: Db, reset: { userId: string; tokenHash: st
   await db.insert(passwordResets).values({ ...reset, expiresAt: sql`now() + make_interval(secs => ${lifetimeSeconds})` });
 }
 
+/** Needs the setting `secret_hash`. */
+export async function findReset(db: Db, tokenHash: string): Promise<{ userId: string } | undefined> {
+  const [row] = await db
+    .select({ userId: passwordResets.userId })
+    .from(passwordResets)
+    .where(and(eq(passwordResets.tokenHash, tokenHash), unused));
+  return row;
+}
+
 /** Needs the setting `secret_hash`. One statement, so that a link works once. */
 export async function takeReset(db: Db, tokenHash: string): Promise<{ userId: string } | undefined> {
   const [row] = await db

@@ -1,5 +1,5 @@
 import "server-only";
-import { and, eq, gt, isNull, lt, ne, type SQL, sql } from "drizzle-orm";
+import { and, desc, eq, gt, isNull, lt, ne, type SQL, sql } from "drizzle-orm";
 import type { Db } from "../client";
 import { sessions } from "../schema/access";
 import { memberships, users } from "../schema/people";
@@ -44,6 +44,17 @@ export async function findLiveSession(db: Db, key: SessionKey, idleSeconds: numb
       ),
     );
   return row;
+}
+
+/** Where they worked last, to go on there. */
+export async function lastTeamOf(db: Db, userId: string): Promise<string | null> {
+  const [row] = await db
+    .select({ teamId: sessions.teamId })
+    .from(sessions)
+    .where(eq(sessions.userId, userId))
+    .orderBy(desc(sessions.lastSeenAt))
+    .limit(1);
+  return row?.teamId ?? null;
 }
 
 /** At most once a minute, so that reading pages does not mean writing rows. */

@@ -17,7 +17,8 @@ export type RenameTeam = z.infer<typeof RenameTeam>;
 export const SwitchTeam = z.strictObject({ teamId: Id });
 export type SwitchTeam = z.infer<typeof SwitchTeam>;
 
-export const Member = z.strictObject({ userId: Id, name: Name, email: z.string(), role: Role, joinedAt: Timestamp });
+/** `email` is null where the reader may not know it. */
+export const Member = z.strictObject({ userId: Id, name: Name, email: z.string().nullable(), role: Role, joinedAt: Timestamp });
 export type Member = z.infer<typeof Member>;
 export const ChangeRole = z.strictObject({ role: Role });
 export type ChangeRole = z.infer<typeof ChangeRole>;

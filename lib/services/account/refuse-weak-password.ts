@@ -1,0 +1,43 @@
+import "server-only";
+import { dictionary } from "@zxcvbn-ts/language-common";
+import { DomainError } from "@/lib/errors";
+
+/** About 49,000 passwords by frequency, lower case. Made on first use: most requests never need it. */
+let common: Set<string> | undefined;
+
+export function isCommonPassword(password: string): boolean {
+  common ??= new Set(dictionary["passwords-common"]);
+  const plain = password.toLowerCase();
+  const bare = plain.replace(/[\d!?.]+$/, "");
+  return (
+    common.has(plain) || (bare.length >= 4 && plain.length - bare.length <= 2 && common.has(bare)) || isOneUnitRepeated(plain)
+  );
+}
+
+/** `aaaaaaaa`, `abcabcabc`, `12121212` */
+function isOneUnitRepeated(text: string): boolean {
+  for (let unit = 1; unit <= Math.min(4, text.length / 2); unit++) {
+    if (
+      text ===
+      text
+        .slice(0, unit)
+        .repeat(Math.ceil(text.length / unit))
+        .slice(0, text.length)
+    )
+      return true;
+  }
+  return false;
+}
+
+/** `own` are the person's name, address and team: the first things that are tried. @throws DomainError invalid */
+export function refuseWeakPassword(password: string, own: readonly string[], pointer: string): void {
+  const refuse = (detail: string) => {
+    throw new DomainError("invalid", "Choose another password.", {}, [{ pointer, detail }]);
+  };
+  if (isCommonPassword(password)) refuse("This password is on the list that attackers try first. Choose a longer, unusual one");
+  const plain = password.toLowerCase();
+  const words = own.flatMap((text) => [text, text.split("@")[0]]).map((text) => text.trim().toLowerCase());
+  if (words.some((word) => word.length >= 4 && plain.replace(/[\d!?.]+$/, "") === word)) {
+    refuse("Your name, address or team is the first thing to be tried. Choose something else");
+  }
+}
