@@ -53,7 +53,7 @@ export function scaledSingleInputGain(A: Matrix, b: Matrix, blocks: readonly Wan
   const plant = scalePlant(toFlat(A), toFlat(b), n, 1, fastest, true);
   const scaled = blocks.map((block) => ({ ...block, re: block.re * plant.time, im: block.im * plant.time }));
   const gain = singleInputGain(plant.a, plant.b, n, scaled);
-  return gain && gain.map((entry, i) => (entry * plant.input[0]) / plant.state[i] / plant.time);
+  return gain?.map((entry, i) => (entry * plant.input[0]) / plant.state[i] / plant.time) ?? null;
 }
 
 /** Power-of-two-free weight of an input: the reciprocal of its largest effect, zero for one that has none. */

@@ -53,14 +53,8 @@ const SLACK = 16;
  * Accuracy  bounds are first order in ε with the factor 16 n; without eigenvectors they grow like the root a defective pole takes
  * Source    Wilkinson, The Algebraic Eigenvalue Problem, 1965, chapter 2
  */
-export function verifyPlacement(
-  A: Matrix,
-  B: Matrix,
-  K: Matrix,
-  blocks: readonly WantedPole[],
-  X: Matrix | null,
-): PlacementCheck {
-  const loop = { A, B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows };
+export function verifyPlacement({ A, B, K, blocks, X, madeIn }: Placed): PlacementCheck {
+  const loop = { A, B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows, madeIn };
   const wanted = polesOf(blocks);
   const achieved = matchPoles(wanted, eigenvalues(loop.closed));
   const errors = wanted.map((pole, k) => modulus({ re: pole.re - achieved[k].re, im: pole.im - achieved[k].im }));
