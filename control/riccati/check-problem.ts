@@ -1,0 +1,104 @@
+import { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
+import { flatCholesky } from "../linalg/cholesky";
+import { toFlat } from "../linalg/flat";
+import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { requireFinite, requireShape, requireSymmetric } from "../linalg/require";
+import { symmetricEigenvalues } from "../linalg/symmetric-eigenvalues";
+import type { FlatProblem } from "./problem";
+
+export type RiccatiProblem = {
+  readonly A: Matrix;
+  readonly B: Matrix;
+  readonly Q: Matrix;
+  readonly R: Matrix;
+  readonly S?: Matrix;
+  readonly sampled?: boolean;
+};
+
+/** Shapes, finiteness and symmetry, then the definiteness of the weights; the flat problem with Q and R exactly symmetric. */
+export function checkProblem({ A, B, Q, R, S, sampled = false }: RiccatiProblem): FlatProblem {
+  const n = A.rows;
+  const m = B.columns;
+  requireShape("A", A, n, n);
+  requireShape("B", B, n, m);
+  requireShape("Q", Q, n, n);
+  requireShape("R", R, m, m);
+  const cross = S ?? Matrix.zeros(n, m);
+  requireShape("S", cross, n, m);
+  if (n === 0 || m === 0) throw new NumericalError("shape-mismatch", { A: [n, n], B: [n, m] });
+  for (const [name, M] of [
+    ["A", A],
+    ["B", B],
+    ["Q", Q],
+    ["R", R],
+    ["S", cross],
+  ] as const)
+    requireFinite(name, M);
+  requireSymmetric("Q", Q);
+  requireSymmetric("R", R);
+  const problem = { n, m, sampled, a: toFlat(A), b: toFlat(B), q: symmetricFlat(Q), r: symmetricFlat(R), s: toFlat(cross) };
+  if (!sampled) flatCholesky(problem.r, m, "R");
+  requireSemidefinite(problem);
+  return problem;
+}
+
+function symmetricFlat(M: Matrix): Float64Array {
+  const n = M.rows;
+  const flat = toFlat(M);
+  for (let i = 0; i < n; i++)
+    for (let j = 0; j < i; j++) flat[i * n + j] = flat[j * n + i] = 0.5 * flat[i * n + j] + 0.5 * flat[j * n + i];
+  return flat;
+}
+
+/** The block [Q S; S' R], scaled by powers of two to a diagonal near one, may be negative only by rounding. */
+function requireSemidefinite({ n, m, q, r, s }: FlatProblem): void {
+  const size = n + m;
+  const entry = (i: number, j: number): number => {
+    if (i < n) return j < n ? q[i * n + j] : s[i * m + j - n];
+    return j < n ? s[j * m + i - n] : r[(i - n) * m + j - n];
+  };
+  const scale = Array.from({ length: size }, (_, i) => {
+    const diagonal = Math.abs(entry(i, i));
+    return diagonal === 0 ? 1 : powerOfTwo(-Math.round(exponentOf(diagonal) / 2));
+  });
+  const block = new Float64Array(size * size);
+  for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) block[i * size + j] = entry(i, j) * scale[i] * scale[j];
+  if (!block.every(Number.isFinite)) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
+  // Rounding of entries typed in decimal, or of a product C'C, is a few n ε of the unit diagonal.
+  const tolerance = 16 * size * Number.EPSILON;
+  if (plainlySemidefinite(block.slice(), size)) return;
+  const least = symmetricEigenvalues(
+    new Matrix(Array.from({ length: size }, (_, i) => [...block.subarray(i * size, i * size + size)])),
+  )[0];
+  if (least >= -tolerance) return;
+  const given = new Matrix(Array.from({ length: size }, (_, i) => Array.from({ length: size }, (_, j) => entry(i, j))));
+  throw new NumericalError("not-positive-semidefinite", {
+    matrix: s.some((x) => x !== 0) ? "[Q S; S' R]" : blame(given, n),
+    eigenvalue: symmetricEigenvalues(given)[0],
+  });
+}
+
+/** Without a cross term the block splits: which of the two is to blame. */
+function blame(block: Matrix, n: number): "Q" | "R" {
+  const q = symmetricEigenvalues(block.subMatrix(0, n - 1, 0, n - 1))[0];
+  const r = symmetricEigenvalues(block.subMatrix(n, block.rows - 1, n, block.rows - 1))[0];
+  return q <= r ? "Q" : "R";
+}
+
+/** Quick proof by elimination without pivoting: pivots positive, or an exactly zero row. */
+function plainlySemidefinite(a: Float64Array, n: number): boolean {
+  for (let k = 0; k < n; k++) {
+    const pivot = a[k * n + k];
+    if (pivot === 0) {
+      for (let j = k + 1; j < n; j++) if (a[k * n + j] !== 0) return false;
+      continue;
+    }
+    if (pivot < n * Number.EPSILON) return false;
+    for (let i = k + 1; i < n; i++) {
+      const factor = a[i * n + k] / pivot;
+      if (factor !== 0) for (let j = k + 1; j < n; j++) a[i * n + j] -= factor * a[k * n + j];
+    }
+  }
+  return true;
+}

@@ -1,0 +1,126 @@
+import { NumericalError } from "../errors";
+import { largestEntry } from "../linalg/flat";
+import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import type { FlatProblem } from "./problem";
+
+/**
+ * The scaled problem with what undoes it: X = 2^(cost - time) D⁻¹ Xs D⁻¹, K = E Ks D⁻¹, where `state` holds D,
+ * `input` E, all exact powers of two.
+ */
+export type ScaledProblem = {
+  readonly problem: FlatProblem;
+  readonly state: Float64Array;
+  readonly input: Float64Array;
+  readonly cost: number;
+  readonly time: number;
+};
+
+const LARGEST_SHIFT = 400;
+const ROUNDS = 30;
+
+/**
+ * Scales time, cost, inputs and states by powers of two so that A, B R⁻¹ B' and Q are of like size.
+ *
+ * Throws    too-large when the scaled problem still leaves the range of doubles
+ * Accuracy  exact
+ * Source    idea of Benner, Symplectic balancing of Hamiltonian matrices, SIAM J. Sci. Comput. 22 (2001) 1885-1904
+ */
+export function scaleProblem(given: FlatProblem, g: (scaled: FlatProblem) => Float64Array): ScaledProblem {
+  const { n, m, sampled } = given;
+  const time = sampled ? 0 : exponentOrZero(largestEntry(given.a));
+  const cost = exponentOrZero(Math.max(largestEntry(given.q), largestEntry(given.r)));
+  const input = Float64Array.from({ length: m }, (_, j) => inputScale(given, j, cost));
+  const state = new Float64Array(n).fill(1);
+  const first = apply(given, state, input, cost, time);
+  balanceStates(first, g(first), state);
+  const problem = apply(given, state, input, cost, time);
+  const parts = [problem.a, problem.b, problem.q, problem.r, problem.s];
+  if (!parts.every((part) => part.every(Number.isFinite)))
+    throw new NumericalError("too-large", { what: "scaled-problem", limit: Number.MAX_VALUE });
+  return { problem, state, input, cost, time };
+}
+
+function exponentOrZero(size: number): number {
+  return size === 0 ? 0 : exponentOf(size);
+}
+
+/** Brings R_jj near one; where it is zero, the largest entry of column j of B. */
+function inputScale({ n, m, b, r }: FlatProblem, j: number, cost: number): number {
+  if (r[j * m + j] > 0) return powerOfTwo(-Math.round((exponentOf(r[j * m + j]) - cost) / 2));
+  let largest = 0;
+  for (let i = 0; i < n; i++) largest = Math.max(largest, Math.abs(b[i * m + j]));
+  return powerOfTwo(-exponentOrZero(largest));
+}
+
+function apply(given: FlatProblem, state: Float64Array, input: Float64Array, cost: number, time: number): FlatProblem {
+  const { n, m, sampled } = given;
+  const perTime = powerOfTwo(-time);
+  const perCost = powerOfTwo(-cost);
+  const scaled = (from: Float64Array, columns: number, factor: (i: number, j: number) => number) =>
+    from.map((entry, at) => (entry === 0 ? 0 : entry * factor(Math.floor(at / columns), at % columns)));
+  return {
+    n,
+    m,
+    sampled,
+    a: scaled(given.a, n, (i, j) => (perTime / state[i]) * state[j]),
+    b: scaled(given.b, m, (i, j) => (perTime / state[i]) * input[j]),
+    q: scaled(given.q, n, (i, j) => perCost * state[i] * state[j]),
+    r: scaled(given.r, m, (i, j) => perCost * input[i] * input[j]),
+    s: scaled(given.s, m, (i, j) => perCost * state[i] * input[j]),
+  };
+}
+
+/** Coordinate descent over powers of two on the sum of sizes of all entries of [A G; Q A']. */
+function balanceStates({ n, a, q }: FlatProblem, g: Float64Array, state: Float64Array): void {
+  for (let round = 0; round < ROUNDS; round++) {
+    let settled = true;
+    for (let i = 0; i < n; i++) {
+      const terms = sizesAgainst(i, n, a, g, q, state);
+      const step = bestStep(terms, exponentOf(state[i]));
+      if (step === 0) continue;
+      settled = false;
+      state[i] *= powerOfTwo(step);
+    }
+    if (settled) return;
+  }
+}
+
+type Terms = { readonly falling: number; readonly rising: number; readonly falling2: number; readonly rising2: number };
+
+/** Sums that change by 1/f, f, 1/f², f² when the scale of state i is multiplied by f. */
+function sizesAgainst(i: number, n: number, a: Float64Array, g: Float64Array, q: Float64Array, state: Float64Array): Terms {
+  let falling = 0;
+  let rising = 0;
+  for (let j = 0; j < n; j++) {
+    if (j === i) continue;
+    const up = state[j] / state[i];
+    falling += Math.abs(a[i * n + j]) * up + Math.abs(g[i * n + j]) / state[i] / state[j];
+    rising += Math.abs(a[j * n + i]) / up + Math.abs(q[i * n + j]) * state[i] * state[j];
+  }
+  const falling2 = Math.abs(g[i * n + i]) / state[i] / state[i];
+  const rising2 = Math.abs(q[i * n + i]) * state[i] * state[i];
+  // Off-diagonal entries of A, G and Q stand twice in the whole matrix, diagonal ones of G and Q once.
+  return { falling: 2 * falling, rising: 2 * rising, falling2, rising2 };
+}
+
+/** Exponent that lowers the sum most, found by steps of falling length; 0 unless it gains five percent. */
+function bestStep({ falling, rising, falling2, rising2 }: Terms, present: number): number {
+  const size = (e: number) => {
+    const f = powerOfTwo(e);
+    return falling / f + rising * f + falling2 / f / f + rising2 * f * f;
+  };
+  if (falling + falling2 === 0 || rising + rising2 === 0) return 0;
+  let best = 0;
+  let least = size(0);
+  for (const length of [64, 16, 4, 1]) {
+    for (const direction of [length, -length]) {
+      for (let e = best + direction; Math.abs(present + e) <= LARGEST_SHIFT; e += direction) {
+        const next = size(e);
+        if (!(next < least)) break;
+        least = next;
+        best = e;
+      }
+    }
+  }
+  return least < 0.95 * size(0) ? best : 0;
+}

@@ -1,0 +1,127 @@
+import type { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
+import { flatCholesky } from "../linalg/cholesky";
+import { widen } from "../linalg/double-double";
+import { eigenvalues } from "../linalg/eigenvalues";
+import { flatProduct, flatTransposedProduct, fromFlat } from "../linalg/flat";
+import { flatNorm } from "../linalg/norms";
+import type { Complex } from "../plant/model";
+import { checkModes, leastReachable } from "./check-modes";
+import { checkProblem, type RiccatiProblem } from "./check-problem";
+import { roughGain } from "./gain";
+import type { FlatProblem, Start } from "./problem";
+import { refine } from "./refine";
+import { removeCrossTerm } from "./remove-cross-term";
+import { gainSystem, splitProblem } from "./residual";
+import { scaleProblem } from "./scale-problem";
+import { startByDoubling } from "./start-by-doubling";
+import { startByGain } from "./start-by-gain";
+import { hamiltonianMatrix, startBySchur } from "./start-by-schur";
+import { verifiedSolution } from "./verified-solution";
+
+export type { RiccatiProblem } from "./check-problem";
+
+export type RiccatiSolution = {
+  readonly X: Matrix;
+  readonly K: Matrix;
+  /** Of the equation at the returned X, relative to its terms, in scaled coordinates; never above `bound`. */
+  readonly residual: number;
+  readonly bound: number;
+  /** Bound on the relative error of K in the 2-norm. */
+  readonly errorBound: number;
+  /** Eigenvalues of A - BK with the returned K. */
+  readonly closedLoopPoles: Complex[];
+  /** Least distance of a closed-loop pole from the stability boundary: -Re s, or 1 - |z|. */
+  readonly stabilityDistance: number;
+  /** Which start led to the answer; all end in the same Newton refinement. */
+  readonly method: RiccatiMethod;
+};
+
+export type RiccatiMethod = "doubling" | "ordered-schur" | "stabilising-gain";
+
+const GAIN_SHIFTS = [0.3, 1, 0.1, 3];
+
+/**
+ * Stabilising solution of A'X + XA - (XB + S) R⁻¹ (B'X + S') + Q = 0 and K = R⁻¹ (B'X + S'); sampled:
+ * A'XA - X - (A'XB + S)(R + B'XB)⁻¹(B'XA + S') + Q = 0 and K = (R + B'XB)⁻¹(B'XA + S').
+ *
+ * Shapes    A n×n, B n×m, Q n×n, R m×m, S n×m (zero when absent) → X n×n, K m×n
+ * Units     u = -K x minimises x'Qx + 2 x'Su + u'Ru
+ * Throws    shape-mismatch; not-finite; too-large; not-symmetric; not-positive-definite (R; sampled: R + B'XB);
+ *           not-positive-semidefinite ([Q S; S' R]); not-stabilizable; unweighted-boundary-mode; on-stability-boundary;
+ *           no-convergence; inaccurate. Never returns a gain that does not stabilise
+ * Accuracy  ordinarily every entry of X and K correctly rounded; errorBound says when not
+ * Source    doubling: Chu, Fan & Lin 2005; Schur method: Laub 1979; Newton: Kleinman 1968, Hewer 1971, with residuals in
+ *           double-double; scaling: Benner 2001
+ */
+export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
+  const original = checkProblem(given);
+  checkModes(original);
+  const scaled = scaleProblem(original, scalingWeight);
+  const problem = splitProblem(scaled.problem);
+  let reason: NumericalError | null = null;
+  for (const { method, start } of starts(problem)) {
+    try {
+      return verifiedSolution(original, scaled, refine(problem, start()), method);
+    } catch (error) {
+      if (!(error instanceof NumericalError)) throw error;
+      reason = error;
+    }
+  }
+  throw refusal(original, scaled.problem, reason);
+}
+
+/** The starts in order of cost. */
+function starts(problem: FlatProblem): { method: RiccatiMethod; start: () => Start }[] {
+  const { plain, auxiliary } = startable(problem);
+  // An auxiliary R moves the solution but not the stabilising property: only its gain is handed on.
+  const begin = (x: Float64Array): Start => (auxiliary ? { gain: gainOf(plain, x) } : { x });
+  return [
+    { method: "doubling", start: () => begin(startByDoubling(removeCrossTerm(plain, "R"))) },
+    { method: "ordered-schur", start: () => begin(startBySchur(removeCrossTerm(plain, "R"))) },
+    ...GAIN_SHIFTS.map((shift) => ({
+      method: "stabilising-gain" as const,
+      start: () => ({ gain: startByGain(problem, shift) }),
+    })),
+  ];
+}
+
+/** The problem itself, or one with more input weight where a sampled problem has a singular R. */
+function startable(problem: FlatProblem): { plain: FlatProblem; auxiliary: boolean } {
+  const { n, m, b, q, r } = problem;
+  if (!problem.sampled || isPositiveDefinite(r, m)) return { plain: problem, auxiliary: false };
+  const weighed = flatNorm(flatTransposedProduct(b, flatProduct(q, b, n, n, m), n, m, m));
+  const more = 0.015625 * Math.max(weighed, flatNorm(r)) || 1;
+  return { plain: { ...problem, r: r.map((entry, at) => (at % (m + 1) === 0 ? entry + more : entry)) }, auxiliary: true };
+}
+
+function isPositiveDefinite(r: Float64Array, m: number): boolean {
+  try {
+    flatCholesky(r, m, "R");
+    return true;
+  } catch (error) {
+    if (error instanceof NumericalError) return false;
+    throw error;
+  }
+}
+
+function gainOf(problem: FlatProblem, x: Float64Array): Float64Array {
+  return roughGain(problem, gainSystem(splitProblem(problem), widen(x)));
+}
+
+/** B R⁻¹ B' for the choice of scales, from the auxiliary problem where R is singular. */
+function scalingWeight(problem: FlatProblem): Float64Array {
+  return removeCrossTerm(startable(problem).plain, "R").g;
+}
+
+/** Why no start ended in a verified solution, as near as can be told. */
+function refusal(original: FlatProblem, problem: FlatProblem, reason: NumericalError | null): NumericalError {
+  if (reason?.code === "not-positive-definite" || reason?.code === "too-large") return reason;
+  const nearest = leastReachable(original);
+  const rough = Math.sqrt(Number.EPSILON);
+  if (nearest && nearest.distance < rough) return new NumericalError("not-stabilizable", nearest);
+  const h = hamiltonianMatrix(removeCrossTerm(startable(problem).plain, "R"));
+  const distance = Math.min(...eigenvalues(fromFlat(h, 2 * problem.n, 2 * problem.n)).map(({ re }) => Math.abs(re)));
+  if (distance <= 10 * rough * flatNorm(h)) return new NumericalError("on-stability-boundary", { distance });
+  return new NumericalError("no-convergence", { routine: "solve-riccati", limit: 2 + GAIN_SHIFTS.length });
+}
