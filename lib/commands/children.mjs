@@ -32,12 +32,21 @@ export function startChild(command, args, options) {
   const child = spawn(program, all, { cwd, env, ...account, detached: true, stdio: [...stdio] });
   if (output !== undefined) closeSync(output);
   let ended = false;
+  // Its group too: a test that loops for ever, say, hears nothing of its runner's end.
+  const signalGroup = (/** @type {NodeJS.Signals} */ which) => {
+    try {
+      if (child.pid) process.kill(-child.pid, which);
+    } catch {
+      // Nobody of the group is left.
+    }
+  };
   /** @type {Promise<number>} */
   const exited = new Promise((resolve) => {
     const end = (/** @type {number} */ code) => {
       if (ended) return;
       ended = true;
       running.delete(handle);
+      signalGroup("SIGKILL");
       resolve(code);
     };
     child.once("exit", (code) => end(code ?? 1));
@@ -52,7 +61,7 @@ export function startChild(command, args, options) {
     async stop() {
       if (ended) return;
       child.kill(signal);
-      const impatient = setTimeout(() => child.kill(lastSignal), patience);
+      const impatient = setTimeout(() => signalGroup(lastSignal), patience);
       await exited;
       clearTimeout(impatient);
     },
