@@ -1,0 +1,15 @@
+import { route } from "@/lib/api/route";
+
+import { Computation, Compute } from "@/lib/schemas/design";
+import { compute } from "@/lib/services/computations/compute";
+
+export const POST = route(
+  {
+    summary: "Compute checks, gains, poles, residuals and responses of a plant and a recipe without storing anything",
+    body: Compute,
+    reply: Computation,
+    right: "compute:use",
+    cost: "solve",
+  },
+  async ({ ctx, body, signal }) => ({ body: await compute(ctx, body, signal) }),
+);

@@ -1,0 +1,18 @@
+import { z } from "zod";
+import { Id } from "./common";
+
+/** What stands in the addresses of the API. */
+export const PlantAddress = z.strictObject({ plantId: Id });
+export const PlantRevisionAddress = z.strictObject({ plantId: Id, revisionId: Id });
+export const DesignAddress = z.strictObject({ designId: Id });
+export const DesignRevisionAddress = z.strictObject({ revisionId: Id });
+export const ComparisonAddress = z.strictObject({ comparisonId: Id });
+export const TemplateAddress = z.strictObject({ templateId: Id });
+
+export const RevisionRange = z.strictObject({ from: Id, to: Id });
+export const ComparisonQuery = z.strictObject({
+  plantId: Id.optional(),
+  cursor: z.string().max(400).optional(),
+  limit: z.coerce.number().int().min(1).max(100).default(50),
+});
+export const GainFile = z.strictObject({ format: z.enum(["csv", "json"]).default("csv") });
