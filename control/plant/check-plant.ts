@@ -1,4 +1,5 @@
 import { NumericalError } from "../errors";
+import { modulus } from "../linalg/complex";
 import { eigensystem } from "../linalg/eigensystem";
 import { stabilityMargin } from "../structure/continuous-pole";
 import { couplingReport } from "../structure/coupling-report";
@@ -7,8 +8,8 @@ import { reachOfInputs, sightOfOutputs } from "../structure/plant-reach";
 import { scalingReport } from "../structure/scaling-report";
 import { timeBaseSuspicion } from "../structure/time-base-suspicion";
 import { transmissionZeros } from "../structure/transmission-zeros";
-import type { PlantModel } from "./model";
-import type { Part, PlantChecks } from "./report";
+import type { Complex, PlantModel, TimeBase } from "./model";
+import type { Part, PlantChecks, ZeroReport } from "./report";
 import { scalePlant } from "./scale-plant";
 
 /**
@@ -33,13 +34,18 @@ export function checkPlant(model: PlantModel): PlantChecks {
     observability: part(() => sight().report),
     stabilizable: part(() => modes().every((mode) => mode.stable || mode.controllable)),
     detectable: part(() => modes().every((mode) => mode.stable || mode.observable)),
-    zeros: part(() =>
-      transmissionZeros(scaled).map((value) => ({ value, minimumPhase: stabilityMargin(value, model.timeBase) > 0 })),
-    ),
+    zeros: part(() => judgeZeros(transmissionZeros(scaled), model.timeBase)),
     coupling: part(() => couplingReport(model, scaled)),
     scaling: scalingReport(model, scaled),
     timeBaseSuspicion: suspicion.state === "computed" ? suspicion.value : null,
   };
+}
+
+/** A zero counts as minimum phase only when it lies inside the boundary by more than rounding beside the largest of them. */
+function judgeZeros(zeros: readonly Complex[], timeBase: TimeBase): ZeroReport[] {
+  const largest = zeros.reduce((size, zero) => Math.max(size, modulus(zero)), timeBase.kind === "sampled" ? 1 : 0);
+  const rounding = 64 * zeros.length * Number.EPSILON * largest;
+  return zeros.map((value) => ({ value, minimumPhase: stabilityMargin(value, timeBase) > rounding }));
 }
 
 function part<T>(compute: () => T): Part<T> {

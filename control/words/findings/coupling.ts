@@ -1,18 +1,14 @@
 import type { PlantModel, Rows } from "../../plant/model";
 import type { PlantChecks } from "../../plant/report";
 import { formatNumber, formatPercent } from "../format-number";
+import { joinNames } from "../join-names";
 import { type Finding, findingOf } from "./finding";
 
-/** Which axis acts most on which other, and whether inputs and commanded quantities pair up at rest. */
+/** Which axis acts most on which other, and how inputs and commanded quantities pair up at rest. */
 export function couplingFinding({ coupling }: PlantChecks, model: PlantModel): Finding {
   return findingOf("coupling", model, coupling, ({ blocks, relativeGain }) => {
-    const gain = relativeGain === null ? null : pairing(relativeGain, model);
-    const between = betweenAxes(blocks, model);
-    return {
-      tone: gain?.reversed ? "caution" : "met",
-      headline: between.headline,
-      sentence: gain === null ? between.sentence : `${between.sentence} ${gain.sentence}`,
-    };
+    const { headline, sentence } = betweenAxes(blocks, model);
+    return { tone: "met", headline, sentence: `${sentence}${relativeGain === null ? "" : pairing(relativeGain, model)}` };
   });
 }
 
@@ -28,8 +24,9 @@ function betweenAxes(blocks: Rows, model: PlantModel): { headline: string; sente
     });
   });
   if (strongest.share === 0) {
-    const sentence = model.axes.length > 1 ? "No state of one axis acts on another inside the plant." : "There is one axis only.";
-    return { headline: "No coupling between axes", sentence };
+    return model.axes.length > 1
+      ? { headline: "No coupling between axes", sentence: "No state of one axis acts on another inside the plant." }
+      : { headline: "One axis only", sentence: "There is no other axis that it could be coupled with." };
   }
   return {
     headline: `Coupling between axes: ${formatPercent(Math.sqrt(square))} of the plant`,
@@ -37,21 +34,21 @@ function betweenAxes(blocks: Rows, model: PlantModel): { headline: string; sente
   };
 }
 
-/** Input with the same place as the commanded quantity is taken as its partner. */
-function pairing(gain: Rows, model: PlantModel): { reversed: boolean; sentence: string } | null {
-  if (gain.length < 2) return null;
-  const own = gain.map((row, k) => row[k]);
-  const worst = own.reduce((best, value, k) => (value < own[best] ? k : best), 0);
-  const names = `${model.inputs[worst]?.name ?? `input ${worst + 1}`} and ${model.commanded[worst]?.name ?? `quantity ${worst + 1}`}`;
-  const value = formatNumber(own[worst], 3);
-  if (own[worst] < 0) {
-    return {
-      reversed: true,
-      sentence: `At rest, closing the other loops turns the effect of ${names} around (relative gain ${value}): single loops paired like that fight each other.`,
-    };
+/** Input and commanded quantity whose relative gain is nearest 1 first, then the best of what is left. */
+function pairing(gain: Rows, model: PlantModel): string {
+  const size = gain.length;
+  if (size < 2) return "";
+  const candidates = gain.flatMap((row, quantity) => row.map((value, input) => ({ quantity, input, value })));
+  candidates.sort((x, y) => Math.abs(x.value - 1) - Math.abs(y.value - 1) || x.quantity - y.quantity || x.input - y.input);
+  const pairs: typeof candidates = [];
+  for (const one of candidates) {
+    if (!pairs.some(({ quantity, input }) => quantity === one.quantity || input === one.input)) pairs.push(one);
   }
-  return {
-    reversed: false,
-    sentence: `At rest the relative gain of each input on the commanded quantity of the same place is at least ${value} (${names}); 1 means that the other loops do not matter.`,
-  };
+  const words = pairs
+    .sort((x, y) => x.quantity - y.quantity)
+    .map(({ quantity, input, value }) => {
+      const commanded = model.commanded[quantity]?.name ?? `quantity ${quantity + 1}`;
+      return `${commanded} with ${model.inputs[input]?.name ?? `input ${input + 1}`} (${formatNumber(value, 3)})`;
+    });
+  return ` By relative gain at rest, ${joinNames(words)} pair best; the farther from 1, the more single loops would disturb each other.`;
 }

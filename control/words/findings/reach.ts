@@ -3,6 +3,7 @@ import type { ModeReport, Part, PlantChecks, RankReport } from "../../plant/repo
 import { describeMode } from "../describe-mode";
 import { formatNumber, formatPercent } from "../format-number";
 import { joinNames, leadingNames } from "../join-names";
+import { startSentence } from "../refusals/facts";
 import { type Finding, findingOf, plural, type Tone } from "./finding";
 
 /** No machine's model is known to more than four digits: a verdict that a smaller change would overturn is a weak one. */
@@ -83,7 +84,7 @@ function reachFinding(side: Side, checks: PlantChecks, model: PlantModel): Findi
     return {
       tone: lost ? "not-met" : "caution",
       headline: side.some(Math.max(1, hidden.length)),
-      sentence: `${named.length > 0 ? `${named.join("; ")}${more}. ` : ""}${lost ? side.lost : side.decaying} ${rankWords(report)}`,
+      sentence: `${named.length > 0 ? `${startSentence(named.join("; "))}${more}. ` : ""}${lost ? side.lost : side.decaying} ${rankWords(report)}`,
     };
   });
 }

@@ -2,7 +2,6 @@ import type { PlantModel } from "../../plant/model";
 import type { ModeReport, PlantChecks } from "../../plant/report";
 import { describeMode } from "../describe-mode";
 import { formatNumber } from "../format-number";
-import { joinNames } from "../join-names";
 import { startSentence } from "../refusals/facts";
 import { type Finding, findingOf, plural } from "./finding";
 
@@ -15,7 +14,7 @@ export function stabilityFinding({ modes }: PlantChecks, model: PlantModel): Fin
       return {
         tone: "caution",
         headline: "Unstable without feedback",
-        sentence: `${plural(growing.length, "mode")} of ${all.length} ${growing.length === 1 ? "grows" : "grow"} when the inputs are held: ${listed(growing, model)}. The loop must never open while the machine is up.`,
+        sentence: `${plural(growing.length, "mode")} of ${all.length} ${growing.length === 1 ? "grows" : "grow"} when the inputs are held: ${listed(growing, model)}. It stands only while the loop is closed.`,
       };
     }
     if (resting.length > 0) {
@@ -31,7 +30,7 @@ export function stabilityFinding({ modes }: PlantChecks, model: PlantModel): Fin
 
 function listed(modes: readonly ModeReport[], model: PlantModel): string {
   const shown = modes.slice(0, 3).map((mode) => describeMode(mode, model));
-  return modes.length > 3 ? `${shown.join("; ")}; and ${modes.length - 3} more` : joinNames(shown);
+  return modes.length > 3 ? `${shown.join("; ")}; and ${modes.length - 3} more` : shown.join("; ");
 }
 
 function leastDamped(modes: readonly ModeReport[], model: PlantModel): string {

@@ -42,8 +42,8 @@ function place(data: Facts, model: PlantModel): string {
   const row = signalName(signalsOf(matrix, "row", model), numberOf(data, "row"), "row");
   const column = signalName(signalsOf(matrix, "column", model), numberOf(data, "column"), "column");
   if (row === null && column === null) return "";
-  if (column === null) return ` in row ${row}`;
-  return row === null ? ` in column ${column}` : ` in row ${row}, column ${column}`;
+  if (column === null) return ` (row ${row})`;
+  return row === null ? ` (column ${column})` : ` (row ${row}, column ${column})`;
 }
 
 function alongDiagonal(data: Facts, model: PlantModel): string {

@@ -31,12 +31,12 @@ export const explainStructure: Pick<
   "not-controllable": (data, model) => ({
     title: "A pole cannot be moved",
     sentence: `No input moves ${modeOf(data, model)}${distance(data)}: it stays where it is under every gain.`,
-    nextStep: "Keep this pole in the list of wanted poles, design by weights instead, or add an input that acts on the state.",
+    nextStep: "Design by weights instead, which leaves this mode as it is, or add an input that acts on the state.",
   }),
   "not-observable": (data, model) => ({
     title: "A pole of the observer cannot be moved",
     sentence: `No output shows ${modeOf(data, model)}${distance(data)}: the estimation error keeps this pole under every observer gain.`,
-    nextStep: "Keep this pole in the observer's list, choose the observer by noise instead, or add a sensor that sees the state.",
+    nextStep: "Choose the observer by noise instead, which leaves this mode as it is, or add a sensor that sees the state.",
   }),
   "unweighted-boundary-mode": (data, model) => ({
     title: "The weights overlook a mode",
