@@ -21,6 +21,8 @@ const Env = z.object({
   MAIL_FROM: z.string().min(3).default("Gainwright <no-reply@gainwright.example>"),
   /** Demo mode: the sign-in page shows the demo accounts and the outbox has a page. */
   GAINWRIGHT_DEMO: Flag,
+  /** How many proxies of ours stand in front: that many entries from the right of `X-Forwarded-For` are believed. */
+  TRUSTED_PROXIES: z.coerce.number().int().min(0).max(10).default(0),
 });
 export type Env = z.infer<typeof Env>;
 
