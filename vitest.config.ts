@@ -1,1 +1,1 @@
-export { default } from "./tests/vitest.config";
+export { default } from "./tests/vitest.config.ts";

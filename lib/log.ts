@@ -1,13 +1,24 @@
 import pino from "pino";
 import { logLevel } from "./env";
 
-const secretNames = ["password", "newPassword", "currentPassword", "secret", "token", "authorization", "cookie", "set-cookie"];
-const anywhere = secretNames.flatMap((name) => [`["${name}"]`, `*["${name}"]`, `*.*["${name}"]`]);
+const secretNames = [
+  "password",
+  "newPassword",
+  "currentPassword",
+  "passwordHash",
+  "secret",
+  "token",
+  "authorization",
+  "cookie",
+  "set-cookie",
+];
 
-/** One JSON line per event, on standard output. */
-export const log = pino({
+export const logOptions = {
   level: logLevel(),
   base: { service: "gainwright" },
   timestamp: pino.stdTimeFunctions.isoTime,
-  redact: { paths: anywhere, censor: "[redacted]" },
-});
+  redact: { paths: secretNames.flatMap((name) => [`["${name}"]`, `*["${name}"]`, `*.*["${name}"]`]), censor: "[redacted]" },
+} satisfies pino.LoggerOptions;
+
+/** One JSON line per event, on standard output. */
+export const log = pino(logOptions);

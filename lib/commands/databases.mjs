@@ -49,8 +49,13 @@ export function urlWith(url, { role, password, database }) {
 export async function ensureRole(client, role, password) {
   const name = pg.escapeIdentifier(role);
   const { rowCount } = await client.query("select 1 from pg_roles where rolname = $1", [role]);
-  const rights = "login nosuperuser nocreatedb nocreaterole noreplication nobypassrls";
-  await client.query(`${rowCount ? "alter" : "create"} role ${name} ${rights} password ${pg.escapeLiteral(password)}`);
+  const secret = pg.escapeLiteral(password);
+  // To name a right of a role that exists, even to take it away, PostgreSQL before 16 wants a superuser.
+  if (rowCount) await client.query(`alter role ${name} login password ${secret}`);
+  else
+    await client.query(
+      `create role ${name} login nosuperuser nocreatedb nocreaterole noreplication nobypassrls password ${secret}`,
+    );
 }
 
 /**

@@ -11,14 +11,10 @@ import { Stop } from "./stop.mjs";
  * @returns {Promise<{ appUrl: string, ownerUrl: string, child?: undefined }>}
  */
 export async function openExternalDatabase(url, ownerUrl) {
-  if (!ownerUrl) {
-    const appUrl = await besideOwner(url);
-    await migrateDatabase(url);
-    return { appUrl, ownerUrl: url };
-  }
-  await migrateDatabase(ownerUrl);
-  await requireServingRights(url, ownerUrl);
-  return { appUrl: url, ownerUrl };
+  const accounts = ownerUrl ? { appUrl: url, ownerUrl } : { appUrl: await besideOwner(url), ownerUrl: url };
+  await migrateDatabase(accounts.ownerUrl);
+  await requireServingRights(accounts.appUrl, accounts.ownerUrl);
+  return accounts;
 }
 
 /** @param {string} url */

@@ -1,0 +1,86 @@
+import { readdirSync, readFileSync } from "node:fs";
+import { join } from "node:path";
+import { root } from "../../lib/commands/paths.mjs";
+import { expect, test } from "../helpers/browser-test";
+
+test("every kind of reply carries the headers that keep browsers strict", async ({ request }) => {
+  for (const path of ["/", "/sign-in", "/api/health", "/api/v1/plants", "/there-is-no-such-page", "/favicon.svg"]) {
+    const reply = await request.get(path, { maxRedirects: 0 });
+    const headers = reply.headers();
+    expect(headers["x-content-type-options"], path).toBe("nosniff");
+    expect(headers["referrer-policy"], path).toBe("same-origin");
+    expect(headers["permissions-policy"], path).toContain("camera=()");
+    expect(headers["cache-control"], path).toContain("no-store");
+    expect(headers["x-powered-by"], path).toBeUndefined();
+    expect(headers["strict-transport-security"], path).toBeUndefined();
+    const policy = headers["content-security-policy"];
+    for (const part of [
+      "default-src 'self'",
+      "object-src 'none'",
+      "base-uri 'none'",
+      "frame-ancestors 'none'",
+      "form-action 'self'",
+    ]) {
+      expect(policy, path).toContain(part);
+    }
+    expect(policy, path).not.toContain("'unsafe-eval'");
+  }
+});
+
+test("https requests are told to stay on https", async ({ request }) => {
+  const reply = await request.get("/api/health", { headers: { "x-forwarded-proto": "https" } });
+  expect(reply.headers()["strict-transport-security"]).toBe("max-age=31536000; includeSubDomains");
+});
+
+test("each reply has a nonce of its own, which its scripts carry", async ({ request }) => {
+  const nonces = new Set<string>();
+  for (let i = 0; i < 3; i++) {
+    const reply = await request.get("/");
+    const nonce = /'nonce-([^']+)'/.exec(reply.headers()["content-security-policy"])?.[1] ?? "";
+    expect(Buffer.from(nonce, "base64").length).toBeGreaterThanOrEqual(16);
+    const scripts = (await reply.text()).match(/<script\b[^>]*>/g) ?? [];
+    expect(scripts.length).toBeGreaterThan(0);
+    for (const script of scripts) expect(script).toContain(`nonce="${nonce}"`);
+    nonces.add(nonce);
+  }
+  expect(nonces.size).toBe(3);
+});
+
+test("scripts that were put into a page do not run", async ({ page, problems }) => {
+  await page.goto("/");
+  const ran = await page.evaluate(() => {
+    const script = document.createElement("script");
+    script.textContent = "window.planted = true";
+    document.body.innerHTML += '<img src="data:," onerror="window.planted = true">';
+    document.body.append(script);
+    return new Promise((resolve) => setTimeout(() => resolve("planted" in window), 300));
+  });
+  // A script made by a trusted script is trusted ('strict-dynamic'); what the markup brings is not.
+  expect(problems.filter((problem) => problem.includes("script-src-attr")).length).toBeGreaterThan(0);
+  expect(ran).toBe(false);
+  problems.length = 0;
+});
+
+test("what production does not need is not there", async ({ request }) => {
+  for (const path of ["/.git/config", "/.env", "/package.json", "/server-status", "/_next/static/../../package.json"]) {
+    expect((await request.get(path)).status(), path).toBe(404);
+  }
+  expect([400, 404, 405, 501]).toContain((await request.fetch("/", { method: "TRACE" })).status());
+});
+
+test("the files that browsers load hold no source map and no secret's name", () => {
+  const folder = join(root, ".next/static");
+  const files = readdirSync(folder, { recursive: true, encoding: "utf8" });
+  expect(files.length).toBeGreaterThan(0);
+  expect(files.filter((file) => file.endsWith(".map"))).toEqual([]);
+  for (const file of files.filter((name) => name.endsWith(".js"))) {
+    const text = readFileSync(join(folder, file), "utf8");
+    expect(/DATABASE_URL|DATABASE_OWNER_URL|NEXTAUTH_SECRET|SMTP_URL|drizzle-orm/.exec(text)?.[0], file).toBeUndefined();
+    expect(text, file).not.toContain("sourceMappingURL=");
+  }
+});
+
+test("health tells alive from ready", async ({ request }) => {
+  expect(await (await request.get("/api/health")).json()).toEqual({ status: "live" });
+  expect(await (await request.get("/api/health/ready")).json()).toEqual({ status: "ready" });
+});
