@@ -34,7 +34,7 @@ export function keepFixedModes(A: Matrix, B: Matrix, blocks: readonly WantedPole
   const a = toFlat(A);
   const b = toFlat(B);
   const values = eigenvalues(A);
-  const { reached, distances } = analyseReach(a, b, n, m, values);
+  const { reached } = analyseReach(a, b, n, m, values);
   const kept = [...blocks];
   const used = new Set<number>();
   const fixed: Complex[] = [];
@@ -43,10 +43,7 @@ export function keepFixedModes(A: Matrix, B: Matrix, blocks: readonly WantedPole
     fixed.push(value);
     if (value.im < 0) return;
     const place = nearestBlock(blocks, value, used, a);
-    if (place < 0) {
-      const state = mainState(a, b, n, m, value);
-      throw new NumericalError("not-controllable", { pole: value, state, distance: distances[k] });
-    }
+    if (place < 0) throw new NumericalError("not-controllable", describeFixedMode(A, B, value));
     used.add(place);
     const { re, im } = blocks[place];
     const exact = modulus({ re: re - value.re, im: im - value.im }) <= 8 * n * Number.EPSILON * flatNorm(a);
@@ -68,10 +65,14 @@ function nearestBlock(blocks: readonly WantedPole[], value: Complex, used: Reado
   return nearest;
 }
 
-/** The state with the largest part, in balanced units, in the direction that no input reaches. */
-function mainState(a: Float64Array, b: Float64Array, n: number, m: number, pole: Complex): number {
-  const { re, im } = modeDistance(a, b, n, m, pole);
+/** A mode that no input moves: its pole, the state with the largest part of it in balanced units, and how far it is from moving. */
+export function describeFixedMode(A: Matrix, B: Matrix, pole: Complex): { pole: Complex; state: number; distance: number } {
+  const n = A.rows;
+  const m = B.columns;
+  const a = toFlat(A);
+  const b = toFlat(B);
   const none = new Float64Array(0);
+  const { relative, re, im } = modeDistance(a, b, n, m, pole);
   const { stateScale } = balanceSystem({ n, m, p: 0, a, b, c: none, d: none });
   let state = 0;
   let most = -1;
@@ -82,5 +83,5 @@ function mainState(a: Float64Array, b: Float64Array, n: number, m: number, pole:
       state = i;
     }
   }
-  return state;
+  return { pole, state, distance: relative };
 }
