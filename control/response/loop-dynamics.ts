@@ -1,0 +1,90 @@
+import { NumericalError } from "../errors";
+import { eigenvalues } from "../linalg/eigenvalues";
+import { largestEntry, toFlat } from "../linalg/flat";
+import { factorLu, type Lu, solveLu } from "../linalg/lu";
+import type { Complex } from "../plant/model";
+import { isStablePole } from "../poles/require-stable-poles";
+import { balanceDynamics } from "./balance-dynamics";
+import type { ClosedLoop } from "./close-loop";
+
+/** A closed loop in balanced coordinates, flat and row-major, with what every response of it needs. */
+export type LoopDynamics = {
+  readonly loop: ClosedLoop;
+  readonly period: number | null;
+  readonly order: number;
+  readonly signals: number;
+  readonly a: Float64Array;
+  readonly b: Float64Array;
+  readonly c: Float64Array;
+  readonly d: Float64Array;
+  readonly places: Int32Array;
+  readonly scale: Float64Array;
+  readonly poles: readonly Complex[];
+  /** Factors of A (sampled: A - I). */
+  readonly rest: Lu;
+};
+
+/** One experiment: a constant input v from t = 0 and a start, as the departure from the rest it goes to. */
+export type Drive = { readonly departure: Float64Array; readonly final: Float64Array };
+
+/**
+ * Prepares a closed loop for its responses and refuses one that does not settle.
+ *
+ * Shapes    the loop as closed; period in seconds, null for a continuous plant
+ * Throws    not-stabilising { pole }; not-finite; too-large; on-stability-boundary when it has no rest
+ * Accuracy  balancing is exact
+ */
+export function prepareLoop(loop: ClosedLoop, period: number | null): LoopDynamics {
+  const order = loop.A.rows;
+  const signals = loop.C.rows;
+  const poles = eigenvalues(loop.A);
+  const unstable = poles.find((pole) => !isStablePole(pole, period !== null));
+  if (unstable) throw new NumericalError("not-stabilising", { pole: unstable });
+  const { matrix, order: places, scale } = balanceDynamics(toFlat(loop.A), order);
+  const columns = loop.B.columns;
+  const b = new Float64Array(order * columns);
+  for (let k = 0; k < order; k++) for (let j = 0; j < columns; j++) b[k * columns + j] = loop.B.get(places[k], j) / scale[k];
+  const c = new Float64Array(signals * order);
+  for (let i = 0; i < signals; i++) for (let k = 0; k < order; k++) c[i * order + k] = loop.C.get(i, places[k]) * scale[k];
+  const shifted = matrix.slice();
+  if (period !== null) for (let k = 0; k < order; k++) shifted[k * order + k] -= 1;
+  const rest = factorLu(shifted, order);
+  if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: 0 });
+  return { loop, period, order, signals, a: matrix, b, c, d: toFlat(loop.D), places, scale, poles, rest };
+}
+
+/** Response to a constant input (column `input`, size `amplitude`) from rest. */
+export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: number): Drive {
+  const { order, signals, b, d, c } = dynamics;
+  const columns = dynamics.loop.B.columns;
+  const push = Float64Array.from({ length: order }, (_, k) => -b[k * columns + input] * amplitude);
+  const rest = restOf(dynamics, push);
+  const final = new Float64Array(signals);
+  for (let i = 0; i < signals; i++) {
+    let sum = 0;
+    for (let k = 0; k < order; k++) sum += c[i * order + k] * rest[k];
+    final[i] = sum + d[i * columns + input] * amplitude + 0;
+  }
+  return { departure: rest.map((entry) => 0 - entry), final };
+}
+
+/** Response to a start of the plant's state, without inputs. */
+export function startDrive(dynamics: LoopDynamics, x0: readonly number[]): Drive {
+  const start = dynamics.loop.startFrom(x0);
+  const departure = Float64Array.from(dynamics.places, (place, k) => start[place] / dynamics.scale[k]);
+  return { departure, final: new Float64Array(dynamics.signals) };
+}
+
+/** Solves A s = push (sampled: (A - I) s = push) with one step of refinement. */
+function restOf({ a, order, rest, period }: LoopDynamics, push: Float64Array): Float64Array {
+  if (largestEntry(push) === 0) return new Float64Array(order);
+  const s = solveLu(rest, push, 1);
+  const residual = push.slice();
+  for (let i = 0; i < order; i++) {
+    for (let k = 0; k < order; k++) residual[i] -= (period !== null && i === k ? a[i * order + k] - 1 : a[i * order + k]) * s[k];
+  }
+  const correction = solveLu(rest, residual, 1);
+  for (let k = 0; k < order; k++) s[k] += correction[k];
+  for (const entry of s) if (!Number.isFinite(entry)) throw new NumericalError("on-stability-boundary", { distance: 0 });
+  return s;
+}

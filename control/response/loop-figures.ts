@@ -1,0 +1,109 @@
+import type { StepFigures } from "../design/evidence";
+import { POINTS } from "./cell-basis";
+import type { Drive, LoopDynamics } from "./loop-dynamics";
+import type { Experiment } from "./loop-experiments";
+import { largestDeparture, NO_BAND, type SignalTrack, settledAt, startTrack } from "./signal-track";
+import { peakOf, SETTLING_BAND, signalFigures } from "./step-figures";
+import { tailBound } from "./tail-bound";
+import { continuousWalker, walkContinuous } from "./walk-continuous";
+import { BLOCK, sampledWalker, walkSampled } from "./walk-sampled";
+
+/** Way up and down from the operating point to an input's limits; null: no limit. */
+export type InputRoom = { readonly up: number | null; readonly down: number | null };
+
+export type LoopFigures = {
+  readonly steps: readonly Omit<StepFigures, "loop">[];
+  /** Longest settling found in any experiment, seconds; 0 when there is none. */
+  readonly longest: number;
+};
+
+/** Multiplications allowed for the figures of one loop, and what a walk may take whatever it costs. */
+const WORK = 3e8;
+const CELLS = { least: 300, most: 60_000 };
+const SAMPLES = { least: 2_000, most: 400_000 };
+
+type Walk = (drive: Drive, tracks: readonly SignalTrack[]) => void;
+
+/**
+ * Figures of every step and the longest settling time of one loop, over all t ≥ 0.
+ *
+ * Units     signals' units, seconds, percent
+ * Throws    on-stability-boundary
+ * Limits    about 3·10⁸ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is null
+ * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves
+ */
+export function loopFigures(dynamics: LoopDynamics, experiments: readonly Experiment[], room: readonly InputRoom[]): LoopFigures {
+  const { counts } = dynamics.loop;
+  const shown = counts.commanded + counts.outputs;
+  const firstInput = dynamics.signals - counts.inputs;
+  const watched = Array.from({ length: shown + counts.inputs }, (_, i) => (i < shown ? i : firstInput + i - shown));
+  const rows = rowsOf(dynamics, watched);
+  const walk = walkOf(dynamics, rows, experiments.length);
+  const steps: Omit<StepFigures, "loop">[] = [];
+  let longest = 0;
+  for (const { kind, source, drive } of experiments) {
+    const starts = startsOf(rows, dynamics.order, drive, watched);
+    const band = (row: number) =>
+      kind === "step" ? { width: SETTLING_BAND * Math.abs(drive.final[row]) } : { share: SETTLING_BAND };
+    const tracks = watched.map((row, i) => startTrack(drive.final[row], i < shown ? band(row) : NO_BAND, starts[i]));
+    walk(drive, tracks);
+    if (kind !== "step") {
+      for (const track of tracks.slice(0, shown)) longest = Math.max(longest, settlingOf(track));
+      continue;
+    }
+    const commanded = tracks.slice(0, counts.commanded).map((track, i) => signalFigures(track, i === source));
+    const outputs = tracks.slice(counts.commanded, shown).map((track) => signalFigures(track, true));
+    const effort = tracks.slice(shown).map((track, i) => effortOf(track, room[i]));
+    steps.push({ source, commanded, outputs, effort });
+    for (const { settling } of [commanded[source], ...outputs]) longest = Math.max(longest, settling ?? 0);
+  }
+  return { steps, longest };
+}
+
+/** When a signal of a free or disturbed motion stays within 2 % of its largest departure; 0 for one that hardly moves. */
+function settlingOf(track: SignalTrack): number {
+  return track.finished && largestDeparture(track) > 8 * track.noise ? settledAt(track) : 0;
+}
+
+function effortOf(track: SignalTrack, { up, down }: InputRoom): StepFigures["effort"][number] {
+  const { peak, peakAt } = peakOf(track);
+  const top = Math.max(track.high.value, track.final, 0);
+  const bottom = Math.max(-track.low.value, -track.final, 0);
+  const shares: number[] = [];
+  if (up !== null && up > 0) shares.push(top / up);
+  if (down !== null && down > 0) shares.push(bottom / down);
+  return { peak, at: peakAt, overLimit: shares.length > 0 ? Math.max(...shares) : null };
+}
+
+function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number): Walk {
+  const { a, order, period, poles } = dynamics;
+  const signals = order === 0 ? 0 : rows.length / order;
+  const tail = tailBound(a, order, rows, period !== null);
+  const allowed = (work: number, { least, most }: typeof CELLS) =>
+    Math.min(most, Math.max(least, Math.floor(WORK / (Math.max(1, experiments) * work))));
+  if (period !== null) {
+    const limit = allowed(signals * order + (order * order) / BLOCK, SAMPLES);
+    const walker = sampledWalker(a, order, rows, period, tail);
+    return (drive, tracks) => walkSampled(walker, drive.departure, tracks, limit);
+  }
+  const limit = allowed(signals * POINTS * (order + POINTS) + order * order, CELLS);
+  const fastest = poles.reduce((most, { re, im }) => Math.max(most, Math.sqrt(re * re + im * im)), 0);
+  const walker = continuousWalker(a, order, rows, fastest, tail);
+  return (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit);
+}
+
+function rowsOf({ c, order }: LoopDynamics, watched: readonly number[]): Float64Array {
+  const rows = new Float64Array(watched.length * order);
+  watched.forEach((row, i) => {
+    rows.set(c.subarray(row * order, (row + 1) * order), i * order);
+  });
+  return rows;
+}
+
+function startsOf(rows: Float64Array, order: number, { departure, final }: Drive, watched: readonly number[]): Float64Array {
+  return Float64Array.from(watched, (row, i) => {
+    let sum = 0;
+    for (let k = 0; k < order; k++) sum += rows[i * order + k] * departure[k];
+    return final[row] + sum;
+  });
+}

@@ -1,0 +1,133 @@
+import { type Extreme, firstReaching, largest, lastOutside, maximumAbove, smallest } from "./bernstein";
+
+/** A polynomial that stands for the signal over [from, from + length]. */
+type Stretch = { readonly b: Float64Array; readonly from: number; readonly length: number };
+
+/** The band around the final value whose last exit is wanted: so many units wide to each side, or a share of the largest departure. */
+export type Band = { readonly width: number } | { readonly share: number };
+
+export const NO_BAND: Band = { width: Number.POSITIVE_INFINITY };
+
+/** What is being found out about one signal along its response. */
+export type SignalTrack = {
+  readonly final: number;
+  readonly band: Band;
+  /** 1 or -1: the signal is to go up or down to its final value. */
+  readonly rising: 1 | -1;
+  high: Extreme;
+  low: Extreme;
+  reached10: number | null;
+  reached90: number | null;
+  /** Since the last stretch that was surely outside the band: it, and those that may have been. */
+  excursions: Stretch[];
+  /** Sampled: first moment after the last sample outside the band. */
+  exit: number | null;
+  /** Largest rounding error that may be in a value. */
+  noise: number;
+  /** What was sought is proved for all later times. */
+  finished: boolean;
+};
+
+/** Parts of the size of a signal below which a further departure cannot matter. */
+const NEGLIGIBLE = 1e-12;
+
+export function startTrack(final: number, band: Band, start: number): SignalTrack {
+  return {
+    final,
+    band,
+    rising: final < 0 ? -1 : 1,
+    high: { value: start, at: 0 },
+    low: { value: start, at: 0 },
+    reached10: null,
+    reached90: null,
+    excursions: [],
+    exit: null,
+    noise: 0,
+    finished: false,
+  };
+}
+
+export function sizeOf({ high, low, final }: SignalTrack): number {
+  return Math.max(Math.abs(high.value), Math.abs(low.value), Math.abs(final));
+}
+
+export function largestDeparture({ high, low, final }: SignalTrack): number {
+  return Math.max(high.value - final, final - low.value);
+}
+
+function bandOf(track: SignalTrack): number {
+  return "width" in track.band ? track.band.width : track.band.share * largestDeparture(track);
+}
+
+/** Takes in the polynomial piece b over [from, from + length]. */
+export function followPiece(track: SignalTrack, b: Float64Array, from: number, length: number): void {
+  const margin = Math.max(track.noise, 1e-14 * sizeOf(track));
+  const top = largest(b);
+  const bottom = smallest(b);
+  const higher = top > track.high.value + margin ? maximumAbove(b, track.high.value, margin) : null;
+  if (higher) track.high = { value: higher.value, at: from + higher.at * length };
+  const lower = bottom < track.low.value - margin ? maximumAbove(negative(b), -track.low.value, margin) : null;
+  if (lower) track.low = { value: -lower.value, at: from + lower.at * length };
+  if (track.reached90 === null) followRise(track, b, from, length);
+  const width = bandOf(track);
+  if (top <= track.final + width && bottom >= track.final - width) return;
+  const last = b.length - 1;
+  const surely = Math.abs(b[0] - track.final) > width || Math.abs(b[last] - track.final) > width;
+  if (surely) track.excursions = [];
+  track.excursions.push({ b, from, length });
+}
+
+function negative(b: Float64Array): Float64Array {
+  return b.map((entry) => -entry);
+}
+
+function followRise(track: SignalTrack, b: Float64Array, from: number, length: number): void {
+  const size = Math.abs(track.final);
+  const upward = track.rising > 0 ? b : negative(b);
+  if (track.reached10 === null) {
+    const at = firstReaching(upward, 0.1 * size);
+    if (at !== null) track.reached10 = from + at * length;
+  }
+  if (track.reached10 === null) return;
+  const at = firstReaching(upward, 0.9 * size);
+  if (at !== null) track.reached90 = from + at * length;
+}
+
+/** Takes in sample number `index` of a sampled loop; a sample outside the band leaves it at the next one. */
+export function followSample(track: SignalTrack, value: number, index: number, period: number): void {
+  const time = index * period;
+  const margin = Math.max(track.noise, 1e-14 * sizeOf(track));
+  if (value > track.high.value + margin) track.high = { value, at: time };
+  if (value < track.low.value - margin) track.low = { value, at: time };
+  const upward = value * track.rising;
+  const size = Math.abs(track.final);
+  if (track.reached10 === null && upward >= 0.1 * size) track.reached10 = time;
+  if (track.reached90 === null && upward >= 0.9 * size) track.reached90 = time;
+  if (Math.abs(value - track.final) > bandOf(track)) track.exit = (index + 1) * period;
+}
+
+/** When the signal enters its band for good; 0 when it never was outside. Right only for a finished track. */
+export function settledAt(track: SignalTrack): number {
+  const width = bandOf(track);
+  for (let k = track.excursions.length - 1; k >= 0; k--) {
+    const { b, from, length } = track.excursions[k];
+    const out = lastOutside(b, track.final - width, track.final + width);
+    if (out !== null) return from + out * length;
+  }
+  return track.exit ?? 0;
+}
+
+/** Marks every track finished that no departure within its bound of the final value can change; true when all are. */
+export function finishTracks(tracks: readonly SignalTrack[], gains: Float64Array, size: number): boolean {
+  let all = true;
+  for (let i = 0; i < tracks.length; i++) {
+    const track = tracks[i];
+    const bound = gains[i] * size;
+    const small = bound <= Math.max(NEGLIGIBLE * sizeOf(track), 4 * track.noise);
+    const above = small || track.high.value >= track.final + bound;
+    const below = small || track.low.value <= track.final - bound;
+    track.finished = above && below && (small || bound <= bandOf(track));
+    if (!track.finished) all = false;
+  }
+  return all;
+}
