@@ -23,6 +23,7 @@ export async function readJson(request: Request, limit = BODY_LIMIT): Promise<Js
   return { value: parseJson(bytes), bytes };
 }
 
+/** The bytes of a body, up to the limit; for those that are not JSON. */
 export async function readBytes(request: Request, limit: number): Promise<Uint8Array> {
   if (!request.body) throw new DomainError("unreadable", "The body is empty; JSON is expected.");
   const reader = request.body.getReader();

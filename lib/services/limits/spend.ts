@@ -1,13 +1,16 @@
 import "server-only";
+import { createHash } from "node:crypto";
 import { RateLimiterPostgres, RateLimiterRes } from "rate-limiter-flexible";
 import { pool } from "@/db/client";
 import { DomainError } from "@/lib/errors";
-import type { Context } from "../context";
+import type { Context, Visitor } from "../context";
 
 /** What a request costs: `solve` runs the core. */
 export type Cost = "read" | "write" | "solve";
 
 const SECONDS = 60;
+/** An office behind one address shares this; guessing passwords has narrower limits of its own. */
+const VISITS_PER_MINUTE = 60;
 
 /** Requests a minute, for one person and for a whole team. */
 const PER_MINUTE: Readonly<Record<Cost, { readonly person: number; readonly team: number }>> = {
@@ -22,15 +25,18 @@ const PER_MINUTE: Readonly<Record<Cost, { readonly person: number; readonly team
  */
 export async function spend({ teamId, userId }: Pick<Context, "teamId" | "userId">, cost: Cost): Promise<void> {
   const { person, team } = PER_MINUTE[cost];
-  await Promise.all([
-    take(`${cost}:person`, person, `${teamId}:${userId}`, "you"),
-    take(`${cost}:team`, team, teamId, "your team"),
-  ]);
+  await Promise.all([take(`${cost}:person`, person, userId, "you"), take(`${cost}:team`, team, teamId, "your team")]);
 }
 
-/** For routes that anybody may call: all callers together, since a network address is no person. */
-export async function spendOfEverybody(name: string, perMinute: number): Promise<void> {
-  await take(`${name}:everybody`, perMinute, "all", "all callers");
+/** For somebody who need not belong to a team. */
+export async function spendAsPerson({ userId }: Pick<Context, "userId">, cost: Cost): Promise<void> {
+  await take(`${cost}:person`, PER_MINUTE[cost].person, userId, "you");
+}
+
+/** For somebody nobody knows yet, by network address, which is stored only as a hash. */
+export async function spendAsVisitor({ address }: Pick<Visitor, "address">): Promise<void> {
+  const key = createHash("sha256").update(address).digest("base64url");
+  await take("visitor", VISITS_PER_MINUTE, key, "your network address");
 }
 
 /** By pool, because a limiter keeps the one it was made with. */
