@@ -39,11 +39,10 @@ export function balanceSystem(system: FlatSystem): BalancedSystem {
   for (let i = 0; i < a.length; i++) a[i] *= timeScale;
   for (let i = 0; i < b.length; i++) b[i] *= timeScale;
   const stateScale = new Float64Array(n).fill(1);
-  for (let round = 0; round < MOST_ROUNDS; round++) {
-    const moved = balanceStates(balanced, stateScale);
+  for (let round = 0, moved = true; moved && round < MOST_ROUNDS; round++) {
     sizeInputs(balanced, largestEntry(a) || 1);
     sizeOutputs(balanced, largestEntry(a) || 1);
-    if (!moved) break;
+    moved = balanceStates(balanced, stateScale);
   }
   return { ...balanced, stateScale, timeScale };
 }

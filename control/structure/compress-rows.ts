@@ -1,4 +1,5 @@
-import { fromFlat } from "../linalg/flat";
+import { fromFlat, largestEntry } from "../linalg/flat";
+import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { singularValues } from "../linalg/singular-values";
 import { type Reflection, reflectionOf, reflectRows } from "./reflections";
 
@@ -10,6 +11,8 @@ export type RowCompression = {
   readonly reflections: readonly Reflection[];
 };
 
+const FLOOR = powerOfTwo(-500);
+
 /**
  * Orthogonal compression of a block onto its first rows, with its rank decided on singular values.
  *
@@ -20,7 +23,9 @@ export type RowCompression = {
 export function compressRows(x: Float64Array, rows: number, columns: number, tolerance: number, first: number): RowCompression {
   const steps = Math.min(rows, columns);
   if (steps === 0) return { rank: 0, singularValues: [], reflections: [] };
-  const r = x.slice();
+  const factor = powerOfTwo(-exponentOf(largestEntry(x) || 1));
+  // The block now has the size of 1; squares of anything below the floor would underflow.
+  const r = x.map((entry) => (Math.abs(entry * factor) < FLOOR ? 0 : entry * factor));
   const found: (Reflection | null)[] = [];
   for (let step = 0; step < steps; step++) {
     swapColumns(r, columns, step, largestColumn(r, rows, columns, step));
@@ -31,7 +36,7 @@ export function compressRows(x: Float64Array, rows: number, columns: number, tol
     for (let i = step + 1; i < rows; i++) r[i * columns + step] = 0;
     found.push(reflection);
   }
-  const values = Array.from(singularValues(fromFlat(r.subarray(0, steps * columns), steps, columns)));
+  const values = singularValues(fromFlat(r, steps, columns)).map((value) => value / factor);
   const rank = values.filter((value) => value > tolerance).length;
   const reflections = found.slice(0, rank).flatMap((one) => (one ? [{ ...one, first: one.first + first }] : []));
   return { rank, singularValues: values, reflections };

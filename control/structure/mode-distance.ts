@@ -14,6 +14,8 @@ export type ModeDistance = {
 };
 
 const MOST_STEPS = 100;
+/** ε⁴ */
+const NEGLIGIBLE = Number.EPSILON * Number.EPSILON * Number.EPSILON * Number.EPSILON;
 
 /**
  * How far a pair is from one in which no input reaches the mode λ (Popov, Belevitch and Hautus).
@@ -59,7 +61,12 @@ function eliminate(re: Float64Array[], im: Float64Array[], k: number): void {
   const x = re[k];
   const y = im[k];
   const length = pythagoras(flatNorm(x.subarray(k)), flatNorm(y.subarray(k)));
-  if (length === 0) return;
+  // The whole matrix has the size of 1: squares of anything as small as this would underflow, and it counts as zero.
+  if (length < NEGLIGIBLE) {
+    x.fill(0, k);
+    y.fill(0, k);
+    return;
+  }
   const size = pythagoras(x[k], y[k]);
   const phaseRe = size === 0 ? 1 : x[k] / size;
   const phaseIm = size === 0 ? 0 : y[k] / size;

@@ -1,4 +1,5 @@
 import { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
 import { solveLinear } from "../linalg/solve-linear";
 
 /**
@@ -7,7 +8,7 @@ import { solveLinear } from "../linalg/solve-linear";
  *
  * Shapes    G n×n → n×n
  * Units     none
- * Throws    shape-mismatch; not-finite; singular when G has no inverse within rounding
+ * Throws    shape-mismatch; not-finite; singular when G has no inverse within rounding; too-large
  * Accuracy  about n ε times the condition of G after scaling
  * Source    Bristol, IEEE Trans. Automatic Control 11 (1966) 133-134
  */
@@ -15,6 +16,8 @@ export function relativeGainArray(G: Matrix): Matrix {
   const n = G.rows;
   const { X: inverse, reciprocalCondition } = solveLinear(G, Matrix.eye(n));
   const array = Matrix.mul(G, inverse.transpose());
+  if (!array.to1DArray().every(Number.isFinite))
+    throw new NumericalError("too-large", { what: "relative gain", limit: Number.MAX_VALUE });
   // What rounding alone can leave in the place of a zero is a zero.
   const lost = (4 * n * Number.EPSILON) / reciprocalCondition;
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) if (Math.abs(array.get(i, j)) <= lost) array.set(i, j, 0);
