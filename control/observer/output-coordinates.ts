@@ -3,7 +3,7 @@ import { toFlat } from "../linalg/flat";
 import { orthonormalBasis } from "../linalg/orthogonal";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { solveLinear } from "../linalg/solve-linear";
-import { balanceSystem } from "../structure/balance-system";
+import { evenStateUnits } from "../poles/state-units";
 
 /** x = Seen ξ₁ + Hidden ξ₂, with ξ₁ = Read (y - D u) known from the outputs and ξ₂ = Rest x to be estimated. */
 export type OutputCoordinates = {
@@ -28,8 +28,8 @@ export type OutputCoordinates = {
 export function outputCoordinates(A: Matrix, C: Matrix): OutputCoordinates {
   const n = A.rows;
   const p = C.rows;
-  const none = new Float64Array(0);
-  const { stateScale } = balanceSystem({ n, m: 0, p, a: toFlat(A), b: none, c: toFlat(C), d: none });
+  // Units of the dual plant A', C' are the reciprocals of the states' own.
+  const stateScale = evenStateUnits(toFlat(A.transpose()), toFlat(C.transpose()), n, p).map((unit) => 1 / unit);
   const Cs = C.clone();
   for (let i = 0; i < n; i++) Cs.mulColumn(i, stateScale[i]);
   const output = Array.from({ length: p }, (_, k) => reciprocalPower(Cs.getRow(k)));

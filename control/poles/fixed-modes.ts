@@ -5,9 +5,9 @@ import { eigenvalues } from "../linalg/eigenvalues";
 import { pythagoras, toFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import type { Complex } from "../plant/model";
-import { balanceSystem } from "../structure/balance-system";
 import { modeDistance } from "../structure/mode-distance";
 import { analyseReach } from "../structure/reach-analysis";
+import { evenStateUnits } from "./state-units";
 import type { WantedPole } from "./wanted-poles";
 
 export type KeptModes = {
@@ -24,7 +24,7 @@ export type KeptModes = {
  * Shapes    A n×n, B n×m, blocks covering n poles
  * Units     those of the plant's plane
  * Throws    not-controllable { pole, state, distance } with the mode, the state that has most of it, and how far
- *           [A - pole I, B] is from losing rank over its norm; no-convergence
+ *           [A - pole I, B] is from losing rank, over the norm of [A B]; no-convergence
  * Accuracy  a mode counts as not moved when that holds for a pair within 4 (n + m) ε of the given one
  * Source    Hautus 1969; Rosenbrock 1970: decoupling zeros stay under every feedback
  */
@@ -71,17 +71,16 @@ export function describeFixedMode(A: Matrix, B: Matrix, pole: Complex): { pole: 
   const m = B.columns;
   const a = toFlat(A);
   const b = toFlat(B);
-  const none = new Float64Array(0);
-  const { relative, re, im } = modeDistance(a, b, n, m, pole);
-  const { stateScale } = balanceSystem({ n, m, p: 0, a, b, c: none, d: none });
+  const { relative, normRatio, re, im } = modeDistance(a, b, n, m, pole);
+  const units = evenStateUnits(a, b, n, m);
   let state = 0;
   let most = -1;
   for (let i = 0; i < n; i++) {
-    const part = pythagoras(re[i], im[i]) * stateScale[i];
+    const part = pythagoras(re[i], im[i]) * units[i];
     if (part > most) {
       most = part;
       state = i;
     }
   }
-  return { pole, state, distance: relative };
+  return { pole, state, distance: relative * normRatio };
 }

@@ -1,13 +1,12 @@
 import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { fromFlat, toFlat } from "../linalg/flat";
-import { flatNorm } from "../linalg/norms";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { singularValues } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
-import { type Admissible, admissibleVectors, type InputRange, inputRange } from "./admissible-vectors";
+import { admissibleVectors, type InputRange, inputRange } from "./admissible-vectors";
 import { dyadicGain, scaledSingleInputGain } from "./dyadic-gain";
-import { columnsAsMatrix, type Frame } from "./eigenvector-frame";
+import type { Frame } from "./eigenvector-frame";
 import { keepFixedModes } from "./fixed-modes";
 import { gainFromVectors } from "./gain-from-vectors";
 import { matchPoles } from "./match-poles";
@@ -98,12 +97,12 @@ function freePlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[], allo
   }
   if (B.columns === 1) {
     const row = scaledSingleInputGain(A, B, blocks);
-    const X = excess ? null : vectorsOf(plant, blocks);
-    if (row) return accept([candidate({ A, B, K: fromFlat(row, 1, A.rows), blocks, X, madeIn: null }, SINGLE_INPUT)]);
+    const vectors = excess ? null : onlyVectors(A, B, blocks);
+    if (row) return accept([candidate({ A, B, K: fromFlat(row, 1, A.rows), blocks, vectors, wide: true }, SINGLE_INPUT)]);
   }
   if (excess) {
     const K = dyadicGain(A, B, blocks);
-    return accept(K ? [candidate({ A, B, K, blocks, X: null, madeIn: null }, ONE_DIRECTION)] : []);
+    return accept(K ? [candidate({ A, B, K, blocks, vectors: null, wide: true }, ONE_DIRECTION)] : []);
   }
   return robustPlacement(A, B, blocks);
 }
@@ -133,7 +132,7 @@ function robustCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[], ba
   if (!frame) return null;
   const K = gainOrNull(plant, range, frame, scaledBlocks);
   const method = balanced ? "eigenvectors of least condition, balanced units" : "eigenvectors of least condition";
-  return K && candidate({ A, B, K, blocks, X: inGivenUnits(frame, plant, blocks), madeIn: plant }, method);
+  return K && candidate({ A, B, K, blocks, vectors: { frame, plant }, wide: false }, method);
 }
 
 function gainOrNull(plant: ScaledPlant, range: InputRange, frame: Frame, blocks: readonly WantedPole[]): Matrix | null {
@@ -149,24 +148,15 @@ function candidate(placed: Placed, method: string): Candidate {
   return { K: placed.K, method, check: verifyPlacement(placed) };
 }
 
-/** Eigenvectors of a plant whose inputs leave no choice. */
-function vectorsOf(plant: ScaledPlant, blocks: readonly WantedPole[]): Matrix | null {
+/** Eigenvectors of a loop with one input, which leaves no choice; null when they are dependent to working accuracy. */
+function onlyVectors(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Placed["vectors"] {
+  const plant = scaled(A, B, blocks, true);
   const range = inputRange(plant);
-  const spaces: Admissible[] = inTime(blocks, plant).map((block) => admissibleVectors(plant, range, block));
-  const frame = robustEigenvectors(spaces, plant.n);
-  return frame && inGivenUnits(frame, plant, blocks);
-}
-
-/** D X with each eigenvector again of unit length. */
-function inGivenUnits(frame: Frame, { state }: ScaledPlant, blocks: readonly WantedPole[]): Matrix {
-  const X = columnsAsMatrix(frame);
-  for (let i = 0; i < X.rows; i++) X.mulRow(i, state[i]);
-  for (const { column, width } of blocks) {
-    const both = width === 1 ? X.getColumn(column) : [...X.getColumn(column), ...X.getColumn(column + 1)];
-    const length = flatNorm(both) / Math.sqrt(width);
-    for (let k = 0; k < width; k++) X.mulColumn(column + k, 1 / length);
-  }
-  return X;
+  const frame = robustEigenvectors(
+    inTime(blocks, plant).map((block) => admissibleVectors(plant, range, block)),
+    plant.n,
+  );
+  return frame && { frame, plant };
 }
 
 function scaled(A: Matrix, B: Matrix, blocks: readonly WantedPole[], balanced: boolean): ScaledPlant {

@@ -1,6 +1,6 @@
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
-import { balanceSystem } from "../structure/balance-system";
+import { evenStateUnits } from "./state-units";
 
 /** A plant in exact powers of two of its units: a = D⁻¹ A D · time, b = D⁻¹ B diag(input), so that K = diag(input) Ks D⁻¹ / time. */
 export type ScaledPlant = {
@@ -20,7 +20,7 @@ export type ScaledPlant = {
  * Units     any; time and inputs come out with entries of size one
  * Throws    nothing: finite entries are the caller's duty
  * Accuracy  exact but for underflow of entries negligible beside others
- * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304
+ * Source    Curtis & Reid, J. Inst. Maths Applics 10 (1972) 118-124
  */
 export function scalePlant(
   A: Float64Array,
@@ -30,8 +30,7 @@ export function scalePlant(
   fastest: number,
   balanced: boolean,
 ): ScaledPlant {
-  const none = new Float64Array(0);
-  const state = balanced ? balanceSystem({ n, m, p: 0, a: A, b: B, c: none, d: none }).stateScale : new Float64Array(n).fill(1);
+  const state = balanced ? evenStateUnits(A, B, n, m) : new Float64Array(n).fill(1);
   const a = new Float64Array(n * n);
   const b = new Float64Array(n * m);
   const input = new Float64Array(m);

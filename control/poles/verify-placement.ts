@@ -9,6 +9,7 @@ import { powerOfTwo } from "../linalg/power-of-two";
 import { singularValues } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
 import { modeDistance } from "../structure/mode-distance";
+import { columnsAsMatrix, type Frame } from "./eigenvector-frame";
 import { residualColumns } from "./gain-from-vectors";
 import { matchPoles } from "./match-poles";
 import type { ScaledPlant } from "./scale-plant";
@@ -33,13 +34,14 @@ export type Placed = {
   readonly B: Matrix;
   readonly K: Matrix;
   readonly blocks: readonly WantedPole[];
-  /** Unit eigenvectors in the real form of a frame; null where no full set exists. */
-  readonly X: Matrix | null;
-  /** Units in which the gain was solved for; null when it was found with more digits than K keeps. */
-  readonly madeIn: ScaledPlant | null;
+  /** Eigenvectors that the loop should have; null where no full set exists. */
+  readonly vectors: { readonly frame: Frame; readonly plant: ScaledPlant } | null;
+  /** The gain was found with more digits than K keeps, not solved for with those vectors. */
+  readonly wide: boolean;
 };
 
-type Loop = Pick<Placed, "A" | "B" | "K" | "madeIn"> & { readonly closed: Matrix; readonly n: number };
+type Loop = { readonly B: Matrix; readonly K: Matrix; readonly closed: Matrix; readonly n: number };
+type Vectors = { readonly frame: Frame; readonly plant: ScaledPlant; readonly X: Matrix; readonly inverse: Float64Array };
 
 /** Roundings counted per entry of a bound. */
 const SLACK = 16;
@@ -47,23 +49,23 @@ const SLACK = 16;
 /**
  * Checks a gain against the poles it was made for: eigenvalues of A - B K, residual, conditioning, sensitivity.
  *
- * Shapes    A n×n, B n×m, K m×n, X n×n
+ * Shapes    A n×n, B n×m, K m×n, frame n×n
  * Units     those of the plant as given
  * Throws    no-convergence; not-finite
  * Accuracy  bounds are first order in ε with the factor 16 n; without eigenvectors they grow like the root a defective pole takes
  * Source    Wilkinson, The Algebraic Eigenvalue Problem, 1965, chapter 2
  */
-export function verifyPlacement({ A, B, K, blocks, X, madeIn }: Placed): PlacementCheck {
-  const loop = { A, B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows, madeIn };
+export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): PlacementCheck {
+  const loop = { B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows };
   const wanted = polesOf(blocks);
   const achieved = matchPoles(wanted, eigenvalues(loop.closed));
   const errors = wanted.map((pole, k) => modulus({ re: pole.re - achieved[k].re, im: pole.im - achieved[k].im }));
   const floor = frobeniusNorm(loop.closed) || 1;
   const sizes = wanted.map((pole) => modulus(pole) || floor);
-  const duals = X && inverseOf(X);
-  const { bounds, shifts } = X && duals ? simpleBounds(loop, blocks, toFlat(X), duals) : defectiveBounds(loop, blocks);
-  const { residual, bound } = X && duals ? vectorResidual(loop, X, blocks) : distanceResidual(loop, blocks);
-  const values = X && duals ? singularValues(X) : [1, 0];
+  const set = vectors && inGivenUnits(vectors.frame, vectors.plant, blocks);
+  const { bounds, shifts } = set ? simpleBounds(loop, blocks, set, wide) : defectiveBounds(loop, blocks);
+  const { residual, bound } = set ? vectorResidual(set, K, blocks) : distanceResidual(loop, blocks);
+  const values = set ? singularValues(set.X) : [1, 0];
   const condition = values[0] / values[loop.n - 1];
   return {
     achieved,
@@ -77,34 +79,42 @@ export function verifyPlacement({ A, B, K, blocks, X, madeIn }: Placed): Placeme
   };
 }
 
-function inverseOf(X: Matrix): Float64Array | null {
+/** The eigenvectors in the plant's units, each again of unit length, with their inverse; null when they are dependent. */
+function inGivenUnits(frame: Frame, plant: ScaledPlant, blocks: readonly WantedPole[]): Vectors | null {
+  const X = columnsAsMatrix(frame);
+  for (let i = 0; i < X.rows; i++) X.mulRow(i, plant.state[i]);
+  for (const { column, width } of blocks) {
+    const both = width === 1 ? X.getColumn(column) : [...X.getColumn(column), ...X.getColumn(column + 1)];
+    const length = flatNorm(both) / Math.sqrt(width);
+    for (let k = 0; k < width; k++) X.mulColumn(column + k, 1 / length);
+  }
   const factors = factorLu(toFlat(X), X.rows);
   if (factors.zeroPivot >= 0) return null;
   const inverse = solveLu(factors, flatIdentity(X.rows), X.rows);
-  return inverse.every(Number.isFinite) ? inverse : null;
+  return inverse.every(Number.isFinite) ? { frame, plant, X, inverse } : null;
 }
 
 /**
  * Per pole: its condition times rounding of the loop, in the units its eigenvalues are computed in and in those the gain
  * was solved for in, and |y|'|B||K||x|.
  */
-function simpleBounds({ B, K, closed, n, madeIn }: Loop, blocks: readonly WantedPole[], x: Float64Array, y: Float64Array) {
+function simpleBounds({ B, K, closed, n }: Loop, blocks: readonly WantedPole[], { X, inverse, plant }: Vectors, wide: boolean) {
   const { matrix, order, scale: ordered, shift } = balance(toFlat(closed), n);
   const norm = flatNorm(matrix) * powerOfTwo(-shift);
   const scale = new Float64Array(n);
   order.forEach((i, place) => {
     scale[i] = ordered[place];
   });
-  const columns = flatTranspose(x, n, n);
+  const columns = flatTranspose(toFlat(X), n, n);
   const absB = toFlat(B).map(Math.abs);
   const absK = toFlat(K).map(Math.abs);
   const bounds: number[] = [];
   const shifts: number[] = [];
   for (const { column, width } of blocks) {
     const right = modulusOf(columns, column, width, n);
-    const left = modulusOf(y, column, width, n);
+    const left = modulusOf(inverse, column, width, n);
     const ofEigenvalue = norm * productOfNorms(right, left, (i) => scale[i]);
-    const ofGain = madeIn ? sizeIn(madeIn, K) * productOfNorms(right, left, (i) => madeIn.state[i]) : 0;
+    const ofGain = wide ? 0 : sizeIn(plant, K) * productOfNorms(right, left, (i) => plant.state[i]);
     const effort = flatProduct(absK, right, B.columns, n, 1);
     const moved = flatProduct(flatProduct(left, absB, 1, n, B.columns), effort, 1, B.columns, 1)[0];
     for (let k = 0; k < width; k++) {
@@ -121,9 +131,13 @@ function productOfNorms(right: Float64Array, left: Float64Array, unit: (i: numbe
 }
 
 /** |A| + |B| |K| in scaled states and inputs. */
-function sizeIn({ n, a, b, state, input, time }: ScaledPlant, K: Matrix): number {
-  const gain = toFlat(K).map((entry, at) => (entry * state[at % n]) / input[Math.floor(at / n)]);
-  return flatNorm(a) / time + flatNorm(b) * flatNorm(gain);
+function sizeIn(plant: ScaledPlant, K: Matrix): number {
+  return (flatNorm(plant.a) + flatNorm(plant.b) * flatNorm(scaledGain(plant, K))) / plant.time;
+}
+
+/** K for scaled states, inputs and time. */
+function scaledGain({ n, state, input, time }: ScaledPlant, K: Matrix): Float64Array {
+  return toFlat(K).map((entry, at) => ((entry * state[at % n]) / input[Math.floor(at / n)]) * time);
 }
 
 /** |x| of one real vector, or of (u + i v) / √2 for the two rows of a pair. */
@@ -160,10 +174,21 @@ function rootOf(x: number, k: number): number {
   return high;
 }
 
-function vectorResidual({ A, B, K, closed, n }: Loop, X: Matrix, blocks: readonly WantedPole[]) {
-  const size = (frobeniusNorm(A) + frobeniusNorm(B) * frobeniusNorm(K)) * frobeniusNorm(X);
-  const left = flatNorm(residualColumns(toFlat(closed), toFlat(X), blocks, n));
-  return { residual: size === 0 ? 0 : left / size, bound: SLACK * n * Number.EPSILON };
+/** Of (A - B K) X = X Λ in the units the vectors were found in. */
+function vectorResidual({ frame, plant }: Vectors, K: Matrix, blocks: readonly WantedPole[]) {
+  const { n, m, a, b, time } = plant;
+  const gain = scaledGain(plant, K);
+  const effect = flatProduct(b, gain, n, m, n);
+  const scaled = blocks.map((block) => ({ ...block, re: block.re * time, im: block.im * time }));
+  const x = flatTranspose(frame.columns, n, n);
+  const left = residualColumns(
+    a.map((entry, at) => entry - effect[at]),
+    x,
+    scaled,
+    n,
+  );
+  const size = (flatNorm(a) + flatNorm(b) * flatNorm(gain)) * flatNorm(x);
+  return { residual: size === 0 ? 0 : flatNorm(left) / size, bound: SLACK * n * Number.EPSILON };
 }
 
 /** Largest distance, relative, from A - B K to a matrix that has one of the poles exactly. */
