@@ -7,6 +7,7 @@ import { fontVariables } from "./fonts";
 import "./globals.css";
 import "./print.css";
 import "../components/matrix/weave.css";
+import "../components/plots/plots.css";
 
 export const metadata: Metadata = {
   title: { default: "Gainwright", template: "%s · Gainwright" },
