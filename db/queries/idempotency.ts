@@ -58,3 +58,8 @@ export async function dropExpiredIdempotencyKeys(
 export async function waitAtMost(db: Db, milliseconds: number): Promise<void> {
   await db.execute(sql`select set_config('lock_timeout', ${String(milliseconds)}, true)`);
 }
+
+/** How long this transaction may stay open without a statement, while the core computes for it. */
+export async function stayOpenFor(db: Db, milliseconds: number): Promise<void> {
+  await db.execute(sql`select set_config('idle_in_transaction_session_timeout', ${String(milliseconds)}, true)`);
+}

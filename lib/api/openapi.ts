@@ -16,6 +16,10 @@ export type RouteCatalogue = Readonly<Record<string, () => Promise<RouteModule>>
 
 export type ApiDescription = ReturnType<OpenApiGeneratorV31["generateDocument"]>;
 
+/** The description's own route, which describes itself like any other. */
+export const DESCRIPTION = { summary: "Read this description", reply: z.looseObject({ openapi: z.string() }) } as const;
+const DESCRIPTION_PATH = "/api/v1/openapi.json";
+
 /** The whole API in OpenAPI 3.1, made from the schemas that requests and replies are parsed with. */
 export async function describeApi(catalogue: RouteCatalogue): Promise<ApiDescription> {
   nameSchemas();
@@ -34,12 +38,23 @@ export async function describeApi(catalogue: RouteCatalogue): Promise<ApiDescrip
       if (declared) registry.registerPath(operationOf(path, method, declared));
     }
   }
-  return new OpenApiGeneratorV31(registry.definitions, { sortComponents: "alphabetically" }).generateDocument({
-    openapi: "3.1.0",
-    info: { title: "Gainwright", version: "1", description: INTRODUCTION },
-    servers: [{ url: "/" }],
-    security: [{ accessToken: [] }, { session: [] }],
-  });
+  registry.registerPath(operationOf(DESCRIPTION_PATH, "GET", { declaration: DESCRIPTION, access: "public" }));
+  const generator = new OpenApiGeneratorV31(registry.definitions, { sortComponents: "alphabetically" });
+  return withPlainPatterns(
+    generator.generateDocument({
+      openapi: "3.1.0",
+      info: { title: "Gainwright", version: "1", description: INTRODUCTION },
+      servers: [{ url: "/" }],
+      security: [{ accessToken: [] }, { session: [] }],
+    }),
+  );
+}
+
+/** The generator leaves the end of `/pattern/u` in place; JSON Schema patterns are Unicode anyway. */
+function withPlainPatterns(description: ApiDescription): ApiDescription {
+  const plain = (key: string, value: unknown) =>
+    key === "pattern" && typeof value === "string" ? value.replace(/\/u$/, "") : value;
+  return JSON.parse(JSON.stringify(description, plain));
 }
 
 const INTRODUCTION = [
@@ -49,7 +64,11 @@ const INTRODUCTION = [
   "Changes carry the ETag of what they change in `If-Match`; creates carry an `Idempotency-Key`, so that they can be repeated safely.",
 ].join("\n\n");
 
-function operationOf(path: string, method: Method, { declaration, access }: DeclaredRoute): RouteConfig {
+function operationOf(
+  path: string,
+  method: Method,
+  { declaration, access }: Pick<DeclaredRoute, "declaration" | "access">,
+): RouteConfig {
   const { summary, params, query, body } = declaration;
   return {
     method: LOWER[method],
@@ -58,6 +77,7 @@ function operationOf(path: string, method: Method, { declaration, access }: Decl
     summary,
     tags: [path.split("/")[3] ?? ""],
     ...(access === "public" && { security: [] }),
+    ...(access === "person" && { security: [{ session: [] }] }),
     request: {
       ...(params && { params: asObject(params) }),
       ...(query && { query: asObject(query) }),
@@ -104,7 +124,7 @@ function refusals(
   access: DeclaredRoute["access"],
 ): RouteConfig["responses"] {
   const statuses = new Set([400, 429, 500, 503]);
-  if (access === "team") statuses.add(401);
+  if (access !== "public") statuses.add(401);
   if (right || ifMatch || idempotent) statuses.add(403);
   if (params) statuses.add(404);
   if (body || query || idempotent) statuses.add(422);

@@ -1,3 +1,4 @@
+import { zodToOpenAPIRegistry } from "@asteasolutions/zod-to-openapi";
 import { z } from "zod";
 import * as comparison from "@/lib/schemas/comparison";
 import * as design from "@/lib/schemas/design";
@@ -14,11 +15,12 @@ let named = false;
 /**
  * Gives every exported object and alternative the name it has in the sources, so that the API description refers to it
  * instead of repeating it. Single values stay inline: a reference to "a finite number" tells nobody anything.
+ * Into the generator's own registry, since its other way of naming makes a new schema, which nothing refers to.
  */
 export function nameSchemas(): void {
   if (named) return;
   named = true;
-  for (const [id, schema] of MODULES.flatMap((module) => Object.entries(module))) {
-    if (schema instanceof z.ZodObject || schema instanceof z.ZodUnion) z.globalRegistry.add(schema, { id });
+  for (const [refId, schema] of MODULES.flatMap((module) => Object.entries(module))) {
+    if (schema instanceof z.ZodObject || schema instanceof z.ZodUnion) zodToOpenAPIRegistry.add(schema, { _internal: { refId } });
   }
 }

@@ -1,11 +1,12 @@
 import "server-only";
-import { type Db, inOneTransaction, inTransaction } from "@/db/client";
+import { type Db, inOneTransaction } from "@/db/client";
 import {
   claimIdempotencyKey,
   dropExpiredIdempotencyKeys,
   findIdempotencyKey,
   type IdempotencyKey,
   saveIdempotentReply,
+  stayOpenFor,
   waitAtMost,
 } from "@/db/queries/idempotency";
 import { sqlState } from "@/db/with-retries";
@@ -17,6 +18,8 @@ import { StoredReply } from "./stored-reply";
 export type Once = { readonly route: string; readonly key: string; readonly fingerprint: string };
 
 const PATIENCE_MS = 3_000;
+/** Above what a computation may take, waiting for its thread included. */
+const COMPUTING_MS = 60_000;
 const RETRY_SECONDS = 2;
 const LOCK_NOT_AVAILABLE = "55P03";
 
@@ -36,15 +39,11 @@ export async function runOnce(ctx: Context, once: Once, work: () => Promise<Stor
       if (earlier) return earlier;
       throw stillRunning();
     }
+    await stayOpenFor(tx, COMPUTING_MS);
     const reply = await work();
     await saveIdempotentReply(tx, key, reply.status, reply);
     return reply;
   });
-}
-
-/** The reply of an earlier time, so that costly preparations are not made for nothing. */
-export async function recallReply(ctx: Context, once: Once): Promise<StoredReply | undefined> {
-  return inTransaction(ctx, (tx) => earlierReply(tx, keyOf(ctx, once), once.fingerprint));
 }
 
 function keyOf({ teamId, userId }: Context, { route, key }: Once): IdempotencyKey {
