@@ -36,7 +36,8 @@ export type Checked<D extends Declaration> = {
   readonly signal: AbortSignal;
 };
 export type TeamInput<D extends Declaration> = Checked<D> & { readonly ctx: Context };
-export type PersonInput<D extends Declaration> = Checked<D> & { readonly person: Person };
+/** `team`: where the session works now, null for somebody without a team. */
+export type PersonInput<D extends Declaration> = Checked<D> & { readonly person: Person; readonly team: Context | null };
 export type PublicInput<D extends Declaration> = Checked<D> & { readonly visitor: Visitor };
 
 /** The core's documents are read-only all the way down; a reply may be. */
@@ -51,4 +52,4 @@ export type RouteResult<D extends Declaration> = D["reply"] extends z.ZodType
   ? { readonly body: ReadOnly<z.input<D["reply"]>>; readonly version?: number; readonly location?: string }
   : D["reply"] extends FileReply
     ? { readonly file: FileResult }
-    : undefined;
+    : null;

@@ -3,7 +3,8 @@ import { env } from "@/lib/env";
 import { DomainError } from "@/lib/errors";
 import { inTurn } from "@/lib/jobs/in-turn";
 import { allow } from "@/lib/permissions/allow";
-import type { Context, Person } from "@/lib/services/context";
+import type { LiveSession } from "@/lib/services/account/read-session";
+import type { Context } from "@/lib/services/context";
 import { runOnce } from "@/lib/services/idempotency/run-once";
 import { type Cost, spend, spendAsPerson, spendAsVisitor } from "@/lib/services/limits/spend";
 import { answer, type RequestRecord } from "./answer";
@@ -46,9 +47,9 @@ export function personRoute<const D extends Declaration & { readonly idempotent?
 ): DeclaredRoute {
   const serve = (request: Request, context: RouteContext) =>
     answer(request, async (record) => {
-      const person = await admitPerson(declaration, request, record);
+      const session = await admitPerson(declaration, request, record);
       const { checked } = await readInput(declaration, request, context);
-      return sendResult(declaration, await handler({ ...checked, person }), request);
+      return sendResult(declaration, await handler({ ...checked, person: session.person, team: session.context }), request);
     });
   return Object.assign(serve, { declaration, access: "person" as const });
 }
@@ -84,14 +85,13 @@ async function admit(declaration: Declaration, request: Request, record: Request
   return ctx;
 }
 
-async function admitPerson(declaration: Declaration, request: Request, record: RequestRecord): Promise<Person> {
+async function admitPerson(declaration: Declaration, request: Request, record: RequestRecord): Promise<LiveSession> {
   if (isChange(request)) refuseForeignOrigin(request.headers, ourOrigin());
   const session = await sessionOf(request.headers, record.requestId);
   if (!session) throw nobody();
-  const { person } = session;
-  Object.assign(record, { userId: person.userId });
-  await spendAsPerson(person, costOf(declaration, request));
-  return person;
+  Object.assign(record, { userId: session.person.userId });
+  await spendAsPerson(session.person, costOf(declaration, request));
+  return session;
 }
 
 function nobody(): DomainError {

@@ -6,7 +6,7 @@ import { entityTag, isUnchanged } from "./preconditions";
 
 /** What any handler gives back; `RouteResult` narrows it for one declaration. */
 export type AnyResult =
-  | undefined
+  | null
   | { readonly body: unknown; readonly version?: number; readonly location?: string }
   | { readonly file: FileResult };
 
@@ -15,16 +15,15 @@ export function toStored({ reply, status }: Declaration, result: AnyResult): Sto
   if (!(reply instanceof z.ZodType)) return { status: 204, body: null, version: null, location: null };
   if (!result || !("body" in result)) throw new Error("The handler gave no body.");
   const { version = null, location = null } = result;
-  return { status: status ?? 200, body: reply.parse(result.body), version, location };
+  return { status: status ?? 200, body: JSON.stringify(reply.parse(result.body)), version, location };
 }
 
 export function sendStored({ status, body, version, location }: StoredReply): Response {
   const headers = new Headers();
   if (version !== null) headers.set("etag", entityTag(version));
   if (location !== null) headers.set("location", location);
-  if (status === 204) return new Response(null, { status, headers });
-  headers.set("content-type", "application/json");
-  return new Response(JSON.stringify(body), { status, headers });
+  if (body !== null) headers.set("content-type", "application/json");
+  return new Response(body, { status, headers });
 }
 
 export function sendResult(declaration: Declaration, result: AnyResult, request: Request): Response {

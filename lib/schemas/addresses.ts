@@ -16,3 +16,7 @@ export const ComparisonQuery = z.strictObject({
   limit: z.coerce.number().int().min(1).max(100).default(50),
 });
 export const GainFile = z.strictObject({ format: z.enum(["csv", "json"]).default("csv") });
+
+export const MemberAddress = z.strictObject({ userId: Id });
+export const InvitationAddress = z.strictObject({ invitationId: Id });
+export const AccessTokenAddress = z.strictObject({ tokenId: Id });

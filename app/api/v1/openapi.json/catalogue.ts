@@ -2,6 +2,12 @@ import type { RouteCatalogue } from "@/lib/api/openapi";
 
 /** Every route file under /api/v1 but the description itself. A test walks the folders and fails for one that is missing. */
 export const catalogue: RouteCatalogue = {
+  "/api/v1/account": () => import("../account/route"),
+  "/api/v1/account/password": () => import("../account/password/route"),
+  "/api/v1/account/sessions": () => import("../account/sessions/route"),
+  "/api/v1/account/team": () => import("../account/team/route"),
+  "/api/v1/account/tokens": () => import("../account/tokens/route"),
+  "/api/v1/account/tokens/{tokenId}": () => import("../account/tokens/[tokenId]/route"),
   "/api/v1/checks": () => import("../checks/route"),
   "/api/v1/comparisons": () => import("../comparisons/route"),
   "/api/v1/comparisons/{comparisonId}": () => import("../comparisons/[comparisonId]/route"),
@@ -13,6 +19,10 @@ export const catalogue: RouteCatalogue = {
   "/api/v1/designs/{designId}/archive": () => import("../designs/[designId]/archive/route"),
   "/api/v1/designs/{designId}/duplicate": () => import("../designs/[designId]/duplicate/route"),
   "/api/v1/designs/{designId}/revisions": () => import("../designs/[designId]/revisions/route"),
+  "/api/v1/invitations/accept": () => import("../invitations/accept/route"),
+  "/api/v1/invitations/join": () => import("../invitations/join/route"),
+  "/api/v1/password-resets": () => import("../password-resets/route"),
+  "/api/v1/password-resets/use": () => import("../password-resets/use/route"),
   "/api/v1/plants": () => import("../plants/route"),
   "/api/v1/plants/{plantId}": () => import("../plants/[plantId]/route"),
   "/api/v1/plants/{plantId}/archive": () => import("../plants/[plantId]/archive/route"),
@@ -23,6 +33,14 @@ export const catalogue: RouteCatalogue = {
   "/api/v1/plants/{plantId}/revisions/{revisionId}": () => import("../plants/[plantId]/revisions/[revisionId]/route"),
   "/api/v1/plants/{plantId}/revisions/{revisionId}/checks": () =>
     import("../plants/[plantId]/revisions/[revisionId]/checks/route"),
+  "/api/v1/sign-up": () => import("../sign-up/route"),
+  "/api/v1/team": () => import("../team/route"),
+  "/api/v1/team/audit": () => import("../team/audit/route"),
+  "/api/v1/team/invitations": () => import("../team/invitations/route"),
+  "/api/v1/team/invitations/{invitationId}": () => import("../team/invitations/[invitationId]/route"),
+  "/api/v1/team/members": () => import("../team/members/route"),
+  "/api/v1/team/members/{userId}": () => import("../team/members/[userId]/route"),
+  "/api/v1/team/outbox": () => import("../team/outbox/route"),
   "/api/v1/templates": () => import("../templates/route"),
   "/api/v1/templates/{templateId}": () => import("../templates/[templateId]/route"),
   "/api/v1/templates/{templateId}/archive": () => import("../templates/[templateId]/archive/route"),

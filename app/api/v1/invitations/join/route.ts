@@ -1,0 +1,11 @@
+import { publicRoute } from "@/lib/api/route";
+import { JoinByInvitation } from "@/lib/schemas/invitation";
+import { joinByInvitation } from "@/lib/services/team/accept-invitation";
+
+export const POST = publicRoute(
+  { summary: "Make an account with the invited address and join the team", body: JoinByInvitation, reply: null },
+  async ({ visitor, body }) => {
+    await joinByInvitation(visitor, body);
+    return null;
+  },
+);
