@@ -1,6 +1,6 @@
 import type { Complex } from "@/control/plant/model";
 
-export const PLANE = { width: 340, height: 260, margin: 18 } as const;
+export const PLANE = { width: 280, height: 220, margin: 20 } as const;
 
 export type PlaneScale = {
   readonly x: (re: number) => number;

@@ -36,7 +36,7 @@ export function PolePlane({ title, poles, sampled, table = true }: PolePlaneProp
     sampled,
   );
   return (
-    <figure className="max-w-xl min-w-0">
+    <figure className="max-w-xl min-w-[17.5rem]">
       <figcaption className="mb-1 text-table font-semibold">{title}</figcaption>
       <svg
         role="img"
@@ -78,6 +78,9 @@ function Ruling({ scale, sampled }: Readonly<{ scale: PlaneScale; sampled: boole
               <g key={damping} strokeDasharray="3 3">
                 <path d={`M${originX} ${originY}L${scale.x(end.re)} ${scale.y(end.im)}`} />
                 <path d={`M${originX} ${originY}L${scale.x(end.re)} ${scale.y(-end.im)}`} />
+                <text x={scale.x(end.re)} y={scale.y(-end.im) + 12} textAnchor="middle" fill="var(--soft)" stroke="none">
+                  {damping}
+                </text>
               </g>
             );
           })}

@@ -16,7 +16,7 @@ export const ResponseCurves = memo(function ResponseCurves({ row, cell, range }:
       aria-hidden="true"
       viewBox={`0 0 ${CELL.width} ${CELL.height}`}
       preserveAspectRatio="none"
-      className="absolute inset-0 size-full [&_path]:fill-none [&_path]:[vector-effect:non-scaling-stroke]"
+      className="absolute inset-x-0 top-5 bottom-1 h-[calc(100%-1.5rem)] w-full [&_path]:fill-none [&_path]:[vector-effect:non-scaling-stroke]"
     >
       <path d={level(0)} stroke="var(--rule)" />
       {drawnLimits(row).map((limit) => (

@@ -52,7 +52,7 @@ export function ResponseGrid({ caption, columns, rows, time }: ResponseGridProps
           ))}
           <span />
           {columns.map((column) => (
-            <p key={column.key} aria-hidden="true" className="flex justify-between font-mono text-xs text-soft">
+            <p key={column.key} aria-hidden="true" className="flex justify-between px-1 font-mono text-xs text-soft">
               <span>0</span>
               <span>{formatSeconds(last * time.step)}</span>
             </p>
@@ -86,7 +86,7 @@ function ResponseLine({ row, columns, cursor, onPoint, onLeave }: ResponseLinePr
             {far ? <span className="block text-xs text-soft">{far}</span> : null}
           </span>
         </p>
-        <p className="flex flex-col justify-between py-0.5 text-right font-mono text-xs text-soft">
+        <p className="flex flex-col justify-between pt-4 pb-0.5 text-right font-mono text-xs text-soft">
           <span>{formatNumber(range.high, 2)}</span>
           <span>{formatNumber(range.low, 2)}</span>
         </p>
@@ -104,7 +104,7 @@ function ResponseLine({ row, columns, cursor, onPoint, onLeave }: ResponseLinePr
             className={joinClasses("response-cell relative h-28 border bg-sheet", cell?.own ? "border-control" : "border-rule")}
           >
             {cell ? <ResponseCurves row={row} cell={cell} range={range} /> : null}
-            <span className="absolute top-0.5 right-1.5 bg-sheet px-0.5 font-mono text-xs text-soft">{corner}</span>
+            <span className="absolute top-0.5 right-1.5 font-mono text-xs text-soft">{corner}</span>
           </div>
         );
       })}
