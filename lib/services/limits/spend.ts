@@ -1,7 +1,6 @@
 import "server-only";
 import { createHash } from "node:crypto";
-import { RateLimiterPostgres, RateLimiterRes } from "rate-limiter-flexible";
-import { pool } from "@/db/client";
+import { spendPoint } from "@/db/queries/rate-limits";
 import { DomainError } from "@/lib/errors";
 import type { Context, Visitor } from "../context";
 
@@ -10,7 +9,7 @@ export type Cost = "read" | "write" | "solve";
 
 const SECONDS = 60;
 /** An office behind one address shares this; guessing passwords has narrower limits of its own. */
-const VISITS_PER_MINUTE = 60;
+const VISITS_PER_MINUTE = 120;
 
 /** Requests a minute, for one person and for a whole team. */
 const PER_MINUTE: Readonly<Record<Cost, { readonly person: number; readonly team: number }>> = {
@@ -39,33 +38,10 @@ export async function spendAsVisitor({ address }: Pick<Visitor, "address">): Pro
   await take("visitor", VISITS_PER_MINUTE, key, "your network address");
 }
 
-/** By pool, because a limiter keeps the one it was made with. */
-const limiters = new WeakMap<object, Map<string, RateLimiterPostgres>>();
-
-function limiter(keyPrefix: string, points: number): RateLimiterPostgres {
-  const storeClient = pool();
-  const ofPool = limiters.get(storeClient) ?? new Map<string, RateLimiterPostgres>();
-  limiters.set(storeClient, ofPool);
-  const known = ofPool.get(keyPrefix);
-  if (known) return known;
-  const store = { storeClient, storeType: "pool", tableName: "rate_limits", tableCreated: true };
-  const made = new RateLimiterPostgres({ ...store, keyPrefix, points, duration: SECONDS });
-  ofPool.set(keyPrefix, made);
-  return made;
-}
-
-async function take(keyPrefix: string, points: number, key: string, who: string): Promise<void> {
-  try {
-    await limiter(keyPrefix, points).consume(key);
-  } catch (refusal) {
-    if (!(refusal instanceof RateLimiterRes)) throw refusal;
-    const retryAfter = Math.max(1, Math.ceil(refusal.msBeforeNext / 1000));
-    throw new DomainError(
-      "too-many-requests",
-      `At most ${points} requests of this kind a minute for ${who}. Wait ${retryAfter} s.`,
-      {
-        retryAfter,
-      },
-    );
-  }
+async function take(name: string, points: number, key: string, who: string): Promise<void> {
+  const { allowed, waitSeconds } = await spendPoint({ name, points, seconds: SECONDS }, key);
+  if (allowed) return;
+  const retryAfter = Math.max(1, waitSeconds);
+  const words = `At most ${points} requests of this kind a minute for ${who}. Wait ${retryAfter} s.`;
+  throw new DomainError("too-many-requests", words, { retryAfter });
 }
