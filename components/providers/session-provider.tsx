@@ -1,0 +1,69 @@
+"use client";
+
+import { createContext, type ReactNode, useCallback, useContext, useMemo, useRef, useState } from "react";
+import { RequestProblem } from "@/lib/client/request";
+import type { Role } from "@/lib/schemas/team";
+import { SignInForm } from "../account/sign-in-form";
+import { Dialog } from "../ui/dialog";
+
+export type SessionFacts = { readonly userId: string; readonly email: string; readonly teamId: string; readonly role: Role };
+
+type Session = SessionFacts & {
+  /** Does `work`; where the session is over, asks to sign in on this page and does it once more. */
+  readonly resume: <T>(work: () => Promise<T>) => Promise<T>;
+};
+
+const SessionContext = createContext<Session | null>(null);
+
+export function useSession(): Session {
+  const session = useContext(SessionContext);
+  if (!session) throw new Error("useSession needs SessionProvider above it");
+  return session;
+}
+
+type Waiting = { readonly signedIn: () => void; readonly givenUp: () => void };
+
+/** Keeps the page and everything typed while somebody signs in again. */
+export function SessionProvider({ facts, children }: Readonly<{ facts: SessionFacts; children: ReactNode }>) {
+  const [asking, setAsking] = useState(false);
+  const waiting = useRef<Waiting[]>([]);
+
+  const askToSignIn = useCallback(
+    () =>
+      new Promise<boolean>((resolve) => {
+        waiting.current.push({ signedIn: () => resolve(true), givenUp: () => resolve(false) });
+        setAsking(true);
+      }),
+    [],
+  );
+
+  const resume = useCallback(
+    async <T,>(work: () => Promise<T>): Promise<T> => {
+      try {
+        return await work();
+      } catch (error) {
+        if (!(error instanceof RequestProblem && error.needsSignIn)) throw error;
+        if (!(await askToSignIn())) throw error;
+        return work();
+      }
+    },
+    [askToSignIn],
+  );
+
+  const settle = (how: keyof Waiting) => {
+    setAsking(false);
+    for (const one of waiting.current.splice(0)) one[how]();
+  };
+  const session = useMemo(() => ({ ...facts, resume }), [facts, resume]);
+  return (
+    <SessionContext value={session}>
+      {children}
+      <Dialog open={asking} onClose={() => settle("givenUp")} title="Sign in again to go on">
+        <p className="mb-4">
+          Your session is over. Everything on this page is kept; what you were doing goes on as soon as you are signed in.
+        </p>
+        <SignInForm email={facts.email} onSignedIn={() => settle("signedIn")} />
+      </Dialog>
+    </SessionContext>
+  );
+}
