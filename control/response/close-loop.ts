@@ -1,5 +1,8 @@
 import { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
+import { frobeniusNorm } from "../linalg/norms";
 import { requireShape } from "../linalg/require";
+import { solveLinear } from "../linalg/solve-linear";
 
 export type LoopPlant = {
   readonly A: Matrix;
@@ -32,7 +35,7 @@ export type SignalCounts = {
 
 /**
  * s' = A s + B v, signals = C s + D v (sampled: s(k+1) = ...), v = [references; input disturbances].
- * The plant's state comes first in s; behind it the estimation error x - xhat (full order) or the observer's own state (reduced).
+ * s is the plant's state with, behind it, what the observer has wrong: xhat = x + (something) o.
  */
 export type ClosedLoop = {
   readonly A: Matrix;
@@ -42,22 +45,17 @@ export type ClosedLoop = {
   readonly references: number;
   readonly disturbances: number;
   readonly counts: SignalCounts;
-  /** Start of s for a start of the plant's state with the observer's state (full order: the estimate) at zero. */
+  /** Start of s for a start of the plant's state with the observer's own state (full order: its estimate) at zero. */
   readonly startFrom: (x0: readonly number[]) => Float64Array;
 };
 
-/** u = onPlant x + onObserver o + F r + onDisturbance d; o' = observerPlant x + observerSelf o + observerInput [r; d]. */
-type Law = {
-  readonly onPlant: Matrix;
-  readonly onObserver: Matrix;
-  readonly onDisturbance: Matrix;
-  readonly observerPlant: Matrix;
-  readonly observerSelf: Matrix;
-  readonly observerInput: Matrix;
-  /** xhat = estimatePlant x + estimateObserver o + estimateDisturbance d; no rows without an observer */
-  readonly estimatePlant: Matrix;
-  readonly estimateObserver: Matrix;
-  readonly estimateDisturbance: Matrix;
+/** o' = self o + disturbed d, xhat = x + seen o + misled d, o(0) = start x0. */
+type ObserverError = {
+  readonly self: Matrix;
+  readonly disturbed: Matrix;
+  readonly seen: Matrix;
+  readonly misled: Matrix;
+  readonly start: Matrix;
 };
 
 /**
@@ -66,109 +64,103 @@ type Law = {
  *
  * Shapes    n states, m inputs, p outputs, q commanded: K m×n, F m×q or null (then no references), signals q + p + n + (n) + m
  * Units     as the plant's
- * Throws    shape-mismatch
- * Accuracy  a few roundings per entry. The full-order observer is written in its estimation error, so that its poles and the
- *           regulator's stand in separate blocks; continuous and sampled alike
+ * Throws    shape-mismatch; inaccurate for matrices of a reduced-order observer that do not belong to the plant
+ * Accuracy  a few roundings per entry. Observers are written in their error, so that their poles and the regulator's stand in
+ *           separate blocks and a set point does not disturb the estimate; continuous and sampled alike
  * Source    Luenberger, IEEE Trans. Automatic Control 16 (1971) 596-602
  */
 export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observer: ObserverInLoop | null): ClosedLoop {
   const { A, B, C, D, H, J } = plant;
   const n = A.rows;
   const m = B.columns;
-  requireShape("K", K, m, n);
   const references = F ? H.rows : 0;
   const feed = F ?? Matrix.zeros(m, 0);
+  requireShape("K", K, m, n);
   requireShape("F", feed, m, references);
-  const law =
-    observer === null
-      ? stateLaw(K, references)
-      : observer.kind === "full"
-        ? fullLaw(plant, K, observer.L, references)
-        : reducedLaw(plant, K, feed, observer);
-  const order = law.observerSelf.rows;
-  const onInput = beside(feed, Matrix.add(Matrix.eye(m), law.onDisturbance)); // of the plant's input u + d
-  const zeroReferences = (rows: number) => Matrix.zeros(rows, references);
-  const through = (onState: Matrix, onU: Matrix) => beside(Matrix.add(onState, onU.mmul(law.onPlant)), onU.mmul(law.onObserver));
-  const dynamic = stack([through(A, B), beside(law.observerPlant, law.observerSelf)]);
-  const signals = stack([
-    through(H, J),
-    through(C, D),
-    beside(Matrix.eye(n), Matrix.zeros(n, order)),
-    beside(law.estimatePlant, law.estimateObserver),
-    beside(law.onPlant, law.onObserver),
-  ]);
-  const direct = stack([
-    J.mmul(onInput),
-    D.mmul(onInput),
-    Matrix.zeros(n, references + m),
-    beside(zeroReferences(law.estimateDisturbance.rows), law.estimateDisturbance),
-    beside(feed, law.onDisturbance),
-  ]);
-  const startError = observer?.kind === "full";
+  const error = observerError(plant, observer);
+  const order = error.self.rows;
+  const fromState = Matrix.mul(K, -1);
+  const fromError = fromState.mmul(error.seen);
+  const fromDisturbance = fromState.mmul(error.misled);
+  const atInput = beside(feed, Matrix.add(Matrix.eye(m), fromDisturbance)); // u + d, from [r; d]
+  const through = (onState: Matrix, onInput: Matrix) =>
+    beside(Matrix.add(onState, onInput.mmul(fromState)), onInput.mmul(fromError));
+  const estimates = observer ? n : 0;
   return {
-    A: dynamic,
-    B: stack([B.mmul(onInput), law.observerInput]),
-    C: signals,
-    D: direct,
+    A: stack([through(A, B), beside(Matrix.zeros(order, n), error.self)]),
+    B: stack([B.mmul(atInput), beside(Matrix.zeros(order, references), error.disturbed)]),
+    C: stack([
+      through(H, J),
+      through(C, D),
+      beside(Matrix.eye(n), Matrix.zeros(n, order)),
+      beside(Matrix.eye(estimates, n), observer ? error.seen : Matrix.zeros(0, order)),
+      beside(fromState, fromError),
+    ]),
+    D: stack([
+      J.mmul(atInput),
+      D.mmul(atInput),
+      Matrix.zeros(n, references + m),
+      beside(Matrix.zeros(estimates, references), observer ? error.misled : Matrix.zeros(0, m)),
+      beside(feed, fromDisturbance),
+    ]),
     references,
     disturbances: m,
-    counts: { commanded: H.rows, outputs: C.rows, states: n, estimates: law.estimatePlant.rows, inputs: m },
-    startFrom: (x0) => Float64Array.from({ length: n + order }, (_, i) => (i < n ? x0[i] : startError ? x0[i - n] : 0)),
+    counts: { commanded: H.rows, outputs: C.rows, states: n, estimates, inputs: m },
+    startFrom: (x0) => Float64Array.from([...x0, ...error.start.mmul(Matrix.columnVector([...x0])).to1DArray()]),
   };
 }
 
-function stateLaw(K: Matrix, references: number): Law {
-  const m = K.rows;
-  const n = K.columns;
-  return {
-    onPlant: Matrix.mul(K, -1),
-    onObserver: Matrix.zeros(m, 0),
-    onDisturbance: Matrix.zeros(m, m),
-    observerPlant: Matrix.zeros(0, n),
-    observerSelf: Matrix.zeros(0, 0),
-    observerInput: Matrix.zeros(0, references + m),
-    estimatePlant: Matrix.zeros(0, n),
-    estimateObserver: Matrix.zeros(0, 0),
-    estimateDisturbance: Matrix.zeros(0, m),
-  };
-}
-
-/** o = x - xhat: o' = (A - L C) o + (B - L D) d. */
-function fullLaw({ A, B, C, D }: LoopPlant, K: Matrix, L: Matrix, references: number): Law {
+function observerError(plant: LoopPlant, observer: ObserverInLoop | null): ObserverError {
+  const { A, B, C, D } = plant;
   const n = A.rows;
   const m = B.columns;
+  if (observer?.kind === "reduced") return reducedError(plant, observer);
+  if (observer === null) {
+    const none = Matrix.zeros(0, 0);
+    return {
+      self: none,
+      disturbed: Matrix.zeros(0, m),
+      seen: Matrix.zeros(n, 0),
+      misled: Matrix.zeros(n, m),
+      start: Matrix.zeros(0, n),
+    };
+  }
+  // o = x - xhat: o' = (A - L C) o + (B - L D) d
+  const { L } = observer;
   requireShape("L", L, n, C.rows);
   return {
-    onPlant: Matrix.mul(K, -1),
-    onObserver: K,
-    onDisturbance: Matrix.zeros(m, m),
-    observerPlant: Matrix.zeros(n, n),
-    observerSelf: Matrix.sub(A, L.mmul(C)),
-    observerInput: beside(Matrix.zeros(n, references), Matrix.sub(B, L.mmul(D))),
-    estimatePlant: Matrix.eye(n),
-    estimateObserver: Matrix.mul(Matrix.eye(n), -1),
-    estimateDisturbance: Matrix.zeros(n, m),
+    self: Matrix.sub(A, L.mmul(C)),
+    disturbed: Matrix.sub(B, L.mmul(D)),
+    seen: Matrix.mul(Matrix.eye(n), -1),
+    misled: Matrix.zeros(n, m),
+    start: Matrix.eye(n),
   };
 }
 
-/** o = w: w' = Fw w + Fy y + Fu u, xhat = Gw w + Gy (y - D u), with y - D u = C x + D d. */
-function reducedLaw({ C, D }: LoopPlant, K: Matrix, feed: Matrix, observer: Extract<ObserverInLoop, { kind: "reduced" }>): Law {
-  const { Fw, Fy, Fu, Gw, Gy } = observer;
-  const onPlant = Matrix.mul(K.mmul(Gy).mmul(C), -1);
-  const onObserver = Matrix.mul(K.mmul(Gw), -1);
-  const onDisturbance = Matrix.mul(K.mmul(Gy).mmul(D), -1);
-  const fromInput = Matrix.add(Fu, Fy.mmul(D));
-  return {
-    onPlant,
-    onObserver,
-    onDisturbance,
-    observerPlant: Matrix.add(Fy.mmul(C), fromInput.mmul(onPlant)),
-    observerSelf: Matrix.add(Fw, fromInput.mmul(onObserver)),
-    observerInput: beside(fromInput.mmul(feed), Matrix.add(Fy.mmul(D), fromInput.mmul(onDisturbance))),
-    estimatePlant: Gy.mmul(C),
-    estimateObserver: Gw,
-    estimateDisturbance: Gy.mmul(D),
-  };
+/**
+ * o = w - T x with Gw T = I - Gy C: w' = Fw w + Fy y + Fu u follows T x exactly when Fw T + Fy C = T A and Fu + Fy D = T B,
+ * which is checked; then o' = Fw o + (Fy D - T B) d and xhat = x + Gw o + Gy D d.
+ */
+function reducedError(
+  { A, B, C, D }: LoopPlant,
+  { Fw, Fy, Fu, Gw, Gy }: Extract<ObserverInLoop, { kind: "reduced" }>,
+): ObserverError {
+  const hidden = Matrix.sub(Matrix.eye(A.rows), Gy.mmul(C));
+  const T = Gw.columns === 0 ? Matrix.zeros(0, A.rows) : solveLinear(Gw.transpose().mmul(Gw), Gw.transpose().mmul(hidden)).X;
+  const TB = T.mmul(B);
+  const FyD = Fy.mmul(D);
+  requireEqual(Gw.mmul(T), hidden, [Gw, T], [Gy, C]);
+  requireEqual(Matrix.add(Fw.mmul(T), Fy.mmul(C)), T.mmul(A), [Fw, T], [Fy, C], [T, A]);
+  requireEqual(Matrix.add(Fu, FyD), TB, [Fy, D], [T, B]);
+  return { self: Fw, disturbed: Matrix.sub(FyD, TB), seen: Gw, misled: Gy.mmul(D), start: Matrix.mul(T, -1) };
+}
+
+/** Both sides of an identity agree to half the digits of the products they are made of. */
+function requireEqual(left: Matrix, right: Matrix, ...products: readonly (readonly [Matrix, Matrix])[]): void {
+  const bound = Math.sqrt(Number.EPSILON);
+  const size = products.reduce((sum, [a, b]) => sum + frobeniusNorm(a) * frobeniusNorm(b), 1);
+  const residual = frobeniusNorm(Matrix.sub(left, right)) / size;
+  if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
 }
 
 function beside(left: Matrix, right: Matrix): Matrix {

@@ -32,7 +32,6 @@ export function continuousWalker(a: Float64Array, order: number, rows: Float64Ar
  */
 export function walkContinuous(walker: Walker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
   const { order, ladder, tail } = walker;
-  const floor = walker.firstLevel - 40;
   const ceiling = walker.firstLevel + 60;
   let level = walker.firstLevel;
   let state = departure;
@@ -42,8 +41,9 @@ export function walkContinuous(walker: Walker, departure: Float64Array, tracks: 
     const cell = ladder(level);
     raiseNoise(walker.rows, order, state, tracks);
     const values = signalsIn(cell, state, order);
+    if (level === walker.firstLevel) learnNoise(values, tracks);
     const error = worstError(values, tracks);
-    if (error > RESOLVED && level > floor) {
+    if (error > RESOLVED) {
       level--;
       continue;
     }
@@ -54,6 +54,11 @@ export function walkContinuous(walker: Walker, departure: Float64Array, tracks: 
     time += cell.h;
     if (error < EASY && level < ceiling) level++;
   }
+}
+
+/** In cells shorter than the fastest pole's time the polynomial is exact to the last digit: what it misses is rounding. */
+function learnNoise(values: Float64Array, tracks: readonly SignalTrack[]): void {
+  for (let i = 0; i < tracks.length; i++) tracks[i].noise = Math.max(tracks[i].noise, interpolationError(values, i * POINTS));
 }
 
 /** Largest interpolation error of a watched signal over its size, rounding left out. */

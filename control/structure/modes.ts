@@ -59,7 +59,7 @@ export function describeModes(
 }
 
 /** |w v| per state, of left and right vector; for a defective value, where all of these vanish, the right vector alone. */
-function participation({ right, left }: Eigensystem, k: number): number[] {
+export function participation({ right, left }: Eigensystem, k: number): number[] {
   const n = right.re.rows;
   const size = (x: Matrix, y: Matrix, i: number) => Math.sqrt(x.get(i, k) * x.get(i, k) + y.get(i, k) * y.get(i, k));
   const v = Array.from({ length: n }, (_, i) => size(right.re, right.im, i));

@@ -1,0 +1,59 @@
+import { Matrix } from "ml-matrix";
+import { observerByPoles } from "../observer/observer-by-poles";
+import { observerFromNoise } from "../observer/observer-from-noise";
+import { reducedObserver } from "../observer/reduced-observer";
+import type { TimeBase } from "../plant/model";
+import { toMatrix, toRows } from "../plant/to-matrix";
+import { requireStablePoles } from "../poles/require-stable-poles";
+import { resolvePoles } from "../poles/resolve-poles";
+import type { ObserverInLoop } from "../response/close-loop";
+import type { ObserverEvidence } from "./evidence";
+import { requireStable } from "./find-gain";
+import type { PlantMatrices } from "./plant-matrices";
+import type { ObserverRecipe, PoleEntry } from "./recipe";
+import { reportPlainPoles, reportPoles } from "./report-poles";
+
+export type FoundObserver = { readonly inLoop: ObserverInLoop; readonly evidence: ObserverEvidence };
+type Wanted = Exclude<ObserverRecipe, { kind: "none" }>;
+
+/**
+ * Observer by the recipe's method, its estimation error verified to fade.
+ *
+ * Shapes    scale n: the states' largest acceptable deviations, for naming the main state of each pole
+ * Throws    as `observerByPoles`, `observerFromNoise`, `reducedObserver`, `resolvePoles`; unstable-pole; not-stabilising { pole }
+ * Accuracy  as those
+ */
+export function findObserver(plant: PlantMatrices, wanted: Wanted, timeBase: TimeBase, scale: Float64Array): FoundObserver {
+  if (wanted.kind === "reduced") return reduced(plant, stablePoles(wanted.poles, timeBase), timeBase);
+  const { A, C } = plant;
+  const { L, residual, bound, method } =
+    wanted.kind === "poles"
+      ? observerByPoles({ A, C, poles: stablePoles(wanted.poles, timeBase) })
+      : observerFromNoise({
+          A,
+          C,
+          processNoise: toMatrix("process noise", wanted.process, A.rows, A.rows),
+          measurementNoise: toMatrix("measurement noise", wanted.measurement, C.rows, C.rows),
+          sampled: timeBase.kind === "sampled",
+        });
+  const error = Matrix.sub(A, L.mmul(C));
+  requireStable(error, timeBase);
+  const poles = reportPoles(error, timeBase, scale);
+  return { inLoop: { kind: "full", L }, evidence: { kind: "full", L: toRows(L), residual, bound, poles, method } };
+}
+
+function stablePoles(entries: readonly PoleEntry[], timeBase: TimeBase) {
+  const poles = resolvePoles(entries, timeBase);
+  requireStablePoles(poles, timeBase);
+  return poles;
+}
+
+function reduced({ A, B, C, D }: PlantMatrices, poles: ReturnType<typeof stablePoles>, timeBase: TimeBase): FoundObserver {
+  const { order, Fw, Fy, Fu, Gw, Gy, residual, bound, method } = reducedObserver({ A, B, C, D, poles });
+  requireStable(Fw, timeBase);
+  const rows = { Fw: toRows(Fw), Fy: toRows(Fy), Fu: toRows(Fu), Gw: toRows(Gw), Gy: toRows(Gy) };
+  return {
+    inLoop: { kind: "reduced", Fw, Fy, Fu, Gw, Gy },
+    evidence: { kind: "reduced", order, ...rows, residual, bound, poles: reportPlainPoles(Fw, timeBase), method },
+  };
+}
