@@ -35,7 +35,7 @@ export function pool(): pg.Pool {
     keepAlive: true,
   });
   // An idle connection that breaks (a restart of the database) is dropped by the pool; without a listener it ends the process.
-  made.on("error", () => undefined);
+  made.on("error", ignore);
   kept.gainwrightPool = made;
   return made;
 }
@@ -78,11 +78,39 @@ export function asVisitor<T>(work: (tx: Db) => Promise<T>, settings: Settings = 
 }
 
 function transact<T>(settings: Settings, work: (tx: Db) => Promise<T>): Promise<T> {
-  const database: NodePgDatabase = drizzle(pool());
   return withRetries(() =>
-    database.transaction(async (tx) => {
-      await adopt(tx, settings);
-      return work(tx);
-    }),
+    onConnection((database) =>
+      database.transaction(async (tx) => {
+        await adopt(tx, settings);
+        return work(tx);
+      }),
+    ),
   );
 }
+
+/**
+ * The connection is taken here and not by the query builder, which does not give one back when its BEGIN fails: twenty such
+ * moments, as a restarting database causes them, would use up the pool for good.
+ */
+async function onConnection<T>(work: (database: NodePgDatabase) => Promise<T>): Promise<T> {
+  const client = await pool().connect();
+  // A server that goes away between two statements is told to this listener; without one it ends the process.
+  client.on("error", ignore);
+  let clean = false;
+  try {
+    const result = await work(drizzle(client));
+    clean = true;
+    return result;
+  } catch (error) {
+    clean = await client.query("rollback").then(
+      () => true,
+      () => false,
+    );
+    throw error;
+  } finally {
+    client.off("error", ignore);
+    client.release(!clean);
+  }
+}
+
+const ignore = () => undefined;
