@@ -1,11 +1,12 @@
 import { useMemo } from "react";
 import { blockShares, type ScalingKind } from "./block-shares";
 import { CellInput } from "./cell-input";
-import { GridCell } from "./grid-cell";
-import { type Entries, holds } from "./grid-edits";
+import type { Entries } from "./grid-edits";
+import { cellLabel, GridRow } from "./grid-row";
 import type { Header } from "./header";
-import { cellKey, headerKey, RowHead } from "./matrix-head";
+import { cellKey, headerKey } from "./matrix-head";
 import type { MatrixGridState } from "./use-matrix-grid";
+import { hatchStrength } from "./weave";
 
 type GridBodyProps = Readonly<{
   name: string;
@@ -19,38 +20,38 @@ type GridBodyProps = Readonly<{
 }>;
 
 export function GridBody({ name, rows, columns, entries, numbers, scaling, readOnly, grid }: GridBodyProps) {
-  const shares = useMemo(() => {
+  const strengths = useMemo(() => {
     const known = numbers.map((row) => row.map((value) => value ?? 0));
-    return blockShares(known, rows, columns, scaling);
+    const shares = blockShares(known, rows, columns, scaling);
+    return rows.map((row) => columns.map((column) => hatchStrength(row, column, shares)));
   }, [numbers, rows, columns, scaling]);
-  const { at, editing, finish, type, cancel } = grid;
+  const { at, area, editing, finish, type, cancel } = grid;
   return (
     <tbody>
-      {rows.map((row, r) => (
-        <tr key={headerKey(row, r)} aria-rowindex={r + 2}>
-          <RowHead row={row} roles />
-          {columns.map((column, c) => {
-            const current = at.r === r && at.c === c;
-            const label = `${name}, row ${r + 1} ${row.label}, column ${c + 1} ${column.label}`;
-            return (
-              <GridCell
-                key={cellKey(r, c)}
-                id={grid.cellId(r, c)}
-                {...{ label, r, c, row, column, shares, current, readOnly }}
-                entry={entries[r][c]}
-                value={numbers[r][c]}
-                problem={grid.problems.get(cellKey(r, c))}
-                selected={holds(grid.area, r, c)}
-                echoId={`${grid.id}-echo`}
-              >
-                {current && editing ? (
-                  <CellInput {...{ label, ...editing }} onText={type} onFinish={finish} onCancel={cancel} />
-                ) : null}
-              </GridCell>
-            );
-          })}
-        </tr>
-      ))}
+      {rows.map((row, r) => {
+        const current = at.r === r;
+        const selected = r >= area.top && r <= area.bottom;
+        const label = cellLabel(name, r, row, at.c, columns[at.c]);
+        return (
+          <GridRow
+            key={headerKey(row, r)}
+            {...{ name, r, row, columns, readOnly }}
+            gridId={grid.id}
+            entries={entries[r]}
+            numbers={numbers[r]}
+            strengths={strengths[r]}
+            problems={columns.map((_, c) => grid.problems.get(cellKey(r, c)))}
+            current={current ? at.c : -1}
+            selectedFrom={selected ? area.left : -1}
+            selectedTo={selected ? area.right : -2}
+            editor={
+              current && editing ? (
+                <CellInput {...{ label, ...editing }} onText={type} onFinish={finish} onCancel={cancel} />
+              ) : null
+            }
+          />
+        );
+      })}
     </tbody>
   );
 }

@@ -8,7 +8,7 @@ import { blockShares, type ScalingKind } from "./block-shares";
 import type { Header } from "./header";
 import { cellKey, headerKey, MatrixHead, RowHead } from "./matrix-head";
 import { exact, valuesAsText } from "./matrix-text";
-import { cellStyle, weaveOf } from "./weave";
+import { cellStyle, hatchStrength, weaveOf } from "./weave";
 
 type WovenMatrixProps = Readonly<{
   /** The letter or short name: "K". */
@@ -52,9 +52,9 @@ export function WovenMatrix({ name, caption, note, rows, columns, values, scalin
                   return (
                     <td
                       key={cellKey(r, c)}
-                      data-weave={weaveOf(row, column, value)}
+                      data-weave={weaveOf(row.axis, column.axis, value)}
                       data-zero={value === 0 || undefined}
-                      style={cellStyle(row, column, shares)}
+                      style={cellStyle(column.axis, hatchStrength(row, column, shares))}
                       title={exact(value)}
                       className={joinClasses(marked?.(r, c) && "font-bold underline decoration-2 underline-offset-3")}
                     >

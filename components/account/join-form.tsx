@@ -1,0 +1,49 @@
+"use client";
+
+import type { FormEvent } from "react";
+import { joinByInvitation } from "@/lib/client/account";
+import { signIn } from "@/lib/client/session";
+import { PASSWORD_LENGTH } from "@/lib/schemas/password-length";
+import { Button } from "../ui/button";
+import { FormProblems } from "../ui/form-problems";
+import { TextField } from "../ui/text-field";
+import { useSubmit } from "../ui/use-submit";
+
+const FIELDS = { "/name": "join-name", "/password": "join-password" };
+
+export function JoinForm({ secret, email }: Readonly<{ secret: string; email: string }>) {
+  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+
+  async function submit(event: FormEvent<HTMLFormElement>) {
+    event.preventDefault();
+    const form = new FormData(event.currentTarget);
+    const [name, password] = [String(form.get("name")), String(form.get("password"))];
+    const done = await run(async () => {
+      await joinByInvitation({ secret, name, password });
+      await signIn(email, password);
+    });
+    if (done) window.location.assign("/plants");
+  }
+
+  return (
+    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+      <FormProblems title="You have not joined yet." {...{ attempt, problems }} />
+      <TextField label="E-mail address" name="email" type="email" autoComplete="username" value={email} readOnly />
+      <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />
+      <TextField
+        id={FIELDS["/password"]}
+        name="password"
+        type="password"
+        label="Password"
+        autoComplete="new-password"
+        hint={`At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better.`}
+        problem={at("/password")}
+      />
+      <div>
+        <Button type="submit" tone="primary" busy={busy}>
+          {busy ? "Joining…" : "Join the team"}
+        </Button>
+      </div>
+    </form>
+  );
+}

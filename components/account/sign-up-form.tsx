@@ -1,0 +1,69 @@
+"use client";
+
+import type { FormEvent } from "react";
+import { signUp } from "@/lib/client/account";
+import { signIn } from "@/lib/client/session";
+import { PASSWORD_LENGTH } from "@/lib/schemas/password-length";
+import { Button } from "../ui/button";
+import { FormProblems } from "../ui/form-problems";
+import { TextField } from "../ui/text-field";
+import { useSubmit } from "../ui/use-submit";
+
+const FIELDS = {
+  "/name": "sign-up-name",
+  "/email": "sign-up-email",
+  "/password": "sign-up-password",
+  "/teamName": "sign-up-team",
+};
+
+export function SignUpForm() {
+  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+
+  async function submit(event: FormEvent<HTMLFormElement>) {
+    event.preventDefault();
+    const form = new FormData(event.currentTarget);
+    const field = (name: string) => String(form.get(name));
+    const account = { name: field("name"), email: field("email"), password: field("password"), teamName: field("teamName") };
+    const done = await run(async () => {
+      await signUp(account);
+      await signIn(account.email, account.password);
+    });
+    if (done) window.location.assign("/plants");
+  }
+
+  return (
+    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+      <FormProblems title="The team could not be started yet." {...{ attempt, problems }} />
+      <TextField
+        id={FIELDS["/teamName"]}
+        name="teamName"
+        label="Name of the team"
+        autoComplete="organization"
+        problem={at("/teamName")}
+      />
+      <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />
+      <TextField
+        id={FIELDS["/email"]}
+        name="email"
+        type="email"
+        label="E-mail address"
+        autoComplete="username"
+        problem={at("/email")}
+      />
+      <TextField
+        id={FIELDS["/password"]}
+        name="password"
+        type="password"
+        label="Password"
+        autoComplete="new-password"
+        hint={`At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better. Several words do well.`}
+        problem={at("/password")}
+      />
+      <div>
+        <Button type="submit" tone="primary" busy={busy}>
+          {busy ? "Starting the team…" : "Start the team"}
+        </Button>
+      </div>
+    </form>
+  );
+}
