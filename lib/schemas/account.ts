@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { Id, Name, Timestamp } from "./common";
+import { PASSWORD_LENGTH } from "./password-length";
 import { Role, Scope } from "./team";
 
 /** Lower case everywhere, so that one person has one account. */
@@ -10,7 +11,6 @@ export const Email = z
   .max(254, "At most 254 characters")
   .pipe(z.email("Write an e-mail address, such as name@company.example"));
 
-export const PASSWORD_LENGTH = { least: 8, advised: 15, most: 256 } as const;
 /** Any characters, blanks at the ends too: nothing is trimmed or refused but the length. Common ones the server refuses. */
 export const NewPassword = z
   .string()
