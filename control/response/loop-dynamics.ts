@@ -49,8 +49,14 @@ export function prepareLoop(loop: ClosedLoop, period: number | null): LoopDynami
   const shifted = matrix.slice();
   if (period !== null) for (let k = 0; k < order; k++) shifted[k * order + k] -= 1;
   const rest = factorLu(shifted, order);
-  if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: 0 });
+  if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance({ poles, period }) });
   return { loop, period, order, signals, a: matrix, b, c, d: toFlat(loop.D), places, scale, poles, rest };
+}
+
+/** Least distance of a pole from the stability boundary: -Re s, or 1 - |z|. */
+export function boundaryDistance({ poles, period }: Pick<LoopDynamics, "poles" | "period">): number {
+  const distances = poles.map(({ re, im }) => (period === null ? -re : 1 - Math.sqrt(re * re + im * im)));
+  return distances.reduce((least, distance) => Math.min(least, distance), Number.POSITIVE_INFINITY);
 }
 
 /** Response to a constant input (column `input`, size `amplitude`) from rest. */
@@ -76,7 +82,8 @@ export function startDrive(dynamics: LoopDynamics, x0: readonly number[]): Drive
 }
 
 /** Solves A s = push (sampled: (A - I) s = push) with one step of refinement. */
-function restOf({ a, order, rest, period }: LoopDynamics, push: Float64Array): Float64Array {
+function restOf(dynamics: LoopDynamics, push: Float64Array): Float64Array {
+  const { a, order, rest, period } = dynamics;
   if (largestEntry(push) === 0) return new Float64Array(order);
   const s = solveLu(rest, push, 1);
   const residual = push.slice();
@@ -85,6 +92,6 @@ function restOf({ a, order, rest, period }: LoopDynamics, push: Float64Array): F
   }
   const correction = solveLu(rest, residual, 1);
   for (let k = 0; k < order; k++) s[k] += correction[k];
-  for (const entry of s) if (!Number.isFinite(entry)) throw new NumericalError("on-stability-boundary", { distance: 0 });
+  if (!s.every(Number.isFinite)) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance(dynamics) });
   return s;
 }

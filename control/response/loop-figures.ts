@@ -1,6 +1,7 @@
 import type { StepFigures } from "../design/evidence";
+import { NumericalError } from "../errors";
 import { POINTS } from "./cell-basis";
-import type { Drive, LoopDynamics } from "./loop-dynamics";
+import { boundaryDistance, type Drive, type LoopDynamics } from "./loop-dynamics";
 import type { Experiment } from "./loop-experiments";
 import { largestDeparture, NO_BAND, type SignalTrack, settledAt, startTrack } from "./signal-track";
 import { peakOf, SETTLING_BAND, signalFigures } from "./step-figures";
@@ -79,6 +80,7 @@ function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number)
   const { a, order, period, poles } = dynamics;
   const signals = order === 0 ? 0 : rows.length / order;
   const tail = tailBound(a, order, rows, period !== null);
+  if (tail === null) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance(dynamics) });
   const allowed = (work: number, { least, most }: typeof CELLS) =>
     Math.min(most, Math.max(least, Math.floor(WORK / (Math.max(1, experiments) * work))));
   if (period !== null) {

@@ -1,4 +1,5 @@
 import type { Complex } from "../plant/model";
+import { boundaryDistance } from "./loop-dynamics";
 
 /** Beyond the longest settling time, so that the rest is seen to stand still. */
 const MARGIN = 1.3;
@@ -33,7 +34,6 @@ export function responseHorizon(
 
 /** Time constant of the slowest pole, for a sampled loop from its distance to the unit circle. */
 function slowest(poles: readonly Complex[], period: number | null): number {
-  const decay = poles.map(({ re, im }) => (period === null ? -re : (1 - Math.sqrt(re * re + im * im)) / period));
-  const least = decay.reduce((low, rate) => Math.min(low, rate), Number.POSITIVE_INFINITY);
-  return least > 0 && Number.isFinite(least) ? 1 / least : (period ?? 1);
+  const rate = boundaryDistance({ poles, period }) / (period ?? 1);
+  return rate > 0 && Number.isFinite(rate) ? 1 / rate : (period ?? 1);
 }
