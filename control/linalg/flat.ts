@@ -59,10 +59,12 @@ export function flatTransposedProduct(
   return product;
 }
 
+/** Largest size of an entry; NaN when any is NaN, so that no norm can hide one. */
 export function largestEntry(a: ArrayLike<number>): number {
   let largest = 0;
   for (let i = 0; i < a.length; i++) {
     const size = Math.abs(a[i]);
+    if (Number.isNaN(size)) return size;
     if (size > largest) largest = size;
   }
   return largest;

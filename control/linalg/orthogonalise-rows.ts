@@ -1,15 +1,16 @@
 import { NumericalError } from "../errors";
-import { safeShift } from "./balance";
 import { largestEntry } from "./flat";
-import { powerOfTwo } from "./power-of-two";
+import { exponentOf, timesPowerOfTwo } from "./power-of-two";
 
 /** Rows of complex numbers; `im` null when all are real. */
 export type Rows = { readonly re: Float64Array[]; readonly im: Float64Array[] | null };
 
-/** `rows` are orthogonal afterwards, largest first; `turn` is the unitary matrix that made them; values are their lengths. */
+/** `rows` are orthogonal afterwards, largest first, times a power of two; `turn` is the unitary matrix that made them; values are their lengths. */
 export type OrthogonalRows = { readonly values: number[]; readonly rows: Rows; readonly turn: Rows };
 
 const SWEEP_LIMIT = 60;
+/** Products this small beside a row's square are remains of cancellation whose own square would vanish. */
+const NEGLIGIBLE = 1e-90;
 
 /**
  * One-sided Jacobi: turns the rows of M until they are orthogonal, which is the singular value decomposition.
@@ -23,11 +24,11 @@ const SWEEP_LIMIT = 60;
 export function orthogonaliseRows(given: Rows): OrthogonalRows {
   const count = given.re.length;
   const length = given.re[0]?.length ?? 0;
-  const shift = safeShift(Float64Array.of(...[...given.re, ...(given.im ?? [])].map(largestEntry)));
-  const up = powerOfTwo(shift);
+  const largest = Math.max(0, ...[...given.re, ...(given.im ?? [])].map(largestEntry));
+  const shift = largest === 0 ? 0 : -exponentOf(largest);
   const rows = {
-    re: given.re.map((row) => row.map((x) => x * up)),
-    im: given.im ? given.im.map((row) => row.map((x) => x * up)) : null,
+    re: given.re.map((row) => row.map((x) => timesPowerOfTwo(x, shift))),
+    im: given.im ? given.im.map((row) => row.map((x) => timesPowerOfTwo(x, shift))) : null,
   };
   const unit = () => Array.from({ length: count }, () => new Float64Array(count));
   const turn = { re: unit(), im: given.im ? unit() : null };
@@ -40,7 +41,7 @@ export function orthogonaliseRows(given: Rows): OrthogonalRows {
       for (let j = i + 1; j < count; j++) turned = turnPair(rows, turn, i, j, tolerance) || turned;
     if (!turned) break;
   }
-  const lengths = rows.re.map((_, i) => Math.sqrt(squareOf(rows, i)) * powerOfTwo(-shift));
+  const lengths = rows.re.map((_, i) => timesPowerOfTwo(Math.sqrt(squareOf(rows, i)), -shift));
   const order = lengths.map((_, i) => i).sort((i, j) => lengths[j] - lengths[i] || i - j);
   const pick = ({ re, im }: Rows): Rows => ({ re: order.map((i) => re[i]), im: im ? order.map((i) => im[i]) : null });
   return { values: order.map((i) => lengths[i]), rows: pick(rows), turn: pick(turn) };
@@ -61,7 +62,7 @@ function turnPair(rows: Rows, turn: Rows, i: number, j: number, tolerance: numbe
   const [re, im] = innerProduct(rows, i, j);
   const size = Math.sqrt(re * re + im * im);
   const bound = tolerance * Math.sqrt(a) * Math.sqrt(b);
-  if (size <= bound || size === 0) {
+  if (size <= bound || size <= NEGLIGIBLE * Math.max(a, b)) {
     if (a >= b) return false;
     for (const part of [rows, turn]) exchange(part, i, j);
     return false;

@@ -15,3 +15,9 @@ export function powerOfTwo(e: number): number {
   view.setUint32(4, 0);
   return view.getFloat64(0);
 }
+
+/** x·2^e for -2044 ≤ e ≤ 2046, exact unless the result itself leaves the range: the two halves never leave it before. */
+export function timesPowerOfTwo(x: number, e: number): number {
+  const half = Math.trunc(e / 2);
+  return x * powerOfTwo(half) * powerOfTwo(e - half);
+}

@@ -2,7 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { balance } from "./balance";
 import { addNarrow, addWide, split, type Wide, widen, wideProduct, wideTranspose } from "./double-double";
-import { flatIdentity, flatProduct, flatTranspose, fromFlat, toFlat } from "./flat";
+import { flatProduct, flatTranspose, fromFlat, toFlat } from "./flat";
 import { flatNorm } from "./norms";
 import { powerOfTwo } from "./power-of-two";
 import { type FlatSchur, flatSchur } from "./real-schur";
@@ -101,16 +101,4 @@ export function solveLyapunovBySchur({ t, qt }: FlatSchur, n: number, c: Float64
   const y = flatProduct(flatProduct(q, inside, n, n, n), qt, n, n, n);
   for (let i = 0; i < n; i++) for (let j = 0; j < i; j++) y[i * n + j] = y[j * n + i] = 0.5 * (y[i * n + j] + y[j * n + i]);
   return y;
-}
-
-/** Largest absolute row sum of the solution for C = I: for stable A a bound on the 2-norm of the inverse Lyapunov operator. */
-export function inverseLyapunovNorm(schur: FlatSchur, n: number, sampled: boolean): number {
-  const y = solveLyapunovBySchur(schur, n, flatIdentity(n), sampled);
-  let norm = 0;
-  for (let i = 0; i < n; i++) {
-    let sum = 0;
-    for (let j = 0; j < n; j++) sum += Math.abs(y[i * n + j]);
-    norm = Math.max(norm, sum);
-  }
-  return norm;
 }

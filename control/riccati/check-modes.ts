@@ -1,8 +1,9 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { balance } from "../linalg/balance";
+import type { ComplexVector } from "../linalg/complex";
 import { eigenvalues } from "../linalg/eigenvalues";
-import { fromFlat } from "../linalg/flat";
+import { fromFlat, pythagoras } from "../linalg/flat";
 import { frobeniusNorm } from "../linalg/norms";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { smallestSingularComplex } from "../linalg/singular-values";
@@ -11,6 +12,10 @@ import type { FlatProblem } from "./problem";
 
 /** How near a mode comes to being out of reach (or out of sight), relative to the norm of the tested matrix. */
 export type ModeDistance = { readonly pole: Complex; readonly state: number; readonly distance: number };
+
+/** Below this a computed eigenvalue may be a scattered copy of a multiple one (ε^(1/4), for blocks up to four). */
+const SCATTER = 1e-3;
+const ROUNDS = 12;
 
 /** 1000 n ε: what rounding of the entries, amplified by an ordinary change of coordinates, can leave of an exact zero. */
 function rankTolerance(n: number): number {
@@ -36,14 +41,13 @@ export function leastReachable({ n, m, a, b, sampled }: FlatProblem): ModeDistan
   const { A, scale, order } = balancedPlant(a, n);
   const B = new Matrix(n, m);
   for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) B.set(i, j, b[order[i] * m + j] / scale[i]);
-  unitColumns(B, Math.max(frobeniusNorm(A), Number.MIN_VALUE));
+  unitColumns(B, frobeniusNorm(A) || 1);
   let least: ModeDistance | null = null;
   const slack = boundarySlack(A, sampled);
   for (const pole of eigenvalues(A)) {
     if (pole.im < 0 || boundaryMargin(pole, sampled) > slack) continue;
-    const { value, vector, size } = pencilDistance(A, pole, B);
-    const distance = size === 0 ? 0 : value / size;
-    if (!least || distance < least.distance) least = { pole, state: order[largestPlace(vector)], distance };
+    const found = settledDistance(A, pole, B, sampled);
+    if (!least || found.distance < least.distance) least = { ...found, state: order[found.state] };
   }
   return least;
 }
@@ -57,14 +61,41 @@ function hiddenBoundaryMode(problem: FlatProblem): ModeDistance | null {
   const At = A.transpose();
   const Q = new Matrix(n, n);
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) Q.set(i, j, q[order[i] * n + order[j]] * scale[i]);
-  unitColumns(Q, Math.max(frobeniusNorm(A), Number.MIN_VALUE));
+  unitColumns(Q, frobeniusNorm(A) || 1);
   for (const pole of eigenvalues(A)) {
     if (pole.im < 0 || Math.abs(boundaryMargin(pole, sampled)) > slack) continue;
-    const { value, vector, size } = pencilDistance(At, pole, Q);
-    const distance = size === 0 ? 0 : value / size;
-    if (distance <= rankTolerance(n)) return { pole, state: order[largestPlace(vector)], distance };
+    const found = pencilDistance(At, pole, Q);
+    if (found.distance <= rankTolerance(n)) return { pole, state: order[found.state], distance: found.distance };
   }
   return null;
+}
+
+/**
+ * Distance at the pole, or at a nearby unreachable value it is a rounded image of: computed copies of a multiple eigenvalue
+ * scatter by a root of rounding, and the Rayleigh quotient of the left vector brings them back.
+ */
+function settledDistance(A: Matrix, pole: Complex, B: Matrix, sampled: boolean): ModeDistance {
+  let best = { pole, ...pencilDistance(A, pole, B) };
+  for (let round = 0; round < ROUNDS && best.distance < SCATTER && best.distance > rankTolerance(A.rows); round++) {
+    const moved = rayleighQuotient(A, best.left);
+    const next = { pole: moved, ...pencilDistance(A, moved, B) };
+    const near = boundaryMargin(moved, sampled) <= Math.sqrt(Number.EPSILON) * Math.max(frobeniusNorm(A), sampled ? 1 : 0);
+    if (!near || !(next.distance < 0.5 * best.distance)) break;
+    best = next;
+  }
+  return { pole: best.pole, state: best.state, distance: best.distance };
+}
+
+/** w* A w for a unit vector w. */
+function rayleighQuotient(A: Matrix, { re, im }: ComplexVector): Complex {
+  const value = { re: 0, im: 0 };
+  for (let i = 0; i < re.length; i++) {
+    for (let j = 0; j < re.length; j++) {
+      value.re += A.get(i, j) * (re[i] * re[j] + im[i] * im[j]);
+      value.im += A.get(i, j) * (re[i] * im[j] - im[i] * re[j]);
+    }
+  }
+  return value;
 }
 
 function balancedPlant(a: Float64Array, n: number): { A: Matrix; scale: Float64Array; order: Int32Array } {
@@ -85,15 +116,15 @@ function unitColumns(B: Matrix, size: number): void {
 
 /** Distance inside the stability boundary: -Re s, or 1 - |z|. */
 export function boundaryMargin({ re, im }: Complex, sampled: boolean): number {
-  return sampled ? 1 - Math.sqrt(re * re + im * im) : -re;
+  return sampled ? 1 - pythagoras(re, im) : -re;
 }
 
 function boundarySlack(A: Matrix, sampled: boolean): number {
   return 4 * A.rows * Number.EPSILON * Math.max(frobeniusNorm(A), sampled ? 1 : 0);
 }
 
-/** Smallest singular value of [A - pole I, B], its left vector's sizes, and the Frobenius norm of the matrix. */
-function pencilDistance(A: Matrix, pole: Complex, B: Matrix): { value: number; vector: number[]; size: number } {
+/** Smallest singular value of [A - pole I, B] over its Frobenius norm, its left vector and the largest place of that. */
+function pencilDistance(A: Matrix, pole: Complex, B: Matrix): { distance: number; left: ComplexVector; state: number } {
   const n = A.rows;
   const re = Matrix.zeros(n, n + B.columns);
   const im = Matrix.zeros(n, n + B.columns);
@@ -104,12 +135,7 @@ function pencilDistance(A: Matrix, pole: Complex, B: Matrix): { value: number; v
     im.set(i, i, -pole.im);
   }
   const { value, left } = smallestSingularComplex(re, im);
-  const vector = Array.from(left.re, (x, i) => x * x + left.im[i] * left.im[i]);
-  const size = frobeniusNorm(re);
-  const turn = frobeniusNorm(im);
-  return { value, vector, size: Math.sqrt(size * size + turn * turn) };
-}
-
-function largestPlace(vector: readonly number[]): number {
-  return vector.indexOf(Math.max(...vector));
+  const size = pythagoras(frobeniusNorm(re), frobeniusNorm(im));
+  const shares = Array.from(left.re, (x, i) => x * x + left.im[i] * left.im[i]);
+  return { distance: size === 0 ? 0 : value / size, left, state: shares.indexOf(Math.max(...shares)) };
 }

@@ -14,10 +14,15 @@ export type RiccatiProblem = {
   readonly R: Matrix;
   readonly S?: Matrix;
   readonly sampled?: boolean;
+  /** Try a problem whose weights are indefinite: it may have a stabilising solution, but no regulator problem stands behind it. */
+  readonly allowIndefinite?: boolean;
 };
 
+/** `indefinite` holds the refusal that was waived by `allowIndefinite`. */
+export type CheckedProblem = { readonly problem: FlatProblem; readonly indefinite: NumericalError | null };
+
 /** Shapes, finiteness and symmetry, then the definiteness of the weights; the flat problem with Q and R exactly symmetric. */
-export function checkProblem({ A, B, Q, R, S, sampled = false }: RiccatiProblem): FlatProblem {
+export function checkProblem({ A, B, Q, R, S, sampled = false, allowIndefinite = false }: RiccatiProblem): CheckedProblem {
   const n = A.rows;
   const m = B.columns;
   requireShape("A", A, n, n);
@@ -39,8 +44,9 @@ export function checkProblem({ A, B, Q, R, S, sampled = false }: RiccatiProblem)
   requireSymmetric("R", R);
   const problem = { n, m, sampled, a: toFlat(A), b: toFlat(B), q: symmetricFlat(Q), r: symmetricFlat(R), s: toFlat(cross) };
   if (!sampled) flatCholesky(problem.r, m, "R");
-  requireSemidefinite(problem);
-  return problem;
+  const indefinite = weightRefusal(problem);
+  if (indefinite && !allowIndefinite) throw indefinite;
+  return { problem, indefinite };
 }
 
 function symmetricFlat(M: Matrix): Float64Array {
@@ -52,7 +58,7 @@ function symmetricFlat(M: Matrix): Float64Array {
 }
 
 /** The block [Q S; S' R], scaled by powers of two to a diagonal near one, may be negative only by rounding. */
-function requireSemidefinite({ n, m, q, r, s }: FlatProblem): void {
+function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | null {
   const size = n + m;
   const entry = (i: number, j: number): number => {
     if (i < n) return j < n ? q[i * n + j] : s[i * m + j - n];
@@ -67,13 +73,13 @@ function requireSemidefinite({ n, m, q, r, s }: FlatProblem): void {
   if (!block.every(Number.isFinite)) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
   // Rounding of entries typed in decimal, or of a product C'C, is a few n ε of the unit diagonal.
   const tolerance = 16 * size * Number.EPSILON;
-  if (plainlySemidefinite(block.slice(), size)) return;
+  if (plainlySemidefinite(block.slice(), size)) return null;
   const least = symmetricEigenvalues(
     new Matrix(Array.from({ length: size }, (_, i) => [...block.subarray(i * size, i * size + size)])),
   )[0];
-  if (least >= -tolerance) return;
+  if (least >= -tolerance) return null;
   const given = new Matrix(Array.from({ length: size }, (_, i) => Array.from({ length: size }, (_, j) => entry(i, j))));
-  throw new NumericalError("not-positive-semidefinite", {
+  return new NumericalError("not-positive-semidefinite", {
     matrix: s.some((x) => x !== 0) ? "[Q S; S' R]" : blame(given, n),
     eigenvalue: symmetricEigenvalues(given)[0],
   });

@@ -4,17 +4,18 @@ import { flatProduct, flatTranspose } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { type FlatSchur, flatSchur } from "../linalg/real-schur";
 import { schurValues } from "../linalg/schur-values";
-import { inverseLyapunovNorm, solveLyapunovBySchur } from "../linalg/solve-lyapunov";
+import { solveLyapunovBySchur } from "../linalg/solve-lyapunov";
 import { roughGain } from "./gain";
 import type { Start } from "./problem";
 import { type GainSystem, gainSystem, riccatiResidual, type SplitProblem } from "./residual";
+import { diagonalMajorant, residualSizes } from "./residual-sizes";
 
 export type Refined = {
   readonly x: Wide;
   readonly system: GainSystem;
   readonly steps: number;
-  /** Bound on the 2-norm error of x before rounding, in scaled coordinates. */
-  readonly error: number;
+  /** Entry (i, j) of x, before rounding, is off by at most error[i] error[j], to first order; in scaled coordinates. */
+  readonly error: Float64Array;
 };
 
 const STEP_LIMIT = 60;
@@ -49,7 +50,7 @@ export function refine(problem: SplitProblem, start: Start): Refined {
     if (given) size = 1;
     given = null;
     if (!Number.isFinite(size)) break;
-    if (size <= ENOUGH || (size <= STANDSTILL_BELOW && size > 0.1 * last)) return finish(problem, x, schur, step, size);
+    if (size <= ENOUGH || (size <= STANDSTILL_BELOW && size > 0.1 * last)) return finish(problem, x, schur, step);
     // Halving steps are the sign of a closed loop on the stability boundary: they prove nothing.
     if (size < 1e-2 && size > 0.1 * last) slow += 1;
     if (slow > 4) break;
@@ -82,19 +83,11 @@ function stableLoop(problem: SplitProblem, k: Float64Array): FlatSchur {
   return schur;
 }
 
-function finish(problem: SplitProblem, x: Wide, schur: FlatSchur, steps: number, size: number): Refined {
+function finish(problem: SplitProblem, x: Wide, schur: FlatSchur, steps: number): Refined {
   const { n, sampled } = problem;
   const system = gainSystem(problem, x);
-  const residual = flatNorm(riccatiResidual(problem, x, roughGain(problem, system), system));
-  const norm = inverseLyapunovNorm(schur, n, sampled);
-  const largest = flatNorm(x.hi);
-  const loopSize = flatNorm(schur.t);
-  // Rounding of the double-double residual itself: n² ε² of its largest terms.
-  const floor =
-    n *
-    n *
-    Number.EPSILON *
-    Number.EPSILON *
-    (largest * (sampled ? 1 + loopSize * loopSize : 2 * loopSize) + flatNorm(problem.q));
-  return { x, system, steps, error: 2 * norm * (residual + floor) + size * size * largest };
+  const k = roughGain(problem, system);
+  const sizes = residualSizes(problem, x.hi, k, riccatiResidual(problem, x, k, system));
+  const y = solveLyapunovBySchur(schur, n, diagonalMajorant(sizes, n), sampled);
+  return { x, system, steps, error: Float64Array.from({ length: n }, (_, i) => Math.sqrt(Math.abs(y[i * n + i]))) };
 }

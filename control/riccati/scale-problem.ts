@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { largestEntry } from "../linalg/flat";
-import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { exponentOf, powerOfTwo, timesPowerOfTwo } from "../linalg/power-of-two";
 import type { FlatProblem } from "./problem";
 
 /**
@@ -15,8 +15,8 @@ export type ScaledProblem = {
   readonly time: number;
 };
 
-const LARGEST_SHIFT = 400;
-const ROUNDS = 30;
+const LARGEST_SHIFT = 500;
+const ROUNDS = 200;
 
 /**
  * Scales time, cost, inputs and states by powers of two so that A, B R⁻¹ B' and Q are of like size.
@@ -27,10 +27,11 @@ const ROUNDS = 30;
  */
 export function scaleProblem(given: FlatProblem, g: (scaled: FlatProblem) => Float64Array): ScaledProblem {
   const { n, m, sampled } = given;
-  const time = sampled ? 0 : exponentOrZero(largestEntry(given.a));
   const cost = exponentOrZero(Math.max(largestEntry(given.q), largestEntry(given.r)));
   const input = Float64Array.from({ length: m }, (_, j) => inputScale(given, j, cost));
-  const state = new Float64Array(n).fill(1);
+  const sizes = exponents(given, input, cost);
+  const time = sampled ? 0 : sizes.time;
+  const state = new Float64Array(n).fill(powerOfTwo(sizes.state));
   const first = apply(given, state, input, cost, time);
   balanceStates(first, g(first), state);
   const problem = apply(given, state, input, cost, time);
@@ -38,6 +39,25 @@ export function scaleProblem(given: FlatProblem, g: (scaled: FlatProblem) => Flo
   if (!parts.every((part) => part.every(Number.isFinite)))
     throw new NumericalError("too-large", { what: "scaled-problem", limit: Number.MAX_VALUE });
   return { problem, state, input, cost, time };
+}
+
+/**
+ * Exponents of a unit of time in which A, and the square root of G times Q, are at most near one, and of one scale for all
+ * states at which G and Q are of like size.
+ */
+function exponents({ n, m, a, b, q, sampled }: FlatProblem, input: Float64Array, cost: number): { time: number; state: number } {
+  let inputs = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < m; j++)
+      if (b[i * m + j] !== 0) inputs = Math.max(inputs, exponentOf(b[i * m + j]) + exponentOf(input[j]));
+  }
+  const sizeQ = largestEntry(q);
+  const plant = largestEntry(a);
+  if (inputs === Number.NEGATIVE_INFINITY || sizeQ === 0) return { time: exponentOrZero(plant), state: 0 };
+  const weight = exponentOf(sizeQ) - cost;
+  const both = Math.round((2 * inputs + weight) / 2);
+  const time = sampled ? 0 : plant === 0 ? both : Math.max(exponentOf(plant), both);
+  return { time, state: Math.round((2 * (inputs - time) - weight) / 4) };
 }
 
 function exponentOrZero(size: number): number {
@@ -54,19 +74,19 @@ function inputScale({ n, m, b, r }: FlatProblem, j: number, cost: number): numbe
 
 function apply(given: FlatProblem, state: Float64Array, input: Float64Array, cost: number, time: number): FlatProblem {
   const { n, m, sampled } = given;
-  const perTime = powerOfTwo(-time);
-  const perCost = powerOfTwo(-cost);
-  const scaled = (from: Float64Array, columns: number, factor: (i: number, j: number) => number) =>
-    from.map((entry, at) => (entry === 0 ? 0 : entry * factor(Math.floor(at / columns), at % columns)));
+  const d = Array.from(state, exponentOf);
+  const e = Array.from(input, exponentOf);
+  const scaled = (from: Float64Array, columns: number, shift: (i: number, j: number) => number) =>
+    from.map((entry, at) => (entry === 0 ? 0 : timesPowerOfTwo(entry, shift(Math.floor(at / columns), at % columns))));
   return {
     n,
     m,
     sampled,
-    a: scaled(given.a, n, (i, j) => (perTime / state[i]) * state[j]),
-    b: scaled(given.b, m, (i, j) => (perTime / state[i]) * input[j]),
-    q: scaled(given.q, n, (i, j) => perCost * state[i] * state[j]),
-    r: scaled(given.r, m, (i, j) => perCost * input[i] * input[j]),
-    s: scaled(given.s, m, (i, j) => perCost * state[i] * input[j]),
+    a: scaled(given.a, n, (i, j) => d[j] - d[i] - time),
+    b: scaled(given.b, m, (i, j) => e[j] - d[i] - time),
+    q: scaled(given.q, n, (i, j) => d[i] + d[j] - cost),
+    r: scaled(given.r, m, (i, j) => e[i] + e[j] - cost),
+    s: scaled(given.s, m, (i, j) => d[i] + e[j] - cost),
   };
 }
 
@@ -122,5 +142,5 @@ function bestStep({ falling, rising, falling2, rising2 }: Terms, present: number
       }
     }
   }
-  return least < 0.95 * size(0) ? best : 0;
+  return least < 0.99 * size(0) ? best : 0;
 }

@@ -39,6 +39,8 @@ export type RiccatiSolution = {
 
 export type RiccatiMethod = "doubling" | "ordered-schur" | "stabilising-gain";
 
+/** Once every start has failed, a mode this near to being unreachable is named as the cause. */
+const NEARLY_UNREACHABLE = 1e-6;
 const GAIN_SHIFTS = [0.3, 1, 0.1, 3];
 
 /**
@@ -48,27 +50,28 @@ const GAIN_SHIFTS = [0.3, 1, 0.1, 3];
  * Shapes    A n×n, B n×m, Q n×n, R m×m, S n×m (zero when absent) → X n×n, K m×n
  * Units     u = -K x minimises x'Qx + 2 x'Su + u'Ru
  * Throws    shape-mismatch; not-finite; too-large; not-symmetric; not-positive-definite (R; sampled: R + B'XB);
- *           not-positive-semidefinite ([Q S; S' R]); not-stabilizable; unweighted-boundary-mode; on-stability-boundary;
+ *           not-positive-semidefinite ([Q S; S' R]; with allowIndefinite only when no
+ *           stabilising solution is found); not-stabilizable; unweighted-boundary-mode; on-stability-boundary;
  *           no-convergence; inaccurate. Never returns a gain that does not stabilise
  * Accuracy  ordinarily every entry of X and K correctly rounded; errorBound says when not
  * Source    doubling: Chu, Fan & Lin 2005; Schur method: Laub 1979; Newton: Kleinman 1968, Hewer 1971, with residuals in
  *           double-double; scaling: Benner 2001
  */
 export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
-  const original = checkProblem(given);
+  const { problem: original, indefinite } = checkProblem(given);
   checkModes(original);
   const scaled = scaleProblem(original, scalingWeight);
   const problem = splitProblem(scaled.problem);
-  let reason: NumericalError | null = null;
+  const reasons: NumericalError[] = [];
   for (const { method, start } of starts(problem)) {
     try {
       return verifiedSolution(original, scaled, refine(problem, start()), method);
     } catch (error) {
       if (!(error instanceof NumericalError)) throw error;
-      reason = error;
+      reasons.push(error);
     }
   }
-  throw refusal(original, scaled.problem, reason);
+  throw indefinite ?? refusal(original, scaled.problem, reasons);
 }
 
 /** The starts in order of cost. */
@@ -115,13 +118,26 @@ function scalingWeight(problem: FlatProblem): Float64Array {
 }
 
 /** Why no start ended in a verified solution, as near as can be told. */
-function refusal(original: FlatProblem, problem: FlatProblem, reason: NumericalError | null): NumericalError {
-  if (reason?.code === "not-positive-definite" || reason?.code === "too-large") return reason;
+function refusal(original: FlatProblem, problem: FlatProblem, reasons: readonly NumericalError[]): NumericalError {
+  const singularWeight = startable(problem).auxiliary ? reasons.find(({ code }) => code === "not-positive-definite") : undefined;
+  if (singularWeight) return singularWeight;
   const nearest = leastReachable(original);
-  const rough = Math.sqrt(Number.EPSILON);
-  if (nearest && nearest.distance < rough) return new NumericalError("not-stabilizable", nearest);
-  const h = hamiltonianMatrix(removeCrossTerm(startable(problem).plain, "R"));
-  const distance = Math.min(...eigenvalues(fromFlat(h, 2 * problem.n, 2 * problem.n)).map(({ re }) => Math.abs(re)));
-  if (distance <= 10 * rough * flatNorm(h)) return new NumericalError("on-stability-boundary", { distance });
-  return new NumericalError("no-convergence", { routine: "solve-riccati", limit: 2 + GAIN_SHIFTS.length });
+  if (nearest && nearest.distance < NEARLY_UNREACHABLE) return new NumericalError("not-stabilizable", nearest);
+  const distance = axisDistance(problem);
+  if (distance !== null) return new NumericalError("on-stability-boundary", { distance });
+  const failed = reasons.find(({ code }) => code === "too-large" || code === "inaccurate");
+  return failed ?? new NumericalError("no-convergence", { routine: "solve-riccati", limit: 2 + GAIN_SHIFTS.length });
+}
+
+/** Least real part in size among the Hamiltonian eigenvalues where it is within √ε of zero, else null. */
+function axisDistance(problem: FlatProblem): number | null {
+  try {
+    const h = hamiltonianMatrix(removeCrossTerm(startable(problem).plain, "R"));
+    const size = 2 * problem.n;
+    const distance = Math.min(...eigenvalues(fromFlat(h, size, size)).map(({ re }) => Math.abs(re)));
+    return distance <= 10 * Math.sqrt(Number.EPSILON) * flatNorm(h) ? distance : null;
+  } catch (error) {
+    if (error instanceof NumericalError) return null;
+    throw error;
+  }
 }

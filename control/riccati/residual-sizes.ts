@@ -1,0 +1,49 @@
+import { flatProduct, flatTransposedProduct } from "../linalg/flat";
+import type { FlatProblem } from "./problem";
+
+/**
+ * Size of each entry of a residual plus what rounding in double-double may hide in it: 4 (n + m) ε² of the sizes of the terms
+ * that were summed.
+ *
+ * Shapes    x n×n, k m×n, residual n×n → n×n, not negative
+ */
+export function residualSizes(problem: FlatProblem, x: Float64Array, k: Float64Array, residual: Float64Array): Float64Array {
+  const { n, m, s, q, sampled } = problem;
+  const a = problem.a.map(Math.abs);
+  const b = problem.b.map(Math.abs);
+  const gain = k.map(Math.abs);
+  const states = flatTransposedProduct(a, x.map(Math.abs), n, n, n);
+  const inputs = flatTransposedProduct(b, x.map(Math.abs), n, m, n);
+  const right = sampled ? flatProduct(inputs, a, m, n, n) : inputs.slice();
+  for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) right[j * n + i] += Math.abs(s[i * m + j]);
+  const weight = problem.r.map(Math.abs);
+  if (sampled) for (const [at, entry] of flatProduct(inputs, b, m, n, m).entries()) weight[at] += entry;
+  const pulled = flatTransposedProduct(gain, right, m, n, n);
+  const costs = flatTransposedProduct(gain, flatProduct(weight, gain, m, m, n), m, n, n);
+  const own = sampled ? flatProduct(states, a, n, n, n) : states;
+  const unit = 4 * (n + m) * Number.EPSILON * Number.EPSILON;
+  const sizes = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < n; j++) {
+      const [at, mirror] = [i * n + j, j * n + i];
+      const state = sampled ? own[at] + Math.abs(x[at]) : own[at] + own[mirror];
+      sizes[at] = Math.abs(residual[at]) + unit * (state + Math.abs(q[at]) + pulled[at] + pulled[mirror] + costs[at]);
+    }
+  }
+  return sizes;
+}
+
+/** Diagonal matrix D with -D ≤ M ≤ D for every symmetric M whose entries are at most the given sizes. */
+export function diagonalMajorant(sizes: Float64Array, n: number): Float64Array {
+  const majorant = new Float64Array(n * n);
+  const largest = sizes.reduce((size, entry) => Math.max(size, entry), 0);
+  if (largest === 0) return majorant;
+  // Weights near the square roots of the diagonal make the majorant of a rank-one pattern no larger than n times it.
+  const w = Float64Array.from({ length: n }, (_, i) => Math.sqrt(sizes[i * n + i] + largest * Number.EPSILON * Number.EPSILON));
+  for (let i = 0; i < n; i++) {
+    let sum = 0;
+    for (let j = 0; j < n; j++) sum += sizes[i * n + j] / w[j];
+    majorant[i * n + i] = w[i] * sum;
+  }
+  return majorant;
+}
