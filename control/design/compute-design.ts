@@ -1,11 +1,11 @@
 import { type ReferenceGain, referenceGain } from "../lqr/reference-gain";
+import { attempt, attemptAfter, shown } from "../plant/attempt";
 import type { PlantModel } from "../plant/model";
 import type { Part } from "../plant/report";
 import { scalePlant } from "../plant/scale-plant";
 import { toRows } from "../plant/to-matrix";
 import type { InputRoom } from "../response/loop-figures";
 import { respond } from "../response/respond";
-import { attempt, attemptAfter, shown } from "./attempt";
 import type { Evidence, ReferenceEvidence } from "./evidence";
 import { findGain } from "./find-gain";
 import { findObserver } from "./find-observer";

@@ -1,4 +1,3 @@
-import { NumericalError } from "../errors";
 import { modulus } from "../linalg/complex";
 import { eigensystem } from "../linalg/eigensystem";
 import { stabilityMargin } from "../structure/continuous-pole";
@@ -8,8 +7,9 @@ import { reachOfInputs, sightOfOutputs } from "../structure/plant-reach";
 import { scalingReport } from "../structure/scaling-report";
 import { timeBaseSuspicion } from "../structure/time-base-suspicion";
 import { transmissionZeros } from "../structure/transmission-zeros";
+import { attempt } from "./attempt";
 import type { Complex, PlantModel, TimeBase } from "./model";
-import type { Part, PlantChecks, ZeroReport } from "./report";
+import type { PlantChecks, ZeroReport } from "./report";
 import { scalePlant } from "./scale-plant";
 
 /**
@@ -27,15 +27,15 @@ export function checkPlant(model: PlantModel): PlantChecks {
   const reach = once(() => reachOfInputs(scaled, spectrum().values));
   const sight = once(() => sightOfOutputs(scaled, model.timeBase, spectrum().values));
   const modes = once(() => describeModes(scaled, model.timeBase, spectrum(), reach(), sight()));
-  const suspicion = part(() => timeBaseSuspicion(spectrum().values, model.timeBase));
+  const suspicion = attempt(() => timeBaseSuspicion(spectrum().values, model.timeBase));
   return {
-    modes: part(modes),
-    controllability: part(() => reach().report),
-    observability: part(() => sight().report),
-    stabilizable: part(() => modes().every((mode) => mode.stable || mode.controllable)),
-    detectable: part(() => modes().every((mode) => mode.stable || mode.observable)),
-    zeros: part(() => judgeZeros(transmissionZeros(scaled), model.timeBase)),
-    coupling: part(() => couplingReport(model, scaled)),
+    modes: attempt(modes),
+    controllability: attempt(() => reach().report),
+    observability: attempt(() => sight().report),
+    stabilizable: attempt(() => modes().every((mode) => mode.stable || mode.controllable)),
+    detectable: attempt(() => modes().every((mode) => mode.stable || mode.observable)),
+    zeros: attempt(() => judgeZeros(transmissionZeros(scaled), model.timeBase)),
+    coupling: attempt(() => couplingReport(model, scaled)),
     scaling: scalingReport(model, scaled),
     timeBaseSuspicion: suspicion.state === "computed" ? suspicion.value : null,
   };
@@ -46,15 +46,6 @@ function judgeZeros(zeros: readonly Complex[], timeBase: TimeBase): ZeroReport[]
   const largest = zeros.reduce((size, zero) => Math.max(size, modulus(zero)), timeBase.kind === "sampled" ? 1 : 0);
   const rounding = 64 * zeros.length * Number.EPSILON * largest;
   return zeros.map((value) => ({ value, minimumPhase: stabilityMargin(value, timeBase) > rounding }));
-}
-
-function part<T>(compute: () => T): Part<T> {
-  try {
-    return { state: "computed", value: compute() };
-  } catch (error) {
-    if (error instanceof NumericalError) return { state: "refused", code: error.code, data: error.data };
-    throw error;
-  }
 }
 
 /** Computes at most once; a refusal is remembered like a result. */

@@ -1,5 +1,5 @@
 import { NumericalError } from "../errors";
-import type { Part } from "../plant/report";
+import type { Part } from "./report";
 
 /** Runs one part of a computation; a refusal of the core becomes its result, anything else is a fault and goes on. */
 export function attempt<T>(work: () => T): Part<T> {
