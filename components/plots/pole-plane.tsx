@@ -36,7 +36,7 @@ export function PolePlane({ title, poles, sampled, table = true }: PolePlaneProp
     sampled,
   );
   return (
-    <figure className="max-w-xl min-w-[17.5rem]">
+    <figure className="max-w-96 min-w-[17.5rem]">
       <figcaption className="mb-1 text-table font-semibold">{title}</figcaption>
       <svg
         role="img"
