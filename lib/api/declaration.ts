@@ -11,6 +11,8 @@ export type Declaration = {
   readonly params?: z.ZodType;
   readonly query?: z.ZodType;
   readonly body?: z.ZodType;
+  /** A body that works as it stands, for the API description; a test sends it. */
+  readonly example?: unknown;
   /** `null`: nothing but the status 204. */
   readonly reply: z.ZodType | FileReply | null;
   readonly right?: Right;

@@ -69,7 +69,7 @@ function operationOf(
   method: Method,
   { declaration, access }: Pick<DeclaredRoute, "declaration" | "access">,
 ): RouteConfig {
-  const { summary, params, query, body } = declaration;
+  const { summary, params, query, body, example } = declaration;
   return {
     method: LOWER[method],
     path,
@@ -82,7 +82,9 @@ function operationOf(
       ...(params && { params: asObject(params) }),
       ...(query && { query: asObject(query) }),
       headers: headersOf(declaration),
-      ...(body && { body: { required: true, content: { "application/json": { schema: body } } } }),
+      ...(body && {
+        body: { required: true, content: { "application/json": { schema: body, ...(example !== undefined && { example }) } } },
+      }),
     },
     responses: { ...success(declaration), ...refusals(declaration, access) },
   };

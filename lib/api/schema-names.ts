@@ -1,14 +1,28 @@
 import { zodToOpenAPIRegistry } from "@asteasolutions/zod-to-openapi";
 import { z } from "zod";
+import * as account from "@/lib/schemas/account";
 import * as comparison from "@/lib/schemas/comparison";
 import * as design from "@/lib/schemas/design";
 import * as evidence from "@/lib/schemas/evidence";
+import * as invitation from "@/lib/schemas/invitation";
 import * as plant from "@/lib/schemas/plant";
 import * as problem from "@/lib/schemas/problem";
 import * as recipe from "@/lib/schemas/recipe";
+import * as team from "@/lib/schemas/team";
 import * as template from "@/lib/schemas/template";
 
-const MODULES: readonly Readonly<Record<string, unknown>>[] = [plant, recipe, evidence, design, comparison, template, problem];
+const MODULES: readonly Readonly<Record<string, unknown>>[] = [
+  plant,
+  recipe,
+  evidence,
+  design,
+  comparison,
+  template,
+  account,
+  invitation,
+  team,
+  problem,
+];
 
 let named = false;
 
@@ -20,7 +34,10 @@ let named = false;
 export function nameSchemas(): void {
   if (named) return;
   named = true;
+  const taken = new Map<string, unknown>();
   for (const [refId, schema] of MODULES.flatMap((module) => Object.entries(module))) {
+    if ((taken.get(refId) ?? schema) !== schema) throw new Error(`Two schemas are named ${refId}.`);
+    taken.set(refId, schema);
     if (schema instanceof z.ZodObject || schema instanceof z.ZodUnion) zodToOpenAPIRegistry.add(schema, { _internal: { refId } });
   }
 }
