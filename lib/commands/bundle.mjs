@@ -1,4 +1,4 @@
-import { existsSync, mkdirSync, renameSync, writeFileSync } from "node:fs";
+import { mkdirSync, renameSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { root } from "./paths.mjs";
@@ -19,9 +19,7 @@ const entries = {
 export async function bundle(names = Object.keys(entries)) {
   const { build, stop } = await import("esbuild");
   const { outputFiles } = await build({
-    entryPoints: Object.fromEntries(
-      Object.entries(entries).filter(([name, path]) => names.includes(name) && existsSync(join(root, path))),
-    ),
+    entryPoints: Object.fromEntries(Object.entries(entries).filter(([name]) => names.includes(name))),
     absWorkingDir: root,
     outdir: "dist",
     outExtension: { ".js": ".mjs" },

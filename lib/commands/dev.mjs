@@ -7,17 +7,10 @@ import { root, script, stateFolder } from "./paths.mjs";
 /** Pages that follow the sources, on a private database of their own beside that of `npm start`. */
 async function develop() {
   ensurePackages({ development: true });
-  const [
-    { openPrivateDatabase },
-    { freePort },
-    { seedOnce },
-    { claim },
-    { secrets },
-    { serviceEnvironment, startWorker, untilHealthy },
-  ] = await Promise.all([
+  const [{ openPrivateDatabase }, { freePort }, { loadDemoData }, { claim }, { secrets }, service] = await Promise.all([
     import("./private-database.mjs"),
     import("./free-port.mjs"),
-    import("./migrations.mjs"),
+    import("./demo-data.mjs"),
     import("./run-lock.mjs"),
     import("./secrets.mjs"),
     import("./service.mjs"),
@@ -28,14 +21,15 @@ async function develop() {
   const host = process.env.HOST || "127.0.0.1";
   const port = await freePort(host, Number(process.env.PORT || 3100));
   const address = `http://localhost:${port}`;
-  const { child, ...urls } = await openPrivateDatabase(state, keys);
-  const service = { ...urls, address, secret: keys.auth, demo: true };
-  const env = serviceEnvironment(service);
-  await seedOnce(urls.ownerUrl, env);
-  const worker = startWorker(service);
+  const common = { address, secret: keys.auth, demo: true };
+  const { child, ...urls } = await openPrivateDatabase(state, keys, (made) =>
+    loadDemoData(service.serviceEnvironment({ ...made, ...common })),
+  );
+  const env = service.serviceEnvironment({ ...urls, ...common }, "development");
+  const worker = service.startWorker({ ...urls, ...common });
   const args = [script("next", "dist/bin/next"), "dev", "--hostname", host, "--port", String(port)];
-  const web = startChild(process.execPath, args, { name: "The web server", env: { ...env, NODE_ENV: "development" }, cwd: root });
-  await untilHealthy([web, worker], `http://127.0.0.1:${port}`);
+  const web = startChild(process.execPath, args, { name: "The web server", env, cwd: root });
+  await service.untilHealthy([web, worker], `http://127.0.0.1:${port}`);
   lock.announce(address);
   console.log(`\n  ${address}\n  psql "${urls.ownerUrl}"\n`);
   await Promise.race([web.exited, worker.exited, child.exited]);

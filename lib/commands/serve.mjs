@@ -1,8 +1,8 @@
 import { buildIfChanged } from "./build.mjs";
 import { demoAccounts, demoPassword } from "./demo-accounts.mjs";
+import { loadDemoData, loadDemoDataOnce } from "./demo-data.mjs";
 import { openExternalDatabase } from "./external-database.mjs";
 import { freePort } from "./free-port.mjs";
-import { seedOnce } from "./migrations.mjs";
 import { stateFolder } from "./paths.mjs";
 import { openPrivateDatabase } from "./private-database.mjs";
 import { claim } from "./run-lock.mjs";
@@ -46,10 +46,18 @@ async function servingPort(host) {
  */
 async function openDatabase(state, keys, address) {
   const { DATABASE_URL: given, DATABASE_OWNER_URL: givenOwner, GAINWRIGHT_DEMO_DATA: wish } = process.env;
-  const database = given ? await openExternalDatabase(given, givenOwner) : await openPrivateDatabase(state, keys);
   // The demo accounts have published passwords: they enter a database of somebody's only by name.
   const demo = given ? wish === "yes" : wish !== "no";
-  if (demo) await seedOnce(database.ownerUrl, serviceEnvironment({ ...database, address, secret: keys.auth, demo }));
+  const settings = (/** @type {{ appUrl: string, ownerUrl: string }} */ urls) =>
+    serviceEnvironment({ ...urls, address, secret: keys.auth, demo });
+  if (!given) {
+    const fill = async (/** @type {{ appUrl: string, ownerUrl: string }} */ urls) => {
+      if (demo) await loadDemoData(settings(urls));
+    };
+    return { ...(await openPrivateDatabase(state, keys, fill)), demo };
+  }
+  const database = await openExternalDatabase(given, givenOwner);
+  if (demo) await loadDemoDataOnce(database.ownerUrl, settings(database));
   return { ...database, demo };
 }
 

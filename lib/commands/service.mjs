@@ -1,4 +1,3 @@
-import { existsSync } from "node:fs";
 import { join } from "node:path";
 import { lastLines, startChild } from "./children.mjs";
 import { root, script } from "./paths.mjs";
@@ -12,13 +11,14 @@ import { Stop } from "./stop.mjs";
 /**
  * The settings of the pages and jobs. What the person set stands, but for the accounts of the database.
  * @param {Service} service
+ * @param {"production" | "development"} [mode]
  * @returns {NodeJS.ProcessEnv}
  */
-export function serviceEnvironment({ appUrl, address, secret, demo }) {
+export function serviceEnvironment({ appUrl, address, secret, demo }, mode = "production") {
   const { DATABASE_OWNER_URL: _, ...given } = process.env;
   return {
     ...given,
-    NODE_ENV: "production",
+    NODE_ENV: mode,
     NEXT_TELEMETRY_DISABLED: "1",
     NEXTAUTH_URL: given.NEXTAUTH_URL || address,
     NEXTAUTH_SECRET: given.NEXTAUTH_SECRET || secret,
@@ -26,8 +26,6 @@ export function serviceEnvironment({ appUrl, address, secret, demo }) {
     DATABASE_URL: appUrl,
   };
 }
-
-const idle = () => startChild("sleep", ["infinity"], { name: "The job worker" });
 
 /** @param {string} name @param {string | undefined} logs a folder, or the terminal */
 const logIn = (logs, name) => (logs ? join(logs, `${name}.log`) : undefined);
@@ -39,7 +37,6 @@ const logIn = (logs, name) => (logs ? join(logs, `${name}.log`) : undefined);
  */
 export function startWorker(service, logs) {
   const env = { ...serviceEnvironment(service), DATABASE_OWNER_URL: service.ownerUrl };
-  if (!existsSync(join(root, "dist/worker.mjs"))) return idle();
   return startChild(process.execPath, [join(root, "dist/worker.mjs")], {
     name: "The job worker",
     env,

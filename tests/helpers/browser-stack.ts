@@ -2,8 +2,9 @@ import { mkdirSync } from "node:fs";
 import { join } from "node:path";
 import { stopChildren } from "../../lib/commands/children.mjs";
 import { prepareDatabase } from "../../lib/commands/databases.mjs";
+import { loadDemoData } from "../../lib/commands/demo-data.mjs";
 import { freePort } from "../../lib/commands/free-port.mjs";
-import { migrateDatabase, seedOnce } from "../../lib/commands/migrations.mjs";
+import { migrateDatabase } from "../../lib/commands/migrations.mjs";
 import { root } from "../../lib/commands/paths.mjs";
 import { serviceEnvironment, startService } from "../../lib/commands/service.mjs";
 import { startThrowAwayCluster } from "../../lib/commands/throw-away-cluster.mjs";
@@ -29,7 +30,7 @@ export default async function browserStack() {
       NEXTAUTH_URL: address,
     });
     const service = { ...urls, address, secret: "a-secret-for-browser-tests-0123456789abcdef", demo: true };
-    await seedOnce(urls.ownerUrl, serviceEnvironment(service));
+    await loadDemoData(serviceEnvironment(service));
     await startService({ ...service, host, port }, logs);
   } catch (error) {
     await mailbox.stop();
