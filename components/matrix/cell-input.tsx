@@ -1,6 +1,7 @@
 "use client";
 
 import { type CSSProperties, type KeyboardEvent, useEffect, useRef } from "react";
+import { EMPTY_ENTRY } from "./grid-edits";
 import { afterEntry } from "./grid-keys";
 
 type CellInputProps = Readonly<{
@@ -18,8 +19,10 @@ export function CellInput({ label, text, replacing, onText, onFinish, onCancel }
   useEffect(() => {
     const element = input.current;
     element?.focus();
-    element?.setSelectionRange(element.value.length, element.value.length);
-  }, []);
+    // A zero is written over, anything else is added to.
+    const from = element?.value === EMPTY_ENTRY && !replacing ? 0 : (element?.value.length ?? 0);
+    element?.setSelectionRange(from, element.value.length);
+  }, [replacing]);
   const press = (event: KeyboardEvent) => {
     event.stopPropagation();
     if (event.nativeEvent.isComposing) return;

@@ -1,6 +1,6 @@
 "use client";
 
-import { type ClipboardEvent, type KeyboardEvent, type PointerEvent, useRef } from "react";
+import { type ClipboardEvent, type KeyboardEvent, type MouseEvent, type PointerEvent, useRef } from "react";
 import type { Place } from "./grid-edits";
 import { gridAction } from "./grid-keys";
 import type { MatrixGridState } from "./use-matrix-grid";
@@ -10,9 +10,12 @@ export function placeOf(target: EventTarget): Place | null {
   return cell ? { r: Number(cell.dataset.r), c: Number(cell.dataset.c) } : null;
 }
 
+const focusIsIn = (target: EventTarget) => target instanceof Element && target.closest("td") === document.activeElement;
+
 /** Handlers for the whole grid, so that a thousand cells carry none. */
 export function useGridEvents(grid: MatrixGridState, rows: number, columns: number, readOnly: boolean) {
   const dragging = useRef(false);
+  const tappedAgain = useRef(false);
   const { at } = grid;
   const here = (place: Place) => place.r === at.r && place.c === at.c;
 
@@ -34,10 +37,9 @@ export function useGridEvents(grid: MatrixGridState, rows: number, columns: numb
     onPointerDown: (event: PointerEvent) => {
       const place = placeOf(event.target);
       if (!place || event.target instanceof HTMLInputElement) return;
-      if (event.pointerType === "touch") {
-        if (here(place) && document.activeElement === event.target) grid.act({ do: "edit" });
-        return;
-      }
+      // A second tap edits; acted on at the click, after the browser has moved focus to the cell.
+      tappedAgain.current = event.pointerType === "touch" && here(place) && focusIsIn(event.target);
+      if (event.pointerType === "touch") return;
       dragging.current = true;
       grid.go(place, event.shiftKey);
     },
@@ -45,10 +47,15 @@ export function useGridEvents(grid: MatrixGridState, rows: number, columns: numb
       const place = placeOf(event.target);
       if (place && dragging.current && event.buttons === 1 && !here(place)) grid.go(place, true);
     },
-    onPointerUp: (event: PointerEvent) => {
+    onPointerUp: () => {
       dragging.current = false;
+    },
+    onClick: (event: MouseEvent) => {
       const place = placeOf(event.target);
-      if (place && event.pointerType === "touch" && !here(place)) grid.go(place);
+      if (!place || event.target instanceof HTMLInputElement) return;
+      if (tappedAgain.current) grid.act({ do: "edit" });
+      else if (!here(place) && !event.shiftKey) grid.go(place);
+      tappedAgain.current = false;
     },
     onDoubleClick: (event: { target: EventTarget }) => {
       if (placeOf(event.target) && !grid.editing) grid.act({ do: "edit" });
