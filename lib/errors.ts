@@ -23,7 +23,12 @@ export class DomainError extends Error {
   readonly data: Readonly<Record<string, unknown>>;
   readonly issues: readonly Issue[];
 
-  constructor(code: DomainErrorCode, message: string, data: Readonly<Record<string, unknown>> = {}, issues: readonly Issue[] = []) {
+  constructor(
+    code: DomainErrorCode,
+    message: string,
+    data: Readonly<Record<string, unknown>> = {},
+    issues: readonly Issue[] = [],
+  ) {
     super(message);
     this.name = "DomainError";
     this.code = code;
@@ -40,6 +45,9 @@ export class NotFound extends DomainError {
 
 export class StaleVersion extends DomainError {
   constructor(given: number, current: number) {
-    super("stale-version", "Somebody saved a change after you opened this. Compare, then choose what to keep.", { given, current });
+    super("stale-version", "Somebody saved a change after you opened this. Compare, then choose what to keep.", {
+      given,
+      current,
+    });
   }
 }

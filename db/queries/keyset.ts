@@ -1,3 +1,4 @@
+import "server-only";
 import { type SQL, sql } from "drizzle-orm";
 import type { PgColumn } from "drizzle-orm/pg-core";
 

@@ -7,11 +7,16 @@ let common: Set<string> | undefined;
 
 export function isCommonPassword(password: string): boolean {
   common ??= new Set(dictionary["passwords-common"]);
+  const listed = common;
+  return withoutTail(password).some((text) => listed.has(text)) || isOneUnitRepeated(password.toLowerCase());
+}
+
+/** A digit or a sign or two behind a common password is what is tried next: the text as it is, and without them. */
+function withoutTail(password: string): string[] {
   const plain = password.toLowerCase();
-  const bare = plain.replace(/[\d!?.]+$/, "");
-  return (
-    common.has(plain) || (bare.length >= 4 && plain.length - bare.length <= 2 && common.has(bare)) || isOneUnitRepeated(plain)
-  );
+  return [0, 1, 2]
+    .filter((cut) => /^\P{L}*$/u.test(plain.slice(plain.length - cut)))
+    .map((cut) => plain.slice(0, plain.length - cut));
 }
 
 /** `aaaaaaaa`, `abcabcabc`, `12121212` */
@@ -35,9 +40,8 @@ export function refuseWeakPassword(password: string, own: readonly string[], poi
     throw new DomainError("invalid", "Choose another password.", {}, [{ pointer, detail }]);
   };
   if (isCommonPassword(password)) refuse("This password is on the list that attackers try first. Choose a longer, unusual one");
-  const plain = password.toLowerCase();
   const words = own.flatMap((text) => [text, text.split("@")[0]]).map((text) => text.trim().toLowerCase());
-  if (words.some((word) => word.length >= 4 && plain.replace(/[\d!?.]+$/, "") === word)) {
+  if (withoutTail(password).some((text) => text.length >= 4 && words.includes(text))) {
     refuse("Your name, address or team is the first thing to be tried. Choose something else");
   }
 }

@@ -1,3 +1,4 @@
+import "server-only";
 import type { ComparisonRow } from "@/db/queries/comparisons";
 import type { Comparison } from "@/lib/schemas/comparison";
 

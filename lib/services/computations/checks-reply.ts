@@ -1,3 +1,4 @@
+import "server-only";
 import type { PlantModel } from "@/control/plant/model";
 import type { PlantChecks } from "@/control/plant/report";
 import { describeChecks } from "@/control/words/describe-checks";

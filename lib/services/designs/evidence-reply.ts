@@ -1,3 +1,4 @@
+import "server-only";
 import type { Evidence, ResponseEvidence } from "@/control/design/evidence";
 import type { NumericalErrorCode } from "@/control/errors";
 import type { PlantModel } from "@/control/plant/model";

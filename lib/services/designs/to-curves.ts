@@ -1,3 +1,4 @@
+import "server-only";
 import type { ResponseRecord } from "@/control/design/evidence";
 import type { PlantModel } from "@/control/plant/model";
 import type { ResponseCurves } from "@/lib/schemas/evidence";

@@ -1,3 +1,4 @@
+import "server-only";
 import { CAUTIONS } from "@/control/words/cautions";
 import type { DesignRevisionEntryRow, DesignRevisionRow } from "@/db/queries/design-revisions";
 import type { DesignRow } from "@/db/queries/designs";

@@ -1,3 +1,4 @@
+import "server-only";
 import { z } from "zod";
 
 /** A reply as it is kept, to be given again word for word: `body` is its JSON text, since stored JSON loses the order of fields. */

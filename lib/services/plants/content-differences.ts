@@ -1,4 +1,5 @@
-import { commandedOf, MATRIX_NAMES, matricesOf } from "@/control/plant/evaluate-plant";
+import "server-only";
+import { commandedOf, MATRIX_NAMES, matricesOf } from "@/control/plant/content-shape";
 import type { PlantContent, PlantDifference } from "@/lib/schemas/plant";
 
 type Change = PlantDifference["changes"][number];

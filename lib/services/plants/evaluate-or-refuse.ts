@@ -1,3 +1,4 @@
+import "server-only";
 import { evaluatePlant } from "@/control/plant/evaluate-plant";
 import type { PlantModel } from "@/control/plant/model";
 import { DomainError } from "@/lib/errors";

@@ -1,3 +1,4 @@
+import "server-only";
 import type { PlantRevisionEntryRow, PlantRevisionRow } from "@/db/queries/plant-revisions";
 import type { PlantRow } from "@/db/queries/plants";
 import type { PlantRevision, PlantRevisionEntry, PlantSummary } from "@/lib/schemas/plant";

@@ -1,3 +1,4 @@
+import "server-only";
 import type { Issue } from "@/lib/errors";
 import type { PlantContent } from "@/lib/schemas/plant";
 import type { TemplateContent } from "@/lib/schemas/template";

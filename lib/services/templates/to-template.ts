@@ -1,3 +1,4 @@
+import "server-only";
 import type { listTemplates, TemplateRow } from "@/db/queries/templates";
 import type { Template, TemplateSummary } from "@/lib/schemas/template";
 
