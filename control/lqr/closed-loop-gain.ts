@@ -1,4 +1,5 @@
 import { Matrix } from "ml-matrix";
+import { requireRepresentable } from "../linalg/require-representable";
 import { solveLinear } from "../linalg/solve-linear";
 
 /** A loop u = -K x + v about z = H x + J u. */
@@ -15,13 +16,14 @@ const SLACK = 4;
  *
  * Shapes    A n×n, B n×m, H q×n, J q×m, K m×n → q×m
  * Units     z per input, each entry and its bound in units of its own
- * Throws    singular when the point is a pole of the loop
+ * Throws    singular when the point is a pole of the loop; too-large
  * Accuracy  |error| ≤ rounding, entry by entry, to first order
  * Source    Higham, Accuracy and Stability of Numerical Algorithms, 2nd ed. 2002, theorem 7.4
  */
 export function gainAtPoint({ A, B, H, J, K }: Loop, point: number): GainAtPoint {
   const n = A.rows;
   const M = Matrix.sub(Matrix.eye(n).mul(point), Matrix.sub(A, B.mmul(K)));
+  requireRepresentable("closed loop", M.to1DArray());
   const inverse = solveLinear(M, Matrix.eye(n)).X;
   const X = solveLinear(M, B).X;
   const seen = Matrix.sub(H, J.mmul(K));
@@ -33,6 +35,7 @@ export function gainAtPoint({ A, B, H, J, K }: Loop, point: number): GainAtPoint
   const rounding = Matrix.add(sizeSeen.mmul(Matrix.add(solving, sizeX)), absolute(J)).mul(
     SLACK * (n + B.columns) * Number.EPSILON,
   );
+  requireRepresentable("gain at rest", [...gain.to1DArray(), ...rounding.to1DArray()]);
   for (let i = 0; i < gain.rows; i++) {
     for (let j = 0; j < gain.columns; j++) if (Math.abs(gain.get(i, j)) <= rounding.get(i, j)) gain.set(i, j, 0);
   }

@@ -2,6 +2,7 @@ import { Matrix } from "ml-matrix";
 import { modulus } from "../linalg/complex";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
+import { requireRepresentable } from "../linalg/require-representable";
 import { gainAtPoint, type Loop } from "./closed-loop-gain";
 import { scaledInverse } from "./scaled-inverse";
 
@@ -30,7 +31,7 @@ const REACHED = Math.sqrt(Number.EPSILON);
  *
  * Shapes    A n×n, B n×m, H q×n, J q×m, K m×n → F m×q
  * Units     F in input per commanded quantity
- * Throws    shape-mismatch; not-finite; singular when A - B K has a mode at rest, which a stable loop has not
+ * Throws    shape-mismatch; not-finite; singular when A - B K has a mode at rest, which a stable loop has not; too-large
  * Accuracy  ranks are decided against rounding traced entry by entry through the solution, so units do not matter
  * Source    static gain of the closed loop; least squares after Golub & Van Loan, Matrix Computations, 4th ed. 2013, 5.5
  */
@@ -56,6 +57,7 @@ export function referenceGain({ A, B, H, J, K, sampled = false }: ReferenceProbl
   const { gain, rounding } = gainAtPoint(loop, sampled ? 1 : 0);
   const { X: F, rowScale } = scaledInverse({ gain, rounding });
   const steadyState = gain.mmul(F);
+  requireRepresentable("reference gain", [...F.to1DArray(), ...steadyState.to1DArray()]);
   const reached = Array.from({ length: q }, (_, i) =>
     steadyState.getRow(i).every((value, j) => Math.abs(value - (i === j ? 1 : 0)) * (rowScale[i] / rowScale[j]) <= REACHED),
   );

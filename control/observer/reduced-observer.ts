@@ -1,6 +1,7 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
+import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
 import { describeFixedMode } from "../poles/fixed-modes";
 import { type Placement, placePoles } from "../poles/place-poles";
@@ -38,7 +39,7 @@ export type ReducedObserver = {
  * Shapes    A n×n, B n×m, C p×n, D p×m (zero when absent), n - rank C poles → Fw r×r, Fy r×p, Fu r×m, Gw n×r, Gy n×p
  * Units     those of the plant; w has the units of mixed states
  * Throws    shape-mismatch; not-finite; pole-count; poles-not-conjugate; pole-multiplicity; not-observable
- *           { pole, state, distance } for a mode that no output sees; inaccurate; no-convergence
+ *           { pole, state, distance } for a mode that no output sees; inaccurate; no-convergence; too-large
  * Accuracy  that of placePoles on A₂₂', A₁₂'; outputs that repeat others are averaged
  * Source    Luenberger, IEEE Trans. Autom. Control 16 (1971) 596-602; Gopinath 1971
  */
@@ -58,9 +59,9 @@ export function reducedObserver({ A, B, C, D, poles }: ReducedProblem): ReducedO
   const { rank, Seen, Hidden, SeenRows, Rest, Read } = outputCoordinates(A, C);
   const order = A.rows - rank;
   if (poles.length !== order) throw new NumericalError("pole-count", { expected: order, given: poles.length });
-  if (order === 0) return readDirectly(Seen.mmul(Read), B.columns);
-  const A12 = SeenRows.mmul(A).mmul(Hidden);
-  const A22 = Rest.mmul(A).mmul(Hidden);
+  if (order === 0) return readDirectly(representable("observer", Seen.mmul(Read)), B.columns);
+  const A12 = representable("plant", SeenRows.mmul(A).mmul(Hidden));
+  const A22 = representable("plant", Rest.mmul(A).mmul(Hidden));
   const placed = placeHidden(A, C, A22, A12, poles);
   const L = placed.K.transpose();
   const Fw = Matrix.sub(A22, L.mmul(A12));
@@ -69,8 +70,14 @@ export function reducedObserver({ A, B, C, D, poles }: ReducedProblem): ReducedO
   const Gy = back.mmul(Read);
   const Fy = rows.mmul(A).mmul(Gy);
   const Fu = Matrix.sub(rows.mmul(B), Fy.mmul(through));
+  for (const M of [Fw, Fy, Fu, Hidden, Gy]) representable("observer", M);
   const { achieved, poleError, residual, bound, method } = placed;
   return { order, Fw, Fy, Fu, Gw: Hidden, Gy, achieved, poleError, residual, bound, method };
+}
+
+function representable(what: string, M: Matrix): Matrix {
+  requireRepresentable(what, M.to1DArray());
+  return M;
 }
 
 /** Gain for the part the outputs do not show; a mode that stays hidden is named in the states of the whole plant. */

@@ -13,7 +13,7 @@ import { columnsAsMatrix, type Frame } from "./eigenvector-frame";
 import { residualColumns } from "./gain-from-vectors";
 import { matchPoles } from "./match-poles";
 import type { ScaledPlant } from "./scale-plant";
-import { multiplicityOf, polesOf, type WantedPole } from "./wanted-poles";
+import { polesOf, samePole, type WantedPole } from "./wanted-poles";
 
 export type PlacementCheck = {
   /** Eigenvalues of A - B K, in the order of the blocks. */
@@ -148,16 +148,13 @@ function modulusOf(rows: Float64Array, row: number, width: number, n: number): F
   });
 }
 
-/** A pole of multiplicity k moves like the k-th root of a rounding. */
+/** A pole of multiplicity k moves like the k-th root of a rounding; the other poles, whose condition is not known, are given as much. */
 function defectiveBounds({ closed, n }: Loop, blocks: readonly WantedPole[]) {
   const { matrix, shift } = balance(toFlat(closed), n);
   const norm = flatNorm(matrix) * powerOfTwo(-shift);
-  const repeated = blocks.map((block) => multiplicityOf(block, blocks));
-  const bounds = blocks.flatMap(({ width }, k) => {
-    const order = Math.max(...repeated) === 1 ? n : repeated[k];
-    return new Array<number>(width).fill(SLACK * norm * rootOf(n * Number.EPSILON, order));
-  });
-  return { bounds, shifts: null };
+  const most = Math.max(...blocks.map((block) => blocks.filter((other) => samePole(other, block)).length));
+  const bound = SLACK * norm * rootOf(n * Number.EPSILON, most === 1 ? n : most);
+  return { bounds: new Array<number>(n).fill(bound), shifts: null };
 }
 
 /** The k-th root of 0 < x < 1, from above, by bisection. */

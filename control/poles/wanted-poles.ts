@@ -52,10 +52,8 @@ export function polesOf(blocks: readonly WantedPole[]): Complex[] {
   );
 }
 
-/** How often the pole of a block is wanted, counting poles that differ by rounding only. */
-export function multiplicityOf(block: WantedPole, blocks: readonly WantedPole[]): number {
-  const tolerance = NEARLY_EQUAL * Number.EPSILON * (Math.abs(block.re) + block.im);
-  return blocks.filter(({ re, im, width }) => {
-    return width === block.width && Math.abs(re - block.re) + Math.abs(im - block.im) <= tolerance;
-  }).length;
+/** Whether two blocks want the same pole, up to rounding. */
+export function samePole(one: WantedPole, other: WantedPole): boolean {
+  const tolerance = NEARLY_EQUAL * Number.EPSILON * (Math.abs(one.re) + one.im);
+  return one.width === other.width && Math.abs(one.re - other.re) + Math.abs(one.im - other.im) <= tolerance;
 }

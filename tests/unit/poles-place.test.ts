@@ -89,6 +89,26 @@ describe("placePoles refuses", () => {
     expect([error.code, error.data]).toEqual(["pole-multiplicity", { pole: { re: -1, im: 0 }, multiplicity: 2, rank: 1 }]);
   });
 
+  test("two poles repeated twice where the second input has only one state to itself", () => {
+    const chain = {
+      A: new Matrix([
+        [0, 1, 0, 0],
+        [0, 0, 1, 0],
+        [1, 0, 0, 0],
+        [0, 0, 0, 3],
+      ]),
+      B: new Matrix([
+        [0, 0],
+        [0, 0],
+        [1, 0],
+        [0, 1],
+      ]),
+    };
+    expect(placePoles({ ...chain, poles: real(-1, -1, -2, -3) }).poleError).toBeLessThan(1e-12);
+    const error = refusal(() => placePoles({ ...chain, poles: real(-1, -1, -2, -2) }));
+    expect([error.code, error.data]).toEqual(["pole-multiplicity", { pole: { re: -2, im: 0 }, multiplicity: 2, rank: 1 }]);
+  });
+
   test("a mode that no input moves, naming its pole, its state and its distance", () => {
     const plant = weak(0);
     const error = refusal(() => placePoles({ ...plant, poles: real(-1, -2, -3) }));
@@ -225,6 +245,18 @@ describe("placePoles copes with", () => {
     const closed = Matrix.sub(A, B.mmul(K));
     const fourth = closed.mmul(closed).mmul(closed).mmul(closed);
     expect(frobeniusNorm(fourth)).toBeLessThan(4 * Number.EPSILON * frobeniusNorm(closed) ** 4);
+  });
+
+  test("a double pole beside simple ones that are sensitive in their own right", () => {
+    const n = 8;
+    const A = Matrix.zeros(n, n);
+    for (let i = 0; i + 1 < n; i++) A.set(i, i + 1, 1);
+    const B = Matrix.zeros(n, 1).set(n - 1, 0, 1);
+    const { K, achieved } = placePoles({ A, B, poles: real(-6, -6, -13, -4, -10, -7, -0.5, -3), allowDefective: true });
+    // The constant coefficient is the product of the poles, the last one their sum.
+    expect(K.get(0, 0)).toBe(6 * 6 * 13 * 4 * 10 * 7 * 0.5 * 3);
+    expect(K.get(0, 7)).toBe(49.5);
+    expect(achieved.every(({ re }) => re < 0)).toBe(true);
   });
 
   test("two equal uncoupled plants whose poles no single input direction could place", () => {
