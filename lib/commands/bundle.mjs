@@ -8,6 +8,7 @@ const entries = {
   migrate: "db/migrate.ts",
   seed: "lib/commands/seed.ts",
   worker: "lib/commands/worker.ts",
+  bench: "lib/commands/bench.ts",
   "numeric-worker": "lib/jobs/numeric-worker.ts",
 };
 
