@@ -33,9 +33,11 @@ export function route<const D extends Declaration>(
       const ctx = await admit(declaration, request, record);
       const { checked, bytes } = await readInput(declaration, request, context);
       const handle = (): Promise<AnyResult> => handler({ ...checked, ctx });
-      if (!declaration.idempotent) return sendResult(declaration, await handle(), request);
-      const carryOut = () => runOnce(ctx, onceOf(request, bytes), async () => toStored(declaration, await handle()));
-      return sendStored(await (declaration.cost === "solve" ? inTurn(ctx.teamId, request.signal, carryOut) : carryOut()));
+      const carryOut = async () => {
+        if (!declaration.idempotent) return sendResult(declaration, await handle(), request);
+        return sendStored(await runOnce(ctx, onceOf(request, bytes), async () => toStored(declaration, await handle())));
+      };
+      return declaration.cost === "solve" ? inTurn(ctx.teamId, request.signal, carryOut) : carryOut();
     });
   return Object.assign(serve, { declaration, access: "team" as const });
 }

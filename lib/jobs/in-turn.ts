@@ -1,7 +1,7 @@
 import { DomainError } from "@/lib/errors";
 import { FairQueue } from "./fair-queue";
 
-/** Fewer than a fifth of the database connections, which such work holds while it computes. */
+/** Twice the threads, so that one team's two leave room for others; and few of the database connections that creates hold. */
 const AT_ONCE = 4;
 const RETRY_SECONDS = 3;
 
@@ -9,7 +9,10 @@ type Turn = { readonly teamId: string; readonly begin: () => void };
 const queue = new FairQueue<Turn>({ running: 2, waiting: 10, waitingInAll: 60 });
 let running = 0;
 
-/** Runs work that holds a transaction open while it computes; whoever has to wait for a turn holds nothing. */
+/**
+ * Admits a request that computes, as a whole: it may use the core more than once, and is never turned away half-way. Whoever
+ * has to wait for a turn holds nothing, while a create holds its transaction open as it computes.
+ */
 export async function inTurn<T>(teamId: string, signal: AbortSignal, work: () => Promise<T>): Promise<T> {
   await takeTurn(teamId, signal);
   try {
