@@ -1,11 +1,9 @@
-import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { flatCholesky } from "../linalg/cholesky";
 import { widen } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { flatProduct, flatTransposedProduct, fromFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
-import type { Complex } from "../plant/model";
 import { checkModes, leastReachable } from "./check-modes";
 import { checkProblem, type RiccatiProblem } from "./check-problem";
 import { roughGain } from "./gain";
@@ -14,30 +12,14 @@ import { refine } from "./refine";
 import { removeCrossTerm } from "./remove-cross-term";
 import { gainSystem, splitProblem } from "./residual";
 import { scaleProblem } from "./scale-problem";
+import type { RiccatiMethod, RiccatiSolution } from "./solution";
 import { startByDoubling } from "./start-by-doubling";
 import { startByGain } from "./start-by-gain";
 import { hamiltonianMatrix, startBySchur } from "./start-by-schur";
 import { verifiedSolution } from "./verified-solution";
 
 export type { RiccatiProblem } from "./check-problem";
-
-export type RiccatiSolution = {
-  readonly X: Matrix;
-  readonly K: Matrix;
-  /** Of the equation at the returned X, relative to its terms, in scaled coordinates; never above `bound`. */
-  readonly residual: number;
-  readonly bound: number;
-  /** Bound on the relative error of K in the 2-norm. */
-  readonly errorBound: number;
-  /** Eigenvalues of A - BK with the returned K. */
-  readonly closedLoopPoles: Complex[];
-  /** Least distance of a closed-loop pole from the stability boundary: -Re s, or 1 - |z|. */
-  readonly stabilityDistance: number;
-  /** Which start led to the answer; all end in the same Newton refinement. */
-  readonly method: RiccatiMethod;
-};
-
-export type RiccatiMethod = "doubling" | "ordered-schur" | "stabilising-gain";
+export type { RiccatiMethod, RiccatiSolution } from "./solution";
 
 /** Once every start has failed, a mode this near to being unreachable is named as the cause. */
 const NEARLY_UNREACHABLE = 1e-6;

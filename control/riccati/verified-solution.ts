@@ -11,7 +11,7 @@ import type { FlatProblem } from "./problem";
 import type { Refined } from "./refine";
 import { gainSystem, riccatiResidual, splitProblem } from "./residual";
 import type { ScaledProblem } from "./scale-problem";
-import type { RiccatiMethod, RiccatiSolution } from "./solve-riccati";
+import type { RiccatiMethod, RiccatiSolution } from "./solution";
 
 /** A gain that may be off by more than this has no digit worth showing. */
 const LARGEST_ERROR = 0.1;

@@ -15,7 +15,8 @@ const entries = (rows: number, columns: number, entry: fc.Arbitrary<number>) =>
     .array(fc.array(entry, { minLength: columns, maxLength: columns }), { minLength: rows, maxLength: rows })
     .map((a) => new Matrix(a));
 
-const ordinary = fc.double({ min: -2, max: 2, noNaN: true }).map((x) => (Math.abs(x) < 1e-3 ? 0 : x));
+// Thousandths, not fc.double: that favours numbers next to zero, which make nearly every plant unsolvable.
+const ordinary = fc.integer({ min: -2000, max: 2000 }).map((x) => x / 1000);
 
 const problem = fc.integer({ min: 1, max: 5 }).chain((n) =>
   fc.integer({ min: 1, max: 2 }).chain((m) =>
@@ -40,6 +41,11 @@ function attempt<T>(solve: () => T): T | undefined {
     throw error;
   }
 }
+
+test("most of the problems drawn here are solved, so that what follows says something", () => {
+  const drawn = fc.sample(problem, { seed: SEED, numRuns: 200 });
+  expect(drawn.filter((given) => attempt(() => solveRiccati(given))).length).toBeGreaterThan(150);
+});
 
 describe("whatever is returned", () => {
   test("is finite, symmetric, stabilising, positive semidefinite and within its residual bound", () => {
