@@ -22,6 +22,8 @@ export default {
   serverExternalPackages: ["graphile-worker"],
   headers: async () => [
     { source: "/:path*", headers: everywhere },
+    // Pages get theirs, with a nonce, from the proxy.
+    { source: "/api/:path*", headers: [{ key: "Content-Security-Policy", value: "default-src 'none'; frame-ancestors 'none'" }] },
     {
       // Browsers ignore this over plain http; behind a proxy that ends TLS, only its https requests are answered with it.
       source: "/:path*",

@@ -11,7 +11,7 @@ const SECONDS = 60;
  */
 export async function numericWorkerScript(): Promise<string> {
   // From the working folder and at run time: the bundler of the pages must not follow this path.
-  const inProject = (...path: string[]) => join(process.cwd(), ...path);
+  const inProject = (...path: string[]) => join(/* turbopackIgnore: true */ process.cwd(), ...path);
   if (!isProduction()) {
     await promisify(execFile)(process.execPath, [inProject("lib", "commands", "bundle.mjs"), "numeric-worker"], {
       timeout: SECONDS * 1000,
