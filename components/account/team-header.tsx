@@ -1,9 +1,9 @@
 "use client";
 
 import { usePathname } from "next/navigation";
-import { signOut } from "@/lib/client/session";
 import { AccountMenu } from "../ui/account-menu";
 import { SiteHeader, type SiteSection } from "../ui/site-header";
+import { useSignOut } from "./use-sign-out";
 
 const SECTIONS: readonly SiteSection[] = ["plants", "templates", "team"];
 
@@ -11,17 +11,14 @@ type TeamHeaderProps = Readonly<{ team: string; role: string; person: string; sh
 
 export function TeamHeader({ team, role, person, showsOutbox }: TeamHeaderProps) {
   const first = usePathname().split("/")[1];
-  const leave = async () => {
-    await signOut();
-    // A full load: nothing of this session may stay in the page's memory.
-    window.location.assign("/sign-in");
-  };
+  const leave = useSignOut();
   return (
     <SiteHeader
       current={SECTIONS.find((section) => section === first) ?? null}
       account={
         <AccountMenu
-          {...{ team, role, person }}
+          label={`${team} · ${role}`}
+          ariaLabel={`${team}, ${role}, ${person}: account menu`}
           onSignOut={leave}
           extra={showsOutbox ? [{ key: "outbox", label: "Mail of the demonstration", href: "/outbox" }] : []}
         />

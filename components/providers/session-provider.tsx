@@ -6,25 +6,36 @@ import type { Role } from "@/lib/schemas/team";
 import { SignInForm } from "../account/sign-in-form";
 import { Dialog } from "../ui/dialog";
 
-export type SessionFacts = { readonly userId: string; readonly email: string; readonly teamId: string; readonly role: Role };
+export type PersonFacts = { readonly userId: string; readonly email: string };
+export type SessionFacts = PersonFacts & { readonly teamId: string; readonly role: Role };
 
-type Session = SessionFacts & {
+type Resume = {
   /** Does `work`; where the session is over, asks to sign in on this page and does it once more. */
   readonly resume: <T>(work: () => Promise<T>) => Promise<T>;
 };
+type Person = PersonFacts & Resume;
+type Session = SessionFacts & Resume;
 
-const SessionContext = createContext<Session | null>(null);
+const SessionContext = createContext<Person | Session | null>(null);
 
+/** Whoever is signed in, with or without a team: for the pages of their own account. */
+export function usePerson(): Person {
+  const session = useContext(SessionContext);
+  if (!session) throw new Error("usePerson needs SessionProvider above it");
+  return session;
+}
+
+/** Whoever is signed in, in the team whose page this is. */
 export function useSession(): Session {
   const session = useContext(SessionContext);
-  if (!session) throw new Error("useSession needs SessionProvider above it");
+  if (!session || !("teamId" in session)) throw new Error("useSession needs a team's SessionProvider above it");
   return session;
 }
 
 type Waiting = { readonly signedIn: () => void; readonly givenUp: () => void };
 
 /** Keeps the page and everything typed while somebody signs in again. */
-export function SessionProvider({ facts, children }: Readonly<{ facts: SessionFacts; children: ReactNode }>) {
+export function SessionProvider({ facts, children }: Readonly<{ facts: PersonFacts | SessionFacts; children: ReactNode }>) {
   const [asking, setAsking] = useState(false);
   const waiting = useRef<Waiting[]>([]);
 

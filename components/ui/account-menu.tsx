@@ -5,23 +5,24 @@ import { Menu, type MenuItem } from "./menu";
 import { chooseTheme, currentTheme, THEMES, type Theme } from "./theme-choice";
 
 type AccountMenuProps = Readonly<{
-  team: string;
-  role: string;
-  person: string;
+  /** "Saltmarsh Motion · lead", or the person's name where there is no team. */
+  label: string;
+  /** The same with the person, for screen readers. */
+  ariaLabel: string;
   onSignOut: () => void;
   extra?: readonly MenuItem[];
 }>;
 
-/** Team and role in the header, and behind them the account, the theme and the way out. */
-export function AccountMenu({ team, role, person, onSignOut, extra = [] }: AccountMenuProps) {
+/** Who and where one is in the header, and behind it the account, the theme and the way out. */
+export function AccountMenu({ label, ariaLabel, onSignOut, extra = [] }: AccountMenuProps) {
   const [theme, setTheme] = useState<Theme>("system");
   useEffect(() => setTheme(currentTheme()), []);
   const items: readonly MenuItem[] = [
     { key: "account", label: "Account", href: "/account" },
     ...extra,
-    ...THEMES.map(({ value, label }, index) => ({
+    ...THEMES.map(({ value, label: name }, index) => ({
       key: value,
-      label,
+      label: name,
       ruled: index === 0,
       checked: value === theme,
       onSelect: () => {
@@ -31,13 +32,5 @@ export function AccountMenu({ team, role, person, onSignOut, extra = [] }: Accou
     })),
     { key: "sign-out", label: "Sign out", ruled: true, onSelect: onSignOut },
   ];
-  return (
-    <Menu
-      label={`${team} · ${role}`}
-      ariaLabel={`${team}, ${role}, ${person}: account menu`}
-      tone="quiet"
-      align="end"
-      items={items}
-    />
-  );
+  return <Menu label={label} ariaLabel={ariaLabel} tone="quiet" align="end" items={items} />;
 }

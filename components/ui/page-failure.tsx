@@ -1,0 +1,31 @@
+"use client";
+
+import { Button } from "./button";
+import { ErrorState } from "./error-state";
+import { LinkButton } from "./link-button";
+import { PageBody } from "./page-body";
+
+export type PageFailureProps = Readonly<{ error: Error & { digest?: string }; reset: () => void }>;
+
+/** What a page says when its own making failed. */
+export function PageFailure({ error, reset }: PageFailureProps) {
+  return (
+    <PageBody>
+      <h1 className="mb-4 text-title font-bold">This page could not be shown</h1>
+      <ErrorState
+        title="Something failed on our side."
+        requestId={error.digest}
+        action={
+          <>
+            <Button tone="primary" onClick={reset}>
+              Try again
+            </Button>
+            <LinkButton href="/plants">Go to your plants</LinkButton>
+          </>
+        }
+      >
+        What was saved before is safe. Try again; if it fails once more, send the number below to whoever runs this service.
+      </ErrorState>
+    </PageBody>
+  );
+}
