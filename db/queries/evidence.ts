@@ -47,7 +47,11 @@ export async function insertResponseRecords(
 export async function findResponseRecords(
   db: Db,
   { teamId, revisionId }: DesignRevisionKey,
-  which: { readonly kind: ResponseRecord["kind"]; readonly loop: ResponseRecord["loop"] | "both" },
+  which: {
+    readonly kind: ResponseRecord["kind"];
+    readonly loop: ResponseRecord["loop"] | "both";
+    readonly source?: number | undefined;
+  },
 ): Promise<ResponseRecord[]> {
   const { kind, loop, source, amplitude, samples, step, values } = responseRecords;
   const rows = await db
@@ -59,6 +63,7 @@ export async function findResponseRecords(
         eq(responseRecords.designRevisionId, revisionId),
         eq(kind, which.kind),
         which.loop === "both" ? undefined : eq(loop, which.loop),
+        which.source === undefined ? undefined : eq(source, which.source),
       ),
     )
     .orderBy(asc(responseRecords.position));

@@ -18,6 +18,8 @@ const designPath = (designId: string) => `/api/v1/designs/${designId}`;
 export type CurveQuery = {
   readonly kind: ResponseCurves["kind"];
   readonly loop: ResponseCurves["loop"] | "both";
+  /** One commanded quantity or input only. */
+  readonly source?: number;
   readonly signals: readonly ResponseCurves["signals"][number]["role"][];
 };
 
@@ -38,10 +40,10 @@ export const fetchDesignRevisions = async (designId: string, query: { cursor?: s
   (await request<Page<DesignRevisionEntry>>(`${designPath(designId)}/revisions`, { query, signal })).data;
 export const fetchDesignRevision = async (revisionId: string, signal?: AbortSignal) =>
   (await request<DesignRevision>(`/api/v1/design-revisions/${revisionId}`, { signal })).data;
-export const fetchCurves = async (revisionId: string, { kind, loop, signals }: CurveQuery, signal?: AbortSignal) =>
+export const fetchCurves = async (revisionId: string, { kind, loop, source, signals }: CurveQuery, signal?: AbortSignal) =>
   (
     await request<{ items: ResponseCurves[] }>(`/api/v1/design-revisions/${revisionId}/responses`, {
-      query: { kind, loop, signals: signals.join(",") },
+      query: { kind, loop, source, signals: signals.join(",") },
       signal,
     })
   ).data.items;

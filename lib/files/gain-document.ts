@@ -1,6 +1,7 @@
 import type { GainEvidence, ObserverEvidence, ReferenceEvidence } from "@/control/design/evidence";
 import type { PlantModel, Rows, TimeBase } from "@/control/plant/model";
 import { CAUTIONS } from "@/control/words/cautions";
+import { describeLaw, describeObserverLaw, describeTimeBase } from "@/control/words/describe-law";
 
 /** A computed design revision, as much of it as leaves the product with its gain. */
 export type GainSource = {
@@ -51,9 +52,9 @@ export function gainDocument(source: GainSource): GainDocument {
     version: 1,
     plant,
     design,
-    law: lawInWords(reference !== null, observer !== null),
+    law: describeLaw(reference !== null, observer !== null),
     timeBase: model.timeBase,
-    timeBaseInWords: timeBaseInWords(model.timeBase),
+    timeBaseInWords: describeTimeBase(model.timeBase),
     method: gains.method,
     methodVersion,
     residual: gains.residual,
@@ -61,22 +62,9 @@ export function gainDocument(source: GainSource): GainDocument {
     errorBound: gains.errorBound,
     operatingPoint: operatingPoint(model),
     matrices: [...gainMatrices(source), ...(observer ? observerMatrices(observer, model) : [])],
-    observerLaw: observer && observerLaw(observer, model.timeBase),
+    observerLaw: observer && describeObserverLaw(observer.kind, model.timeBase),
     cautions: CAUTIONS,
   };
-}
-
-function lawInWords(withReference: boolean, withObserver: boolean): string {
-  const state = withObserver ? "xhat" : "x";
-  const law = withReference ? `u = -K ${state} + F r` : `u = -K ${state}`;
-  return `${law}, in deviations from the operating point: u = input - u0, ${withObserver ? "xhat estimates state - x0" : "x = state - x0"}`;
-}
-
-export function timeBaseInWords(timeBase: TimeBase): string {
-  if (timeBase.kind === "continuous") {
-    return "Continuous law: the gain holds for a controller that acts without sampling. A sampled controller needs a gain computed for its own period.";
-  }
-  return `Sampled law: the gain holds for a controller that acts every ${timeBase.period} s, and for no other period.`;
 }
 
 function operatingPoint({ states, inputs, outputs, operatingPoint: at }: PlantModel): GainDocument["operatingPoint"] {
@@ -106,14 +94,4 @@ function observerMatrices(observer: ObserverEvidence, model: PlantModel): NamedM
     { symbol: "Gw", meaning: "estimate from the observer", rows: x, columns: w, entries: observer.Gw },
     { symbol: "Gy", meaning: "estimate from the measured outputs", rows: x, columns: y, entries: observer.Gy },
   ];
-}
-
-function observerLaw(observer: ObserverEvidence, { kind }: TimeBase): string {
-  const sampled = kind === "sampled";
-  if (observer.kind === "reduced") {
-    return `${sampled ? "w(k+1)" : "w'"} = Fw w + Fy y + Fu u, xhat = Gw w + Gy (y - D u)`;
-  }
-  return sampled
-    ? "xhat(k+1) = A xhat(k) + B u(k) + L (y(k) - C xhat(k) - D u(k))"
-    : "xhat' = A xhat + B u + L (y - C xhat - D u)";
 }

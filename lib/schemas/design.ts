@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { Id, Name, PageQuery, Remark, Timestamp, Version } from "./common";
-import { ChecksReply, EvidenceReply, ResponseCurves, Summary } from "./evidence";
+import { ChecksReply, EvidenceReply, ResponseCurves, SignalRole, Summary } from "./evidence";
 import { PlantContent, PlantModel } from "./plant";
 import { Recipe } from "./recipe";
 
@@ -64,6 +64,8 @@ export type DesignQuery = z.infer<typeof DesignQuery>;
 export const Compute = z.strictObject({
   plant: z.union([z.strictObject({ revisionId: Id }), z.strictObject({ content: PlantContent })]),
   recipe: Recipe,
+  /** Which signals the responses hold; without it: commanded, output and input. */
+  signals: z.array(SignalRole).min(1).max(5).optional(),
 });
 export type Compute = z.infer<typeof Compute>;
 

@@ -124,6 +124,8 @@ export const ResponseList = z.strictObject({ items: z.array(ResponseCurves) });
 export const ResponseQuery = z.strictObject({
   kind: ResponseKind.default("step"),
   loop: z.enum(["full-state", "observer", "both"]).default("both"),
+  /** Place of the commanded quantity (step) or input (disturbance), from zero; without it: all. */
+  source: z.coerce.number().int().min(0).max(11).optional(),
   signals: z
     .string()
     .max(60)

@@ -21,7 +21,11 @@ async function modelOf(ctx: Context, plant: Compute["plant"]): Promise<PlantMode
 }
 
 /** Checks, gains, poles, residuals, responses and the cautions of a plant and a recipe. Stores nothing. */
-export async function compute(ctx: Context, { plant, recipe }: Compute, signal?: AbortSignal): Promise<Computation> {
+export async function compute(
+  ctx: Context,
+  { plant, recipe, signals = ["commanded", "output", "input"] }: Compute,
+  signal?: AbortSignal,
+): Promise<Computation> {
   allow(ctx, "compute:use");
   const model = await modelOf(ctx, plant);
   const evidence = await solveOrRefuse(ctx, model, recipe, signal);
@@ -30,7 +34,7 @@ export async function compute(ctx: Context, { plant, recipe }: Compute, signal?:
     model: model as Computation["model"],
     checks: await checkModel(ctx, model, signal),
     evidence: evidenceReply(evidenceRows(evidence), evidence.methodVersion, model),
-    responses: records.map((record) => toCurves(record, model, ["commanded", "output", "input"])),
+    responses: records.map((record) => toCurves(record, model, signals)),
     cautions: [...CAUTIONS],
   };
 }

@@ -9,13 +9,13 @@ import type { Context } from "../context";
 import { toCurves } from "./to-curves";
 
 /** The stored curves of one kind, as they were computed when the revision was saved. */
-export async function readResponses(ctx: Context, revisionId: string, { kind, loop, signals }: ResponseQuery) {
+export async function readResponses(ctx: Context, revisionId: string, { kind, loop, source, signals }: ResponseQuery) {
   allow(ctx, "design:read");
   const key = { teamId: ctx.teamId, revisionId };
   return inTransaction(ctx, async (tx) => {
     const found = await findDesignRevision(tx, key);
     if (!found) throw new NotFound("Design revision");
-    const records = await findResponseRecords(tx, key, { kind, loop });
+    const records = await findResponseRecords(tx, key, { kind, loop, source });
     return { items: records.map((record) => toCurves(record, found.model, signals)) };
   });
 }
