@@ -4,7 +4,7 @@ import { useCallback, useState } from "react";
 import { RequestProblem } from "@/lib/client/request";
 import type { FormProblem } from "./form-problems";
 
-type Submit = {
+export type Submit = {
   readonly busy: boolean;
   /** Counts refusals, for `FormProblems`. */
   readonly attempt: number;

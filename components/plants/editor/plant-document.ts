@@ -124,6 +124,19 @@ export function ownCommanded(content: PlantContent): PlantContent {
 
 export const outputsCommanded = (content: PlantContent): PlantContent => ({ ...content, commanded: null, H: null, J: null });
 
+/** The operating point appears with its first value; all others are zero. */
+export function withOperatingValue(
+  content: PlantContent,
+  list: "states" | "inputs" | "outputs",
+  index: number,
+  value: number,
+): PlantContent {
+  const rest = (signals: readonly unknown[]) => signals.map(() => 0);
+  const { states, inputs, outputs } = content;
+  const at = content.operatingPoint ?? { states: rest(states), inputs: rest(inputs), outputs: rest(outputs) };
+  return { ...content, operatingPoint: { ...at, [list]: at[list].map((old, place) => (place === index ? value : old)) } };
+}
+
 /** A plant of so many axes, each a position and a rate driven by one input and read by one output: a shape to type into. */
 export function blankPlant(axisNames: readonly string[]): PlantContent {
   const count = axisNames.length;

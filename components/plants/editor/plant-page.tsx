@@ -1,0 +1,107 @@
+"use client";
+
+import { useRouter } from "next/navigation";
+import { useState } from "react";
+import type { PlantRevision, PlantSummary } from "@/lib/schemas/plant";
+import { DesignsTable } from "../../designs/designs-table";
+import { useSession } from "../../providers/session-provider";
+import { useToast } from "../../providers/toast-provider";
+import { Button } from "../../ui/button";
+import { Chip } from "../../ui/chip";
+import { LinkButton } from "../../ui/link-button";
+import { PageHeading } from "../../ui/page-heading";
+import { HistoryTab } from "../history-tab";
+import { PlantActions } from "../plant-actions";
+import { PlantChecks } from "../plant-checks";
+import { ProblemList } from "../problem-list";
+import { DraftNotice } from "./draft-notice";
+import { EditorTabs } from "./editor-tabs";
+import { SaveRevision } from "./save-revision";
+import { useEvaluation } from "./use-evaluation";
+import { usePlantDraft } from "./use-plant-draft";
+
+type PlantPageProps = Readonly<{ plant: PlantSummary; revision: PlantRevision; mayWrite: boolean }>;
+
+/** A stored plant: its newest revision, ready to be changed by those who may. */
+export function PlantPage({ plant: start, revision, mayWrite }: PlantPageProps) {
+  const { teamId, userId } = useSession();
+  const router = useRouter();
+  const toast = useToast();
+  const [plant, setPlant] = useState(start);
+  const [revisionId, setRevisionId] = useState(revision.id);
+  const key = `gainwright:plant:${teamId}:${userId}:${plant.id}`;
+  const draft = usePlantDraft(key, { content: revision.content, name: plant.name, version: start.version });
+  const evaluation = useEvaluation(draft.content);
+  const readOnly = !mayWrite || plant.archivedAt !== null;
+  const model = evaluation?.model ?? null;
+  const shownModel = draft.dirty ? model : (model ?? revision.model);
+
+  return (
+    <>
+      <PageHeading
+        crumbs={[{ label: "Plants", href: "/plants" }]}
+        title={plant.name}
+        state={
+          <>
+            <Chip>
+              Revision {plant.currentRevision.number}
+              {draft.dirty ? " · unsaved changes" : ""}
+            </Chip>
+            {plant.archivedAt ? <Chip>archived</Chip> : null}
+          </>
+        }
+        actions={
+          <>
+            {readOnly ? null : <UndoButtons {...draft} />}
+            {mayWrite ? <PlantActions plant={plant} onChanged={setPlant} /> : null}
+            {readOnly || draft.dirty ? null : <LinkButton href={`/plants/${plant.id}/designs/new`}>New design</LinkButton>}
+            {readOnly ? null : (
+              <SaveRevision
+                plant={plant}
+                content={draft.content}
+                version={draft.version ?? plant.version}
+                disabled={!draft.dirty || model === null}
+                onSaved={(saved, content) => {
+                  setPlant(saved);
+                  setRevisionId(saved.currentRevision.id);
+                  draft.settle(content, saved.version);
+                  toast({ text: `Revision ${saved.currentRevision.number} is saved.`, kind: "met" });
+                  router.refresh();
+                }}
+                onTakeTheirs={() => {
+                  draft.discard();
+                  window.location.reload();
+                }}
+              />
+            )}
+          </>
+        }
+      />
+      <DraftNotice draft={draft} />
+      {draft.dirty || !evaluation ? <ProblemList problems={evaluation?.problems ?? []} /> : null}
+      <EditorTabs
+        {...{ draft, evaluation, readOnly }}
+        more={[
+          { key: "designs", label: "Designs", count: plant.designCount, panel: <DesignsTable plantId={plant.id} /> },
+          { key: "history", label: "History", panel: <HistoryTab plantId={plant.id} /> },
+        ]}
+      />
+      <PlantChecks revision={{ plantId: plant.id, revisionId }} content={draft.content} model={shownModel} dirty={draft.dirty} />
+    </>
+  );
+}
+
+type UndoButtonsProps = Readonly<{ undo: () => void; redo: () => void; canUndo: boolean; canRedo: boolean }>;
+
+export function UndoButtons({ undo, redo, canUndo, canRedo }: UndoButtonsProps) {
+  return (
+    <>
+      <Button disabled={!canUndo} onClick={undo}>
+        Undo
+      </Button>
+      <Button disabled={!canRedo} onClick={redo}>
+        Redo
+      </Button>
+    </>
+  );
+}

@@ -1,0 +1,95 @@
+"use client";
+
+import { useEffect, useRef, useState } from "react";
+import type { PlantContent } from "@/lib/schemas/plant";
+import { useHistory } from "../../matrix/use-history";
+
+type Kept = { readonly content: PlantContent; readonly name: string; readonly version: number | null; readonly at: string };
+
+const SAVE_AFTER_MS = 300;
+
+function readKept(key: string): Kept | null {
+  try {
+    const text = localStorage.getItem(key);
+    return text === null ? null : (JSON.parse(text) as Kept);
+  } catch {
+    return null; // storage switched off, or another release's draft: the page works without it
+  }
+}
+
+function keep(key: string, draft: Kept | null): void {
+  try {
+    if (draft) localStorage.setItem(key, JSON.stringify(draft));
+    else localStorage.removeItem(key);
+  } catch {
+    // Full or switched off: leaving the page still asks first.
+  }
+}
+
+type Start = { readonly content: PlantContent; readonly name: string; readonly version: number | null };
+
+/**
+ * The plant being edited with its undo history, kept in the browser's storage until it is saved, so that a reload, a killed
+ * tab or an ended session costs nothing. `version` is what the edit started from and goes with the draft.
+ */
+export function usePlantDraft(key: string, start: Start) {
+  const history = useHistory(start.content);
+  const [name, setName] = useState(start.name);
+  const [version, setVersion] = useState(start.version);
+  const [saved, setSaved] = useState(start.content);
+  const [restoredAt, setRestoredAt] = useState<string | null>(null);
+  const ready = useRef(false);
+  const { present, set, reset } = history;
+  const dirty = present !== saved || name !== start.name;
+
+  useEffect(() => {
+    if (ready.current) return;
+    ready.current = true;
+    const kept = readKept(key);
+    if (!kept) return;
+    set(kept.content);
+    setName(kept.name);
+    setVersion(kept.version);
+    setRestoredAt(kept.at);
+  }, [key, set]);
+
+  useEffect(() => {
+    if (!ready.current || !dirty) return;
+    const timer = setTimeout(() => keep(key, { content: present, name, version, at: new Date().toISOString() }), SAVE_AFTER_MS);
+    return () => clearTimeout(timer);
+  }, [key, present, name, version, dirty]);
+
+  useEffect(() => {
+    if (!dirty) return;
+    const warn = (event: BeforeUnloadEvent) => event.preventDefault();
+    window.addEventListener("beforeunload", warn);
+    return () => window.removeEventListener("beforeunload", warn);
+  }, [dirty]);
+
+  /** After a save, or to drop the changes: what the server keeps is the plant again. */
+  function settle(content: PlantContent, atVersion: number | null) {
+    keep(key, null);
+    setRestoredAt(null);
+    setSaved(content);
+    setVersion(atVersion);
+    if (content !== present) reset(content);
+  }
+
+  return {
+    ...history,
+    content: present,
+    name,
+    setName,
+    version,
+    dirty,
+    restoredAt,
+    /** Saved on top of a newer version after a look at what differs. */
+    rebase: setVersion,
+    settle,
+    discard: () => {
+      settle(start.content, start.version);
+      setName(start.name);
+    },
+  };
+}
+export type PlantDraft = ReturnType<typeof usePlantDraft>;

@@ -1,0 +1,74 @@
+"use client";
+
+import { useRouter } from "next/navigation";
+import { useState } from "react";
+import { archivePlant, duplicatePlant, renamePlant } from "@/lib/client/plants";
+import type { PlantSummary } from "@/lib/schemas/plant";
+import { useSession } from "../providers/session-provider";
+import { useToast } from "../providers/toast-provider";
+import { Menu } from "../ui/menu";
+import { NameDialog } from "../ui/name-dialog";
+import { useSubmit } from "../ui/use-submit";
+
+type PlantActionsProps = Readonly<{ plant: PlantSummary; onChanged: (plant: PlantSummary) => void }>;
+
+/** What is done to a plant as a whole. Each change carries the version it started from. */
+export function PlantActions({ plant, onChanged }: PlantActionsProps) {
+  const { resume } = useSession();
+  const router = useRouter();
+  const toast = useToast();
+  const [asking, setAsking] = useState<"rename" | "duplicate" | null>(null);
+  const form = useSubmit({ "/name": "plant-name" });
+
+  const close = () => {
+    setAsking(null);
+    form.clear();
+  };
+  const rename = async (name: string) => {
+    const done = await form.run(async () => onChanged(await resume(() => renamePlant(plant.id, plant.version, name))));
+    if (done) close();
+  };
+  const duplicate = (name: string) =>
+    form.run(async () => {
+      const copy = await resume(() => duplicatePlant(plant.id, { name }));
+      router.push(`/plants/${copy.id}`);
+    });
+  const archive = (archived: boolean, from = plant) =>
+    form.run(async () => {
+      const changed = await resume(() => archivePlant(from.id, from.version, archived));
+      onChanged(changed);
+      toast({
+        text: archived ? `${plant.name} is archived.` : `${plant.name} is back in use.`,
+        kind: "met",
+        action: archived ? { label: "Undo", run: () => void archive(false, changed) } : undefined,
+      });
+    });
+
+  return (
+    <>
+      <Menu
+        label="More"
+        ariaLabel={`More for ${plant.name}`}
+        align="end"
+        items={[
+          { key: "rename", label: "Rename…", onSelect: () => setAsking("rename") },
+          { key: "duplicate", label: "Duplicate…", onSelect: () => setAsking("duplicate") },
+          plant.archivedAt
+            ? { key: "restore", label: "Bring back into use", onSelect: () => void archive(false) }
+            : { key: "archive", label: "Archive", onSelect: () => void archive(true) },
+        ]}
+      />
+      <NameDialog
+        open={asking !== null}
+        onClose={close}
+        fieldId="plant-name"
+        title={asking === "duplicate" ? `Duplicate ${plant.name}` : `Rename ${plant.name}`}
+        label="Name of the plant"
+        start={asking === "duplicate" ? `${plant.name} (copy)`.slice(0, 120) : plant.name}
+        action={asking === "duplicate" ? "Duplicate" : "Rename"}
+        form={form}
+        onSubmit={asking === "duplicate" ? duplicate : rename}
+      />
+    </>
+  );
+}
