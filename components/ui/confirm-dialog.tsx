@@ -13,12 +13,24 @@ type ConfirmDialogProps = Readonly<{
   /** What happens, to what, and whether it can be taken back. */
   children: ReactNode;
   confirmLabel: string;
+  /** What is chosen by leaving it: "Keep it". */
+  keepLabel?: string;
   /** For what cannot be taken back: the name has to be typed. */
   typedName?: string;
   busy?: boolean;
 }>;
 
-export function ConfirmDialog({ open, onClose, onConfirm, title, children, confirmLabel, typedName, busy }: ConfirmDialogProps) {
+export function ConfirmDialog({
+  open,
+  onClose,
+  onConfirm,
+  title,
+  children,
+  confirmLabel,
+  keepLabel = "Keep it",
+  typedName,
+  busy,
+}: ConfirmDialogProps) {
   const [typed, setTyped] = useState("");
   const close = () => {
     setTyped("");
@@ -31,7 +43,7 @@ export function ConfirmDialog({ open, onClose, onConfirm, title, children, confi
       title={title}
       actions={
         <>
-          <Button onClick={close}>Keep it</Button>
+          <Button onClick={close}>{keepLabel}</Button>
           <Button tone="grave" busy={busy} disabled={typedName !== undefined && typed.trim() !== typedName} onClick={onConfirm}>
             {confirmLabel}
           </Button>

@@ -61,6 +61,13 @@ export async function requireContext(): Promise<Context> {
   return context;
 }
 
+/** For pages of somebody's own account, with or without a team: signs in and comes back to `path`. */
+export async function pagePerson(path: string): Promise<Person> {
+  const session = await currentSession();
+  if (!session) redirect(`/sign-in?next=${encodeURIComponent(path)}`);
+  return session.person;
+}
+
 /** For a team's pages: signs in and comes back to `path`; somebody without a team starts one first. */
 export async function pageContext(path: string): Promise<Context> {
   const session = await currentSession();
