@@ -59,7 +59,7 @@ export function boundaryDistance({ poles, period }: Pick<LoopDynamics, "poles" |
   return distances.reduce((least, distance) => Math.min(least, distance), Number.POSITIVE_INFINITY);
 }
 
-/** Response to a constant input (column `input`, size `amplitude`) from rest. */
+/** Response to a constant input (column `input`, size `amplitude`) from rest. Throws on-stability-boundary; too-large. */
 export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: number): Drive {
   const { order, signals, b, d, c } = dynamics;
   const columns = dynamics.loop.B.columns;
@@ -71,6 +71,7 @@ export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: num
     for (let k = 0; k < order; k++) sum += c[i * order + k] * rest[k];
     final[i] = sum + d[i * columns + input] * amplitude + 0;
   }
+  if (!final.every(Number.isFinite)) throw new NumericalError("too-large", { what: "response", limit: Number.MAX_VALUE });
   return { departure: rest.map((entry) => 0 - entry), final };
 }
 

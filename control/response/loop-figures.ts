@@ -19,7 +19,7 @@ export type LoopFigures = {
 };
 
 /** Multiplications allowed for the figures of one loop, and what a walk may take whatever it costs. */
-const WORK = 3e8;
+const WORK = 1e9;
 const CELLS = { least: 300, most: 60_000 };
 const SAMPLES = { least: 2_000, most: 400_000 };
 
@@ -30,7 +30,7 @@ type Walk = (drive: Drive, tracks: readonly SignalTrack[]) => void;
  *
  * Units     signals' units, seconds, percent
  * Throws    on-stability-boundary
- * Limits    about 3·10⁸ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is null
+ * Limits    about 10⁹ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is null
  * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves
  */
 export function loopFigures(dynamics: LoopDynamics, experiments: readonly Experiment[], room: readonly InputRoom[]): LoopFigures {
@@ -77,7 +77,7 @@ function effortOf(track: SignalTrack, { up, down }: InputRoom): StepFigures["eff
 }
 
 function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number): Walk {
-  const { a, order, period, poles } = dynamics;
+  const { a, order, period } = dynamics;
   const signals = order === 0 ? 0 : rows.length / order;
   const tail = tailBound(a, order, rows, period !== null);
   if (tail === null) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance(dynamics) });
@@ -89,8 +89,7 @@ function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number)
     return (drive, tracks) => walkSampled(walker, drive.departure, tracks, limit);
   }
   const limit = allowed(signals * POINTS * (order + POINTS) + order * order, CELLS);
-  const fastest = poles.reduce((most, { re, im }) => Math.max(most, Math.sqrt(re * re + im * im)), 0);
-  const walker = continuousWalker(a, order, rows, fastest, tail);
+  const walker = continuousWalker(dynamics, rows, tail);
   return (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit);
 }
 

@@ -117,17 +117,36 @@ export function settledAt(track: SignalTrack): number {
   return track.exit ?? 0;
 }
 
-/** Marks every track finished that no departure within its bound of the final value can change; true when all are. */
-export function finishTracks(tracks: readonly SignalTrack[], gains: Float64Array, size: number): boolean {
-  let all = true;
+/**
+ * Marks every track finished that no departure within its bound of the final value can change. What is returned is the factor
+ * by which the size of what is to come has still to fall for the next track to be finished; null when all are.
+ */
+export function finishTracks(tracks: readonly SignalTrack[], gains: Float64Array, size: number): number | null {
+  let next: number | null = null;
   for (let i = 0; i < tracks.length; i++) {
     const track = tracks[i];
+    const { high, low, final } = track;
+    const small = Math.max(NEGLIGIBLE * sizeOf(track), 4 * track.noise);
+    const wanted = Math.max(small, Math.min(high.value - final, final - low.value, bandOf(track)));
     const bound = gains[i] * size;
-    const small = bound <= Math.max(NEGLIGIBLE * sizeOf(track), 4 * track.noise);
-    const above = small || track.high.value >= track.final + bound;
-    const below = small || track.low.value <= track.final - bound;
-    track.finished = above && below && (small || bound <= bandOf(track));
-    if (!track.finished) all = false;
+    track.finished = bound <= wanted;
+    if (track.finished) continue;
+    const factor = wanted > 0 ? bound / wanted : Number.POSITIVE_INFINITY;
+    if (next === null || factor < next) next = factor;
   }
-  return all;
+  return next;
+}
+
+/** What the size of what is to come was at the last look, and when that was. */
+export type Pace = { size: number; count: number };
+
+const LOOK_EVERY = 1024;
+
+/** Whether, at the pace since the last look, the steps that are left cannot bring the size down by `factor`. */
+export function isHopeless(pace: Pace, size: number, factor: number, count: number, limit: number): boolean {
+  if (count - pace.count < LOOK_EVERY) return false;
+  const fall = Math.log(pace.size / size) / (count - pace.count);
+  pace.size = size;
+  pace.count = count;
+  return !(fall * (limit - count) >= Math.log(factor));
 }

@@ -1,3 +1,4 @@
+import { NumericalError } from "../errors";
 import { flatCholesky, solveCholesky } from "../linalg/cholesky";
 import { flatIdentity, flatProduct, flatTransposedProduct } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
@@ -15,7 +16,7 @@ const MOST_DOUBLINGS = 64;
  * Φ'Q Φ over all steps (continuous: steps of at most 1/4 over the norm of A, Q by Simpson's rule).
  *
  * Shapes    a n×n, rows of signals (signals×n), period null for continuous
- * Throws    nothing: null when 2^64 steps do not let the motion fade
+ * Throws    nothing: null when 2^64 steps do not let the motion fade; infinite gains when rounding leaves no bound
  * Accuracy  P to about 1e-6 of itself, ample for a bound that is only compared
  * Source    Smith, SIAM J. Appl. Math. 16 (1968) 198-201 (doubling)
  */
@@ -23,9 +24,10 @@ export function tailBound(a: Float64Array, n: number, rows: Float64Array, sample
   const { first, step } = sampled ? { first: flatIdentity(n), step: a } : continuousStep(a, n);
   const p = doubledSum(first, step, n);
   if (p === null) return null;
-  const l = flatCholesky(p, n, "P");
   const signals = n === 0 ? 0 : rows.length / n;
   const gains = new Float64Array(signals);
+  const l = factorOf(p, n);
+  if (l === null) return { gains: gains.fill(Number.POSITIVE_INFINITY), size: () => 1 };
   for (let i = 0; i < signals; i++) {
     const row = rows.slice(i * n, (i + 1) * n);
     const x = solveCholesky(l, n, row, 1);
@@ -34,6 +36,16 @@ export function tailBound(a: Float64Array, n: number, rows: Float64Array, sample
     gains[i] = Math.sqrt(Math.max(0, sum)) * 1.001;
   }
   return { gains, size: (departure) => sizeIn(l, n, departure) };
+}
+
+/** Null when rounding leaves P without a factor, in loops whose states differ by more than the digits of a double. */
+function factorOf(p: Float64Array, n: number): Float64Array | null {
+  try {
+    return flatCholesky(p, n, "P");
+  } catch (error) {
+    if (error instanceof NumericalError) return null;
+    throw error;
+  }
 }
 
 /** |L' z| */

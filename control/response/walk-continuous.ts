@@ -1,13 +1,20 @@
 import { exponentOf } from "../linalg/power-of-two";
 import { bernsteinCoefficients, interpolationError, POINTS } from "./cell-basis";
 import { type Cell, cellLadder } from "./cell-ladder";
-import { finishTracks, followPiece, type SignalTrack, sizeOf } from "./signal-track";
+import type { LoopDynamics } from "./loop-dynamics";
+import { finishTracks, followPiece, isHopeless, type SignalTrack, sizeOf } from "./signal-track";
 import type { TailBound } from "./tail-bound";
 
 /** Last coefficients of a cell's polynomials, in parts of the signal, up to which the cell counts as resolved. */
 const RESOLVED = 1e-10;
 /** Doubling a cell raises them by 2^11 to 2^12. */
 const EASY = RESOLVED / 8192;
+/** Rounding beyond the sums' own that is put up with in long cells of stiff loops. */
+const LEARNT_ROUNDING = 1e-8;
+/** Cells before a longer one that failed is tried again, and failures after which the length is taken to be final. */
+const PAUSE = 16;
+const MANY_FAILURES = 16;
+const MOST_DOUBLINGS = 60;
 const ROUNDING = 64 * Number.EPSILON;
 
 export type Walker = {
@@ -16,62 +23,117 @@ export type Walker = {
   readonly rows: Float64Array;
   readonly ladder: (level: number) => Cell;
   readonly firstLevel: number;
+  /** Cells that the least damped mode can ask for while it fades. */
+  readonly swings: number;
   readonly tail: TailBound;
 };
 
-export function continuousWalker(a: Float64Array, order: number, rows: Float64Array, fastest: number, tail: TailBound): Walker {
-  return { order, rows, ladder: cellLadder(a, order, rows), firstLevel: fastest > 0 ? -exponentOf(fastest) - 1 : 0, tail };
+/** Cells per radian of a swing, times the time constants in which it fades. */
+const CELLS_PER_FADING = 12;
+
+export function continuousWalker(
+  dynamics: Pick<LoopDynamics, "a" | "order" | "poles">,
+  rows: Float64Array,
+  tail: TailBound,
+): Walker {
+  const { a, order, poles } = dynamics;
+  const sizes = poles.map(({ re, im }) => Math.sqrt(re * re + im * im));
+  const fastest = sizes.reduce((most, size) => Math.max(most, size), 0);
+  const swings = poles.reduce((most, { re }, k) => Math.max(most, (CELLS_PER_FADING * sizes[k]) / -re), 0);
+  const firstLevel = fastest > 0 ? -exponentOf(fastest) - 1 : 0;
+  return { order, rows, ladder: cellLadder(a, order, rows), firstLevel, swings, tail };
 }
 
 /**
  * Follows the watched signals of a free motion until everything sought about them is proved, in cells whose length adapts
  * so that in each a polynomial of degree 12 through exact values stands for the signal.
  *
- * Accuracy  values to about 1e-11 of the signal's size, times likewise over its slope
- * Limits    at most `limit` cells, tried or taken; what is not finished by then stays unfinished
+ * Accuracy  values to about 1e-11 of the signal's size, times likewise over its slope; where rounding in a stiff loop is larger,
+ *           down to 1e-8, it is learnt and kept in the tracks as their noise
+ * Limits    at most `limit` cells, tried or taken, fewer where these cannot suffice; what is not finished stays unfinished
  */
 export function walkContinuous(walker: Walker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
-  const { order, ladder, tail } = walker;
-  const ceiling = walker.firstLevel + 60;
-  let level = walker.firstLevel;
+  const { order, ladder, tail, firstLevel } = walker;
+  const pace = { size: tail.size(departure), count: 0 };
+  let level = firstLevel;
   let state = departure;
   let time = 0;
+  let before: Misses | null = null; // of the shorter cell before, when this one is tried because that one was easy
+  let raiseFrom = 0;
+  let failures = 0;
   for (let count = 0; count < limit; count++) {
-    if (finishTracks(tracks, tail.gains, tail.size(state))) return;
+    const size = tail.size(state);
+    const factor = finishTracks(tracks, tail.gains, size);
+    if (factor === null) return;
+    const doubtful = limit < walker.swings || failures >= MANY_FAILURES || !(factor < Number.POSITIVE_INFINITY);
+    if (doubtful && isHopeless(pace, size, factor, count, limit)) return;
     const cell = ladder(level);
     raiseNoise(walker.rows, order, state, tracks);
     const values = signalsIn(cell, state, order);
-    if (level === walker.firstLevel) learnNoise(values, tracks);
-    const error = worstError(values, tracks);
-    if (error > RESOLVED) {
+    const misses = missesOf(values, tracks);
+    if (level === firstLevel || (before && isPutUpWith(misses, before))) learnNoise(misses, tracks);
+    const worst = worstOf(misses, tracks);
+    if (worst > RESOLVED) {
+      if (before && isRounding(misses, before)) failures++;
+      if (before) raiseFrom = count + PAUSE;
+      before = null;
       level--;
       continue;
     }
-    tracks.forEach((track, i) => {
-      if (!track.finished) followPiece(track, bernsteinCoefficients(values, i * POINTS, track.final), time, cell.h);
-    });
+    for (let i = 0; i < tracks.length; i++) {
+      if (!tracks[i].finished) followPiece(tracks[i], bernsteinCoefficients(values, i * POINTS, tracks[i].final), time, cell.h);
+    }
     state = timesVector(cell.phi, state, order);
     time += cell.h;
-    if (error < EASY && level < ceiling) level++;
+    const raise = worst < EASY && level < firstLevel + MOST_DOUBLINGS && count >= raiseFrom;
+    before = raise ? misses : null;
+    if (raise) level++;
   }
 }
 
-/** In cells shorter than the fastest pole's time the polynomial is exact to the last digit: what it misses is rounding. */
-function learnNoise(values: Float64Array, tracks: readonly SignalTrack[]): void {
-  for (let i = 0; i < tracks.length; i++) tracks[i].noise = Math.max(tracks[i].noise, interpolationError(values, i * POINTS));
+/** What the polynomials of a cell miss, and the sizes of the signals, one each per signal. */
+type Misses = { readonly miss: Float64Array; readonly size: Float64Array };
+
+function missesOf(values: Float64Array, tracks: readonly SignalTrack[]): Misses {
+  const miss = new Float64Array(tracks.length);
+  const size = Float64Array.from(tracks, sizeOf);
+  for (let i = 0; i < tracks.length; i++) {
+    if (tracks[i].finished) continue;
+    miss[i] = interpolationError(values, i * POINTS);
+    for (let j = 0; j < POINTS; j++) size[i] = Math.max(size[i], Math.abs(values[i * POINTS + j]));
+  }
+  return { miss, size };
 }
 
-/** Largest interpolation error of a watched signal over its size, rounding left out. */
-function worstError(values: Float64Array, tracks: readonly SignalTrack[]): number {
+/** Largest miss beyond the noise, in parts of the signal. */
+function worstOf({ miss, size }: Misses, tracks: readonly SignalTrack[]): number {
   let worst = 0;
-  tracks.forEach((track, i) => {
-    if (track.finished) return;
-    const error = interpolationError(values, i * POINTS) - track.noise;
-    let size = sizeOf(track);
-    for (let j = 0; j < POINTS; j++) size = Math.max(size, Math.abs(values[i * POINTS + j]));
-    if (error > 0) worst = Math.max(worst, error / size);
-  });
+  for (let i = 0; i < tracks.length; i++) {
+    const error = miss[i] - tracks[i].noise;
+    if (error > 0 && !tracks[i].finished) worst = Math.max(worst, error / size[i]);
+  }
   return worst;
+}
+
+/**
+ * In a cell twice as long a smooth signal is missed by at most 2^12 as much, rounding grows twofold: what was missed by next to
+ * nothing, or has hardly grown, is rounding.
+ */
+function isRounding({ miss, size }: Misses, before: Misses): boolean {
+  for (let i = 0; i < miss.length; i++) {
+    const allowed =
+      before.miss[i] < EASY * before.size[i] ? Number.POSITIVE_INFINITY : Math.max(4 * before.miss[i], RESOLVED * size[i]);
+    if (miss[i] > allowed) return false;
+  }
+  return true;
+}
+
+function isPutUpWith(misses: Misses, before: Misses): boolean {
+  return isRounding(misses, before) && misses.miss.every((miss, i) => miss <= LEARNT_ROUNDING * misses.size[i]);
+}
+
+function learnNoise({ miss }: Misses, tracks: readonly SignalTrack[]): void {
+  for (let i = 0; i < tracks.length; i++) tracks[i].noise = Math.max(tracks[i].noise, 1.5 * miss[i]);
 }
 
 /** Allows for the rounding of the sums that make each signal from the state. */

@@ -1,5 +1,5 @@
 import { flatProduct } from "../linalg/flat";
-import { finishTracks, followSample, type SignalTrack } from "./signal-track";
+import { finishTracks, followSample, isHopeless, type SignalTrack } from "./signal-track";
 import type { TailBound } from "./tail-bound";
 import { raiseNoise, timesVector } from "./walk-continuous";
 
@@ -54,14 +54,17 @@ export function transitionPower(a: Float64Array, n: number, k: number): Float64A
  * Follows the watched signals of a sampled loop, every sample of them, until everything sought about them is proved.
  *
  * Accuracy  the recursion's own rounding
- * Limits    at most `limit` samples; what is not finished by then stays unfinished
+ * Limits    at most `limit` samples, fewer where these cannot suffice; what is not finished stays unfinished
  */
 export function walkSampled(walker: SampledWalker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
   const { order, period, rows, block, phi, tail } = walker;
   const signals = tracks.length;
+  const pace = { size: tail.size(departure), count: 0 };
   let state = departure;
   for (let first = 0; first < limit; first += BLOCK) {
-    if (finishTracks(tracks, tail.gains, tail.size(state))) return;
+    const size = tail.size(state);
+    const factor = finishTracks(tracks, tail.gains, size);
+    if (factor === null || isHopeless(pace, size, factor, first, limit)) return;
     raiseNoise(rows, order, state, tracks);
     for (let i = 0; i < signals; i++) {
       const track = tracks[i];

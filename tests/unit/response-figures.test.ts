@@ -209,6 +209,20 @@ describe("limits", () => {
     expect(Math.abs((settling ?? 0) - Math.log(50) / 1e-4)).toBeLessThanOrEqual(Math.PI);
   });
 
+  test.each([1e2, 1e4, 1e6])("rates spread by %d, mixed over the states, keep eight digits of the settling time", (spread) => {
+    const [c, s] = [0.6, 0.8]; // states turned by the angle with this cosine and sine
+    const [slow, fast] = [1, spread];
+    const A = [
+      [-slow * c * c - fast * s * s, (fast - slow) * c * s],
+      [(fast - slow) * c * s, -slow * s * s - fast * c * c],
+    ];
+    const request = single(A, [[c * slow - s * fast], [s * slow + c * fast]], null);
+    const H = new Matrix([[(c - s) / 2, (s + c) / 2]]); // half of each mode
+    const { settling, overshoot } = respond({ ...request, plant: { ...request.plant, H, C: H } }).figures[0].commanded[0];
+    expect((settling ?? 0) / Math.log(25)).toBeCloseTo(1, 8);
+    expect(overshoot).toBe(0);
+  });
+
   test("records of many signals are thinned", () => {
     const n = 60;
     const A = Array.from({ length: n }, (_, i) => Array.from({ length: n }, (_, j) => (i === j ? -1 - i / n : 0)));
