@@ -1,5 +1,6 @@
+import { compactJson } from "./compact-json";
 import type { ApiDescription } from "./openapi";
-import { fieldsOf, type JsonSchema, type ReadableField, typeInWords } from "./readable-schema";
+import { fieldsOf, type JsonSchema, type ReadableField, shapeInWords, typeInWords } from "./readable-schema";
 
 export type ReadableOperation = {
   readonly id: string;
@@ -81,13 +82,13 @@ function readableOperation(path: string, method: string, operation: Operation): 
       required,
       type: typeInWords(schema),
     })),
-    body: body ? shape(body.schema) : null,
-    example: body?.example === undefined ? null : JSON.stringify(body.example, null, 2),
+    body: body ? shapeInWords(body.schema) : null,
+    example: body?.example === undefined ? null : compactJson(body.example),
     replies: Object.entries(operation.responses).map(([status, { description, content = {} }]) => ({
       status,
       description,
       type: Object.entries(content)
-        .map(([media, { schema }]) => (media.includes("json") && schema ? shape(schema) : media))
+        .map(([media, { schema }]) => (media.includes("json") && schema ? shapeInWords(schema) : media))
         .join(" or "),
     })),
   };
@@ -96,11 +97,4 @@ function readableOperation(path: string, method: string, operation: Operation): 
 function accessOf(security: Operation["security"]): ReadableOperation["access"] {
   if (!security) return "signed in or by token";
   return security.length === 0 ? "anybody" : "signed in on a page";
-}
-
-/** A nameless object is told by its fields. */
-function shape(schema: JsonSchema): string {
-  if (!schema.properties) return typeInWords(schema);
-  const fields = Object.entries(schema.properties).map(([name, field]) => `${name}: ${typeInWords(field)}`);
-  return `{ ${fields.join("; ")} }`;
 }

@@ -27,20 +27,34 @@ export function typeInWords(schema: JsonSchema): string {
   const name = refName(schema);
   if (name) return name;
   const alternatives = schema.oneOf ?? schema.anyOf;
-  if (alternatives) return [...new Set(alternatives.map(typeInWords))].join(" or ");
+  if (alternatives) return [...new Set(alternatives.map(shapeInWords))].join(" or ");
   if (schema.enum) return schema.enum.map((value) => JSON.stringify(value)).join(" or ");
   const kinds = [schema.type ?? "any"].flat();
   return kinds.map((kind) => kindInWords(kind, schema)).join(" or ");
 }
 
+/** A nameless object is told by its fields. */
+export function shapeInWords(schema: JsonSchema): string {
+  if (!schema.properties) return typeInWords(schema);
+  const fields = Object.entries(schema.properties).map(([name, field]) => `${name}: ${typeInWords(field)}`);
+  return `{ ${fields.join("; ")} }`;
+}
+
 function kindInWords(kind: string, schema: JsonSchema): string {
-  if (kind === "array")
-    return `list of ${schema.items ? typeInWords(schema.items) : "anything"}${bounds(schema.minItems, schema.maxItems)}`;
+  if (kind === "array") return listInWords(schema);
+  if (kind === "object" && !schema.properties && typeof schema.additionalProperties === "object") {
+    return `${typeInWords(schema.additionalProperties)}, by name`;
+  }
   if (kind === "string") return `${FORMATS[schema.format ?? ""] ?? "text"}${bounds(schema.minLength, schema.maxLength)}`;
   if (kind === "integer" || kind === "number") return `${kind === "integer" ? "whole number" : "number"}${range(schema)}`;
   if (kind === "boolean") return "true or false";
-  if (kind === "any") return "anything";
-  return kind;
+  return kind === "any" ? "anything" : kind;
+}
+
+function listInWords({ items, minItems, maxItems }: JsonSchema): string {
+  if (items?.type !== "array") return `list of ${items ? typeInWords(items) : "anything"}${bounds(minItems, maxItems)}`;
+  const size = maxItems === undefined || items.maxItems === undefined ? "" : `, at most ${maxItems} × ${items.maxItems}`;
+  return `rows of ${items.items ? typeInWords(items.items) : "anything"}${size}`;
 }
 
 const FORMATS: Readonly<Record<string, string>> = { uuid: "id", "date-time": "UTC time", email: "e-mail address" };

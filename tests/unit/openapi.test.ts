@@ -7,7 +7,10 @@ import { apiDescription } from "@/app/api/v1/openapi.json/description";
 import { METHODS } from "@/lib/api/openapi";
 
 const folder = fileURLToPath(new URL("../../app/api/v1/", import.meta.url));
-const routeFiles = readdirSync(folder, { recursive: true, encoding: "utf8" }).filter((file) => file.endsWith("route.ts"));
+/** But for the one that answers whatever names nothing. */
+const routeFiles = readdirSync(folder, { recursive: true, encoding: "utf8" }).filter(
+  (file) => file.endsWith("route.ts") && !file.startsWith("[...rest]"),
+);
 
 /** `plants/[plantId]/route.ts` is served at `/api/v1/plants/{plantId}`. */
 const addressOf = (file: string) => `/api/v1/${file.replace(/\/route\.ts$/, "").replace(/\[(\w+)\]/g, "{$1}")}`;

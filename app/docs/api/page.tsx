@@ -19,10 +19,8 @@ export default async function ApiPage() {
     <PageBody>
       <PageHeading
         title="API"
-        crumbs={[
-          { label: "OpenAPI 3.1", href: "/api/v1/openapi.json" },
-          { label: "Problems", href: "/docs/problems" },
-        ]}
+        crumbs={[{ label: "Problems", href: "/docs/problems" }]}
+        actions={<a href="/api/v1/openapi.json">OpenAPI 3.1 document</a>}
       />
       <HowToCall />
       <Contents groups={groups} />
@@ -48,7 +46,7 @@ function Contents({ groups }: Groups) {
   return (
     <nav aria-label="Routes" className="mb-8 columns-[22rem] gap-8 text-table">
       {groups.map(({ name, operations }) => (
-        <ul key={name} className="mb-3 break-inside-avoid">
+        <ul key={name} aria-label={name} className="mb-3 break-inside-avoid">
           {operations.map(({ id, summary }) => (
             <li key={id}>
               <a href={`#${id}`}>{summary}</a>

@@ -5,15 +5,13 @@ import { Shape } from "./shape";
 
 export function SchemaFields({ schema: { name, alternatives } }: Readonly<{ schema: ReadableSchema }>) {
   return (
-    <section id={`shape-${name}`} aria-labelledby={`shape-${name}-title`} className="mb-6 scroll-mt-4">
-      <h3 id={`shape-${name}-title`} className="font-mono font-semibold">
-        {name}
-      </h3>
+    <div id={`shape-${name}`} className="mb-6 scroll-mt-4">
+      <h3 className="font-mono font-semibold">{name}</h3>
       {alternatives.map((fields, index) => {
         const title = alternatives.length > 1 ? `${name}, form ${index + 1} of ${alternatives.length}` : name;
         return <Fields key={title} title={title} shown={alternatives.length > 1} fields={fields} />;
       })}
-    </section>
+    </div>
   );
 }
 
@@ -21,7 +19,7 @@ type FieldsProps = Readonly<{ title: string; shown: boolean; fields: readonly Re
 
 function Fields({ title, shown, fields }: FieldsProps) {
   return (
-    <ScrollBox label={title}>
+    <ScrollBox label={`Fields of ${title}`}>
       <table className="mb-2 border-collapse text-table">
         <caption className={shown ? "text-left text-soft" : "sr-only"}>{title}</caption>
         <thead className="sr-only">

@@ -18,7 +18,7 @@ export default function ProblemsPage() {
       </p>
       <dl className="max-w-prose">
         {entries.map(([code, { status, title, meaning, nextStep }]) => (
-          <div key={code} id={code} className="mb-5 scroll-mt-4 border-t border-rule pt-3 target:bg-caution">
+          <div key={code} id={code} className="-mx-3 mb-2 scroll-mt-4 border-t border-rule px-3 pt-3 pb-3 target:bg-caution">
             <dt className="flex flex-wrap items-baseline gap-x-3">
               <h2>{title}</h2>
               <span className="font-mono text-sm text-soft">
