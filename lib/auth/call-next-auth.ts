@@ -79,8 +79,9 @@ class Answer {
     this.#body = null;
   }
   toResponse(): Response {
-    const response = new Response(this.#body, { status: this.#status });
-    for (const [name, value] of this.#headers) for (const one of [value].flat()) response.headers.append(name, one);
-    return response;
+    // Gathered first: a reply made without a type takes text/plain for one, and ours would stand beside it.
+    const headers = new Headers();
+    for (const [name, value] of this.#headers) for (const one of [value].flat()) headers.append(name, one);
+    return new Response(this.#body, { status: this.#status, headers });
   }
 }
