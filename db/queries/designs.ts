@@ -1,17 +1,16 @@
 import "server-only";
-import { and, eq, inArray, isNotNull, isNull, ne, type SQL, sql } from "drizzle-orm";
-import { alias } from "drizzle-orm/pg-core";
+import { and, eq, inArray, isNull, lt, type SQL, sql } from "drizzle-orm";
 import type { Db } from "../client";
 import { designRevisions, designs } from "../schema/designs";
 import { evidence } from "../schema/evidence";
 import { plantRevisions, plants } from "../schema/plants";
+import { type Archived, whereArchived } from "./archived";
 import { after, type Keyset, type Order, ordered, sortValue } from "./keyset";
-import type { Archived, PlantKey } from "./plants";
+import type { PlantKey } from "./plants";
 
 export type DesignKey = { readonly teamId: string; readonly designId: string };
 const owned = ({ teamId, designId }: DesignKey) => and(eq(designs.teamId, teamId), eq(designs.id, designId));
 
-const responses = alias(evidence, "responses");
 const row = {
   id: designs.id,
   plantId: designs.plantId,
@@ -22,9 +21,9 @@ const row = {
   plantRevisionId: plantRevisions.id,
   plantRevisionNumber: plantRevisions.number,
   newestPlantRevision: plants.currentRevision,
-  method: sql<"weights" | "poles">`${designRevisions.recipe} ->> 'method'`,
-  observer: sql<"none" | "poles" | "noise" | "reduced">`${designRevisions.recipe} -> 'observer' ->> 'kind'`,
-  summary: sql<unknown>`case when ${responses.state} = 'computed' then ${responses.content} -> 'summary' end`,
+  method: designRevisions.method,
+  observer: designRevisions.observerKind,
+  summary: evidence.summary,
   archivedAt: designs.archivedAt,
   createdAt: designs.createdAt,
   updatedAt: designs.updatedAt,
@@ -37,9 +36,9 @@ const withCurrent = and(
 const withPlantRevision = and(eq(plantRevisions.teamId, designs.teamId), eq(plantRevisions.id, designRevisions.plantRevisionId));
 const withPlant = and(eq(plants.teamId, designs.teamId), eq(plants.id, designs.plantId));
 const withResponses = and(
-  eq(responses.teamId, designs.teamId),
-  eq(responses.designRevisionId, designRevisions.id),
-  eq(responses.part, "responses"),
+  eq(evidence.teamId, designs.teamId),
+  eq(evidence.designRevisionId, designRevisions.id),
+  eq(evidence.part, "responses"),
 );
 const byUpdate = { by: designs.updatedAt, id: designs.id, type: "timestamptz", descending: true } as const satisfies Order;
 
@@ -50,7 +49,7 @@ function selectDesigns(db: Db) {
     .innerJoin(designRevisions, withCurrent)
     .innerJoin(plantRevisions, withPlantRevision)
     .innerJoin(plants, withPlant)
-    .leftJoin(responses, withResponses);
+    .leftJoin(evidence, withResponses);
 }
 export type DesignRow = Awaited<ReturnType<typeof selectDesigns>>[number];
 
@@ -60,16 +59,15 @@ export async function findDesign(db: Db, key: DesignKey): Promise<DesignRow | un
 }
 
 export async function listDesigns(db: Db, key: PlantKey, query: { archived: Archived; limit: number; place: Keyset | null }) {
-  const shown =
-    query.archived === "all" ? undefined : query.archived === "yes" ? isNotNull(designs.archivedAt) : isNull(designs.archivedAt);
+  const shown = whereArchived(designs.archivedAt, query.archived);
   return selectDesigns(db)
     .where(and(eq(designs.teamId, key.teamId), eq(designs.plantId, key.plantId), shown, after(byUpdate, query.place)))
     .orderBy(...ordered(byUpdate))
     .limit(query.limit);
 }
 
-/** Designs whose newest revision is pinned to another plant revision than the one named; archived ones left out. */
-export async function designsOnOtherRevisions(db: Db, key: PlantKey, plantRevisionId: string) {
+/** Designs whose newest revision is pinned to a plant revision older than `number`, at most 100; archived ones left out. */
+export async function designsOnOlderRevisions(db: Db, key: PlantKey, number: number) {
   return db
     .select({ id: designs.id, name: designs.name, onRevision: plantRevisions.number })
     .from(designs)
@@ -80,10 +78,10 @@ export async function designsOnOtherRevisions(db: Db, key: PlantKey, plantRevisi
         eq(designs.teamId, key.teamId),
         eq(designs.plantId, key.plantId),
         isNull(designs.archivedAt),
-        ne(designRevisions.plantRevisionId, plantRevisionId),
+        lt(plantRevisions.number, number),
       ),
     )
-    .orderBy(designs.name)
+    .orderBy(designs.name, designs.id)
     .limit(100);
 }
 
@@ -97,7 +95,7 @@ async function changeAt(
   db: Db,
   key: DesignKey,
   version: number,
-  change: { name?: string; archivedAt?: Date | null; currentRevision?: SQL },
+  change: { name?: string; archivedAt?: SQL | null; currentRevision?: SQL },
 ) {
   const [saved] = await db
     .update(designs)
@@ -108,8 +106,8 @@ async function changeAt(
 }
 
 export const renameDesignAt = (db: Db, key: DesignKey, version: number, name: string) => changeAt(db, key, version, { name });
-export const archiveDesignAt = (db: Db, key: DesignKey, version: number, archivedAt: Date | null) =>
-  changeAt(db, key, version, { archivedAt });
+export const archiveDesignAt = (db: Db, key: DesignKey, version: number, archived: boolean) =>
+  changeAt(db, key, version, { archivedAt: archived ? sql`now()` : null });
 export const advanceDesignAt = (db: Db, key: DesignKey, version: number) =>
   changeAt(db, key, version, { currentRevision: sql`${designs.currentRevision} + 1` });
 

@@ -1,12 +1,12 @@
 import "server-only";
-import { and, eq, ilike, isNotNull, isNull, type SQL, sql } from "drizzle-orm";
+import { and, eq, ilike, type SQL, sql } from "drizzle-orm";
 import type { Db } from "../client";
 import { designs } from "../schema/designs";
 import { plantRevisions, plants } from "../schema/plants";
+import { type Archived, whereArchived } from "./archived";
 import { after, type Keyset, literalLike, type Order, ordered, sortValue } from "./keyset";
 
 export type PlantKey = { readonly teamId: string; readonly plantId: string };
-export type Archived = "no" | "yes" | "all";
 const owned = ({ teamId, plantId }: PlantKey) => and(eq(plants.teamId, teamId), eq(plants.id, plantId));
 
 const ORDERS = {
@@ -17,19 +17,17 @@ const ORDERS = {
 } as const satisfies Record<string, Order>;
 export type PlantSort = keyof typeof ORDERS;
 
-const model = plantRevisions.model;
-const count = (list: string) => sql<number>`jsonb_array_length(${model} -> ${list})`;
 const row = {
   id: plants.id,
   name: plants.name,
   version: plants.version,
   revisionId: plantRevisions.id,
   revisionNumber: plantRevisions.number,
-  axes: sql<{ name: string; tag: string }[]>`${model} -> 'axes'`,
-  timeBase: sql<{ kind: "continuous" } | { kind: "sampled"; period: number }>`${model} -> 'timeBase'`,
-  order: count("states"),
-  inputCount: count("inputs"),
-  outputCount: count("outputs"),
+  axes: plantRevisions.axes,
+  timeBase: plantRevisions.timeBase,
+  order: plantRevisions.stateCount,
+  inputCount: plantRevisions.inputCount,
+  outputCount: plantRevisions.outputCount,
   designCount: sql<number>`(select count(*)::int from ${designs} where ${designs.teamId} = ${plants.teamId}
     and ${designs.plantId} = ${plants.id} and ${designs.archivedAt} is null)`,
   archivedAt: plants.archivedAt,
@@ -57,7 +55,7 @@ export async function listPlants(
   const conditions: (SQL | undefined)[] = [
     eq(plants.teamId, teamId),
     query.search === "" ? undefined : ilike(plants.name, literalLike(query.search)),
-    query.archived === "all" ? undefined : query.archived === "yes" ? isNotNull(plants.archivedAt) : isNull(plants.archivedAt),
+    whereArchived(plants.archivedAt, query.archived),
     after(order, query.place),
   ];
   return db
@@ -70,7 +68,7 @@ export async function listPlants(
 }
 
 export async function insertPlant(db: Db, values: { teamId: string; name: string; createdBy: string }) {
-  const [made] = await db.insert(plants).values(values).returning({ id: plants.id, version: plants.version });
+  const [made] = await db.insert(plants).values(values).returning({ id: plants.id });
   return made;
 }
 
@@ -79,18 +77,18 @@ async function changeAt(
   db: Db,
   key: PlantKey,
   version: number,
-  change: { name?: string; archivedAt?: Date | null; currentRevision?: SQL },
+  change: { name?: string; archivedAt?: SQL | null; currentRevision?: SQL },
 ) {
   const [saved] = await db
     .update(plants)
     .set({ ...change, version: sql`${plants.version} + 1`, updatedAt: sql`now()` })
     .where(and(owned(key), eq(plants.version, version)))
-    .returning({ id: plants.id, version: plants.version, currentRevision: plants.currentRevision });
+    .returning({ currentRevision: plants.currentRevision });
   return saved;
 }
 
 export const renamePlantAt = (db: Db, key: PlantKey, version: number, name: string) => changeAt(db, key, version, { name });
-export const archivePlantAt = (db: Db, key: PlantKey, version: number, archivedAt: Date | null) =>
-  changeAt(db, key, version, { archivedAt });
+export const archivePlantAt = (db: Db, key: PlantKey, version: number, archived: boolean) =>
+  changeAt(db, key, version, { archivedAt: archived ? sql`now()` : null });
 export const advancePlantAt = (db: Db, key: PlantKey, version: number) =>
   changeAt(db, key, version, { currentRevision: sql`${plants.currentRevision} + 1` });

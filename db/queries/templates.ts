@@ -1,9 +1,9 @@
 import "server-only";
-import { and, eq, isNotNull, isNull, sql } from "drizzle-orm";
+import { and, eq, sql } from "drizzle-orm";
 import type { Db } from "../client";
 import { templates } from "../schema/templates";
+import { type Archived, whereArchived } from "./archived";
 import { after, type Keyset, type Order, ordered, sortValue } from "./keyset";
-import type { Archived } from "./plants";
 
 const byName = { by: templates.name, id: templates.id, type: "text", descending: false } as const satisfies Order;
 const summary = {
@@ -11,8 +11,8 @@ const summary = {
   name: templates.name,
   description: templates.description,
   version: templates.version,
-  openParameterCount: sql<number>`jsonb_array_length(${templates.content} -> 'openParameters')`,
-  order: sql<number>`jsonb_array_length(${templates.content} -> 'plant' -> 'states')`,
+  openParameterCount: templates.openParameterCount,
+  order: templates.stateCount,
   archivedAt: templates.archivedAt,
   createdAt: templates.createdAt,
 };
@@ -20,12 +20,7 @@ export type TemplateKey = { readonly teamId: string; readonly templateId: string
 const owned = ({ teamId, templateId }: TemplateKey) => and(eq(templates.teamId, teamId), eq(templates.id, templateId));
 
 export async function listTemplates(db: Db, teamId: string, query: { archived: Archived; limit: number; place: Keyset | null }) {
-  const shown =
-    query.archived === "all"
-      ? undefined
-      : query.archived === "yes"
-        ? isNotNull(templates.archivedAt)
-        : isNull(templates.archivedAt);
+  const shown = whereArchived(templates.archivedAt, query.archived);
   return db
     .select({ ...summary, sortValue: sortValue(byName) })
     .from(templates)
@@ -49,10 +44,10 @@ export async function insertTemplate(db: Db, values: typeof templates.$inferInse
 }
 
 /** Undefined: absent, another team's, or no longer at `version`. */
-export async function archiveTemplateAt(db: Db, key: TemplateKey, version: number, archivedAt: Date | null) {
+export async function archiveTemplateAt(db: Db, key: TemplateKey, version: number, archived: boolean) {
   const [saved] = await db
     .update(templates)
-    .set({ archivedAt, version: sql`${templates.version} + 1`, updatedAt: sql`now()` })
+    .set({ archivedAt: archived ? sql`now()` : null, version: sql`${templates.version} + 1`, updatedAt: sql`now()` })
     .where(and(owned(key), eq(templates.version, version)))
     .returning({ id: templates.id });
   return saved;

@@ -32,6 +32,7 @@ export const comparisons = pgTable(
       foreignColumns: [memberships.teamId, memberships.userId],
     }),
     index("comparisons_by_time").on(table.teamId, table.plantId, table.createdAt, table.id),
+    index("comparisons_of_team_by_time").on(table.teamId, table.createdAt, table.id),
     index("comparisons_author_index").on(table.teamId, table.createdBy),
     check("comparisons_title_length", sql`length(${table.title}) between 1 and 120`),
     check("comparisons_note_length", sql`length(${table.note}) <= 2000`),

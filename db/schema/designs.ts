@@ -1,6 +1,6 @@
 import { sql } from "drizzle-orm";
 import { check, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
-import type { Recipe } from "@/control/design/recipe";
+import type { ObserverRecipe, Recipe } from "@/control/design/recipe";
 import { createdAt, id, time, updatedAt, version } from "./columns";
 import { memberships } from "./people";
 import { plantRevisions, plants } from "./plants";
@@ -49,6 +49,11 @@ export const designRevisions = pgTable(
     number: integer("number").notNull(),
     plantRevisionId: uuid("plant_revision_id").notNull(),
     recipe: jsonb("recipe").$type<Recipe>().notNull(),
+    method: text("method").$type<Recipe["method"]>().notNull().generatedAlwaysAs(sql`recipe ->> 'method'`),
+    observerKind: text("observer_kind")
+      .$type<ObserverRecipe["kind"]>()
+      .notNull()
+      .generatedAlwaysAs(sql`recipe -> 'observer' ->> 'kind'`),
     methodVersion: text("method_version").notNull(),
     note: text("note").notNull().default(""),
     createdBy: uuid("created_by").notNull(),

@@ -1,6 +1,6 @@
 import { sql } from "drizzle-orm";
 import { check, doublePrecision, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
-import type { ResponseRecord } from "@/control/design/evidence";
+import type { ResponseEvidence, ResponseRecord } from "@/control/design/evidence";
 import { bytes, createdAt, id } from "./columns";
 import { designRevisions } from "./designs";
 
@@ -14,6 +14,9 @@ export const evidence = pgTable(
     part: text("part").notNull(),
     state: text("state").$type<"computed" | "running" | "refused">().notNull(),
     content: jsonb("content").$type<unknown>().notNull(),
+    summary: jsonb("summary")
+      .$type<ResponseEvidence["summary"]>()
+      .generatedAlwaysAs(sql`case when part = 'responses' and state = 'computed' then content -> 'summary' end`),
     createdAt: createdAt(),
   },
   (table) => [

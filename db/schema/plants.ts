@@ -35,7 +35,10 @@ export const plants = pgTable(
   ],
 );
 
-/** Immutable: what was typed, and the doubles it was evaluated to, which are the plant. */
+/**
+ * Immutable: what was typed, and the doubles it was evaluated to, which are the plant. The generated columns are what lists
+ * show: taking it out of a large document costs milliseconds a row.
+ */
 export const plantRevisions = pgTable(
   "plant_revisions",
   {
@@ -45,6 +48,11 @@ export const plantRevisions = pgTable(
     number: integer("number").notNull(),
     content: jsonb("content").$type<PlantContent>().notNull(),
     model: jsonb("model").$type<PlantModel>().notNull(),
+    axes: jsonb("axes").$type<PlantModel["axes"]>().notNull().generatedAlwaysAs(sql`model -> 'axes'`),
+    timeBase: jsonb("time_base").$type<PlantModel["timeBase"]>().notNull().generatedAlwaysAs(sql`model -> 'timeBase'`),
+    stateCount: integer("state_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'states')`),
+    inputCount: integer("input_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'inputs')`),
+    outputCount: integer("output_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'outputs')`),
     note: text("note").notNull().default(""),
     createdBy: uuid("created_by").notNull(),
     createdAt: createdAt(),

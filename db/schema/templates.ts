@@ -1,5 +1,5 @@
 import { sql } from "drizzle-orm";
-import { check, foreignKey, index, jsonb, pgTable, text, uuid } from "drizzle-orm/pg-core";
+import { check, foreignKey, index, integer, jsonb, pgTable, text, uuid } from "drizzle-orm/pg-core";
 import type { TemplateContent } from "@/lib/schemas/template";
 import { createdAt, id, time, updatedAt, version } from "./columns";
 import { memberships, teams } from "./people";
@@ -14,6 +14,10 @@ export const templates = pgTable(
     name: text("name").notNull(),
     description: text("description").notNull().default(""),
     content: jsonb("content").$type<TemplateContent>().notNull(),
+    openParameterCount: integer("open_parameter_count")
+      .notNull()
+      .generatedAlwaysAs(sql`jsonb_array_length(content -> 'openParameters')`),
+    stateCount: integer("state_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(content -> 'plant' -> 'states')`),
     version: version(),
     archivedAt: time("archived_at"),
     createdBy: uuid("created_by").notNull(),

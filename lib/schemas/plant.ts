@@ -130,7 +130,7 @@ export const PlantDifference = z.strictObject({
   changes: z.array(
     z.strictObject({ pointer: z.string(), place: z.string(), before: z.string().nullable(), after: z.string().nullable() }),
   ),
-  /** Designs pinned to another revision than the newest. */
+  /** Designs whose newest revision was computed on a plant revision older than the later of the two; the first hundred by name. */
   outdates: z.array(z.strictObject({ id: Id, name: Name, onRevision: Version })),
 });
 export type PlantDifference = z.infer<typeof PlantDifference>;

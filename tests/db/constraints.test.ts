@@ -1,7 +1,7 @@
 import type pg from "pg";
 import { describe, expect, test } from "vitest";
 import { connect } from "@/lib/commands/databases.mjs";
-import { type FilledTeam, fillTeam } from "../helpers/filled-team";
+import { EMPTY_MODEL, EMPTY_RECIPE, type FilledTeam, fillTeam } from "../helpers/filled-team";
 import { testDatabase } from "../helpers/test-database";
 
 const { appUrl, adminUrl } = await testDatabase();
@@ -36,8 +36,8 @@ describe("a child never points at another team's parent, whoever writes it", () 
   const crossed: [string, string, unknown[]][] = [
     [
       "a plant revision",
-      "insert into plant_revisions (team_id, plant_id, number, content, model, created_by) values ($1, $2, 9, '{}', '{}', $3)",
-      [ours.teamId, theirs.plantId, ours.userId],
+      "insert into plant_revisions (team_id, plant_id, number, content, model, created_by) values ($1, $2, 9, '{}', $4, $3)",
+      [ours.teamId, theirs.plantId, ours.userId, EMPTY_MODEL],
     ],
     [
       "a design",
@@ -46,13 +46,13 @@ describe("a child never points at another team's parent, whoever writes it", () 
     ],
     [
       "a design revision's design",
-      "insert into design_revisions (team_id, plant_id, design_id, number, plant_revision_id, recipe, method_version, created_by) values ($1, $2, $3, 9, $4, '{}', '1', $5)",
-      [ours.teamId, ours.plantId, theirs.designId, ours.revisionId, ours.userId],
+      "insert into design_revisions (team_id, plant_id, design_id, number, plant_revision_id, recipe, method_version, created_by) values ($1, $2, $3, 9, $4, $6, '1', $5)",
+      [ours.teamId, ours.plantId, theirs.designId, ours.revisionId, ours.userId, EMPTY_RECIPE],
     ],
     [
       "a design revision's plant revision",
-      "insert into design_revisions (team_id, plant_id, design_id, number, plant_revision_id, recipe, method_version, created_by) values ($1, $2, $3, 9, $4, '{}', '1', $5)",
-      [ours.teamId, ours.plantId, ours.designId, theirs.revisionId, ours.userId],
+      "insert into design_revisions (team_id, plant_id, design_id, number, plant_revision_id, recipe, method_version, created_by) values ($1, $2, $3, 9, $4, $6, '1', $5)",
+      [ours.teamId, ours.plantId, ours.designId, theirs.revisionId, ours.userId, EMPTY_RECIPE],
     ],
     [
       "evidence",
@@ -185,8 +185,8 @@ describe("what is stored once stays as it is", () => {
 
   test("two revisions never share a number", async () => {
     const again =
-      "insert into plant_revisions (team_id, plant_id, number, content, model, created_by) values ($1, $2, 1, '{}', '{}', $3)";
-    expect(await stateOf(app, again, [ours.teamId, ours.plantId, ours.userId])).toBe("23505");
+      "insert into plant_revisions (team_id, plant_id, number, content, model, created_by) values ($1, $2, 1, '{}', $4, $3)";
+    expect(await stateOf(app, again, [ours.teamId, ours.plantId, ours.userId, EMPTY_MODEL])).toBe("23505");
   });
 });
 

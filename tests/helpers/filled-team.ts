@@ -5,6 +5,11 @@ export type FilledTeam = Readonly<
   Record<"teamId" | "userId" | "plantId" | "revisionId" | "designId" | "designRevisionId", string>
 >;
 
+/** As much of the documents as the tables themselves ask for. */
+export const EMPTY_MODEL = { axes: [], timeBase: { kind: "continuous" }, states: [], inputs: [], outputs: [] };
+export const EMPTY_RECIPE = { method: "weights", observer: { kind: "none" } };
+const EMPTY_TEMPLATE = { plant: { states: [] }, openParameters: [] };
+
 /** Two design revisions, so that a comparison can stand; one row at least in every table that knows a team. */
 export async function fillTeam(admin: pg.Client): Promise<FilledTeam> {
   const [teamId, userId, plantId, revisionId, designId, designRevisionId, second] = Array.from({ length: 7 }, () => randomUUID());
@@ -27,9 +32,15 @@ export async function fillTeam(admin: pg.Client): Promise<FilledTeam> {
   await put("access_tokens", { team_id: teamId, user_id: userId, ...token });
   await put("outbox", { team_id: teamId, recipient: "new@saltmarsh.example", subject: "s", text: "t", html: "h" });
   await put("plants", { id: plantId, ...made, name: "Gantry" });
-  await put("plant_revisions", { id: revisionId, ...made, plant_id: plantId, number: 1, content: {}, model: {} });
+  await put("plant_revisions", { id: revisionId, ...made, plant_id: plantId, number: 1, content: {}, model: EMPTY_MODEL });
   await put("designs", { id: designId, ...made, plant_id: plantId, name: "First" });
-  const pinned = { plant_id: plantId, design_id: designId, plant_revision_id: revisionId, recipe: {}, method_version: "1" };
+  const pinned = {
+    plant_id: plantId,
+    design_id: designId,
+    plant_revision_id: revisionId,
+    recipe: EMPTY_RECIPE,
+    method_version: "1",
+  };
   await put("design_revisions", { id: designRevisionId, ...made, ...pinned, number: 1 });
   await put("design_revisions", { id: second, ...made, ...pinned, number: 2 });
   await put("evidence", { team_id: teamId, design_revision_id: designRevisionId, part: "gains", state: "computed", content: {} });
@@ -37,7 +48,7 @@ export async function fillTeam(admin: pg.Client): Promise<FilledTeam> {
   await put("response_records", { team_id: teamId, design_revision_id: designRevisionId, ...curve, values: Buffer.alloc(16) });
   const compared = { title: "Both", design_revision_ids: [designRevisionId, second] };
   await put("comparisons", { ...made, plant_id: plantId, ...compared });
-  await put("templates", { ...made, name: "Template", content: {} });
+  await put("templates", { ...made, name: "Template", content: EMPTY_TEMPLATE });
   const event = { kind: "plant.created", subject_type: "plant", subject_id: plantId, request_id: "request" };
   await put("audit_events", { team_id: teamId, actor_id: userId, ...event });
   await put("idempotency_keys", { team_id: teamId, user_id: userId, route: "POST /plants", key: "k", body_hash: "h" });

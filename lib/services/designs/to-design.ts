@@ -4,12 +4,11 @@ import type { DesignRevisionEntryRow, DesignRevisionRow } from "@/db/queries/des
 import type { DesignRow } from "@/db/queries/designs";
 import type { EvidenceRow } from "@/db/queries/evidence";
 import type { DesignRevision, DesignRevisionEntry, DesignSummary } from "@/lib/schemas/design";
-import type { Summary } from "@/lib/schemas/evidence";
 import { evidenceReply } from "./evidence-reply";
 
 /** Only the fields we mean to show. */
 export function toDesignSummary(row: DesignRow): DesignSummary {
-  const summaries = row.summary as { fullState: Summary; observer: Summary | null } | null;
+  const shown = row.summary?.observer ?? row.summary?.fullState ?? null;
   return {
     id: row.id,
     plantId: row.plantId,
@@ -20,7 +19,7 @@ export function toDesignSummary(row: DesignRow): DesignSummary {
     currentRevision: { id: row.revisionId, number: row.revisionNumber },
     plantRevision: { id: row.plantRevisionId, number: row.plantRevisionNumber },
     outdated: row.plantRevisionNumber !== row.newestPlantRevision,
-    summary: summaries?.observer ?? summaries?.fullState ?? null,
+    summary: shown && { ...shown, peakEffort: [...shown.peakEffort] },
     archivedAt: row.archivedAt?.toISOString() ?? null,
     createdAt: row.createdAt.toISOString(),
     updatedAt: row.updatedAt.toISOString(),

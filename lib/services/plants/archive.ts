@@ -6,5 +6,5 @@ import { changePlantAt } from "./change-at-version";
 /** An archived plant leaves the lists and keeps everything; the same verb brings it back. */
 export function archivePlant(ctx: Context, plantId: string, version: number, archived: boolean) {
   const kind = archived ? "plant.archived" : "plant.restored";
-  return changePlantAt(ctx, plantId, version, kind, (tx, key) => archivePlantAt(tx, key, version, archived ? new Date() : null));
+  return changePlantAt(ctx, plantId, version, kind, (tx, key) => archivePlantAt(tx, key, version, archived));
 }

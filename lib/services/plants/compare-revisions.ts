@@ -1,6 +1,6 @@
 import "server-only";
 import { inTransaction } from "@/db/client";
-import { designsOnOtherRevisions } from "@/db/queries/designs";
+import { designsOnOlderRevisions } from "@/db/queries/designs";
 import { findPlantRevision } from "@/db/queries/plant-revisions";
 import { NotFound } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
@@ -9,7 +9,7 @@ import type { Context } from "../context";
 import { contentDifferences } from "./content-differences";
 import { toRevision, toRevisionEntry } from "./to-plant";
 
-/** What differs between two revisions of a plant, and which designs are pinned to another than `to`. */
+/** What differs between two revisions of a plant, and which designs are pinned to one older than the later one. */
 export async function comparePlantRevisions(
   ctx: Context,
   plantId: string,
@@ -27,7 +27,7 @@ export async function comparePlantRevisions(
       from: toRevisionEntry(from),
       to: toRevisionEntry(to),
       changes: contentDifferences(toRevision(from).content, toRevision(to).content),
-      outdates: await designsOnOtherRevisions(tx, { teamId, plantId }, range.to),
+      outdates: await designsOnOlderRevisions(tx, { teamId, plantId }, Math.max(from.number, to.number)),
     };
   });
 }

@@ -10,7 +10,7 @@ export function toPlantSummary(row: PlantRow): PlantSummary {
     name: row.name,
     version: row.version,
     currentRevision: { id: row.revisionId, number: row.revisionNumber },
-    axes: row.axes,
+    axes: [...row.axes],
     order: row.order,
     inputCount: row.inputCount,
     outputCount: row.outputCount,

@@ -13,7 +13,7 @@ export async function archiveTemplate(ctx: Context, templateId: string, version:
   allow(ctx, "template:publish");
   return inTransaction(ctx, async (tx) => {
     const key = { teamId: ctx.teamId, templateId };
-    const saved = await archiveTemplateAt(tx, key, version, archived ? new Date() : null);
+    const saved = await archiveTemplateAt(tx, key, version, archived);
     const current = await findTemplate(tx, key);
     if (!current) throw new NotFound("Template");
     if (!saved) throw new StaleVersion(version, current.version);
