@@ -37,7 +37,7 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
       <FormProblems title="No token was made." {...{ attempt, problems }} />
       <TextField
         id={FIELDS["/name"]}

@@ -23,7 +23,7 @@ export function ForgottenPasswordForm() {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
       <FormProblems title="No mail was sent." {...{ attempt, problems }} />
       {sentTo ? (
         <Notice kind="met" title="A mail is on its way," role="status">

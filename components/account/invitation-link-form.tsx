@@ -25,7 +25,7 @@ export function InvitationLinkForm() {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-3">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-3">
       <TextField
         id={FIELD}
         name="link"

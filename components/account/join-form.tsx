@@ -26,7 +26,7 @@ export function JoinForm({ secret, email }: Readonly<{ secret: string; email: st
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
       <FormProblems title="You have not joined yet." {...{ attempt, problems }} />
       <TextField label="E-mail address" name="email" type="email" autoComplete="username" value={email} readOnly />
       <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />

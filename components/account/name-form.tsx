@@ -27,7 +27,7 @@ export function NameForm({ name, email }: Readonly<{ name: string; email: string
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
       <FormProblems title="Your name was not changed." {...{ attempt, problems }} />
       <TextField
         id={FIELDS["/name"]}

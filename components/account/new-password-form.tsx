@@ -20,7 +20,7 @@ export function NewPasswordForm({ secret }: Readonly<{ secret: string }>) {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
       <FormProblems title="The password was not changed." {...{ attempt, problems }} />
       <TextField
         id={FIELDS["/password"]}

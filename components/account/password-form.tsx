@@ -28,7 +28,7 @@ export function PasswordForm() {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
       <FormProblems title="The password was not changed." {...{ attempt, problems }} />
       {changed ? (
         <Notice kind="met" title="The password is changed." role="status">

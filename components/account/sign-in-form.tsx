@@ -38,7 +38,7 @@ export function SignInForm({ email, onSignedIn, children }: SignInFormProps) {
   }
 
   return (
-    <form onSubmit={submit} className="flex flex-col gap-4">
+    <form method="post" onSubmit={submit} className="flex flex-col gap-4">
       <FormProblems
         title="You are not signed in yet."
         attempt={attempt}

@@ -32,7 +32,7 @@ export function SignUpForm() {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-4">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
       <FormProblems title="The team could not be started yet." {...{ attempt, problems }} />
       <TextField
         id={FIELDS["/teamName"]}

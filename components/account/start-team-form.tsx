@@ -22,7 +22,7 @@ export function StartTeamForm() {
   }
 
   return (
-    <form onSubmit={submit} noValidate className="flex flex-col gap-3">
+    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-3">
       <FormProblems title="The team was not started." {...{ attempt, problems }} />
       <TextField
         id={FIELDS["/name"]}
