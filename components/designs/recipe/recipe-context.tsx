@@ -1,0 +1,28 @@
+"use client";
+
+import { createContext, useContext } from "react";
+import type { PlantModel } from "@/control/plant/model";
+import type { RecipeForm } from "./recipe-form";
+import type { ChangeRecipe } from "./use-recipe-form";
+
+export type RecipeEditing = {
+  readonly form: RecipeForm;
+  readonly model: PlantModel;
+  readonly change: ChangeRecipe;
+  readonly undo: () => void;
+  readonly redo: () => void;
+  /** What is wrong at a place of the recipe or below it. */
+  readonly problemAt: (pointer: string) => string | undefined;
+  /** Cells of a matrix of the recipe at fault, keyed "r,c". */
+  readonly cellProblems: (pointer: string) => ReadonlyMap<string, string>;
+  /** Told by a field whose text is no number, so that the recipe is not sent without it. */
+  readonly setUsable: (pointer: string, usable: boolean) => void;
+};
+
+export const RecipeContext = createContext<RecipeEditing | null>(null);
+
+export function useRecipe(): RecipeEditing {
+  const editing = useContext(RecipeContext);
+  if (!editing) throw new Error("useRecipe needs RecipeContext above it");
+  return editing;
+}
