@@ -19,7 +19,7 @@ export function ChecksPanel({ checks, model }: ChecksPanelProps) {
       <ul className="grid gap-3 lg:grid-cols-2">
         {findings.map(({ key, tone, headline, sentence }) => (
           <li key={key}>
-            <Notice kind={tone === "not-met" ? "unmet" : tone} title={headline}>
+            <Notice kind={tone === "not-met" ? "unmet" : tone} title={`${headline}.`}>
               {sentence}
             </Notice>
           </li>

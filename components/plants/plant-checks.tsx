@@ -39,22 +39,24 @@ export function PlantChecks({ revision, content, model, dirty }: PlantChecksProp
     </Button>
   );
   return (
-    <SheetSection title="Checks" ruled actions={!stored && model ? ask : null}>
-      {checks.isError ? (
-        <ErrorState title="The checks could not be made." action={<Button onClick={() => checks.refetch()}>Try again</Button>}>
-          {checks.error.message}
-        </ErrorState>
-      ) : checks.isFetching ? (
-        <LoadingState label="Checking the plant" />
-      ) : checks.data && model ? (
-        <ChecksPanel checks={checks.data} model={model} />
-      ) : (
-        <p className="text-soft">
-          {model
-            ? "Modes, controllability, observability, zeros, coupling and scaling, in plain words. Nothing has to be saved first."
-            : "The checks wait until every entry has a value; the entries in error are marked above."}
-        </p>
-      )}
-    </SheetSection>
+    <div className="mt-10">
+      <SheetSection title="Checks" ruled actions={!stored && model ? ask : null}>
+        {checks.isError ? (
+          <ErrorState title="The checks could not be made." action={<Button onClick={() => checks.refetch()}>Try again</Button>}>
+            {checks.error.message}
+          </ErrorState>
+        ) : checks.isFetching ? (
+          <LoadingState label="Checking the plant" />
+        ) : checks.data && model ? (
+          <ChecksPanel checks={checks.data} model={model} />
+        ) : (
+          <p className="text-soft">
+            {model
+              ? "Modes, controllability, observability, zeros, coupling and scaling, in plain words. Nothing has to be saved first."
+              : "The checks wait until every entry has a value; the entries in error are marked above."}
+          </p>
+        )}
+      </SheetSection>
+    </div>
   );
 }

@@ -5,13 +5,19 @@ type Named = { readonly name: string; readonly unit: string; readonly axis: numb
 
 export const asHeader = ({ name, unit, axis, scale }: Named): Header => ({ label: name, unit, axis, scale: scale ?? null });
 
+/** Per second, as the trade writes it: m/s becomes m/s². */
+function ratePerSecond(unit: string): string {
+  if (unit === "1") return "1/s";
+  return unit.endsWith("/s") ? `${unit}²` : `${unit}/s`;
+}
+
 /** Rows of A and B say what is driven: the rate of a state, or its next value. */
 export function drivenStates({ states, timeBase }: Pick<PlantContent, "states" | "timeBase">): Header[] {
   const continuous = timeBase.kind === "continuous";
   return states.map((state) => ({
     ...asHeader(state),
     label: continuous ? `${state.name}′` : `${state.name} next`,
-    unit: continuous ? `${state.unit}/s` : state.unit,
+    unit: continuous ? ratePerSecond(state.unit) : state.unit,
   }));
 }
 
