@@ -12,6 +12,8 @@ const everywhere = [
   },
 ];
 
+const nothing = "default-src 'none'; base-uri 'none'; form-action 'none'; frame-ancestors 'none'";
+
 export default {
   poweredByHeader: false,
   productionBrowserSourceMaps: false,
@@ -23,7 +25,7 @@ export default {
   headers: async () => [
     { source: "/:path*", headers: everywhere },
     // Pages get theirs, with a nonce, from the proxy.
-    { source: "/api/:path*", headers: [{ key: "Content-Security-Policy", value: "default-src 'none'; frame-ancestors 'none'" }] },
+    { source: "/api/:path*", headers: [{ key: "Content-Security-Policy", value: nothing }] },
     {
       // Browsers ignore this over plain http; behind a proxy that ends TLS, only its https requests are answered with it.
       source: "/:path*",
