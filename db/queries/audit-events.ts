@@ -1,8 +1,13 @@
 import "server-only";
-import { and, eq } from "drizzle-orm";
+import { and, eq, sql } from "drizzle-orm";
+import { alias } from "drizzle-orm/pg-core";
 import type { Db } from "../client";
 import { auditEvents } from "../schema/audit";
+import { comparisons } from "../schema/comparisons";
+import { designs } from "../schema/designs";
 import { users } from "../schema/people";
+import { plants } from "../schema/plants";
+import { templates } from "../schema/templates";
 import { after, type Keyset, type Order, ordered, sortValue } from "./keyset";
 
 const newestFirst: Order = { by: auditEvents.at, id: auditEvents.id, type: "timestamptz", descending: true };
@@ -10,6 +15,13 @@ const newestFirst: Order = { by: auditEvents.at, id: auditEvents.id, type: "time
 export async function insertAuditEvent(db: Db, event: Omit<typeof auditEvents.$inferInsert, "id" | "at">): Promise<void> {
   await db.insert(auditEvents).values(event);
 }
+
+const member = alias(users, "member");
+const subject = auditEvents.subjectId;
+/** The subject's name today; null where it has none of its own, such as an invitation. */
+const subjectName = sql<
+  string | null
+>`coalesce(${plants.name}, ${designs.name}, ${templates.name}, ${comparisons.title}, ${member.name})`;
 
 /** One row more than `limit`, which says whether there is a next page. */
 export async function listAuditEvents(db: Db, teamId: string, limit: number, place: Keyset | null) {
@@ -20,7 +32,9 @@ export async function listAuditEvents(db: Db, teamId: string, limit: number, pla
       actor: users.name,
       kind: auditEvents.kind,
       subjectType: auditEvents.subjectType,
-      subjectId: auditEvents.subjectId,
+      subjectId: subject,
+      subjectName,
+      plantId: sql<string | null>`coalesce(${plants.id}, ${designs.plantId}, ${comparisons.plantId})`,
       revision: auditEvents.revision,
       requestId: auditEvents.requestId,
       data: auditEvents.data,
@@ -28,6 +42,11 @@ export async function listAuditEvents(db: Db, teamId: string, limit: number, pla
     })
     .from(auditEvents)
     .leftJoin(users, eq(users.id, auditEvents.actorId))
+    .leftJoin(plants, and(eq(plants.teamId, teamId), eq(plants.id, subject)))
+    .leftJoin(designs, and(eq(designs.teamId, teamId), eq(designs.id, subject)))
+    .leftJoin(templates, and(eq(templates.teamId, teamId), eq(templates.id, subject)))
+    .leftJoin(comparisons, and(eq(comparisons.teamId, teamId), eq(comparisons.id, subject)))
+    .leftJoin(member, eq(member.id, subject))
     .where(and(eq(auditEvents.teamId, teamId), after(newestFirst, place)))
     .orderBy(...ordered(newestFirst))
     .limit(limit + 1);

@@ -51,6 +51,10 @@ export const AuditEvent = z.strictObject({
   kind: z.string(),
   subjectType: z.string(),
   subjectId: Id.nullable(),
+  /** What it is called today; null where it has no name. */
+  subjectName: z.string().nullable(),
+  /** The plant that it is, or belongs to. */
+  plantId: Id.nullable(),
   revision: z.int().nullable(),
   requestId: z.string(),
   data: z.record(z.string(), z.unknown()),

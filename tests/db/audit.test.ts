@@ -2,9 +2,13 @@ import { afterAll, expect, test } from "vitest";
 import { closePool } from "@/db/client";
 import { withClient } from "@/lib/commands/databases.mjs";
 import { createAccessToken } from "@/lib/services/account/access-tokens";
+import { createPlant } from "@/lib/services/plants/create";
+import { renamePlant } from "@/lib/services/plants/rename";
 import { listAuditEvents } from "@/lib/services/team/list-audit-events";
+import { removeMember } from "@/lib/services/team/members";
 import { renameTeam } from "@/lib/services/team/teams";
 import { memberOf, newTeam, refusalOf } from "../helpers/people";
+import { twoCarriages } from "../helpers/plant-content";
 import { testDatabase } from "../helpers/test-database";
 
 const { adminUrl, appUrl } = await testDatabase();
@@ -24,12 +28,28 @@ test("an event says who did what to what, when and in which request, to everybod
       kind: "team.renamed",
       subjectType: "team",
       subjectId: lead.teamId,
+      subjectName: null,
+      plantId: null,
       revision: null,
       requestId: "request-4711",
       data: { name: "Renamed" },
     },
   ]);
   expect(Math.abs(Date.now() - Date.parse(items[0].at))).toBeLessThan(60_000);
+});
+
+test("an event names its subject as it is called today, and the plant to go to", async () => {
+  const lead = await newTeam();
+  const plant = await createPlant(lead, { name: "Two carriages", content: twoCarriages(), note: "" });
+  const { name } = await renamePlant(lead, plant.id, plant.version, "Two carriages, stiff");
+  const engineer = await memberOf(lead.teamId, "engineer");
+  await removeMember(lead, engineer.userId);
+  const { items } = await listAuditEvents(lead, { limit: 50 });
+  expect(items.map(({ kind, subjectName, plantId }) => ({ kind, subjectName, plantId }))).toEqual([
+    { kind: "member.removed", subjectName: "Test engineer", plantId: null },
+    { kind: "plant.renamed", subjectName: name, plantId: plant.id },
+    { kind: "plant.created", subjectName: name, plantId: plant.id },
+  ]);
 });
 
 test("what a program did names its token", async () => {
