@@ -16,7 +16,7 @@ export function ScrollBox({ label, children }: Readonly<{ label: string; childre
   }, []);
   const region = scrolls ? ({ role: "region", "aria-label": label, tabIndex: 0 } as const) : {};
   return (
-    <div ref={box} className="max-w-full overflow-x-auto print:overflow-visible" {...region}>
+    <div ref={box} className="relative max-w-full overflow-x-auto print:overflow-visible" {...region}>
       {children}
     </div>
   );
