@@ -1,54 +1,91 @@
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
-
-/** Row-major arrays: a n×n, b n×m, c p×n, d p×m. */
-export type FlatSystem = {
-  readonly n: number;
-  readonly m: number;
-  readonly p: number;
-  readonly a: Float64Array;
-  readonly b: Float64Array;
-  readonly c: Float64Array;
-  readonly d: Float64Array;
-};
+import { balanceStates, MOST_EXPONENT } from "./balance-states";
+import type { FlatSystem } from "./reduce-system";
 
 /** `timeScale` is the power of two by which a and b were multiplied, so that poles and zeros were too. */
-export type BalancedSystem = FlatSystem & { readonly stateScale: Float64Array; readonly timeScale: number };
+export type BalancedSystem = FlatSystem & { readonly timeScale: number };
 
-const MOST_ROUNDS = 60;
-const MOST_EXPONENT = 400;
+/** Few, because a system without a rate of its own (a chain of integrators) would go on shrinking. */
+const MOST_PASSES = 4;
+const MOST_ROUNDS = 40;
 
 /**
  * The same system in states, inputs and outputs rescaled by powers of two so that the rows of [A B] and the columns
- * of [A; C] have like sizes, with inputs and outputs brought to the size of A, and A to the size of 1.
+ * of [A; C] have like sizes, with inputs, outputs and A brought to the size of 1. A state whose way in and way out together
+ * are lost in rounding beside the fastest mode keeps its scale: blowing up rounding would make it look connected.
  *
- * Shapes    a n×n, b n×m, c p×n, d p×m → the same; old state = stateScale · new state
- * Accuracy  exact but for underflow of negligible entries; at most 60 rounds
+ * Shapes    a n×n, b n×m, c p×n, d p×m → the same
+ * Units     spectralRadius, the largest modulus of an eigenvalue of a, as a
+ * Accuracy  exact but for underflow of negligible entries; at most 4 passes of 40 rounds
  * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304, carried over to systems with inputs and outputs
  */
-export function balanceSystem(system: FlatSystem): BalancedSystem {
-  const { n, m, p } = system;
-  const a = system.a.slice();
-  const b = system.b.slice();
-  const c = system.c.slice();
-  const d = system.d.slice();
-  const balanced = { n, m, p, a, b, c, d };
-  sizeInputs(balanced, 1);
-  sizeOutputs(balanced, 1);
-  const timeScale = powerOfTwo(-exponentOf(largestEntry(a) || 1));
-  for (let i = 0; i < a.length; i++) a[i] *= timeScale;
-  for (let i = 0; i < b.length; i++) b[i] *= timeScale;
-  const stateScale = new Float64Array(n).fill(1);
-  for (let round = 0, moved = true; moved && round < MOST_ROUNDS; round++) {
-    sizeInputs(balanced, largestEntry(a) || 1);
-    sizeOutputs(balanced, largestEntry(a) || 1);
-    moved = balanceStates(balanced, stateScale);
+export function balanceSystem(given: FlatSystem, spectralRadius: number): BalancedSystem {
+  const system = { ...given, a: given.a.slice(), b: given.b.slice(), c: given.c.slice(), d: given.d.slice() };
+  const { n, a } = system;
+  const inner = innerStates(system);
+  sizeSignals(system);
+  let timeScale = rescaleTime(system, largestEntry(a));
+  sizeSignals(system);
+  const exponents = balanceAlone(system, spectralRadius * timeScale);
+  for (let pass = 0; pass < MOST_PASSES; pass++) {
+    sizeSignals(system);
+    const factor = rescaleTime(system, largestBetween(a, n, inner) || spectralRadius * timeScale || largestEntry(a));
+    if (pass > 0 && factor === 1) break;
+    timeScale *= factor;
+    const fastest = spectralRadius * timeScale;
+    const lost = 16 * n * Number.EPSILON * fastest * fastest;
+    for (let round = 0, moved = true; moved && round < MOST_ROUNDS; round++) {
+      sizeSignals(system);
+      moved = balanceAll(system, exponents, lost);
+    }
   }
-  return { ...balanced, stateScale, timeScale };
+  sizeSignals(system);
+  return { ...system, timeScale };
+}
+
+/** Rates of the given size become 1; the factor that did it. */
+function rescaleTime({ a, b }: FlatSystem, size: number): number {
+  const factor = powerOfTwo(-exponentOf(size || 1));
+  for (let i = 0; i < a.length; i++) a[i] *= factor;
+  for (let i = 0; i < b.length; i++) b[i] *= factor;
+  return factor;
+}
+
+/** States that act on each other settle their units among themselves first: inputs and outputs have no unit to offer yet. */
+function balanceAlone({ n, m, p, a, b, c }: FlatSystem, spectralRadius: number): Int32Array {
+  const scale = new Float64Array(n).fill(1);
+  const lost = 64 * n * Number.EPSILON * spectralRadius * spectralRadius;
+  for (let round = 0; round < MOST_ROUNDS && balanceStates(a, n, scale, lost); round++);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < m; j++) b[i * m + j] /= scale[i];
+    for (let k = 0; k < p; k++) c[k * n + i] *= scale[i];
+  }
+  return Int32Array.from(scale, exponentOf);
+}
+
+/** States on a way from an input to an output: only these say how fast the whole is, the unit of the others is free. */
+function innerStates({ n, m, p, a, b, c }: FlatSystem): number[] {
+  let states = Array.from({ length: n }, (_, i) => i);
+  for (let left = n + 1; states.length < left; ) {
+    left = states.length;
+    states = states.filter((i) => {
+      const driven = states.some((j) => j !== i && a[i * n + j] !== 0) || largestEntry(b.subarray(i * m, i * m + m)) > 0;
+      const heard = states.some((j) => j !== i && a[j * n + i] !== 0) || stridedLargest(c, p, n, i) > 0;
+      return driven && heard;
+    });
+  }
+  return states;
+}
+
+function largestBetween(a: Float64Array, n: number, states: readonly number[]): number {
+  let largest = 0;
+  for (const i of states) for (const j of states) largest = Math.max(largest, Math.abs(a[i * n + j]));
+  return largest;
 }
 
 /** One sweep over the states; true while some state still moved. */
-function balanceStates({ n, m, p, a, b, c }: FlatSystem, stateScale: Float64Array): boolean {
+function balanceAll({ n, m, p, a, b, c }: FlatSystem, exponents: Int32Array, lost: number): boolean {
   let moved = false;
   for (let i = 0; i < n; i++) {
     let row = 0;
@@ -60,13 +97,16 @@ function balanceStates({ n, m, p, a, b, c }: FlatSystem, stateScale: Float64Arra
     }
     for (let j = 0; j < m; j++) row += Math.abs(b[i * m + j]);
     for (let k = 0; k < p; k++) column += Math.abs(c[k * n + i]);
-    if (row === 0 || column === 0) continue;
+    if (row === 0 && column === 0) continue;
+    // A state that drives nothing, or that nothing drives, takes the size of the whole.
+    row ||= 1;
+    column ||= 1;
     const half = Math.round((exponentOf(row) - exponentOf(column)) / 2);
-    if (half === 0 || Math.abs(exponentOf(stateScale[i]) + half) > MOST_EXPONENT) continue;
+    if (row * column <= lost || half === 0 || Math.abs(exponents[i] + half) > MOST_EXPONENT) continue;
     const f = powerOfTwo(half);
     if (column * f + row / f >= 0.95 * (column + row)) continue;
     moved = true;
-    stateScale[i] *= f;
+    exponents[i] += half;
     for (let j = 0; j < n; j++) a[i * n + j] /= f;
     for (let j = 0; j < m; j++) b[i * m + j] /= f;
     for (let j = 0; j < n; j++) a[j * n + i] *= f;
@@ -75,32 +115,27 @@ function balanceStates({ n, m, p, a, b, c }: FlatSystem, stateScale: Float64Arra
   return moved;
 }
 
-/** Columns of [B; D] brought to one size; a column lost in rounding beside the largest stays that small. */
-function sizeInputs({ n, m, p, b, d }: FlatSystem, target: number): void {
-  const sizes = Array.from({ length: m }, (_, j) => Math.max(stridedLargest(b, n, m, j), stridedLargest(d, p, m, j)));
-  scaleTo(sizes, target, (j, f) => {
+/** Columns of [B; D] and rows of [C D] brought to the size of 1; one lost in rounding beside the largest stays that small. */
+function sizeSignals({ n, m, p, b, c, d }: FlatSystem): void {
+  const inputs = Array.from({ length: m }, (_, j) => Math.max(stridedLargest(b, n, m, j), stridedLargest(d, p, m, j)));
+  scaleToOne(inputs, (j, f) => {
     for (let i = 0; i < n; i++) b[i * m + j] *= f;
     for (let k = 0; k < p; k++) d[k * m + j] *= f;
   });
-}
-
-/** Rows of [C D], likewise. */
-function sizeOutputs({ n, m, p, c, d }: FlatSystem, target: number): void {
-  const sizes = Array.from({ length: p }, (_, k) =>
+  const outputs = Array.from({ length: p }, (_, k) =>
     Math.max(largestEntry(c.subarray(k * n, k * n + n)), largestEntry(d.subarray(k * m, k * m + m))),
   );
-  scaleTo(sizes, target, (k, f) => {
+  scaleToOne(outputs, (k, f) => {
     for (let j = 0; j < n; j++) c[k * n + j] *= f;
     for (let j = 0; j < m; j++) d[k * m + j] *= f;
   });
 }
 
-function scaleTo(sizes: readonly number[], target: number, scale: (index: number, f: number) => void): void {
+function scaleToOne(sizes: readonly number[], scale: (index: number, f: number) => void): void {
   const largest = Math.max(0, ...sizes);
   if (largest === 0) return;
   sizes.forEach((size, index) => {
-    const own = size > largest * Number.EPSILON ? size : largest;
-    const shift = exponentOf(target) - exponentOf(own);
+    const shift = -exponentOf(size > largest * Number.EPSILON ? size : largest);
     if (shift !== 0) scale(index, powerOfTwo(shift));
   });
 }

@@ -1,9 +1,10 @@
+import { modulus } from "../linalg/complex";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { fromFlat, pythagoras } from "../linalg/flat";
-import { flatNorm } from "../linalg/norms";
+import { singularValues } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
 import type { RankReport } from "../plant/report";
-import { balanceSystem } from "./balance-system";
+import { type BalancedPair, balancePair } from "./balance-pair";
 import { type ModeDistance, modeDistance } from "./mode-distance";
 import { type Staircase, staircase } from "./staircase";
 import { hiddenPart, longAxis } from "./weakest-direction";
@@ -15,17 +16,12 @@ export type ReachAnalysis = {
   readonly reached: readonly boolean[];
 };
 
-/** One choice of units for states, inputs and time; reach shown in one of them holds in all. */
-type Units = {
-  readonly a: Float64Array;
-  readonly b: Float64Array;
-  readonly stateScale: Float64Array;
-  readonly timeScale: number;
-};
+/** Length at which a direction counts as independent of others: rounding in a direction is far below, a new mode far above. */
+const APART = 1e-3;
 
 /**
- * Reach of the inputs: rank by the staircase form, and mode by mode by the smallest singular value of [A - λ I, B].
- * Where the pair as given leaves a doubt, both are repeated in balanced units, and the better verdict counts.
+ * Reach of the inputs: rank by the staircase form in units that do not depend on the given ones, and mode by mode the
+ * smallest singular value of [A - λ I, B] in the given units; a mode reached in one choice of units is reached.
  *
  * Shapes    a n×n, b n×m, row-major; values: the eigenvalues of a, pairs adjacent with im > 0 first
  * Throws    no-convergence
@@ -35,24 +31,18 @@ type Units = {
 export function analyseReach(a: Float64Array, b: Float64Array, n: number, m: number, values: readonly Complex[]): ReachAnalysis {
   const limit = 4 * (n + m) * Number.EPSILON;
   const certain = ({ relative, normRatio }: ModeDistance) => relative * normRatio > limit;
-  const given: Units = { a, b, stateScale: new Float64Array(n).fill(1), timeScale: 1 };
-  const probes = probeModes(given, n, m, values);
+  const fastest = values.reduce((size, value) => Math.max(size, modulus(value)), 0);
+  const balanced = balancePair(a, b, n, m, fastest);
+  const stairs = staircase(balanced.a, balanced.b, n, m);
+  const probes = probeModes({ a, b, timeScale: 1 }, n, m, values);
   const reached = probes.map(certain);
-  let used = given;
-  let stairs = staircase(a, b, n, m);
-  if (stairs.rank < n || reached.includes(false)) {
-    const balanced = balancedUnits(given, n, m);
-    const again = staircase(balanced.a, balanced.b, n, m);
+  if (reached.includes(false)) {
     probeModes(balanced, n, m, values).forEach((probe, k) => {
       if (certain(probe)) reached[k] = true;
     });
-    if (again.rank > stairs.rank) {
-      used = balanced;
-      stairs = again;
-    }
   }
-  const rank = Math.min(stairs.rank, n - countHidden(values, reached, flatNorm(a)));
-  markHidden(reached, values, stairs, used.timeScale);
+  const rank = Math.min(stairs.rank, n - countHidden(probes, reached));
+  markHidden(reached, values, stairs, balanced.timeScale);
   const weakest = weakestOf(probes, reached);
   const { re, im, relative } = probes[weakest];
   return {
@@ -61,7 +51,7 @@ export function analyseReach(a: Float64Array, b: Float64Array, n: number, m: num
       full: n,
       singularValues: stairs.singularValues,
       tolerance: stairs.tolerance,
-      weakestDirection: Array.from(hiddenPart(longAxis(re, im), stairs, used.stateScale)),
+      weakestDirection: Array.from(hiddenPart(longAxis(re, im), stairs, balanced.stateScale)),
       weakestValue: relative,
     },
     distances: probes.map((probe) => probe.relative),
@@ -69,7 +59,12 @@ export function analyseReach(a: Float64Array, b: Float64Array, n: number, m: num
   };
 }
 
-function probeModes({ a, b, timeScale }: Units, n: number, m: number, values: readonly Complex[]): ModeDistance[] {
+function probeModes(
+  { a, b, timeScale }: Pick<BalancedPair, "a" | "b" | "timeScale">,
+  n: number,
+  m: number,
+  values: readonly Complex[],
+): ModeDistance[] {
   const probes: ModeDistance[] = [];
   values.forEach(({ re, im }, k) => {
     probes.push(im < 0 ? probes[k - 1] : modeDistance(a, b, n, m, { re: re * timeScale, im: im * timeScale }));
@@ -77,20 +72,18 @@ function probeModes({ a, b, timeScale }: Units, n: number, m: number, values: re
   return probes;
 }
 
-function balancedUnits({ a, b }: Units, n: number, m: number): Units {
-  const none = new Float64Array(0);
-  return balanceSystem({ n, m, p: 0, a, b, c: none, d: none });
-}
-
-/** Hidden modes, counting values closer together than they can be told apart as one: a lower bound on what the rank lacks. */
-function countHidden(values: readonly Complex[], reached: readonly boolean[], norm: number): number {
-  const near = Math.sqrt(Number.EPSILON) * norm;
-  const distinct: Complex[] = [];
-  values.forEach((value, k) => {
-    if (reached[k] || distinct.some((other) => pythagoras(other.re - value.re, other.im - value.im) <= near)) return;
-    distinct.push(value);
-  });
-  return distinct.length;
+/** Independent directions that belong to hidden modes, near parallels counted once: a lower bound on what the rank lacks. */
+function countHidden(probes: readonly ModeDistance[], reached: readonly boolean[]): number {
+  const directions = probes.flatMap(({ re, im }, k) => (reached[k] || (k > 0 && probes[k - 1] === probes[k]) ? [] : [re, im]));
+  if (directions.length === 0) return 0;
+  const lengths = singularValues(
+    fromFlat(
+      directions.flatMap((x) => Array.from(x)),
+      directions.length,
+      directions[0].length,
+    ),
+  );
+  return lengths.filter((length) => length > APART).length;
 }
 
 /** The modes of the part that the staircase leaves out are not reached, even where rounding moved them off their place. */

@@ -1,8 +1,18 @@
 import { flatTranspose } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
-import type { FlatSystem } from "./balance-system";
 import { compressRows } from "./compress-rows";
 import { type Reflection, reflectColumns, reflectRows } from "./reflections";
+
+/** Row-major arrays: a n×n, b n×m, c p×n, d p×m. */
+export type FlatSystem = {
+  readonly n: number;
+  readonly m: number;
+  readonly p: number;
+  readonly a: Float64Array;
+  readonly b: Float64Array;
+  readonly c: Float64Array;
+  readonly d: Float64Array;
+};
 
 /**
  * A smaller system with the same finite zeros and a square, invertible feed-through.

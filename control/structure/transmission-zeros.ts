@@ -1,11 +1,13 @@
+import { modulus } from "../linalg/complex";
+import { eigenvalues } from "../linalg/eigenvalues";
 import { toFlat } from "../linalg/flat";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import type { Complex } from "../plant/model";
 import type { System } from "../plant/scale-plant";
-import { balanceSystem, type FlatSystem } from "./balance-system";
+import { balanceSystem } from "./balance-system";
 import { compressRows } from "./compress-rows";
 import { pencilEigenvalues } from "./pencil-eigenvalues";
-import { reduceSystem } from "./reduce-system";
+import { type FlatSystem, reduceSystem } from "./reduce-system";
 import { reflectColumns } from "./reflections";
 
 /**
@@ -26,11 +28,11 @@ export function transmissionZeros({ A, B, C, D }: System): Complex[] {
   requireShape("D", D, C.rows, B.columns);
   for (const [name, M] of Object.entries({ A, B, C, D })) requireFinite(name, M);
   if (B.columns === 0 || C.rows === 0) return [];
-  const flat = { n, m: B.columns, p: C.rows, a: toFlat(A), b: toFlat(B), c: toFlat(C), d: toFlat(D) };
-  const balanced = balanceSystem(flat);
-  const zeros = zerosOfReduced(reduceSystem(balanced));
-  return zeros
-    .map(({ re, im }) => ({ re: re / balanced.timeScale, im: im / balanced.timeScale }))
+  const system = { n, m: B.columns, p: C.rows, a: toFlat(A), b: toFlat(B), c: toFlat(C), d: toFlat(D) };
+  const fastest = eigenvalues(A).reduce((size, pole) => Math.max(size, modulus(pole)), 0);
+  const { timeScale, ...balanced } = balanceSystem(system, fastest);
+  return zerosOfReduced(reduceSystem(balanced))
+    .map(({ re, im }) => ({ re: re / timeScale, im: im / timeScale }))
     .filter(({ re, im }) => Number.isFinite(re) && Number.isFinite(im))
     .sort((x, y) => x.re - y.re || Math.abs(x.im) - Math.abs(y.im) || y.im - x.im);
 }
