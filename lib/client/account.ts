@@ -1,6 +1,6 @@
 import type { AccessToken, ChangePassword, CreateAccessToken, CreatedAccessToken, Profile, SignUp } from "../schemas/account";
 import type { Invite, JoinByInvitation } from "../schemas/invitation";
-import type { AuditEvent, Invitation, Member, Role, Team } from "../schemas/team";
+import type { AuditEvent, Invitation, Member, OutboxMail, Role, Team } from "../schemas/team";
 import { request } from "./request";
 
 type List<T> = { readonly items: T[] };
@@ -44,3 +44,7 @@ export const withdrawInvitation = (invitationId: string) =>
   request<undefined>(`/api/v1/team/invitations/${invitationId}`, { method: "DELETE" });
 export const fetchAuditEvents = async (cursor: string | undefined, signal?: AbortSignal) =>
   (await request<List<AuditEvent> & { nextCursor: string | null }>("/api/v1/team/audit", { query: { cursor }, signal })).data;
+
+export const outboxKey = ["outbox"] as const;
+export const fetchOutbox = async (signal?: AbortSignal) =>
+  (await request<List<OutboxMail>>("/api/v1/team/outbox", { signal })).data.items;

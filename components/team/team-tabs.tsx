@@ -1,0 +1,44 @@
+"use client";
+
+import { SheetSection } from "../ui/sheet-section";
+import { UrlTabs } from "../ui/url-tabs";
+import { AuditTrail } from "./audit-trail";
+import { InvitationsSection } from "./invitations-section";
+import { MembersSection } from "./members-section";
+import { ROLES } from "./role-words";
+
+type TeamTabsProps = Readonly<{ team: string; mayManage: boolean; showsOutbox: boolean }>;
+
+export function TeamTabs({ team, mayManage, showsOutbox }: TeamTabsProps) {
+  const people = (
+    <>
+      <SheetSection title="Members" note={mayManage ? undefined : "a lead of the team changes roles and invites"}>
+        <MembersSection team={team} mayManage={mayManage} />
+      </SheetSection>
+      {mayManage ? (
+        <SheetSection title="Invitations" note="by mail, with a link that works once and for seven days">
+          <InvitationsSection showsOutbox={showsOutbox} />
+        </SheetSection>
+      ) : null}
+      <SheetSection title="Roles">
+        <dl className="grid max-w-prose grid-cols-[auto_1fr] gap-x-4 gap-y-1 text-table">
+          {ROLES.map(({ role, may }) => (
+            <div key={role} className="contents">
+              <dt className="font-semibold">{role}</dt>
+              <dd className="text-soft">{may}</dd>
+            </div>
+          ))}
+        </dl>
+      </SheetSection>
+    </>
+  );
+  return (
+    <UrlTabs
+      label="Parts of the team page"
+      tabs={[
+        { key: "people", label: "People", panel: people },
+        { key: "trail", label: "Audit trail", panel: <AuditTrail /> },
+      ]}
+    />
+  );
+}
