@@ -14,20 +14,12 @@ export type ExpressionReason =
   | "unknown-function" // name
   | "argument-missing" // name: a function without its parenthesis
   | "not-allowed" // what the parser read but the product does not evaluate
-  | "not-finite" // name: the function, operator or parameter that gave no finite number
-  | "bad-name" // name: a parameter's name
-  | "reserved-name" // name
-  | "duplicate-name" // name
-  | "cycle" // name, names in order
-  | "too-many-parameters"; // limit
+  | "not-finite"; // name: the function, operator or parameter that gave no finite number
 
 export type ExpressionFacts = {
   readonly name?: string;
-  readonly names?: readonly string[];
   readonly character?: string;
   readonly limit?: number;
-  /** The parameter whose definition was refused. */
-  readonly parameter?: string;
 };
 
 /** `position` counts characters of `text` from 0. */

@@ -25,6 +25,7 @@ function evaluateMatrix(
   problems: PlantProblem[],
 ) {
   const { entries, rows, columns } = matricesOf(content)[name];
+  const declared = new Set(content.parameters.map((parameter) => parameter.name));
   const derived = content.commanded === null && (name === "H" || name === "J");
   const report = (pointer: string, message: string) => derived || problems.push(error(pointer, message));
   if (entries.length !== rows) report(`/${name}`, `${name} needs ${rows} rows; it has ${entries.length}`);
@@ -37,7 +38,7 @@ function evaluateMatrix(
         return evaluateExpression(text, parameters);
       } catch (cause) {
         if (!(cause instanceof NumericalError)) throw cause;
-        report(`/${name}/${i}/${j}`, expressionMessage(cause));
+        report(`/${name}/${i}/${j}`, expressionMessage(cause, declared));
         return null;
       }
     });

@@ -5,6 +5,7 @@ import type { ParameterContent } from "./content";
 import { expressionMessage } from "./expression-message";
 import { error, type PlantProblem } from "./plant-problem";
 
+const MOST = 64;
 const NAME = /^[A-Za-z_][A-Za-z0-9_]{0,39}$/;
 
 function nameProblem(name: string, index: number, parameters: readonly ParameterContent[]): string | null {
@@ -37,6 +38,7 @@ export function parameterValues(parameters: readonly ParameterContent[]): {
   problems: PlantProblem[];
 } {
   const values = new Map<string, number>();
+  if (parameters.length > MOST) return { values, problems: [error("/parameters", `At most ${MOST} parameters`)] };
   const problems: PlantProblem[] = [];
   const declared = new Set(parameters.map(({ name }) => name));
   const pending = new Map<number, readonly string[]>();

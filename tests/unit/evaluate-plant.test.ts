@@ -65,6 +65,15 @@ describe("evaluatePlant", () => {
     expect(places).toEqual(["/parameters/0/expression", "/parameters/1/expression", "/parameters/2/expression"]);
   });
 
+  test("does not call a parameter unknown that is only in error itself", () => {
+    const parameters = twoCarriages().parameters.map((parameter) =>
+      parameter.name === "m" ? { ...parameter, expression: "12kg" } : parameter,
+    );
+    expect(errors(twoCarriages({ parameters })).find(({ pointer }) => pointer === "/B/2/0")?.message).toBe(
+      'The parameter "m" has no value yet',
+    );
+  });
+
   test.each(["pi", "e", "sqrt", "constructor", "__proto__", "2a", ""])("refuses %j as the name of a parameter", (name) => {
     const parameters = [...twoCarriages().parameters, { name, expression: "1", unit: "1", note: "" }];
     expect(errors(twoCarriages({ parameters })).map(({ pointer }) => pointer)).toContain("/parameters/3/name");

@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { NumericalError } from "@/control/errors";
 import { evaluateExpression } from "@/control/expression/evaluate-expression";
-import { evaluateParameters } from "@/control/expression/evaluate-parameters";
+import { parameterValues } from "@/control/plant/parameter-values";
 
 function refusal(work: () => unknown): Readonly<Record<string, unknown>> {
   try {
@@ -38,41 +38,58 @@ describe("limits of a formula", () => {
   });
 });
 
-describe("evaluateParameters", () => {
-  const define = (pairs: Record<string, string>) => Object.entries(pairs).map(([name, expression]) => ({ name, expression }));
+describe("parameterValues", () => {
+  const define = (pairs: readonly (readonly [string, string])[]) =>
+    parameterValues(pairs.map(([name, expression]) => ({ name, expression, unit: "1", note: "" })));
+  const places = (pairs: readonly (readonly [string, string])[]) => define(pairs).problems.map(({ pointer }) => pointer);
 
   test("definitions may use one another in any order", () => {
-    const values = evaluateParameters(define({ total: "arm + load", load: "2*arm", arm: "0.5" }));
-    expect([...values]).toEqual([
-      ["arm", 0.5],
-      ["load", 1],
-      ["total", 1.5],
+    const { values, problems } = define([
+      ["total", "arm + load"],
+      ["load", "2*arm"],
+      ["arm", "0.5"],
     ]);
+    expect(problems).toEqual([]);
+    expect(Object.fromEntries(values)).toEqual({ arm: 0.5, load: 1, total: 1.5 });
   });
 
   test("64 parameters are read, also as one chain, and 65 are refused", () => {
-    const chain = Array.from({ length: 64 }, (_, i) => ({ name: `p${i}`, expression: i < 63 ? `p${i + 1} + 1` : "1" }));
-    expect(evaluateParameters(chain).get("p0")).toBe(64);
-    const more = [...chain, { name: "q", expression: "1" }];
-    expect(refusal(() => evaluateParameters(more))).toMatchObject({ reason: "too-many-parameters", limit: 64 });
+    const chain = Array.from({ length: 64 }, (_, i) => [`p${i}`, i < 63 ? `p${i + 1} + 1` : "1"] as const);
+    expect(define(chain).values.get("p0")).toBe(64);
+    expect(places([...chain, ["q", "1"]])).toEqual(["/parameters"]);
   });
 
-  test("a circle is refused with the names that make it", () => {
-    const data = refusal(() => evaluateParameters(define({ a: "b+1", b: "c", c: "sin(b)" })));
-    expect(data).toMatchObject({ reason: "cycle", names: ["b", "c"], parameter: "c" });
-    expect(refusal(() => evaluateParameters(define({ a: "a" })))).toMatchObject({ reason: "cycle", names: ["a"] });
+  test("each parameter of a circle is marked, and the others keep their values", () => {
+    const { values, problems } = define([
+      ["a", "b+1"],
+      ["b", "c"],
+      ["c", "sin(b)"],
+      ["d", "4"],
+    ]);
+    expect(problems.map(({ pointer }) => pointer)).toEqual([
+      "/parameters/0/expression",
+      "/parameters/1/expression",
+      "/parameters/2/expression",
+    ]);
+    expect(values.get("d")).toBe(4);
+    expect(places([["a", "a"]])).toEqual(["/parameters/0/expression"]);
   });
 
-  test("a refusal says which definition it is about", () => {
-    const data = refusal(() => evaluateParameters(define({ a: "1", b: "a/0" })));
-    expect(data).toMatchObject({ reason: "not-finite", parameter: "b", text: "a/0", position: 1 });
+  test("a refusal stands at the definition it is about", () => {
+    expect(
+      places([
+        ["a", "1"],
+        ["b", "a/0"],
+      ]),
+    ).toEqual(["/parameters/1/expression"]);
   });
 
   test("two parameters cannot share a name", () => {
-    const twice = [
-      { name: "a", expression: "1" },
-      { name: "a", expression: "2" },
-    ];
-    expect(refusal(() => evaluateParameters(twice))).toMatchObject({ reason: "duplicate-name", name: "a" });
+    expect(
+      places([
+        ["a", "1"],
+        ["a", "2"],
+      ]),
+    ).toEqual(["/parameters/1/name"]);
   });
 });

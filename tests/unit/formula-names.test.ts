@@ -1,9 +1,10 @@
 import { expect, test } from "vitest";
 import { NumericalError } from "@/control/errors";
 import { evaluateExpression } from "@/control/expression/evaluate-expression";
-import { evaluateParameters } from "@/control/expression/evaluate-parameters";
 import { isReservedName } from "@/control/expression/reserved-names";
+import { parameterValues } from "@/control/plant/parameter-values";
 
+const problemsOf = (name: string) => parameterValues([{ name, expression: "1", unit: "1", note: "" }]).problems;
 const INHERITED = ["__proto__", "constructor", "toString", "hasOwnProperty", "valueOf", "prototype"];
 
 test.each([...INHERITED, "isPrototypeOf", "__defineGetter__"])("%s is no name, no function and no parameter", (name) => {
@@ -16,12 +17,12 @@ test.each([...INHERITED, "e", "i", "pi", "inf", "NaN", "Infinity", "sin", "log",
   "%s cannot name a parameter",
   (name) => {
     expect(isReservedName(name)).toBe(true);
-    expect(() => evaluateParameters([{ name, expression: "1" }])).toThrow(NumericalError);
+    expect(problemsOf(name).map(({ pointer }) => pointer)).toEqual(["/parameters/0/name"]);
   },
 );
 
 test.each(["", "1a", "a b", "a-b", "a.b", "ä", "a".repeat(41)])("%j is not a parameter's name", (name) => {
-  expect(() => evaluateParameters([{ name, expression: "1" }])).toThrow(NumericalError);
+  expect(problemsOf(name).map(({ pointer }) => pointer)).toEqual(["/parameters/0/name"]);
 });
 
 test("reserved words stay refused even when somebody puts them into the map", () => {

@@ -46,47 +46,28 @@ const REASONS: Readonly<Record<ExpressionReason, (data: Facts) => Words>> = {
     `${named(data, "A step")} gives no finite number.`,
     "Look for a division by zero or the root of a negative number.",
   ],
-  "bad-name": (data) => [
-    `${named(data, "This")} can not be a parameter's name.`,
-    "Begin with a letter and go on with letters, digits or underscores.",
-  ],
-  "reserved-name": (data) => [`${named(data, "This name")} already has a meaning of its own.`, "Choose another name."],
-  "duplicate-name": (data) => [`${named(data, "This name")} is given to two parameters.`, "Rename one of them."],
-  cycle: (data) => [
-    `${named(data, "A parameter")} depends on itself${around(data)}.`,
-    "Give one parameter of the circle a plain value.",
-  ],
-  "too-many-parameters": (data) => [
-    `There are more parameters than ${limitOf(data)}.`,
-    "Put numbers in the place of those that never change.",
-  ],
 };
 
-function around(data: Facts): string {
-  const names = data.names;
-  return Array.isArray(names) && names.length > 1 && names.every((name) => typeof name === "string")
-    ? ` (${names.slice(0, 8).join(" → ")})`
-    : "";
-}
-
-/** "k/m at character 3", or the parameter it belongs to. */
+/** "k/m at character 3". */
 function whereOf(data: Facts): string {
   const text = textOf(data, "text");
-  const parameter = textOf(data, "parameter");
   const position = numberOf(data, "position");
-  const owner = parameter === null ? "The formula" : `The formula of ${parameter}`;
-  const quoted = text === null ? owner : `${owner}, ${text.length > 60 ? `${text.slice(0, 60)}…` : text}`;
+  const quoted = text === null ? "The formula" : `The formula, ${text.length > 60 ? `${text.slice(0, 60)}…` : text}`;
   return position === null || text === null
     ? `${quoted}, cannot be read.`
     : `${quoted}, cannot be read from character ${position + 1} on.`;
 }
 
+/** What is wrong with a formula and what to do about it, without saying where. */
+export function expressionWords(data: Facts): Words {
+  const reason = textOf(data, "reason");
+  const words = reason !== null && Object.hasOwn(REASONS, reason) ? REASONS[reason as ExpressionReason] : REASONS["not-allowed"];
+  return words(data);
+}
+
 export const explainExpression: Pick<Explainers, "bad-expression"> = {
   "bad-expression": (data) => {
-    const reason = textOf(data, "reason");
-    const words =
-      reason !== null && Object.hasOwn(REASONS, reason) ? REASONS[reason as ExpressionReason] : REASONS["not-allowed"];
-    const [sentence, nextStep] = words(data);
+    const [sentence, nextStep] = expressionWords(data);
     return { title: "A formula cannot be read", sentence: `${whereOf(data)} ${sentence}`, nextStep };
   },
 };
