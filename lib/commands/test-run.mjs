@@ -14,6 +14,9 @@ const reports = join(root, "coverage");
 /** Where the clock and its zone can matter; the numerics know neither. */
 const zoned = ["unit", "db", "api"];
 
+/** On this signal, and no other, both runners take down what they set up. */
+const runner = { cwd: root, signal: /** @type {const} */ ("SIGINT"), patience: 20_000 };
+
 /** @param {readonly string[]} filters @returns {{ vitest: string[], playwright: string[] }} */
 function matching(filters) {
   const all = readdirSync(join(root, "tests"), { recursive: true, encoding: "utf8" }).map((path) => `tests/${path}`);
@@ -31,7 +34,7 @@ async function vitest(args, zone) {
   const env = { ...process.env, ...(zone ? { TZ: zone } : {}) };
   const output = ["--reporter=default", "--reporter=json", `--outputFile.json=${report}`];
   const all = [script("vitest", "vitest.mjs"), "run", "--config", "tests/vitest.config.ts", ...output, ...args];
-  const { code } = await runChild(process.execPath, all, { name: "vitest", cwd: root, env, seconds: 1_200 });
+  const { code } = await runChild(process.execPath, all, { ...runner, name: "vitest", env, seconds: 1_200 });
   return tallyOf(report, code, readVitest);
 }
 
@@ -40,21 +43,9 @@ async function playwright(files) {
   const report = join(reports, "playwright.json");
   rmSync(report, { force: true });
   const env = { ...process.env, PLAYWRIGHT_JSON_OUTPUT_NAME: report };
-  const all = [
-    script("@playwright/test", "cli.js"),
-    "test",
-    "--config",
-    "tests/playwright.config.ts",
-    "--reporter=list,json",
-    ...files,
-  ];
-  const { code } = await runChild(process.execPath, all, {
-    name: "Playwright",
-    cwd: root,
-    env,
-    seconds: 1_800,
-    patience: 20_000,
-  });
+  const args = ["test", "--config", "tests/playwright.config.ts", "--reporter=list,json", ...files];
+  const all = [script("@playwright/test", "cli.js"), ...args];
+  const { code } = await runChild(process.execPath, all, { ...runner, name: "Playwright", env, seconds: 1_800 });
   return tallyOf(report, code, readPlaywright);
 }
 
