@@ -27,21 +27,37 @@ const toBytes = (values: Float64Array) => Buffer.from(values.buffer, values.byte
 /** Copied, since a driver's buffer need not start on a multiple of eight. */
 const fromBytes = (bytes: Buffer) => new Float64Array(Uint8Array.from(bytes).buffer);
 
+/** The largest plant's curves are 17 MB: in portions, so that no single statement holds them all in memory at once. */
+const PORTION_BYTES = 2 ** 21;
+
+function portions(rows: readonly (typeof responseRecords.$inferInsert)[]) {
+  const made: (typeof responseRecords.$inferInsert)[][] = [];
+  let room = 0;
+  for (const row of rows) {
+    const last = made.at(-1);
+    if (last && row.values.length <= room) last.push(row);
+    else {
+      made.push([row]);
+      room = PORTION_BYTES;
+    }
+    room -= row.values.length;
+  }
+  return made;
+}
+
 export async function insertResponseRecords(
   db: Db,
   { teamId, revisionId }: DesignRevisionKey,
   records: readonly ResponseRecord[],
 ) {
-  if (records.length === 0) return;
-  await db.insert(responseRecords).values(
-    records.map(({ values, ...record }, position) => ({
-      ...record,
-      teamId,
-      designRevisionId: revisionId,
-      position,
-      values: toBytes(values),
-    })),
-  );
+  const rows = records.map(({ values, ...record }, position) => ({
+    ...record,
+    teamId,
+    designRevisionId: revisionId,
+    position,
+    values: toBytes(values),
+  }));
+  for (const portion of portions(rows)) await db.insert(responseRecords).values(portion);
 }
 
 export async function findResponseRecords(

@@ -2,7 +2,7 @@ import "server-only";
 import { type SQL, sql } from "drizzle-orm";
 import type { PgColumn } from "drizzle-orm/pg-core";
 
-/** Where a page ended: the sort value as PostgreSQL prints it (microseconds kept), and the key that breaks ties. */
+/** Where a page ended: the sort value, a time in microseconds since 1970, and the key that breaks ties. */
 export type Keyset = { readonly value: string; readonly id: string };
 
 export type Order = {
@@ -12,12 +12,14 @@ export type Order = {
   readonly descending: boolean;
 };
 
-export const sortValue = ({ by }: Order) => sql<string>`${by}::text`;
+export const sortValue = ({ by, type }: Order) =>
+  type === "text" ? sql<string>`${by}` : sql<string>`(extract(epoch from ${by}) * 1000000)::bigint::text`;
 
 export function after({ by, id, type, descending }: Order, place: Keyset | null): SQL | undefined {
   if (!place) return undefined;
-  const from =
-    type === "text" ? sql`(${place.value}::text, ${place.id}::uuid)` : sql`(${place.value}::timestamptz, ${place.id}::uuid)`;
+  const value =
+    type === "text" ? sql`${place.value}::text` : sql`timestamptz 'epoch' + ${place.value}::bigint * interval '1 microsecond'`;
+  const from = sql`(${value}, ${place.id}::uuid)`;
   return descending ? sql`(${by}, ${id}) < ${from}` : sql`(${by}, ${id}) > ${from}`;
 }
 

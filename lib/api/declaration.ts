@@ -22,8 +22,10 @@ export type Declaration = {
   readonly idempotent?: true;
   readonly status?: 200 | 201 | 202;
   readonly bodyLimit?: number;
-  /** Without it: `read` for GET, `write` for the rest. */
+  /** Without it: `read` for GET, `write` for the rest. What costs `solve` takes its turn among the computations. */
   readonly cost?: Cost;
+  /** A body of more bytes than this takes its turn too: it may bring formulas enough for a numeric thread. */
+  readonly inTurnAbove?: number;
 };
 
 type Parsed<D, Part extends string> = D extends { readonly [P in Part]: infer S extends z.ZodType } ? z.output<S> : undefined;

@@ -37,7 +37,7 @@ export function route<const D extends Declaration>(
         if (!declaration.idempotent) return sendResult(declaration, await handle(), request);
         return sendStored(await runOnce(ctx, onceOf(request, bytes), async () => toStored(declaration, await handle())));
       };
-      return declaration.cost === "solve" ? inTurn(ctx.teamId, request.signal, carryOut) : carryOut();
+      return takesTurn(declaration, bytes) ? inTurn(ctx.teamId, request.signal, carryOut) : carryOut();
     });
   return Object.assign(serve, { declaration, access: "team" as const });
 }
@@ -72,6 +72,8 @@ export function publicRoute<const D extends Declaration & { readonly idempotent?
   return Object.assign(serve, { declaration, access: "public" as const });
 }
 
+const takesTurn = ({ cost, inTurnAbove = Number.POSITIVE_INFINITY }: Declaration, bytes: Uint8Array) =>
+  cost === "solve" || bytes.length > inTurnAbove;
 const isChange = ({ method }: Request) => method !== "GET" && method !== "HEAD";
 const ourOrigin = () => new URL(env().NEXTAUTH_URL).origin;
 const costOf = ({ cost }: Declaration, request: Request): Cost => cost ?? (isChange(request) ? "write" : "read");

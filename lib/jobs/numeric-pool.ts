@@ -4,7 +4,7 @@ import { NumericalError } from "@/control/errors";
 import type { PlantChecks } from "@/control/plant/report";
 import { DomainError } from "@/lib/errors";
 import { FairQueue } from "./fair-queue";
-import type { ChecksJob, DesignJob, NumericAnswer, NumericJob, NumericValue } from "./numeric-job";
+import type { ChecksJob, DesignJob, EvaluationJob, NumericAnswer, NumericJob, NumericValue, PlantVerdict } from "./numeric-job";
 
 export type NumericOptions = {
   /** Whose turn it takes. */
@@ -42,6 +42,7 @@ export class NumericPool {
 
   run(job: ChecksJob, options: NumericOptions): Promise<PlantChecks>;
   run(job: DesignJob, options: NumericOptions): Promise<Evidence>;
+  run(job: EvaluationJob, options: NumericOptions): Promise<PlantVerdict>;
   run(job: NumericJob, options: NumericOptions): Promise<NumericValue>;
   /**
    * @throws NumericalError as the core threw it; DomainError `busy` when the line is full, `unsolvable` when time or memory ran

@@ -1,6 +1,6 @@
 import type { Evidence } from "@/control/design/evidence";
 import type { PlantChecks } from "@/control/plant/report";
-import type { ChecksJob, DesignJob, NumericJob, NumericValue } from "./numeric-job";
+import type { ChecksJob, DesignJob, EvaluationJob, NumericJob, NumericValue, PlantVerdict } from "./numeric-job";
 import { type NumericOptions, NumericPool } from "./numeric-pool";
 import { numericWorkerScript } from "./numeric-worker-script";
 
@@ -11,6 +11,7 @@ const kept = globalThis as typeof globalThis & { gainwrightNumericPool?: Promise
 
 export async function runNumeric(job: ChecksJob, options: NumericOptions): Promise<PlantChecks>;
 export async function runNumeric(job: DesignJob, options: NumericOptions): Promise<Evidence>;
+export async function runNumeric(job: EvaluationJob, options: NumericOptions): Promise<PlantVerdict>;
 /** Runs the core beside the main thread. What it throws is said at `NumericPool.run`. */
 export async function runNumeric(job: NumericJob, options: NumericOptions): Promise<NumericValue> {
   kept.gainwrightNumericPool ??= startPool();

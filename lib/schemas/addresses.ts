@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { Id } from "./common";
+import { Id, PageQuery } from "./common";
 
 /** What stands in the addresses of the API. */
 export const PlantAddress = z.strictObject({ plantId: Id });
@@ -10,11 +10,7 @@ export const ComparisonAddress = z.strictObject({ comparisonId: Id });
 export const TemplateAddress = z.strictObject({ templateId: Id });
 
 export const RevisionRange = z.strictObject({ from: Id, to: Id });
-export const ComparisonQuery = z.strictObject({
-  plantId: Id.optional(),
-  cursor: z.string().max(400).optional(),
-  limit: z.coerce.number().int().min(1).max(100).default(50),
-});
+export const ComparisonQuery = PageQuery.extend({ plantId: Id.optional() });
 export const GainFile = z.strictObject({ format: z.enum(["csv", "json"]).default("csv") });
 
 export const MemberAddress = z.strictObject({ userId: Id });

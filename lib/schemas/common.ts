@@ -30,7 +30,8 @@ export const Timestamp = z.iso.datetime();
 export const Rows = z.array(z.array(Finite).max(60)).max(60);
 
 export const PageQuery = z.strictObject({
-  cursor: z.string().max(400).optional(),
+  /** `nextCursor` of the page before: as long as 120 characters of any script make it. */
+  cursor: z.string().max(800).optional(),
   limit: z.coerce.number().int().min(1).max(100).default(50),
 });
 

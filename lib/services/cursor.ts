@@ -2,18 +2,27 @@ import "server-only";
 import { z } from "zod";
 import { DomainError } from "@/lib/errors";
 
-const Place = z.tuple([z.string().max(200), z.uuid()]);
+/** What a list is ordered by: a text, a time in microseconds since 1970, or the number of a revision. */
+export type CursorKind = "text" | "time" | "number";
+
+// Whatever passes here is a value that the database can compare with: a cursor is the caller's word like everything else.
+const VALUES: Readonly<Record<CursorKind, z.ZodType<string>>> = {
+  text: z.string().max(200),
+  time: z.string().regex(/^\d{1,16}$/),
+  number: z.string().regex(/^\d{1,9}$/),
+};
 
 /** Opaque to callers: where the last page ended. */
 export function toCursor(place: { value: string; id: string }): string {
   return Buffer.from(JSON.stringify([place.value, place.id])).toString("base64url");
 }
 
-/** @throws DomainError invalid, for a cursor this service did not make */
-export function fromCursor(cursor: string | undefined): { value: string; id: string } | null {
+/** @throws DomainError invalid, for a cursor that does not come from a list ordered like this one */
+export function fromCursor(cursor: string | undefined, kind: CursorKind): { value: string; id: string } | null {
   if (cursor === undefined) return null;
   try {
-    const [value, id] = Place.parse(JSON.parse(Buffer.from(cursor, "base64url").toString("utf8")));
+    const place = z.tuple([VALUES[kind], z.uuid()]);
+    const [value, id] = place.parse(JSON.parse(Buffer.from(cursor, "base64url").toString("utf8")));
     return { value, id };
   } catch {
     throw new DomainError("invalid", "The place to continue from is not one of ours", {}, [

@@ -2,7 +2,9 @@ import { afterAll, expect, test } from "vitest";
 import { computeDesign } from "@/control/design/compute-design";
 import type { WeightsRecipe } from "@/control/design/recipe";
 import { checkPlant } from "@/control/plant/check-plant";
+import { evaluatePlant } from "@/control/plant/evaluate-plant";
 import { closeNumericPool, runNumeric } from "@/lib/jobs/run-numeric";
+import { twoCarriages } from "../helpers/plant-content";
 import { smallPlant } from "../helpers/small-plant";
 
 afterAll(closeNumericPool);
@@ -49,4 +51,15 @@ test("a design computed by a thread has the bits of one computed here, curves in
 
 test("checks computed by a thread are those computed here", async () => {
   expect(await runNumeric({ kind: "checks", model }, team)).toEqual(checkPlant(model));
+});
+
+test("a plant as typed, evaluated by a thread, has the bits of one evaluated here, and the same problems", async () => {
+  const content = twoCarriages();
+  const { model, problems } = evaluatePlant(content);
+  expect(await runNumeric({ kind: "evaluation", content }, team)).toEqual({ model, problems });
+  const wrong = twoCarriages({ A: [["m*", "0", "1", "0"], ...content.A.slice(1)] });
+  expect(await runNumeric({ kind: "evaluation", content: wrong }, team)).toEqual({
+    model: null,
+    problems: evaluatePlant(wrong).problems,
+  });
 });

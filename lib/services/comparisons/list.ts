@@ -11,7 +11,7 @@ export async function listComparisons(
   { plantId, cursor, limit }: { plantId?: string; cursor?: string; limit: number },
 ) {
   allow(ctx, "comparison:read");
-  const place = fromCursor(cursor);
+  const place = fromCursor(cursor, "time");
   const query = { plantId: plantId ?? null, limit: limit + 1, place };
   const rows = await inTransaction(ctx, (tx) => selectComparisons(tx, ctx.teamId, query));
   return toPage(rows, limit, ({ sortValue, id }) => ({ value: sortValue, id }), toComparison);

@@ -16,7 +16,7 @@ export async function checkModel(ctx: Context, model: PlantModel, signal?: Abort
 /** Checks of a plant that need not be saved. */
 export async function checkContent(ctx: Context, content: PlantContent, signal?: AbortSignal): Promise<ChecksReply> {
   allow(ctx, "compute:use");
-  return checkModel(ctx, evaluateOrRefuse(content), signal);
+  return checkModel(ctx, await evaluateOrRefuse(ctx, content, { signal }), signal);
 }
 
 export async function checkPlantRevision(

@@ -10,11 +10,11 @@ import type { Context } from "../context";
 import { evidenceReply, evidenceRows } from "../designs/evidence-reply";
 import { solveOrRefuse } from "../designs/solve-or-refuse";
 import { toCurves } from "../designs/to-curves";
-import { evaluateOrRefuse } from "../plants/evaluate-or-refuse";
+import { evaluateOrRefuse, issueBelow } from "../plants/evaluate-or-refuse";
 import { checkModel } from "./check-plant";
 
-async function modelOf(ctx: Context, plant: Compute["plant"]): Promise<PlantModel> {
-  if ("content" in plant) return evaluateOrRefuse(plant.content, "/plant/content");
+async function modelOf(ctx: Context, plant: Compute["plant"], signal?: AbortSignal): Promise<PlantModel> {
+  if ("content" in plant) return evaluateOrRefuse(ctx, plant.content, { toIssue: issueBelow("/plant/content"), signal });
   const found = await inTransaction(ctx, (tx) => findPlantRevision(tx, { teamId: ctx.teamId, revisionId: plant.revisionId }));
   if (!found) throw new NotFound("Plant revision");
   return found.model;
@@ -27,8 +27,8 @@ export async function compute(
   signal?: AbortSignal,
 ): Promise<Computation> {
   allow(ctx, "compute:use");
-  const model = await modelOf(ctx, plant);
-  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const model = await modelOf(ctx, plant, signal);
+  const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
   const records = evidence.responses.state === "computed" ? evidence.responses.value.records : [];
   return {
     model: model as Computation["model"],

@@ -1,5 +1,6 @@
 import "server-only";
 import { advanceDesignAt } from "@/db/queries/designs";
+import { StaleVersion } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
 import type { AddDesignRevision, DesignSummary } from "@/lib/schemas/design";
 import type { Context } from "../context";
@@ -18,9 +19,11 @@ export async function addDesignRevision(
   signal?: AbortSignal,
 ): Promise<DesignSummary> {
   allow(ctx, "design:write");
-  const { plantId } = await readDesign(ctx, designId);
+  const { plantId, version: stored } = await readDesign(ctx, designId);
+  // Said before anything is computed in vain; the write below still decides between two that start from the same version.
+  if (stored !== version) throw new StaleVersion(version, stored);
   const { model } = await findSolvablePlant(ctx, plantId, plantRevisionId);
-  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
   return changeDesignAt(ctx, designId, version, "design.revised", async (tx, key) => {
     const saved = await advanceDesignAt(tx, key, version);
     if (saved) {

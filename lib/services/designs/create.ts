@@ -12,6 +12,7 @@ import { recordEvent } from "../audit";
 import type { Context } from "../context";
 import { evidenceRows } from "./evidence-reply";
 import { findSolvablePlant } from "./find-solvable-plant";
+import { requireFinite } from "./require-finite";
 import { solveOrRefuse } from "./solve-or-refuse";
 import { toDesignSummary } from "./to-design";
 
@@ -26,6 +27,7 @@ type NewRevision = {
 
 /** A revision with all its evidence, within a transaction of the caller's. */
 export async function insertWithEvidence(tx: Db, ctx: Context, revision: NewRevision, evidence: Evidence): Promise<void> {
+  requireFinite(evidence);
   const { teamId, userId: createdBy } = ctx;
   const { methodVersion } = evidence;
   const { id } = await insertDesignRevision(tx, { ...revision, teamId, methodVersion, createdBy });
@@ -56,7 +58,7 @@ export async function createDesign(
 ): Promise<DesignSummary> {
   allow(ctx, "design:write");
   const { model } = await findSolvablePlant(ctx, plantId, plantRevisionId);
-  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
   return inTransaction(ctx, async (tx) => {
     const designId = await insertWithFirstDesignRevision(tx, ctx, { name, plantId, plantRevisionId, recipe, note }, evidence);
     const made = await findDesign(tx, { teamId: ctx.teamId, designId });

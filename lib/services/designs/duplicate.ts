@@ -24,7 +24,7 @@ export async function duplicateDesign(
   const revision = await inTransaction(ctx, (tx) => findDesignRevision(tx, { teamId, revisionId: original.currentRevision.id }));
   if (!revision) throw new NotFound("Design");
   const { recipe, plantId, plantRevisionId, model, number } = revision;
-  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
   const note = `From ${original.name}, revision ${number}`;
   return inTransaction(ctx, async (tx) => {
     const id = await insertWithFirstDesignRevision(tx, ctx, { name, plantId, plantRevisionId, recipe, note }, evidence);

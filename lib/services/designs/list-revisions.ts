@@ -11,7 +11,7 @@ import { toDesignRevisionEntry } from "./to-design";
 /** Newest first; the number of a revision is its place. */
 export async function listDesignRevisions(ctx: Context, designId: string, { cursor, limit }: { cursor?: string; limit: number }) {
   allow(ctx, "design:read");
-  const place = fromCursor(cursor);
+  const place = fromCursor(cursor, "number");
   return inTransaction(ctx, async (tx) => {
     const key = { teamId: ctx.teamId, designId };
     if (!(await findDesign(tx, key))) throw new NotFound("Design");

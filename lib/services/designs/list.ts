@@ -11,7 +11,7 @@ import { toDesignSummary } from "./to-design";
 
 export async function listDesigns(ctx: Context, plantId: string, { cursor, limit, archived }: DesignQuery) {
   allow(ctx, "design:read");
-  const place = fromCursor(cursor);
+  const place = fromCursor(cursor, "time");
   const rows = await inTransaction(ctx, async (tx) => {
     const key = { teamId: ctx.teamId, plantId };
     if (!(await findPlant(tx, key))) throw new NotFound("Plant");

@@ -2,15 +2,21 @@ import "server-only";
 import { insertPlantRevision } from "@/db/queries/plant-revisions";
 import { advancePlantAt } from "@/db/queries/plants";
 import { allow } from "@/lib/permissions/allow";
-import type { AddPlantRevision } from "@/lib/schemas/plant";
+import type { AddPlantRevision, PlantSummary } from "@/lib/schemas/plant";
 import type { Context } from "../context";
 import { changePlantAt } from "./change-at-version";
 import { evaluateOrRefuse } from "./evaluate-or-refuse";
 
 /** `version` is the plant's version that the edit started from; designs pinned to older revisions are outdated from now on. */
-export function addPlantRevision(ctx: Context, plantId: string, version: number, { content, note }: AddPlantRevision) {
+export async function addPlantRevision(
+  ctx: Context,
+  plantId: string,
+  version: number,
+  { content, note }: AddPlantRevision,
+  signal?: AbortSignal,
+): Promise<PlantSummary> {
   allow(ctx, "plant:write");
-  const model = evaluateOrRefuse(content);
+  const model = await evaluateOrRefuse(ctx, content, { signal });
   return changePlantAt(ctx, plantId, version, "plant.revised", async (tx, key) => {
     const saved = await advancePlantAt(tx, key, version);
     if (saved) {

@@ -24,9 +24,13 @@ export async function insertWithFirstRevision(
   return { plantId: plant.id, revisionId: revision.id };
 }
 
-export async function createPlant(ctx: Context, { name, content, note }: CreatePlant): Promise<PlantSummary> {
+export async function createPlant(
+  ctx: Context,
+  { name, content, note }: CreatePlant,
+  signal?: AbortSignal,
+): Promise<PlantSummary> {
   allow(ctx, "plant:write");
-  const model = evaluateOrRefuse(content);
+  const model = await evaluateOrRefuse(ctx, content, { signal });
   return inTransaction(ctx, async (tx) => {
     const { plantId } = await insertWithFirstRevision(tx, ctx, { name, content, model, note });
     const made = await findPlant(tx, { teamId: ctx.teamId, plantId });

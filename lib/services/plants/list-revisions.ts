@@ -11,7 +11,7 @@ import { toRevisionEntry } from "./to-plant";
 /** Newest first; the number of a revision is its place. */
 export async function listPlantRevisions(ctx: Context, plantId: string, { cursor, limit }: { cursor?: string; limit: number }) {
   allow(ctx, "plant:read");
-  const place = fromCursor(cursor);
+  const place = fromCursor(cursor, "number");
   return inTransaction(ctx, async (tx) => {
     const key = { teamId: ctx.teamId, plantId };
     if (!(await findPlant(tx, key))) throw new NotFound("Plant");

@@ -9,7 +9,7 @@ import { fromCursor, toPage } from "../cursor";
 /** Who did what, newest first. */
 export function listAuditEvents(ctx: Context, { cursor, limit }: AuditQuery) {
   allow(ctx, "audit:read");
-  const place = fromCursor(cursor);
+  const place = fromCursor(cursor, "time");
   return inTransaction(ctx, async (tx) => {
     const rows = await listRows(tx, ctx.teamId, limit, place);
     return toPage(

@@ -1,5 +1,6 @@
 import "server-only";
 import type { Issue } from "@/lib/errors";
+import { pointerTo } from "@/lib/schemas/issues";
 import type { PlantContent } from "@/lib/schemas/plant";
 import type { TemplateContent } from "@/lib/schemas/template";
 
@@ -11,14 +12,15 @@ export function fillIn({ plant, openParameters }: TemplateContent, values: Reado
   const issues: Issue[] = [];
   const known = new Set(openParameters.map(({ name }) => name));
   for (const name of Object.keys(values)) {
-    if (!known.has(name)) issues.push({ pointer: `/values/${name}`, detail: `The template has no open parameter "${name}"` });
+    if (!known.has(name))
+      issues.push({ pointer: pointerTo(["values", name]), detail: `The template has no open parameter "${name}"` });
   }
   const filled = new Map<string, number>();
   for (const { name, unit, lowest, highest, suggested } of openParameters) {
     const value = Object.hasOwn(values, name) ? values[name] : suggested;
     filled.set(name, value);
     if (value < lowest || value > highest) {
-      issues.push({ pointer: `/values/${name}`, detail: `${name} must lie between ${lowest} and ${highest} ${unit}` });
+      issues.push({ pointer: pointerTo(["values", name]), detail: `${name} must lie between ${lowest} and ${highest} ${unit}` });
     }
   }
   const parameters = plant.parameters.map((parameter) => {

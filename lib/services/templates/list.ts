@@ -9,7 +9,7 @@ import { toTemplateSummary } from "./to-template";
 
 export async function listTemplates(ctx: Context, { cursor, limit, archived }: DesignQuery) {
   allow(ctx, "template:read");
-  const query = { archived, limit: limit + 1, place: fromCursor(cursor) };
+  const query = { archived, limit: limit + 1, place: fromCursor(cursor, "text") };
   const rows = await inTransaction(ctx, (tx) => selectTemplates(tx, ctx.teamId, query));
   return toPage(rows, limit, ({ sortValue, id }) => ({ value: sortValue, id }), toTemplateSummary);
 }

@@ -7,7 +7,7 @@ import type { CreateTemplate, Template } from "@/lib/schemas/template";
 import { recordEvent } from "../audit";
 import type { Context } from "../context";
 import { solveOrRefuse } from "../designs/solve-or-refuse";
-import { evaluateOrRefuse } from "../plants/evaluate-or-refuse";
+import { evaluateOrRefuse, issueBelow } from "../plants/evaluate-or-refuse";
 import { fillIn, openParameterIssues } from "./fill-in";
 import { toTemplate } from "./to-template";
 
@@ -20,8 +20,9 @@ export async function publishTemplate(
   allow(ctx, "template:publish");
   const issues = openParameterIssues(content);
   if (issues.length > 0) throw new DomainError("invalid", "The open parameters do not fit the plant", {}, issues);
-  const model = evaluateOrRefuse(fillIn(content, {}).content, "/content/plant");
-  await solveOrRefuse(ctx, model, content.recipe, signal);
+  const suggested = fillIn(content, {}).content;
+  const model = await evaluateOrRefuse(ctx, suggested, { toIssue: issueBelow("/content/plant"), signal });
+  await solveOrRefuse(ctx, model, content.recipe, { at: "/content/recipe", signal });
   const { teamId, userId: createdBy } = ctx;
   return inTransaction(ctx, async (tx) => {
     const { id } = await insertTemplate(tx, { teamId, name, description, content, createdBy });

@@ -1,4 +1,5 @@
 import "server-only";
+import type { PlantProblem } from "@/control/plant/plant-problem";
 import { inTransaction } from "@/db/client";
 import { DomainError } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
@@ -23,9 +24,13 @@ export async function startFromTemplate(
   if (template.archivedAt) throw new DomainError("conflict", "This template has been archived; ask a lead which one follows it.");
   const { content, issues } = fillIn(template.content, values);
   if (issues.length > 0) throw new DomainError("invalid", "Some values lie outside what the template allows", {}, issues);
-  const model = evaluateOrRefuse(content, "/values");
+  const toIssue = ({ pointer, message }: PlantProblem) => ({
+    pointer: "/values",
+    detail: `With these values, at ${pointer} of the template's plant: ${message}`,
+  });
+  const model = await evaluateOrRefuse(ctx, content, { toIssue, signal });
   const { recipe } = template.content;
-  const evidence = await solveOrRefuse(ctx, model, recipe, signal);
+  const evidence = await solveOrRefuse(ctx, model, recipe, { at: "/values", signal });
   const note = `From template ${template.name}`;
   return inTransaction(ctx, async (tx) => {
     const { plantId, revisionId } = await insertWithFirstRevision(tx, ctx, { name: plantName, content, model, note });

@@ -3,6 +3,7 @@ import { route } from "@/lib/api/route";
 import { page } from "@/lib/schemas/common";
 import { CreatePlant, PlantQuery, PlantSummary } from "@/lib/schemas/plant";
 import { createPlant } from "@/lib/services/plants/create";
+import { EXPRESSIONS_HERE } from "@/lib/services/plants/evaluate-or-refuse";
 import { listPlants } from "@/lib/services/plants/list";
 
 export const GET = route(
@@ -17,10 +18,11 @@ export const POST = route(
     reply: PlantSummary,
     right: "plant:write",
     idempotent: true,
+    inTurnAbove: EXPRESSIONS_HERE,
     status: 201,
   },
-  async ({ ctx, body }) => {
-    const plant = await createPlant(ctx, body);
+  async ({ ctx, body, signal }) => {
+    const plant = await createPlant(ctx, body, signal);
     return { body: plant, version: plant.version, location: `/api/v1/plants/${plant.id}` };
   },
 );

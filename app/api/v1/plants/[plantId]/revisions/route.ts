@@ -4,6 +4,7 @@ import { PlantAddress } from "@/lib/schemas/addresses";
 import { PageQuery, page } from "@/lib/schemas/common";
 import { AddPlantRevision, PlantRevisionEntry, PlantSummary } from "@/lib/schemas/plant";
 import { addPlantRevision } from "@/lib/services/plants/add-revision";
+import { EXPRESSIONS_HERE } from "@/lib/services/plants/evaluate-or-refuse";
 import { listPlantRevisions } from "@/lib/services/plants/list-revisions";
 
 export const GET = route(
@@ -26,10 +27,11 @@ export const POST = route(
     reply: PlantSummary,
     right: "plant:write",
     ifMatch: true,
+    inTurnAbove: EXPRESSIONS_HERE,
     status: 201,
   },
-  async ({ ctx, params, body, version }) => {
-    const plant = await addPlantRevision(ctx, params.plantId, version, body);
+  async ({ ctx, params, body, version, signal }) => {
+    const plant = await addPlantRevision(ctx, params.plantId, version, body, signal);
     return { body: plant, version: plant.version };
   },
 );

@@ -15,5 +15,8 @@ export const POST = route(
     cost: "solve",
     status: 201,
   },
-  async ({ ctx, params, body, signal }) => ({ body: await startFromTemplate(ctx, params.templateId, body, signal) }),
+  async ({ ctx, params, body, signal }) => {
+    const started = await startFromTemplate(ctx, params.templateId, body, signal);
+    return { body: started, location: `/api/v1/designs/${started.designId}` };
+  },
 );
