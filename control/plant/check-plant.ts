@@ -5,6 +5,7 @@ import { couplingReport } from "../structure/coupling-report";
 import { describeModes } from "../structure/modes";
 import { reachOfInputs, sightOfOutputs } from "../structure/plant-reach";
 import { scalingReport } from "../structure/scaling-report";
+import { settleAssumed } from "../structure/settle-assumed";
 import { timeBaseSuspicion } from "../structure/time-base-suspicion";
 import { transmissionZeros } from "../structure/transmission-zeros";
 import { attempt } from "./attempt";
@@ -23,10 +24,11 @@ import { scalePlant } from "./scale-plant";
  */
 export function checkPlant(model: PlantModel): PlantChecks {
   const scaled = scalePlant(model);
-  const spectrum = once(() => eigensystem(scaled.A));
-  const reach = once(() => reachOfInputs(scaled, spectrum().values));
-  const sight = once(() => sightOfOutputs(scaled, model.timeBase, spectrum().values));
-  const modes = once(() => describeModes(scaled, model.timeBase, spectrum(), reach(), sight()));
+  const settled = once(() => settleAssumed(scaled));
+  const spectrum = once(() => eigensystem(settled().A));
+  const reach = once(() => reachOfInputs(settled(), spectrum().values));
+  const sight = once(() => sightOfOutputs(settled(), model.timeBase, spectrum().values));
+  const modes = once(() => describeModes(settled(), model.timeBase, spectrum(), reach(), sight()));
   const suspicion = attempt(() => timeBaseSuspicion(spectrum().values, model.timeBase));
   return {
     modes: attempt(modes),

@@ -35,7 +35,7 @@ export function balancePair(a: Float64Array, b: Float64Array, n: number, m: numb
   const plain = { a: pair.a.slice(), b: pair.b.slice(), stateScale: ones(n) };
   const fastest = spectralRadius * start;
   const lost = 64 * n * Number.EPSILON * Math.max(fastest * fastest, strongestLoop(pair.a, n));
-  for (let round = 0; round < MOST_ROUNDS && balanceStates(pair.a, n, pair.stateScale, lost); round++);
+  for (let round = 0; round < MOST_ROUNDS && balanceStates(pair.a, n, pair.stateScale, lost, all); round++);
   for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) pair.b[i * m + j] /= pair.stateScale[i];
   const { order, starts } = strongComponents(pair.a, n);
   const blocks = starts.slice(1).map((end, k) => Array.from(order.subarray(starts[k], end)));

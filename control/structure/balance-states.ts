@@ -7,12 +7,18 @@ export const MOST_EXPONENT = 400;
  * One sweep of balancing over the states by powers of two; true while some state still moved. A state whose way in times
  * way out is at most `lost` keeps its unit: there it is rounding that would be blown up.
  *
- * Shapes    a n×n row-major and stateScale n, both overwritten
+ * Shapes    a n×n row-major and stateScale n, both overwritten; only `members` may move
  * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304
  */
-export function balanceStates(a: Float64Array, n: number, stateScale: Float64Array, lost: number): boolean {
+export function balanceStates(
+  a: Float64Array,
+  n: number,
+  stateScale: Float64Array,
+  lost: number,
+  members: readonly number[],
+): boolean {
   let moved = false;
-  for (let i = 0; i < n; i++) {
+  for (const i of members) {
     let row = 0;
     let column = 0;
     for (let j = 0; j < n; j++) {

@@ -1,6 +1,6 @@
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
-import { balanceStates, MOST_EXPONENT } from "./balance-states";
+import { MOST_EXPONENT } from "./balance-states";
 import type { FlatSystem } from "./reduce-system";
 
 /** `timeScale` is the power of two by which a and b were multiplied, so that poles and zeros were too. */
@@ -22,46 +22,26 @@ const MOST_ROUNDS = 40;
  */
 export function balanceSystem(given: FlatSystem, spectralRadius: number): BalancedSystem {
   const system = { ...given, a: given.a.slice(), b: given.b.slice(), c: given.c.slice(), d: given.d.slice() };
-  const { n, a } = system;
+  const { n, a, b } = system;
   const inner = innerStates(system);
-  sizeSignals(system);
-  let timeScale = rescaleTime(system, largestEntry(a));
-  sizeSignals(system);
-  const exponents = balanceAlone(system, spectralRadius * timeScale);
+  const exponents = new Int32Array(n);
+  let timeScale = 1;
   for (let pass = 0; pass < MOST_PASSES; pass++) {
     sizeSignals(system);
-    const factor = rescaleTime(system, largestBetween(a, n, inner) || spectralRadius * timeScale || largestEntry(a));
+    const factor = powerOfTwo(-exponentOf(largestBetween(a, n, inner) || spectralRadius * timeScale || largestEntry(a) || 1));
     if (pass > 0 && factor === 1) break;
     timeScale *= factor;
+    for (let i = 0; i < a.length; i++) a[i] *= factor;
+    for (let i = 0; i < b.length; i++) b[i] *= factor;
     const fastest = spectralRadius * timeScale;
     const lost = 16 * n * Number.EPSILON * fastest * fastest;
     for (let round = 0, moved = true; moved && round < MOST_ROUNDS; round++) {
       sizeSignals(system);
-      moved = balanceAll(system, exponents, lost);
+      moved = moveStates(system, exponents, lost);
     }
   }
   sizeSignals(system);
   return { ...system, timeScale };
-}
-
-/** Rates of the given size become 1; the factor that did it. */
-function rescaleTime({ a, b }: FlatSystem, size: number): number {
-  const factor = powerOfTwo(-exponentOf(size || 1));
-  for (let i = 0; i < a.length; i++) a[i] *= factor;
-  for (let i = 0; i < b.length; i++) b[i] *= factor;
-  return factor;
-}
-
-/** States that act on each other settle their units among themselves first: inputs and outputs have no unit to offer yet. */
-function balanceAlone({ n, m, p, a, b, c }: FlatSystem, spectralRadius: number): Int32Array {
-  const scale = new Float64Array(n).fill(1);
-  const lost = 64 * n * Number.EPSILON * spectralRadius * spectralRadius;
-  for (let round = 0; round < MOST_ROUNDS && balanceStates(a, n, scale, lost); round++);
-  for (let i = 0; i < n; i++) {
-    for (let j = 0; j < m; j++) b[i * m + j] /= scale[i];
-    for (let k = 0; k < p; k++) c[k * n + i] *= scale[i];
-  }
-  return Int32Array.from(scale, exponentOf);
 }
 
 /** States on a way from an input to an output: only these say how fast the whole is, the unit of the others is free. */
@@ -85,7 +65,7 @@ function largestBetween(a: Float64Array, n: number, states: readonly number[]): 
 }
 
 /** One sweep over the states; true while some state still moved. */
-function balanceAll({ n, m, p, a, b, c }: FlatSystem, exponents: Int32Array, lost: number): boolean {
+function moveStates({ n, m, p, a, b, c }: FlatSystem, exponents: Int32Array, lost: number): boolean {
   let moved = false;
   for (let i = 0; i < n; i++) {
     let row = 0;

@@ -17,7 +17,7 @@ import { reflectColumns } from "./reflections";
  * Shapes    A n×n, B n×m, C p×n, D p×m → at most n values, conjugate pairs exactly conjugate, sorted by real part
  * Units     those of A
  * Throws    shape-mismatch; not-finite; no-convergence
- * Accuracy  exact for a system within c (n + m + p) ε of the balanced one; independent of powers of two in the units
+ * Accuracy  exact for a system within c (n + m + p) ε of the balanced one; units spread over 1e6 and more are balanced away
  * Source    Emami-Naeini & Van Dooren, Automatica 18 (1982) 415-430
  */
 export function transmissionZeros({ A, B, C, D }: System): Complex[] {

@@ -1,20 +1,30 @@
+import type { PlantModel } from "../../plant/model";
 import { formatNumber } from "../format-number";
-import { modeOf, numberOf, textOf } from "./facts";
-import type { Explainers, RefusalWords } from "./types";
+import { modeOf, numberOf, signalName, textOf } from "./facts";
+import type { Explainers, Facts, RefusalWords } from "./types";
 
 const OPTIONS: Readonly<Record<string, string>> = {
-  period: "the sample time",
-  poles: "an entry of the pole list",
-  degreeOfStability: "the degree of stability",
-  horizon: "the length of the response",
+  period: "The sample time",
+  degreeOfStability: "The degree of stability",
+  horizon: "The length of the response",
 };
 
-function badOption(option: string | null, given: number | null): RefusalWords {
-  const name = option === null ? "A setting" : (OPTIONS[option] ?? `the setting "${option}"`);
+function badOption(data: Facts, model: PlantModel): RefusalWords {
+  const option = textOf(data, "option") ?? "";
+  const index = numberOf(data, "index");
+  const given = numberOf(data, "given");
+  const signals: Readonly<Record<string, readonly { readonly name: string }[]>> = { states: model.states, inputs: model.inputs };
+  const signal = Object.hasOwn(signals, option) ? signalName(signals[option], index, option.slice(0, -1)) : null;
+  const entry = option === "poles" && index !== null ? `Entry ${index + 1} of the pole list` : null;
+  const named = Object.hasOwn(OPTIONS, option) ? OPTIONS[option] : "A setting";
+  const name = signal !== null ? `The acceptable deviation of ${signal}` : (entry ?? named);
   return {
     title: "A setting is out of range",
-    sentence: `${name.charAt(0).toUpperCase()}${name.slice(1)} has a value that it cannot take${given === null ? "" : ` (${formatNumber(given)})`}.`,
-    nextStep: "Enter a positive, finite value in the unit shown beside it.",
+    sentence: `${name} has a value that it cannot take${given === null ? "" : ` (${formatNumber(given)})`}.`,
+    nextStep:
+      option === "poles"
+        ? "Enter finite numbers: a frequency or time constant above zero, and a damping ratio that is not negative."
+        : "Enter a positive, finite value in the unit shown beside it.",
   };
 }
 
@@ -56,5 +66,5 @@ export const explainDesign: Pick<
     sentence: "The plant is sampled, and this needs its sample time.",
     nextStep: "Enter the sample time of the plant in seconds.",
   }),
-  "bad-option": (data) => badOption(textOf(data, "option"), numberOf(data, "given")),
+  "bad-option": badOption,
 };

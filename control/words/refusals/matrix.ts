@@ -14,27 +14,43 @@ const NAMES: Readonly<Record<string, string>> = {
   Q: "the state weight",
   R: "the input weight",
   S: "the cross weight",
-  W: "the process noise",
-  V: "the measurement noise",
-  process: "the process noise",
-  measurement: "the measurement noise",
+  "[Q S; S' R]": "the whole of state, cross and input weight",
+  K: "the gain",
+  L: "the observer gain",
+  F: "the reference gain",
+  "process noise": "the process noise",
+  "measurement noise": "the measurement noise",
   poles: "the list of poles",
-  lyapunov: "an inner equation of the solution",
+};
+
+/** What grew too large; names that only the core knows are not shown. */
+const RESULTS: Readonly<Record<string, string>> = {
+  eigenvalue: "A mode of the plant",
+  response: "A response",
+  gain: "A gain",
+  "closed loop": "The closed loop",
+  "gain at rest": "The gain at rest",
+  "reference gain": "The reference gain",
+  weights: "A weight",
+  states: "The number of states",
+  inputs: "The number of inputs",
+  outputs: "The number of outputs",
 };
 
 /** The signals along one side of a matrix. */
 function signalsOf(matrix: string, side: "row" | "column", model: PlantModel): readonly { readonly name: string }[] {
-  const byState = side === "row" ? "ABEQSW" : "ACHQ";
-  const byInput = side === "row" ? "R" : "BDJRS";
-  if (byState.includes(matrix) || matrix === "process" || (matrix === "W" && side === "column")) return model.states;
+  const byState = side === "row" ? ["A", "B", "E", "Q", "S", "L"] : ["A", "C", "H", "Q", "K"];
+  const byInput = side === "row" ? ["R", "K", "F"] : ["B", "D", "J", "R", "S"];
+  if (byState.includes(matrix) || matrix === "process noise") return model.states;
   if (byInput.includes(matrix)) return model.inputs;
   if (matrix === "E") return model.disturbances;
-  return matrix === "H" || matrix === "J" ? model.commanded : model.outputs;
+  if (["H", "J", "F"].includes(matrix)) return model.commanded;
+  return ["C", "D", "L", "measurement noise"].includes(matrix) ? model.outputs : [];
 }
 
 function matrixName(data: Facts): string {
   const name = textOf(data, "matrix");
-  return name === null ? "a matrix" : (NAMES[name] ?? name);
+  return name !== null && Object.hasOwn(NAMES, name) ? NAMES[name] : "an inner equation";
 }
 
 function place(data: Facts, model: PlantModel): string {
@@ -65,12 +81,34 @@ function shapeMismatch(data: Facts): RefusalWords {
 function tooLarge(data: Facts): RefusalWords {
   const what = textOf(data, "what");
   const limit = numberOf(data, "limit");
+  const name = what !== null && Object.hasOwn(RESULTS, what) ? RESULTS[what] : "A number on the way to the result";
   return {
     title: "Numbers too large",
-    sentence: `${what === null ? "A result" : startSentence(what.replaceAll("-", " "))} goes beyond ${
-      limit === null ? "the limit" : `the limit of ${formatNumber(limit)}`
-    }.`,
+    sentence: `${name} goes beyond ${limit === null ? "the limit" : `the limit of ${formatNumber(limit)}`}.`,
     nextStep: "Choose units in which the entries lie nearer to 1, or make the problem smaller.",
+  };
+}
+
+function notPositiveDefinite(data: Facts, model: PlantModel): RefusalWords {
+  const noise = (textOf(data, "matrix") ?? "").endsWith("noise");
+  const demand = noise ? "must leave every signal with some noise" : "must cost something in every direction";
+  return {
+    title: noise ? "Noise not positive" : "Weight not positive",
+    sentence: `${startSentence(matrixName(data))} ${demand}, and there is one ${noise ? "combination that has none" : "that costs nothing or less"}${alongDiagonal(data, model)}.`,
+    nextStep: "Make its diagonal entries larger than zero, and large enough against the entries beside them.",
+  };
+}
+
+function notPositiveSemidefinite(data: Facts): RefusalWords {
+  const noise = (textOf(data, "matrix") ?? "").endsWith("noise");
+  const least = numberOf(data, "eigenvalue");
+  const found = least === null ? "" : ` (smallest eigenvalue ${formatNumber(least)})`;
+  return {
+    title: noise ? "Noise below zero" : "Weight rewards motion",
+    sentence: `${startSentence(matrixName(data))} is negative in one direction${found}${noise ? ", which no noise can be" : ", so that motion would lower the cost"}.`,
+    nextStep: noise
+      ? "Make the diagonal larger, or the entries beside it smaller."
+      : "Make the diagonal larger, or the entries beside it smaller; with a cross weight, the state weight must outweigh it.",
   };
 }
 
@@ -109,22 +147,10 @@ export const explainMatrix: Pick<
   }),
   singular,
   "not-symmetric": (data, model) => ({
-    title: "Weight not symmetric",
+    title: "Not symmetric",
     sentence: `${startSentence(matrixName(data))} differs from its mirror image${place(data, model)}.`,
-    nextStep: "Give both entries of the pair the same value, half of the wanted product term each.",
+    nextStep: "Give both entries of the pair the same value.",
   }),
-  "not-positive-definite": (data, model) => ({
-    title: "Weight not positive",
-    sentence: `${startSentence(matrixName(data))} must cost something in every direction, and there is one that costs nothing or less${alongDiagonal(data, model)}.`,
-    nextStep: "Make its diagonal entries larger than zero, and large enough against the entries beside them.",
-  }),
-  "not-positive-semidefinite": (data) => {
-    const least = numberOf(data, "eigenvalue");
-    return {
-      title: "Weight rewards motion",
-      sentence: `${startSentence(matrixName(data))} is negative in one direction${least === null ? "" : ` (smallest eigenvalue ${formatNumber(least)})`}, so that motion would lower the cost.`,
-      nextStep:
-        "Make the diagonal larger, or the entries beside it smaller; with a cross weight, the state weight must outweigh it.",
-    };
-  },
+  "not-positive-definite": notPositiveDefinite,
+  "not-positive-semidefinite": notPositiveSemidefinite,
 };
