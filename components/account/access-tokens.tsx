@@ -4,7 +4,6 @@ import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useState } from "react";
 import { accessTokenKey, fetchAccessTokens, revokeAccessToken } from "@/lib/client/account";
 import type { AccessToken, CreatedAccessToken } from "@/lib/schemas/account";
-import { whenText } from "../plants/when-text";
 import { usePerson } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Button } from "../ui/button";
@@ -15,6 +14,7 @@ import { ErrorState } from "../ui/error-state";
 import { FormProblems } from "../ui/form-problems";
 import { LoadingState } from "../ui/loading-state";
 import { useSubmit } from "../ui/use-submit";
+import { When } from "../ui/when";
 import { CreateTokenForm } from "./create-token-form";
 import { TokenSecret } from "./token-secret";
 
@@ -89,9 +89,9 @@ function TokenTable({ tokens, onChanged }: Readonly<{ tokens: readonly AccessTok
 const tokenColumns = (onRevoke: (token: AccessToken) => void): readonly Column<AccessToken>[] => [
   { key: "name", header: "For", cell: ({ name }) => <span className="break-words">{name}</span> },
   { key: "scope", header: "May", cell: ({ scope }) => scope },
-  { key: "last", header: "Last used", cell: ({ lastUsedAt }) => (lastUsedAt ? whenText(lastUsedAt) : "never") },
-  { key: "made", header: "Made", cell: ({ createdAt }) => whenText(createdAt) },
-  { key: "ends", header: "Ends", cell: ({ expiresAt }) => whenText(expiresAt) },
+  { key: "last", header: "Last used", cell: ({ lastUsedAt }) => (lastUsedAt ? <When at={lastUsedAt} /> : "never") },
+  { key: "made", header: "Made", cell: ({ createdAt }) => <When at={createdAt} /> },
+  { key: "ends", header: "Ends", cell: ({ expiresAt }) => <When at={expiresAt} /> },
   { key: "state", header: "State", cell: (token) => <Chip>{stateOf(token)}</Chip> },
   {
     key: "act",

@@ -3,13 +3,13 @@
 import { useQuery } from "@tanstack/react-query";
 import { fetchOutbox, outboxKey } from "@/lib/client/account";
 import type { OutboxMail } from "@/lib/schemas/team";
-import { whenText } from "../plants/when-text";
 import { useSession } from "../providers/session-provider";
 import { Button } from "../ui/button";
 import { Chip } from "../ui/chip";
 import { EmptyState } from "../ui/empty-state";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
+import { When } from "../ui/when";
 import { MailText } from "./mail-text";
 
 /** The newest hundred mails of the team, in place of a mailbox. */
@@ -59,7 +59,7 @@ function Mail({ mail, origin }: Readonly<{ mail: OutboxMail; origin: string }>) 
         </h2>
         <p className="mt-0.5 flex flex-wrap items-baseline gap-x-3 gap-y-1 text-sm text-soft">
           <span className="break-all">to {recipient}</span>
-          <span>{whenText(createdAt)}</span>
+          <When at={createdAt} />
           <Chip>{sentAt ? "sent" : lastError ? "not sent yet" : "kept here only"}</Chip>
         </p>
         {lastError ? <p className="mt-1 text-sm">The last try to send it failed: {lastError}</p> : null}

@@ -4,7 +4,6 @@ import { useInfiniteQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { fetchAuditEvents, teamKeys } from "@/lib/client/account";
 import type { AuditEvent } from "@/lib/schemas/team";
-import { whenText } from "../plants/when-text";
 import { useSession } from "../providers/session-provider";
 import { Button } from "../ui/button";
 import { Chip } from "../ui/chip";
@@ -12,10 +11,11 @@ import { type Column, DataTable } from "../ui/data-table";
 import { EmptyState } from "../ui/empty-state";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
+import { When } from "../ui/when";
 import { auditHref, auditWords } from "./audit-words";
 
 const columns: readonly Column<AuditEvent>[] = [
-  { key: "when", header: "When", cell: ({ at }) => <span className="whitespace-nowrap">{whenText(at)}</span> },
+  { key: "when", header: "When", cell: ({ at }) => <When at={at} /> },
   {
     key: "who",
     header: "Who",

@@ -5,7 +5,6 @@ import Link from "next/link";
 import { useState } from "react";
 import { fetchInvitations, teamKeys, withdrawInvitation } from "@/lib/client/account";
 import type { Invitation } from "@/lib/schemas/team";
-import { whenText } from "../plants/when-text";
 import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Button } from "../ui/button";
@@ -15,6 +14,7 @@ import { ErrorState } from "../ui/error-state";
 import { FormProblems } from "../ui/form-problems";
 import { LoadingState } from "../ui/loading-state";
 import { useSubmit } from "../ui/use-submit";
+import { When } from "../ui/when";
 import { InviteForm } from "./invite-form";
 
 /** For leads: who was asked to join and has not yet. */
@@ -80,8 +80,8 @@ const invitationColumns = (onWithdraw: (invitation: Invitation) => void): readon
   { key: "email", header: "E-mail address", cell: ({ email }) => <span className="break-all">{email}</span> },
   { key: "role", header: "As", cell: ({ role }) => role },
   { key: "by", header: "Invited by", cell: ({ invitedBy }) => invitedBy },
-  { key: "sent", header: "Sent", cell: ({ createdAt }) => whenText(createdAt) },
-  { key: "ends", header: "Link ends", cell: ({ expiresAt }) => whenText(expiresAt) },
+  { key: "sent", header: "Sent", cell: ({ createdAt }) => <When at={createdAt} /> },
+  { key: "ends", header: "Link ends", cell: ({ expiresAt }) => <When at={expiresAt} /> },
   {
     key: "act",
     header: <span className="sr-only">Withdraw</span>,

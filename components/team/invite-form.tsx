@@ -10,10 +10,9 @@ import { FormProblems } from "../ui/form-problems";
 import { Select } from "../ui/select";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
-import { ROLES, roleOf } from "./role-words";
+import { ROLE_OPTIONS, ROLES, roleOf } from "./role-words";
 
 const FIELDS = { "/email": "invite-email", "/role": "invite-role" };
-const OPTIONS = ROLES.map(({ role, may }) => ({ value: role, label: `${role}: ${may}` }));
 
 export function InviteForm({ onInvited }: Readonly<{ onInvited: () => Promise<void> }>) {
   const { resume } = useSession();
@@ -47,11 +46,12 @@ export function InviteForm({ onInvited }: Readonly<{ onInvited: () => Promise<vo
         <Select
           id={FIELDS["/role"]}
           label="Role"
-          options={OPTIONS}
+          options={ROLE_OPTIONS}
           value={role}
           onChange={({ target }) => setRole(roleOf(target.value))}
+          hint={ROLES.find((entry) => entry.role === role)?.may}
           problem={at("/role")}
-          className="min-w-64 flex-1"
+          className="w-80 max-w-full"
         />
         <Button type="submit" busy={busy} className="mt-6">
           {busy ? "Inviting…" : "Invite"}

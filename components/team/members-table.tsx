@@ -1,11 +1,11 @@
 "use client";
 
 import type { Member, Role } from "@/lib/schemas/team";
-import { whenText } from "../plants/when-text";
 import { Button } from "../ui/button";
 import { Chip } from "../ui/chip";
 import { type Column, DataTable } from "../ui/data-table";
 import { Select } from "../ui/select";
+import { When } from "../ui/when";
 import { ROLE_OPTIONS, roleOf } from "./role-words";
 
 type MembersTableProps = Readonly<{
@@ -49,13 +49,13 @@ export function MembersTable({ members, userId, mayManage, busy, onRole, onRemov
             disabled={busy || onlyLead(member)}
             hint={onlyLead(member) ? "the only lead: make somebody else one first" : undefined}
             onChange={({ target }) => onRole(member, roleOf(target.value))}
-            className="min-w-32"
+            className="w-44"
           />
         ) : (
           member.role
         ),
     },
-    { key: "joined", header: "Since", sortBy: ({ joinedAt }) => joinedAt, cell: ({ joinedAt }) => whenText(joinedAt) },
+    { key: "joined", header: "Since", sortBy: ({ joinedAt }) => joinedAt, cell: ({ joinedAt }) => <When at={joinedAt} /> },
     {
       key: "act",
       header: <span className="sr-only">Remove or leave</span>,

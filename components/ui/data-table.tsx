@@ -95,7 +95,7 @@ function HeaderCell<Row>({ column, sort, onSort }: HeaderCellProps<Row>) {
   if (!column.sortBy) {
     return (
       <th scope="col" className={style}>
-        {column.header}
+        <span className="inline-flex min-h-6 items-center">{column.header}</span>
       </th>
     );
   }

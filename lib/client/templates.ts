@@ -1,3 +1,4 @@
+import type { DesignQuery } from "../schemas/design";
 import type { CreateTemplate, StartFromTemplate, Template, TemplateSummary } from "../schemas/template";
 import { newKey, request } from "./request";
 
@@ -5,11 +6,12 @@ type Page<T> = { readonly items: T[]; readonly nextCursor: string | null };
 
 export const templateKeys = {
   all: ["templates"] as const,
+  list: (query: Partial<DesignQuery>) => ["templates", "list", query] as const,
   detail: (templateId: string) => ["templates", templateId] as const,
 };
 
-export const fetchTemplates = async (signal?: AbortSignal) =>
-  (await request<Page<TemplateSummary>>("/api/v1/templates", { signal })).data;
+export const fetchTemplates = async (query: Partial<DesignQuery>, signal?: AbortSignal) =>
+  (await request<Page<TemplateSummary>>("/api/v1/templates", { query, signal })).data;
 export const fetchTemplate = async (templateId: string, signal?: AbortSignal) =>
   (await request<Template>(`/api/v1/templates/${templateId}`, { signal })).data;
 

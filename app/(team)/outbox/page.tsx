@@ -1,5 +1,4 @@
 import type { Metadata } from "next";
-import { notFound } from "next/navigation";
 import { OutboxList } from "@/components/outbox/outbox-list";
 import { ErrorState } from "@/components/ui/error-state";
 import { LinkButton } from "@/components/ui/link-button";
@@ -13,7 +12,6 @@ export const metadata: Metadata = { title: "Mail of the demonstration" };
 
 export default async function Page() {
   const ctx = await pageContext("/outbox");
-  if (!env().GAINWRIGHT_DEMO) notFound();
   return (
     <PageBody>
       <PageHeading title="Mail of the demonstration" />
