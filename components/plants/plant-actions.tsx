@@ -8,6 +8,7 @@ import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Menu } from "../ui/menu";
 import { NameDialog } from "../ui/name-dialog";
+import { useCreateKey } from "../ui/use-create-key";
 import { useSubmit } from "../ui/use-submit";
 
 type PlantActionsProps = Readonly<{ plant: PlantSummary; onChanged: (plant: PlantSummary) => void }>;
@@ -17,24 +18,17 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
   const { resume } = useSession();
   const router = useRouter();
   const toast = useToast();
+  const keyFor = useCreateKey();
   const [asking, setAsking] = useState<"rename" | "duplicate" | null>(null);
-  const form = useSubmit({ "/name": "plant-name" });
+  const act = useSubmit({});
 
-  const close = () => {
-    setAsking(null);
-    form.clear();
+  const rename = async (name: string) => onChanged(await resume(() => renamePlant(plant.id, plant.version, name)));
+  const duplicate = async (name: string) => {
+    const copy = await resume(() => duplicatePlant(plant.id, { name }, keyFor({ name })));
+    router.push(`/plants/${copy.id}`);
   };
-  const rename = async (name: string) => {
-    const done = await form.run(async () => onChanged(await resume(() => renamePlant(plant.id, plant.version, name))));
-    if (done) close();
-  };
-  const duplicate = (name: string) =>
-    form.run(async () => {
-      const copy = await resume(() => duplicatePlant(plant.id, { name }));
-      router.push(`/plants/${copy.id}`);
-    });
-  const archive = (archived: boolean, from = plant) =>
-    form.run(async () => {
+  const archive = async (archived: boolean, from = plant) => {
+    const done = await act.run(async () => {
       const changed = await resume(() => archivePlant(from.id, from.version, archived));
       onChanged(changed);
       toast({
@@ -43,6 +37,8 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
         action: archived ? { label: "Undo", run: () => void archive(false, changed) } : undefined,
       });
     });
+    if (!done) toast({ text: "That could not be done; reload the page and try again.", kind: "unmet" });
+  };
 
   return (
     <>
@@ -58,17 +54,16 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
             : { key: "archive", label: "Archive", onSelect: () => void archive(true) },
         ]}
       />
-      <NameDialog
-        open={asking !== null}
-        onClose={close}
-        fieldId="plant-name"
-        title={asking === "duplicate" ? `Duplicate ${plant.name}` : `Rename ${plant.name}`}
-        label="Name of the plant"
-        start={asking === "duplicate" ? `${plant.name} (copy)`.slice(0, 120) : plant.name}
-        action={asking === "duplicate" ? "Duplicate" : "Rename"}
-        form={form}
-        onSubmit={asking === "duplicate" ? duplicate : rename}
-      />
+      {asking ? (
+        <NameDialog
+          title={asking === "duplicate" ? `Duplicate ${plant.name}` : `Rename ${plant.name}`}
+          label="Name of the plant"
+          start={asking === "duplicate" ? `${plant.name} (copy)`.slice(0, 120) : plant.name}
+          confirm={asking === "duplicate" ? "Duplicate" : "Rename"}
+          onClose={() => setAsking(null)}
+          onName={asking === "duplicate" ? duplicate : rename}
+        />
+      ) : null}
     </>
   );
 }

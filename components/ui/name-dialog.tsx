@@ -1,39 +1,49 @@
 "use client";
 
-import type { FormEvent } from "react";
+import { type FormEvent, useState } from "react";
 import { Button } from "./button";
 import { Dialog } from "./dialog";
 import { FormProblems } from "./form-problems";
 import { TextField } from "./text-field";
-import type { Submit } from "./use-submit";
+import { useSubmit } from "./use-submit";
+
+const FIELDS = { "/name": "asked-name" };
 
 type NameDialogProps = Readonly<{
-  open: boolean;
-  onClose: () => void;
   title: string;
+  /** What is named: "Name of the plant". */
   label: string;
-  fieldId: string;
+  confirm: string;
   start: string;
-  action: string;
-  form: Submit;
-  onSubmit: (name: string) => unknown;
+  onClose: () => void;
+  /** @throws RequestProblem */
+  onName: (name: string) => Promise<void>;
 }>;
 
-/** Asks for one name. */
-export function NameDialog({ open, onClose, title, label, fieldId, start, action, form, onSubmit }: NameDialogProps) {
-  const submit = (event: FormEvent<HTMLFormElement>) => {
+/** Asks for a name: to rename, or for a duplicate. */
+export function NameDialog({ title, label, confirm, start, onClose, onName }: NameDialogProps) {
+  const [name, setName] = useState(start);
+  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const send = async (event: FormEvent) => {
     event.preventDefault();
-    onSubmit(String(new FormData(event.currentTarget).get("name")));
+    if (await run(() => onName(name.trim()))) onClose();
   };
   return (
-    <Dialog open={open} onClose={onClose} title={title}>
-      <form onSubmit={submit} noValidate>
-        <FormProblems attempt={form.attempt} problems={form.problems} />
-        <TextField id={fieldId} name="name" label={label} defaultValue={start} maxLength={120} problem={form.at("/name")} />
-        <div className="mt-4 flex justify-end gap-3">
-          <Button onClick={onClose}>Cancel</Button>
-          <Button type="submit" tone="primary" busy={form.busy}>
-            {action}
+    <Dialog open onClose={onClose} title={title}>
+      <form onSubmit={send} noValidate className="flex flex-col gap-4">
+        <FormProblems {...{ attempt, problems }} />
+        <TextField
+          id={FIELDS["/name"]}
+          label={label}
+          maxLength={120}
+          value={name}
+          problem={at("/name")}
+          onChange={({ target }) => setName(target.value)}
+        />
+        <div className="flex flex-wrap justify-end gap-3">
+          <Button onClick={onClose}>Leave it</Button>
+          <Button type="submit" tone="primary" busy={busy}>
+            {confirm}
           </Button>
         </div>
       </form>

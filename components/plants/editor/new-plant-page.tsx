@@ -1,14 +1,13 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { createPlant } from "@/lib/client/plants";
-import { newKey } from "@/lib/client/request";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
 import { FormProblems } from "../../ui/form-problems";
 import { PageHeading } from "../../ui/page-heading";
 import { TextField } from "../../ui/text-field";
+import { useCreateKey } from "../../ui/use-create-key";
 import { useSubmit } from "../../ui/use-submit";
 import { PlantChecks } from "../plant-checks";
 import { ProblemList } from "../problem-list";
@@ -28,14 +27,15 @@ export function NewPlantPage() {
   const router = useRouter();
   const draft = usePlantDraft(`gainwright:plant:${teamId}:${userId}:new`, START);
   const evaluation = useEvaluation(draft.content);
-  const [key] = useState(newKey);
+  const keyFor = useCreateKey();
   const { busy, attempt, problems, at, run } = useSubmit({ "/name": "new-plant-name" });
   const model = evaluation?.model ?? null;
   const fresh = !draft.dirty;
 
   const save = () =>
     run(async () => {
-      const made = await resume(() => createPlant({ name: draft.name, content: draft.content, note: "" }, key));
+      const body = { name: draft.name, content: draft.content, note: "" };
+      const made = await resume(() => createPlant(body, keyFor(body)));
       draft.settle(draft.content, made.version);
       router.push(`/plants/${made.id}`);
     });

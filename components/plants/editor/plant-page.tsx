@@ -14,16 +14,17 @@ import { HistoryTab } from "../history-tab";
 import { PlantActions } from "../plant-actions";
 import { PlantChecks } from "../plant-checks";
 import { ProblemList } from "../problem-list";
+import { SaveAsTemplate } from "../save-as-template";
 import { DraftNotice } from "./draft-notice";
 import { EditorTabs } from "./editor-tabs";
 import { SaveRevision } from "./save-revision";
 import { useEvaluation } from "./use-evaluation";
 import { usePlantDraft } from "./use-plant-draft";
 
-type PlantPageProps = Readonly<{ plant: PlantSummary; revision: PlantRevision; mayWrite: boolean }>;
+type PlantPageProps = Readonly<{ plant: PlantSummary; revision: PlantRevision; mayWrite: boolean; mayPublish: boolean }>;
 
 /** A stored plant: its newest revision, ready to be changed by those who may. */
-export function PlantPage({ plant: start, revision, mayWrite }: PlantPageProps) {
+export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: PlantPageProps) {
   const { teamId, userId } = useSession();
   const router = useRouter();
   const toast = useToast();
@@ -54,7 +55,14 @@ export function PlantPage({ plant: start, revision, mayWrite }: PlantPageProps) 
           <>
             {readOnly ? null : <UndoButtons {...draft} />}
             {mayWrite ? <PlantActions plant={plant} onChanged={setPlant} /> : null}
-            {readOnly || draft.dirty ? null : <LinkButton href={`/plants/${plant.id}/designs/new`}>New design</LinkButton>}
+            {mayPublish && !draft.dirty ? (
+              <SaveAsTemplate plantId={plant.id} plantName={plant.name} content={draft.content} />
+            ) : null}
+            {readOnly || draft.dirty ? null : (
+              <LinkButton tone={plant.designCount === 0 ? "primary" : undefined} href={`/plants/${plant.id}/designs/new`}>
+                New design
+              </LinkButton>
+            )}
             {readOnly ? null : (
               <SaveRevision
                 plant={plant}

@@ -34,7 +34,12 @@ export default async function Page({ params }: PageProps) {
   const { ctx, plant, revision } = await load((await params).plantId);
   return (
     <PageBody>
-      <PlantPage plant={plant} revision={revision} mayWrite={isAllowed(ctx, "plant:write")} />
+      <PlantPage
+        plant={plant}
+        revision={revision}
+        mayWrite={isAllowed(ctx, "plant:write")}
+        mayPublish={isAllowed(ctx, "template:publish")}
+      />
     </PageBody>
   );
 }
