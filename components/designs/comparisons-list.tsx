@@ -5,12 +5,12 @@ import Link from "next/link";
 import { archiveComparison, designKeys, fetchComparisons } from "@/lib/client/designs";
 import { RequestProblem } from "@/lib/client/request";
 import type { Comparison } from "@/lib/schemas/comparison";
-import { whenText } from "../plants/when-text";
 import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Button } from "../ui/button";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
+import { When } from "../ui/when";
 import { sideBySideAddress } from "./side-by-side-address";
 
 /** Saved comparisons of a plant. One that is put away leaves this list; its address goes on working. */
@@ -67,7 +67,7 @@ function ComparisonEntry({ comparison, onPutAway }: Readonly<{ comparison: Compa
         <span className="text-sm text-soft">
           {" "}
           · {designRevisionIds.length} designs · {createdBy ? `${createdBy}, ` : ""}
-          {whenText(createdAt)}
+          <When at={createdAt} />
         </span>
         {note ? <p className="max-w-[70ch] text-table whitespace-pre-line">{note}</p> : null}
       </div>

@@ -31,7 +31,11 @@ export const ResponseCurves = memo(function ResponseCurves({ row, cell, range }:
         strokeDasharray={dash}
         strokeLinejoin="round"
       />
-      {cell.estimated ? <path d={responsePath(cell.estimated, range, held)} stroke={hue} strokeWidth="1" /> : null}
+      {[cell.estimated, cell.fullState].map((thin) =>
+        thin ? (
+          <path key={thin === cell.estimated ? "estimated" : "full"} d={responsePath(thin, range, held)} stroke={hue} />
+        ) : null,
+      )}
     </svg>
   );
 });

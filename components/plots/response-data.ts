@@ -3,6 +3,8 @@ export type ResponseCell = {
   readonly values: ArrayLike<number>;
   /** The observer's estimate of the same quantity: a thin line of the same hue. */
   readonly estimated?: ArrayLike<number> | null;
+  /** The same with the full state fed back, where `values` have the observer in the loop: a thin line of the same hue. */
+  readonly fullState?: ArrayLike<number> | null;
   /** The last saved revision: a thin grey line. */
   readonly ghost?: ArrayLike<number> | null;
   /** Value at rest, drawn dotted; null where there is none. */

@@ -15,7 +15,7 @@ function extent(row: ResponseRow): Range {
   for (const cell of row.cells) {
     if (!cell) continue;
     take(cell.final);
-    for (const line of [cell.values, cell.estimated, cell.ghost]) {
+    for (const line of [cell.values, cell.estimated, cell.fullState, cell.ghost]) {
       for (let k = 0; k < (line?.length ?? 0); k++) take(line?.[k]);
     }
   }

@@ -1,6 +1,6 @@
 "use client";
 
-import { type ReactNode, useId, useState } from "react";
+import { type ReactNode, useEffect, useId, useRef, useState } from "react";
 import { Button } from "./button";
 import { Field, type FieldText } from "./field";
 import { CONTROL_STYLE, describedBy } from "./field-style";
@@ -38,11 +38,11 @@ export function NumberField(props: NumberFieldProps) {
     if (!same) setTyped(show(value));
   }
   const reading = parseNumber(typed);
+  useUsable(reading.kind === "number" || reading.kind === "empty", onUsable);
 
   const take = (entry: string) => {
     setTyped(entry);
     const next = parseNumber(entry);
-    onUsable?.(next.kind === "number" || next.kind === "empty");
     if (next.kind === "number") onChange(next.value);
     if (next.kind === "empty") onChange(null);
   };
@@ -79,6 +79,17 @@ export function NumberField(props: NumberFieldProps) {
       </div>
     </Field>
   );
+}
+
+/** Tells about each change, and that a field which is gone is in nobody's way. */
+function useUsable(usable: boolean, onUsable: NumberFieldProps["onUsable"]): void {
+  const tell = useRef(onUsable);
+  tell.current = onUsable;
+  useEffect(() => {
+    if (usable) return;
+    tell.current?.(false);
+    return () => tell.current?.(true);
+  }, [usable]);
 }
 
 type CommaQuestionProps = Readonly<{

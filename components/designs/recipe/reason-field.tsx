@@ -10,15 +10,17 @@ type ReasonFieldProps = Readonly<{
   of: string;
   /** The same in words, for the label: "the state weights". */
   about: string;
+  /** Asked for already, so that it need not be opened first. */
+  startOpen?: boolean;
 }>;
 
 const LONGEST = 1000;
 
 /** A place for the written reason of a choice. Closed until it is wanted, open where something is written. */
-export function ReasonField({ of, about }: ReasonFieldProps) {
+export function ReasonField({ of, about, startOpen = false }: ReasonFieldProps) {
   const { form, change } = useRecipe();
   const text = form.reasons[of] ?? "";
-  const [opened, setOpened] = useState(text !== "");
+  const [opened, setOpened] = useState(startOpen || text !== "");
   if (!opened && text === "") {
     return (
       <div>
@@ -34,9 +36,7 @@ export function ReasonField({ of, about }: ReasonFieldProps) {
       rows={2}
       maxLength={LONGEST}
       value={text}
-      onChange={({ target }) =>
-        change(`/reasons/${of}`, (now) => ({ ...now, reasons: { ...now.reasons, [of]: target.value } }))
-      }
+      onChange={({ target }) => change(`/reasons/${of}`, (now) => ({ ...now, reasons: { ...now.reasons, [of]: target.value } }))}
     />
   );
 }

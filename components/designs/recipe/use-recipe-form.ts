@@ -6,12 +6,12 @@ import type { RecipeForm } from "./recipe-form";
 
 type State = { readonly history: History<RecipeForm>; readonly place: string | null };
 
-/** Changes a form at a place, a JSON pointer: keystrokes in one field are one step that can be undone. */
-export type ChangeRecipe = (place: string, update: (form: RecipeForm) => RecipeForm) => void;
+/** Changes a form at a place, a JSON pointer: keystrokes in one field are one step that can be undone. Null is a step of its own. */
+export type ChangeRecipe = (place: string | null, update: (form: RecipeForm) => RecipeForm) => void;
 
-function changed({ history, place }: State, at: string, next: RecipeForm): State {
+function changed({ history, place }: State, at: string | null, next: RecipeForm): State {
   if (Object.is(next, history.present)) return { history, place };
-  if (place === at) return { history: { ...history, present: next, future: [] }, place };
+  if (at !== null && place === at) return { history: { ...history, present: next, future: [] }, place };
   return { history: advance(history, next), place: at };
 }
 

@@ -1,0 +1,47 @@
+import type { Recipe } from "@/control/design/recipe";
+import type { PlantModel } from "@/control/plant/model";
+import type { Computation, DesignRevision, DesignSummary } from "@/lib/schemas/design";
+import type { ResponseCurves } from "@/lib/schemas/evidence";
+
+/** The plant revision that a recipe is for. */
+export type Ground = { readonly plantRevision: { readonly id: string; readonly number: number }; readonly model: PlantModel };
+
+/** What the page starts from, as the server keeps it. Without a design it is about to be made. */
+export type BenchStart = {
+  readonly plant: {
+    readonly id: string;
+    readonly name: string;
+    readonly newest: { readonly id: string; readonly number: number };
+    readonly archived: boolean;
+  };
+  readonly design: DesignSummary | null;
+  readonly revision: DesignRevision | null;
+  /** An older revision that the address asks for. */
+  readonly older: boolean;
+  readonly ground: Ground;
+  readonly recipe: Recipe;
+};
+
+/** What was solved last and is shown: stored with a revision, or computed for this page only. */
+export type Solved = {
+  readonly recipe: Recipe;
+  readonly ground: Ground;
+  readonly evidence: DesignRevision["evidence"];
+  readonly source:
+    | { readonly kind: "stored"; readonly revisionId: string; readonly number: number }
+    | { readonly kind: "computed"; readonly responses: readonly ResponseCurves[] };
+};
+
+export const asSolved = (ground: Ground, recipe: Recipe, { evidence, responses }: Computation): Solved => ({
+  recipe,
+  ground,
+  evidence,
+  source: { kind: "computed", responses },
+});
+
+export const asStored = ({ id, number, recipe, evidence, plantRevision, model }: DesignRevision): Solved => ({
+  recipe,
+  ground: { plantRevision, model },
+  evidence,
+  source: { kind: "stored", revisionId: id, number },
+});

@@ -1,0 +1,159 @@
+"use client";
+
+import { useMemo, useState } from "react";
+import { useSession } from "../../providers/session-provider";
+import { EmptyState } from "../../ui/empty-state";
+import { FormProblems } from "../../ui/form-problems";
+import { EvidencePanel } from "../evidence/evidence-panel";
+import { polesOfReport } from "../evidence/evidence-words";
+import { computed } from "../evidence/figures-reply";
+import { GainsSection } from "../gains/gains-section";
+import { RecipeContext, type RecipeEditing } from "../recipe/recipe-context";
+import { recipeFields } from "../recipe/recipe-fields";
+import { RecipeMatrices } from "../recipe/recipe-matrices";
+import { RecipePanel } from "../recipe/recipe-panel";
+import { RecipeReading } from "../recipe/recipe-reading";
+import { ResponsesPanel } from "../responses/responses-panel";
+import { RevisionsList } from "../revisions-list";
+import { ConflictDialog } from "../saving/conflict-dialog";
+import { SaveNewDialog } from "../saving/save-new-dialog";
+import { SaveRevisionDialog } from "../saving/save-revision-dialog";
+import { useSaving } from "../saving/use-saving";
+import { BenchHeading } from "./bench-heading";
+import { BenchNotices } from "./bench-notices";
+import type { BenchStart } from "./bench-types";
+import { cellProblems, problemAt, shownProblems } from "./recipe-problems-at";
+import { isUnsolvable } from "./recipe-refusal";
+import { SolveBar } from "./solve-bar";
+import { SolveRefusal } from "./solve-refusal";
+import { type Bench, useBench } from "./use-bench";
+import { useSolveKey } from "./use-solve-key";
+
+/** The page of a design: recipe, coupled responses and evidence side by side, the gains below. */
+export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
+  const mayWrite = useSession().role !== "reviewer";
+  const bench = useBench(start, mayWrite);
+  const saving = useSaving(bench, start.plant.id);
+  const [dialog, setDialog] = useState<"revision" | "new" | null>(null);
+  const { base, reading } = bench;
+  const mayEdit = mayWrite && !base.design?.archivedAt;
+  useSolveKey(() => void (bench.solving.busy || bench.solve()), mayEdit);
+  // A recipe that cannot be sent is not asked a name for: its fields say first what is wrong.
+  const open = (which: "revision" | "new") => (reading.recipe ? setDialog(which) : void bench.solve());
+  const suggested = base.design ? `${base.design.name}, next`.slice(0, 120) : "";
+  const { solved } = bench.solving;
+  return (
+    <>
+      <BenchHeading
+        {...{ bench, start, mayWrite, mayEdit }}
+        onSave={() => open(base.design ? "revision" : "new")}
+        onSaveAsNew={() => open("new")}
+      />
+      <BenchNotices {...{ bench, start, mayEdit }} />
+      {mayEdit ? <Editing bench={bench} /> : <Columns bench={bench} recipe={<Read bench={bench} />} />}
+      {solved ? <GainsSection solved={solved} plantName={start.plant.name} designName={base.design?.name ?? null} /> : null}
+      {base.design && base.revision ? <RevisionsList design={base.design} shownId={base.revision.id} /> : null}
+      <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={() => setDialog(null)} />
+      {dialog === "new" ? (
+        <SaveNewDialog {...{ bench, saving, suggested }} plantId={start.plant.id} open onClose={() => setDialog(null)} />
+      ) : null}
+      <ConflictDialog {...{ bench, saving }} onCopy={() => setDialog("new")} />
+    </>
+  );
+}
+
+/** Everything that is typed into stands below one context, anew for another plant revision. */
+function Editing({ bench }: Readonly<{ bench: Bench }>) {
+  const { form, ground, change, undo, redo, setUsable, solving, reading } = bench;
+  const { refusal } = solving;
+  const problems = useMemo(() => shownProblems(refusal, reading), [refusal, reading]);
+  const editing = useMemo(
+    (): RecipeEditing => ({
+      ...{ form, change, undo, redo, setUsable },
+      model: ground.model,
+      problemAt: (pointer) => problemAt(problems, pointer),
+      cellProblems: (pointer) => cellProblems(problems, pointer),
+    }),
+    [form, change, undo, redo, setUsable, ground, problems],
+  );
+  const poles = solving.solved && computed(solving.solved.evidence.poles);
+  const loopPoles = useMemo(() => (poles ? polesOfReport(poles) : null), [poles]);
+  return (
+    <RecipeContext value={editing}>
+      <div key={ground.plantRevision.id}>
+        <Columns
+          bench={bench}
+          recipe={
+            <>
+              <SolveBar bench={bench} />
+              <Refused bench={bench} />
+              <RecipePanel loopPoles={loopPoles} />
+            </>
+          }
+        />
+        <RecipeMatrices />
+      </div>
+    </RecipeContext>
+  );
+}
+
+/** Why the last try was refused: fields to mend, an assumption that does not hold, or no connection. */
+function Refused({ bench: { solving, form, ground, reading } }: Readonly<{ bench: Bench }>) {
+  const { refusal, attempt, problems } = solving;
+  if (!refusal) return null;
+  if (isUnsolvable(refusal)) return <SolveRefusal problem={refusal} model={ground.model} />;
+  if (refusal.code !== "invalid") return <FormProblems {...{ attempt, problems }} title="This could not be solved yet." />;
+  const fields = recipeFields(form, ground.model);
+  const shown = shownProblems(refusal, reading).map(({ pointer, message }) => {
+    const field = Object.keys(fields).find(
+      (known) => `/recipe${pointer}` === known || `/recipe${pointer}`.startsWith(`${known}/`),
+    );
+    return { fieldId: field && fields[field], message };
+  });
+  return <FormProblems attempt={attempt} problems={shown} title="The recipe is not complete yet." />;
+}
+
+function Read({ bench: { base } }: Readonly<{ bench: Bench }>) {
+  return (
+    <>
+      <h2 className="mb-2">Recipe</h2>
+      <RecipeReading recipe={base.recipe} model={base.ground.model} />
+    </>
+  );
+}
+
+type ColumnsProps = Readonly<{ bench: Bench; recipe: React.ReactNode }>;
+
+/** Three columns where there is room, one below the other on a tablet and on paper. */
+function Columns({ bench: { solving, base, stale }, recipe }: ColumnsProps) {
+  const { solved } = solving;
+  const ghostOf = solved?.source.kind === "computed" ? (base.revision?.id ?? null) : null;
+  return (
+    <div className="mb-8 grid gap-x-6 gap-y-8 xl:grid-cols-[20rem_minmax(0,1fr)_20rem]">
+      <div className="flex min-w-0 flex-col gap-4">{recipe}</div>
+      <section aria-labelledby="responses-heading" className="min-w-0 xl:border-x xl:border-rule xl:px-6">
+        <h2 id="responses-heading" className="mb-1">
+          Coupled response
+        </h2>
+        <p className="mb-3 text-sm text-soft">columns: what is commanded · rows: what the machine does</p>
+        {stale ? <p className="mb-3 text-sm">Drawn for the recipe as it was last solved.</p> : null}
+        {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved />}
+      </section>
+      <section aria-labelledby="evidence-heading" className="min-w-0">
+        <h2 id="evidence-heading" className="mb-3">
+          Evidence
+        </h2>
+        {solved ? <EvidencePanel solved={solved} /> : <p className="text-soft">It appears with the first solution.</p>}
+      </section>
+    </div>
+  );
+}
+
+function NothingSolved() {
+  return (
+    <EmptyState title="Not solved yet">
+      The recipe beside this is ready as it stands: it starts from the plant's own largest acceptable deviations and limits. Press
+      Solve, or Ctrl+Enter, to see what every axis does when one is commanded.
+    </EmptyState>
+  );
+}

@@ -1,0 +1,117 @@
+"use client";
+
+import { useCallback, useMemo, useState } from "react";
+import type { PlantModel } from "@/control/plant/model";
+import { fetchPlantRevision } from "@/lib/client/plants";
+import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
+import { useSession } from "../../providers/session-provider";
+import { carryRecipe } from "../recipe/carry-recipe";
+import { readForm } from "../recipe/read-form";
+import { recipeFields } from "../recipe/recipe-fields";
+import { formOf } from "../recipe/recipe-form";
+import { useRecipeForm } from "../recipe/use-recipe-form";
+import {
+  type Base,
+  baseOf,
+  draftSubject,
+  groundOf,
+  isDirty,
+  isStale,
+  startedFrom,
+  storedBase,
+  unsavedOf,
+  withDesign,
+} from "./bench-base";
+import { asStored, type BenchStart, type Ground } from "./bench-types";
+import { draftKey, fitsPlant, type RecipeDraft } from "./draft-store";
+import { useKeptDraft } from "./use-kept-draft";
+import { useSolving } from "./use-solving";
+import { useUnread, withUnread } from "./use-unread";
+
+export type Bench = ReturnType<typeof useBench>;
+
+/** Everything the page of a design holds: what is stored, what is being written, what was solved last. */
+export function useBench(start: BenchStart, mayWrite: boolean) {
+  const { teamId, userId } = useSession();
+  const [base, setBase] = useState<Base>(() => baseOf(start));
+  const [ground, setGround] = useState(start.ground);
+  const [found, setFound] = useState<RecipeDraft | null>(null);
+  const [firstForm] = useState(() => formOf(start.recipe, start.ground.model));
+  const editing = useRecipeForm(firstForm);
+  const { form, reset } = editing;
+  const { unread, setUsable } = useUnread();
+  const reading = useMemo(() => withUnread(readForm(form, ground.model), unread), [form, ground, unread]);
+  const dirty = useMemo(() => isDirty(base, ground, reading), [base, ground, reading]);
+  const solving = useSolving(recipeFields(form, ground.model), start.revision && asStored(start.revision));
+  const { solved, setSolved, solve, clear } = solving;
+  const stale = useMemo(() => isStale(solved, ground, reading), [solved, ground, reading]);
+  const unsaved = useMemo(
+    () => (dirty && mayWrite ? unsavedOf(form, ground, base) : null),
+    [dirty, mayWrite, form, ground, base],
+  );
+  const plantRevision = usePlantRevision(start.plant.id);
+
+  const takeUp = async (draft: RecipeDraft) => {
+    const same = draft.plantRevisionId === start.ground.plantRevision.id;
+    const its = same ? start.ground : await plantRevision(draft.plantRevisionId).catch(() => null);
+    if (!its || !fitsPlant(draft.form, its.model)) return;
+    setGround(its);
+    reset(draft.form);
+    setFound(draft);
+    setBase((now) => ({ ...now, from: draft.base ?? now.from }));
+  };
+  const key = draftKey(teamId, userId, draftSubject(start));
+  const kept = useKeptDraft({ key, unsaved, onFound: (draft) => void (mayWrite && takeUp(draft)) });
+
+  return {
+    ...editing,
+    ...kept,
+    ...{ base, ground, reading, dirty, stale, solving, found, setUsable },
+    solve: () => solve(reading, ground),
+    /** What is stored now is where the next edit starts from. */
+    settle: (design: DesignSummary, revision: DesignRevision) => {
+      setBase(storedBase(design, revision));
+      setGround(groundOf(revision));
+      setFound(null);
+      setSolved(asStored(revision));
+    },
+    /** Drops what is not saved and shows a stored revision instead. */
+    take: (design: DesignSummary, revision: DesignRevision) => {
+      setBase(storedBase(design, revision));
+      setGround(groundOf(revision));
+      reset(formOf(revision.recipe, revision.model as PlantModel));
+      setFound(null);
+      setSolved(asStored(revision));
+      clear();
+    },
+    setDesign: (design: DesignSummary) => setBase((now) => withDesign(now, design)),
+    discard: () => {
+      setBase((now) => ({ ...now, from: startedFrom(now.design) }));
+      setGround(base.ground);
+      reset(formOf(base.recipe, base.ground.model));
+      setFound(null);
+      clear();
+    },
+    dismissFound: () => setFound(null),
+    /** The recipe on the newest revision of its plant, solved at once; saving it is another step. */
+    carryOver: async () => {
+      const newest = await plantRevision(start.plant.newest.id);
+      const carried = formOf(carryRecipe(reading.recipe ?? base.recipe, ground.model, newest.model), newest.model);
+      setGround(newest);
+      reset(carried);
+      await solve(readForm(carried, newest.model), newest);
+    },
+  };
+}
+
+/** @throws RequestProblem */
+function usePlantRevision(plantId: string) {
+  const { resume } = useSession();
+  return useCallback(
+    async (revisionId: string): Promise<Ground> => {
+      const { id, number, model } = await resume(() => fetchPlantRevision(plantId, revisionId));
+      return { plantRevision: { id, number }, model: model as PlantModel };
+    },
+    [resume, plantId],
+  );
+}

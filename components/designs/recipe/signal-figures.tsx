@@ -1,0 +1,115 @@
+"use client";
+
+import { useState } from "react";
+import { AxisBar } from "../../plots/axis-bar";
+import { Button } from "../../ui/button";
+import { ReasonField } from "./reason-field";
+import { useRecipe } from "./recipe-context";
+import type { RecipeForm } from "./recipe-form";
+import { RecipeNumber } from "./recipe-number";
+
+type Signal = { readonly name: string; readonly unit: string; readonly axis: number | null };
+
+type SignalFiguresProps = Readonly<{
+  legend: string;
+  /** Read out with each field: "Largest deviation of". */
+  what: string;
+  hint?: string;
+  signals: readonly Signal[];
+  values: readonly (number | null)[];
+  /** Of the list in the recipe. */
+  pointer: string;
+  write: (form: RecipeForm, index: number, value: number | null) => RecipeForm;
+  unit?: (signal: Signal) => string;
+  /** Key of the reason beside a signal, without its place; none where a reason per signal makes no sense. */
+  reasonOf?: "state" | "input";
+  /** Where a signal's own figure lies deeper than its place: the diagonal of a matrix. */
+  place?: (index: number) => string;
+}>;
+
+/** One figure per signal, each with its axis, its unit and, where wanted, its reason. */
+export function SignalFigures({
+  legend,
+  what,
+  hint,
+  signals,
+  values,
+  pointer,
+  write,
+  unit,
+  reasonOf,
+  place = String,
+}: SignalFiguresProps) {
+  return (
+    <fieldset className="min-w-0">
+      <legend className="text-table font-semibold">{legend}</legend>
+      {hint ? <p className="text-sm text-soft">{hint}</p> : null}
+      <ul className="mt-1 divide-y divide-rule border-y border-rule">
+        {signals.map((signal, index) => (
+          <li key={signal.name} className="py-1">
+            <SignalFigure
+              {...{ signal, index, what, reasonOf }}
+              value={values[index] ?? null}
+              pointer={`${pointer}/${place(index)}`}
+              unit={unit ? unit(signal) : signal.unit}
+              write={(form, value) => write(form, index, value)}
+            />
+          </li>
+        ))}
+      </ul>
+    </fieldset>
+  );
+}
+
+type SignalFigureProps = Readonly<{
+  signal: Signal;
+  index: number;
+  what: string;
+  value: number | null;
+  pointer: string;
+  unit: string;
+  reasonOf: "state" | "input" | undefined;
+  write: (form: RecipeForm, value: number | null) => RecipeForm;
+}>;
+
+function SignalFigure({ signal, index, what, value, pointer, unit, reasonOf, write }: SignalFigureProps) {
+  const { form } = useRecipe();
+  const reason = reasonOf && `${reasonOf}:${index}`;
+  const [asked, setAsked] = useState(false);
+  const open = reason !== undefined && (asked || Boolean(form.reasons[reason]));
+  return (
+    <>
+      <div className="grid grid-cols-[minmax(3.5rem,1fr)_minmax(0,10.5rem)_auto] items-start gap-x-2">
+        <span className="flex min-h-9 min-w-0 items-center gap-2 text-table [overflow-wrap:anywhere]">
+          <AxisBar axis={signal.axis} />
+          {signal.name}
+        </span>
+        <RecipeNumber
+          pointer={pointer}
+          value={value}
+          unit={unit}
+          hideLabel
+          label={`${what} ${signal.name}, ${unit}`}
+          write={write}
+        />
+        {reason ? (
+          <Button
+            size="small"
+            tone="quiet"
+            className="mt-1 font-normal text-soft"
+            aria-expanded={open}
+            aria-label={`Reason for ${signal.name}`}
+            onClick={() => setAsked(true)}
+          >
+            why
+          </Button>
+        ) : null}
+      </div>
+      {open && reason ? (
+        <div className="pb-1">
+          <ReasonField of={reason} about={signal.name} startOpen />
+        </div>
+      ) : null}
+    </>
+  );
+}
