@@ -89,6 +89,8 @@ export const ResponseFigures = z.strictObject({
   summary: z.strictObject({ fullState: Summary, observer: Summary.nullable() }),
 });
 
+export type ResponseFigures = z.infer<typeof ResponseFigures>;
+
 export const EvidenceReply = z.strictObject({
   methodVersion: z.string(),
   gains: part(GainEvidence),
