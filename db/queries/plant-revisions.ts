@@ -1,5 +1,5 @@
 import "server-only";
-import { and, desc, eq, lt } from "drizzle-orm";
+import { and, desc, eq, inArray, lt } from "drizzle-orm";
 import type { PlantContent } from "@/control/plant/content";
 import type { PlantModel } from "@/control/plant/model";
 import type { Db } from "../client";
@@ -37,23 +37,23 @@ export async function listPlantRevisions(db: Db, { teamId, plantId }: PlantKey, 
 }
 export type PlantRevisionEntryRow = Awaited<ReturnType<typeof listPlantRevisions>>[number];
 
-export async function findPlantRevision(db: Db, key: { readonly teamId: string; readonly revisionId: string }) {
-  const [found] = await db
-    .select({
-      ...entry,
-      content: plantRevisions.content,
-      model: plantRevisions.model,
-      plantArchivedAt: plants.archivedAt,
-      plantVersion: plants.version,
-      newestNumber: plants.currentRevision,
-    })
+/** Of one team, in no order; ids that are not there, or another team's, are missing in what comes back. */
+export async function findPlantRevisions(db: Db, key: { readonly teamId: string; readonly revisionIds: readonly string[] }) {
+  return db
+    .select({ ...entry, content: plantRevisions.content, model: plantRevisions.model })
     .from(plantRevisions)
     .innerJoin(plants, ofPlant)
     .leftJoin(users, eq(users.id, plantRevisions.createdBy))
-    .where(and(eq(plantRevisions.teamId, key.teamId), eq(plantRevisions.id, key.revisionId)));
-  return found;
+    .where(and(eq(plantRevisions.teamId, key.teamId), inArray(plantRevisions.id, [...key.revisionIds])));
 }
-export type PlantRevisionRow = NonNullable<Awaited<ReturnType<typeof findPlantRevision>>>;
+export type PlantRevisionRow = Awaited<ReturnType<typeof findPlantRevisions>>[number];
+
+export async function findPlantRevision(
+  db: Db,
+  { teamId, revisionId }: { readonly teamId: string; readonly revisionId: string },
+): Promise<PlantRevisionRow | undefined> {
+  return (await findPlantRevisions(db, { teamId, revisionIds: [revisionId] })).at(0);
+}
 
 export async function insertPlantRevision(
   db: Db,

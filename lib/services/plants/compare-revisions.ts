@@ -1,7 +1,7 @@
 import "server-only";
 import { inTransaction } from "@/db/client";
 import { designsOnOlderRevisions } from "@/db/queries/designs";
-import { findPlantRevision } from "@/db/queries/plant-revisions";
+import { findPlantRevisions } from "@/db/queries/plant-revisions";
 import { NotFound } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
 import type { PlantDifference } from "@/lib/schemas/plant";
@@ -18,10 +18,8 @@ export async function comparePlantRevisions(
   allow(ctx, "plant:read");
   const { teamId } = ctx;
   return inTransaction(ctx, async (tx) => {
-    const [from, to] = [
-      await findPlantRevision(tx, { teamId, revisionId: range.from }),
-      await findPlantRevision(tx, { teamId, revisionId: range.to }),
-    ];
+    const found = await findPlantRevisions(tx, { teamId, revisionIds: [range.from, range.to] });
+    const [from, to] = [range.from, range.to].map((wanted) => found.find(({ id }) => id === wanted));
     if (from?.plantId !== plantId || to?.plantId !== plantId) throw new NotFound("Plant revision");
     return {
       from: toRevisionEntry(from),

@@ -1,0 +1,104 @@
+import pg from "pg";
+import { afterAll, beforeAll, expect, test } from "vitest";
+import { closePool } from "@/db/client";
+import { closeNumericPool } from "@/lib/jobs/run-numeric";
+import type { DesignSummary } from "@/lib/schemas/design";
+import type { PlantSummary } from "@/lib/schemas/plant";
+import { type Api, member } from "../helpers/api";
+import { twoCarriages } from "../helpers/plant-content";
+import { byWeights, observers } from "../helpers/recipes";
+import { testDatabase } from "../helpers/test-database";
+
+await testDatabase();
+afterAll(async () => {
+  await closeNumericPool();
+  await closePool();
+});
+
+const TRANSACTION = /^\s*(begin|commit|rollback|savepoint|release|select set_config)/i;
+
+/** What this process sends to the database while `act` runs, but for the frames of transactions. */
+async function statementsOf(act: () => Promise<unknown>): Promise<string[]> {
+  const prototype = pg.Client.prototype as unknown as { query: (...args: unknown[]) => unknown };
+  const original = prototype.query;
+  const sent: string[] = [];
+  prototype.query = function (this: unknown, ...args: unknown[]) {
+    const [first] = args;
+    const text = typeof first === "string" ? first : String((first as { text?: string }).text);
+    if (!TRANSACTION.test(text)) sent.push(text);
+    return original.apply(this, args);
+  };
+  try {
+    await act();
+    return sent;
+  } finally {
+    prototype.query = original;
+  }
+}
+
+let api: Api;
+let paths: string[];
+beforeAll(async () => {
+  ({ api } = await member());
+  const plants: PlantSummary[] = [];
+  for (let index = 0; index < 12; index++) {
+    plants.push(await api.post<PlantSummary>("/api/v1/plants", { name: `Plant ${index}`, content: twoCarriages() }));
+  }
+  const [{ id: plantId, currentRevision }] = plants;
+  const made: DesignSummary[] = [];
+  for (let index = 0; index < 6; index++) {
+    const recipe = byWeights({ observer: observers.noise });
+    const body = { name: `Design ${index}`, plantRevisionId: currentRevision.id, recipe };
+    made.push(await api.post<DesignSummary>(`/api/v1/plants/${plantId}/designs`, body));
+  }
+  const revisions = made.map((one) => one.currentRevision.id);
+  const compared = { plantId, title: "Both", designRevisionIds: revisions };
+  const { id: comparisonId } = await api.post<{ id: string }>("/api/v1/comparisons", compared);
+  const mass = { name: "m", unit: "kg", lowest: 5, highest: 40, suggested: 12, help: "" };
+  const content = { plant: twoCarriages(), recipe: byWeights(), openParameters: [mass] };
+  const { id: templateId } = await api.post<{ id: string }>("/api/v1/templates", { name: "Two carriages", content });
+  await api.post(`/api/v1/plants/${plantId}/revisions`, { content: twoCarriages({ source: "again" }) }, 1);
+  const plant = await api.get<PlantSummary>(`/api/v1/plants/${plantId}`);
+  paths = [
+    "/plants",
+    "/plants?search=plant&sort=name",
+    `/plants/${plantId}`,
+    `/plants/${plantId}/revisions`,
+    `/plants/${plantId}/revisions/${currentRevision.id}`,
+    `/plants/${plantId}/difference?from=${currentRevision.id}&to=${plant.currentRevision.id}`,
+    `/plants/${plantId}/designs`,
+    `/designs/${made[0].id}`,
+    `/designs/${made[0].id}/revisions`,
+    `/design-revisions/${revisions[0]}`,
+    `/design-revisions/${revisions[0]}/responses`,
+    `/design-revisions/${revisions[0]}/gains`,
+    "/comparisons",
+    `/comparisons/${comparisonId}`,
+    "/templates",
+    `/templates/${templateId}`,
+    "/team",
+    "/team/members",
+    "/team/audit",
+    "/team/invitations",
+    "/account",
+    "/account/tokens",
+  ];
+});
+
+test("a read of a list or of one thing sends at most five statements, who asks and what it costs included", async () => {
+  for (const path of paths) {
+    const sent = await statementsOf(async () => {
+      const response = await api.ask("GET", `/api/v1${path}`);
+      expect([path, response.status]).toEqual([path, 200]);
+    });
+    expect(sent.length, `${path}:\n${sent.join("\n")}`).toBeLessThanOrEqual(5);
+    expect(sent.length, path).toBeGreaterThanOrEqual(3);
+  }
+});
+
+test("a reply of a list or of one thing stays below one megabyte", async () => {
+  for (const path of paths) {
+    const text = await (await api.ask("GET", `/api/v1${path}`)).text();
+    expect(text.length, path).toBeLessThan(1_000_000);
+  }
+});
