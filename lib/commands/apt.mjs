@@ -15,10 +15,20 @@ export const canInstall = () => isRoot && onPath("apt-get") !== undefined;
  */
 export function install(packages) {
   console.log(`Installing ${packages.join(", ")} from this system's packages …`);
+  let complaint = "";
   const apt = (/** @type {string[]} */ ...args) => {
     const env = { ...process.env, DEBIAN_FRONTEND: "noninteractive" };
-    return spawnSync("apt-get", ["-qq", ...args], { env, stdio: ["ignore", "ignore", "inherit"], timeout: 600_000 }).status === 0;
+    const { status, stderr } = spawnSync("apt-get", ["-qq", ...args], {
+      env,
+      encoding: "utf8",
+      stdio: ["ignore", "ignore", "pipe"],
+      timeout: 900_000,
+    });
+    complaint = stderr;
+    return status === 0;
   };
   const wanted = ["install", "-y", "--no-install-recommends", ...packages];
-  return apt(...wanted) || (apt("update") && apt(...wanted));
+  const done = apt(...wanted) || (apt("update") && apt(...wanted));
+  if (!done) console.error(complaint);
+  return done;
 }
