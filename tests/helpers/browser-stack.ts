@@ -28,6 +28,8 @@ export default async function browserStack() {
       MAILBOX_URL: mailbox.pageUrl,
       BASE_URL: address,
       NEXTAUTH_URL: address,
+      // Each test says which address it comes from, so that limits by address which one test reaches do not reach another.
+      TRUSTED_PROXIES: "1",
     });
     const service = { ...urls, address, secret: "a-secret-for-browser-tests-0123456789abcdef", demo: true };
     await loadDemoData(serviceEnvironment(service));

@@ -1,4 +1,5 @@
 import { type BrowserContext, test as base, expect, type Page } from "@playwright/test";
+import { newAddress } from "./browser-requests";
 
 type Watch = {
   /** What a test provokes on purpose, such as a 401: `test.use({ expectedProblems: [/status of 401/] })`. */
@@ -10,6 +11,7 @@ type Watch = {
 
 /** Puts everything a clean page never says into `problems`. */
 async function watch(context: BrowserContext, problems: string[]) {
+  await context.setExtraHTTPHeaders(newAddress());
   await context.exposeBinding("gainwrightReportViolation", (_source, text: string) => problems.push(`content policy: ${text}`));
   await context.addInitScript(() => {
     document.addEventListener("securitypolicyviolation", ({ effectiveDirective, blockedURI, sourceFile, lineNumber }) => {
