@@ -32,6 +32,12 @@ export class NumericalError extends Error {
     super(code);
     this.name = "NumericalError";
     this.code = code;
-    this.data = data;
+    this.data = Object.fromEntries(Object.entries(data).filter(([, fact]) => holdsFinite(fact)));
   }
+}
+
+/** Facts travel as JSON, which has no NaN and no infinity: a fact that holds one anywhere is left out as a whole. */
+function holdsFinite(fact: unknown): boolean {
+  if (typeof fact === "number") return Number.isFinite(fact);
+  return typeof fact !== "object" || fact === null || Object.values(fact).every(holdsFinite);
 }

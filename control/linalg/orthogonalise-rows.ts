@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { largestEntry } from "./flat";
-import { exponentOf, timesPowerOfTwo } from "./power-of-two";
+import { exponentOf, powerOfTwo, timesPowerOfTwo } from "./power-of-two";
 
 /** Rows of complex numbers; `im` null when all are real. */
 export type Rows = { readonly re: Float64Array[]; readonly im: Float64Array[] | null };
@@ -11,6 +11,10 @@ export type OrthogonalRows = { readonly values: number[]; readonly rows: Rows; r
 const SWEEP_LIMIT = 60;
 /** Products this small beside a row's square are remains of cancellation whose own square would vanish. */
 const NEGLIGIBLE = 1e-90;
+/** The largest entry is brought here, as high as squares allow, so that rows 10^280 times smaller still have theirs in full. */
+const HEADROOM = 490;
+/** A row whose square is below has too few digits left in its products to turn by: it stays as it is. */
+const VANISHED = powerOfTwo(-940);
 
 /**
  * One-sided Jacobi: turns the rows of M until they are orthogonal, which is the singular value decomposition.
@@ -18,14 +22,14 @@ const NEGLIGIBLE = 1e-90;
  *
  * Shapes    rows r of c entries, r ≤ c for full information → values r, turn r×r
  * Throws    no-convergence after 60 sweeps (six to ten are usual)
- * Accuracy  small singular values of a matrix with rows of unlike size keep relative accuracy
+ * Accuracy  small singular values of a matrix with rows of unlike size keep relative accuracy, down to 10^-280 of the largest
  * Source    Demmel & Veselic, Jacobi's method is more accurate than QR, SIAM J. Matrix Anal. Appl. 13 (1992) 1204-1245
  */
 export function orthogonaliseRows(given: Rows): OrthogonalRows {
   const count = given.re.length;
   const length = given.re[0]?.length ?? 0;
   const largest = Math.max(0, ...[...given.re, ...(given.im ?? [])].map(largestEntry));
-  const shift = largest === 0 ? 0 : -exponentOf(largest);
+  const shift = largest === 0 ? 0 : HEADROOM - exponentOf(largest);
   const rows = {
     re: given.re.map((row) => row.map((x) => timesPowerOfTwo(x, shift))),
     im: given.im ? given.im.map((row) => row.map((x) => timesPowerOfTwo(x, shift))) : null,
@@ -60,9 +64,9 @@ function turnPair(rows: Rows, turn: Rows, i: number, j: number, tolerance: numbe
   const b = squareOf(rows, j);
   if (a === 0 && b === 0) return false;
   const [re, im] = innerProduct(rows, i, j);
-  const size = Math.sqrt(re * re + im * im);
+  const size = im === 0 ? Math.abs(re) : modulus(re, im);
   const bound = tolerance * Math.sqrt(a) * Math.sqrt(b);
-  if (size <= bound || size <= NEGLIGIBLE * Math.max(a, b)) {
+  if (size <= bound || size <= NEGLIGIBLE * Math.max(a, b) || Math.min(a, b) < VANISHED) {
     if (a >= b) return false;
     for (const part of [rows, turn]) exchange(part, i, j);
     return false;
@@ -74,6 +78,14 @@ function turnPair(rows: Rows, turn: Rows, i: number, j: number, tolerance: numbe
   for (const part of [rows, turn]) rotate(part, i, j, cos, sin, re / size, im / size);
   if (a < b) for (const part of [rows, turn]) exchange(part, i, j);
   return true;
+}
+
+/** Squares of products as large or small as these may be leave the range of numbers. */
+function modulus(re: number, im: number): number {
+  const exponent = exponentOf(Math.max(Math.abs(re), Math.abs(im)));
+  const x = timesPowerOfTwo(re, -exponent);
+  const y = timesPowerOfTwo(im, -exponent);
+  return timesPowerOfTwo(Math.sqrt(x * x + y * y), exponent);
 }
 
 /** Sum of row i times conjugated row j. */

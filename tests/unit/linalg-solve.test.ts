@@ -164,6 +164,24 @@ describe("singular values", () => {
     }
   });
 
+  test("converge, with vectors of unit length, for entries from the smallest to the largest numbers there are", () => {
+    const entry = (exponent: number) => (random() < 0.2 ? 0 : (2 * random() - 1) * 10 ** Math.min(307, Math.max(-320, exponent)));
+    for (let round = 0; round < 3_000; round++) {
+      const [r, c] = [1 + Math.floor(6 * random()), 1 + Math.floor(6 * random())];
+      const [base, spread] = [[300, 307, -300, 0][round % 4], [0, 20, 150, 600][Math.floor(4 * random())]];
+      const sizes = Array.from({ length: r }, () => base + spread * (random() - 0.5));
+      const shifts = Array.from({ length: c }, () => spread * (random() - 0.5));
+      const filled = () => new Matrix(sizes.map((size) => shifts.map((shift) => entry(size + shift))));
+      const re = filled();
+      // Every other one has two equal rows.
+      if (round % 2 === 1 && r > 1) re.setRow(1, re.getRow(0));
+      const { value, right, left } = smallestSingularComplex(re, round % 3 === 0 ? Matrix.zeros(r, c) : filled());
+      const squares = [right, left].map(({ re, im }) => re.reduce((sum, x, k) => sum + x * x + im[k] * im[k], 0));
+      for (const square of squares) expect(Math.abs(square - 1), `round ${round}`).toBeLessThan(1e-13);
+      expect(value).toBeGreaterThanOrEqual(0);
+    }
+  });
+
   test("a singular matrix gets a unit vector of its null space", () => {
     const { value, right } = smallestSingularComplex(
       new Matrix([

@@ -36,12 +36,14 @@ test.each([
   expect(Problem.parse(problem)).toEqual(problem);
 });
 
-test("a refusal of the core is answered 422 with its code and its facts, none of them infinite", () => {
-  const problem = mapped(
-    new NumericalError("not-stabilizable", { pole: { re: 1, im: 0 }, state: 2, distance: Number.NaN, left: undefined }),
-  );
+test("a refusal of the core is answered 422 with its code and its facts, without those that are no finite numbers", () => {
+  const nested = { re: 0, im: Number.NEGATIVE_INFINITY };
+  const facts = { pole: { re: 1, im: 0 }, state: 2, distance: Number.NaN, left: undefined, nested, limits: [1, Number.NaN] };
+  const error = new NumericalError("not-stabilizable", facts);
+  expect(error.data).toEqual({ pole: { re: 1, im: 0 }, state: 2, left: undefined });
+  const problem = mapped(error);
   expect(problem).toMatchObject({ code: "not-stabilizable", status: 422, type: "/docs/problems#not-stabilizable" });
-  expect(problem.data).toEqual({ pole: { re: 1, im: 0 }, state: 2, distance: null });
+  expect(problem.data).toStrictEqual({ pole: { re: 1, im: 0 }, state: 2 });
   expect(problem.detail).toBe(PROBLEMS["not-stabilizable"].meaning);
 });
 
