@@ -3,11 +3,11 @@
 import type { FormEvent } from "react";
 import { joinByInvitation } from "@/lib/client/account";
 import { signIn } from "@/lib/client/session";
-import { PASSWORD_LENGTH } from "@/lib/schemas/password-length";
 import { Button } from "../ui/button";
 import { FormProblems } from "../ui/form-problems";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { PasswordField } from "./password-field";
 
 const FIELDS = { "/name": "join-name", "/password": "join-password" };
 
@@ -30,13 +30,11 @@ export function JoinForm({ secret, email }: Readonly<{ secret: string; email: st
       <FormProblems title="You have not joined yet." {...{ attempt, problems }} />
       <TextField label="E-mail address" name="email" type="email" autoComplete="username" value={email} readOnly />
       <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />
-      <TextField
+      <PasswordField
         id={FIELDS["/password"]}
         name="password"
-        type="password"
         label="Password"
         autoComplete="new-password"
-        hint={`At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better.`}
         problem={at("/password")}
       />
       <div>

@@ -1,34 +1,56 @@
 "use client";
 
-import type { FormEvent } from "react";
+import { type FormEvent, useState } from "react";
 import { resetPassword } from "@/lib/client/account";
-import { PASSWORD_LENGTH } from "@/lib/schemas/password-length";
 import { Button } from "../ui/button";
 import { FormProblems } from "../ui/form-problems";
-import { TextField } from "../ui/text-field";
+import { LinkButton } from "../ui/link-button";
+import { Notice } from "../ui/notice";
 import { useSubmit } from "../ui/use-submit";
+import { PasswordField } from "./password-field";
 
 const FIELDS = { "/password": "new-password" };
 
 export function NewPasswordForm({ secret }: Readonly<{ secret: string }>) {
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const [changed, setChanged] = useState(false);
+  const { busy, attempt, problems, refusal, at, run } = useSubmit(FIELDS);
 
   async function submit(event: FormEvent<HTMLFormElement>) {
     event.preventDefault();
     const password = String(new FormData(event.currentTarget).get("password"));
-    if (await run(() => resetPassword(secret, password))) window.location.assign("/sign-in");
+    if (await run(() => resetPassword(secret, password))) setChanged(true);
   }
 
+  if (changed) {
+    return (
+      <Notice
+        kind="met"
+        title="Your password is changed."
+        role="status"
+        action={
+          <LinkButton tone="primary" href="/sign-in">
+            Sign in
+          </LinkButton>
+        }
+      >
+        All your sessions were ended: sign in with the new one.
+      </Notice>
+    );
+  }
   return (
     <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
       <FormProblems title="The password was not changed." {...{ attempt, problems }} />
-      <TextField
+      {refusal?.at("/secret").length ? (
+        <div>
+          <LinkButton href="/forgotten-password">Ask for a new link</LinkButton>
+        </div>
+      ) : null}
+      <PasswordField
         id={FIELDS["/password"]}
         name="password"
-        type="password"
         label="New password"
         autoComplete="new-password"
-        hint={`At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better. You are signed out everywhere.`}
+        hint="You are signed out everywhere."
         problem={at("/password")}
       />
       <div>

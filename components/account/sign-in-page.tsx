@@ -1,11 +1,11 @@
 "use client";
 
 import Link from "next/link";
+import { type DemoAccount, DemoDoor } from "../front-door/demo-door";
 import { Notice } from "../ui/notice";
 import { SignInForm } from "./sign-in-form";
 import { VisitorPage } from "./visitor-page";
 
-export type DemoAccount = { readonly email: string; readonly role: string };
 type SignInPageProps = Readonly<{
   next: string;
   demo: { readonly accounts: readonly DemoAccount[]; readonly password: string } | null;
@@ -27,10 +27,17 @@ export function SignInPage({ next, demo }: SignInPageProps) {
             <p className="mt-1">
               Everybody knows these accounts; keep nothing here that matters. Password for all: <code>{demo.password}</code>
             </p>
-            <ul className="mt-1">
-              {demo.accounts.map(({ email, role }) => (
-                <li key={email}>
-                  {role}: <code>{email}</code>
+            <ul className="mt-2 space-y-1.5">
+              {demo.accounts.map((account) => (
+                <li key={account.email} className="flex flex-wrap items-center justify-between gap-x-3 gap-y-1">
+                  <code className="text-table break-all">{account.email}</code>
+                  <DemoDoor
+                    account={account}
+                    password={demo.password}
+                    label={`Enter as ${account.role}`}
+                    next={next}
+                    size="small"
+                  />
                 </li>
               ))}
             </ul>

@@ -3,17 +3,17 @@
 import type { FormEvent } from "react";
 import { signUp } from "@/lib/client/account";
 import { signIn } from "@/lib/client/session";
-import { PASSWORD_LENGTH } from "@/lib/schemas/password-length";
 import { Button } from "../ui/button";
 import { FormProblems } from "../ui/form-problems";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { PasswordField } from "./password-field";
 
 const FIELDS = {
+  "/teamName": "sign-up-team",
   "/name": "sign-up-name",
   "/email": "sign-up-email",
   "/password": "sign-up-password",
-  "/teamName": "sign-up-team",
 };
 
 export function SignUpForm() {
@@ -50,13 +50,12 @@ export function SignUpForm() {
         autoComplete="username"
         problem={at("/email")}
       />
-      <TextField
+      <PasswordField
         id={FIELDS["/password"]}
         name="password"
-        type="password"
         label="Password"
         autoComplete="new-password"
-        hint={`At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better. Several words do well.`}
+        hint="Several words do well."
         problem={at("/password")}
       />
       <div>

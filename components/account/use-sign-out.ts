@@ -12,9 +12,8 @@ export function useSignOut(next = "/sign-in") {
       await signOut();
       window.location.assign(next);
     } catch (error) {
-      // Fetch says TypeError where nothing answered.
-      if (!(error instanceof RequestProblem || error instanceof TypeError)) throw error;
-      toast({ kind: "unmet", text: "You are still signed in: the service did not answer. Try again." });
+      if (!(error instanceof RequestProblem)) throw error;
+      toast({ kind: "unmet", text: `You are still signed in. ${error.message}` });
     }
   };
 }

@@ -27,10 +27,9 @@ export function DemoDoor({ account, password, label, next = "/plants", tone, siz
       await signIn(account.email, password);
       window.location.assign(next);
     } catch (error) {
-      // Fetch says TypeError where nothing answered.
-      if (!(error instanceof RequestProblem || error instanceof TypeError)) throw error;
+      if (!(error instanceof RequestProblem)) throw error;
       setBusy(false);
-      toast({ kind: "unmet", text: error instanceof RequestProblem ? error.message : "The service did not answer. Try again." });
+      toast({ kind: "unmet", text: error.message });
     }
   };
   return (

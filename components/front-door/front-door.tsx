@@ -12,8 +12,8 @@ export function FrontDoor({ entrance, sheet }: Readonly<{ entrance: ReactNode; s
             State feedback for machines whose axes pull on each other
           </h1>
           <p className="mb-5 text-lg text-soft">
-            From the linear model to gains that a colleague has agreed to: one law for all axes at once, its coupling in plain
-            sight, its limits and units beside every number.
+            From the linear model to gains that a colleague can check: one law for all axes at once, its coupling in plain sight,
+            units and limits beside every number.
           </p>
           <div className="mb-7 flex flex-wrap gap-3">{entrance}</div>
           <FrontSteps />

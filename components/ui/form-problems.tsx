@@ -16,6 +16,13 @@ type FormProblemsProps = Readonly<{
   title?: string;
 }>;
 
+/** Two fields may have the same thing wrong with them, so each is named. */
+function withLabel(fieldId: string, message: string): string {
+  const field = document.getElementById(fieldId);
+  const label = field instanceof HTMLInputElement ? field.labels?.[0]?.firstChild?.textContent : null;
+  return label && !message.startsWith(label) ? `${label}: ${message}` : message;
+}
+
 /** Stands above a form that was refused. Values are the caller's and are kept. */
 export function FormProblems({ problems, attempt, title = "This could not be saved yet." }: FormProblemsProps) {
   const summary = useRef<HTMLDivElement>(null);
@@ -33,7 +40,9 @@ export function FormProblems({ problems, attempt, title = "This could not be sav
       <Notice kind="unmet" title={title} role="alert">
         <ul className="mt-1 list-disc pl-5">
           {problems.map(({ fieldId, message }) => (
-            <li key={`${fieldId} ${message}`}>{fieldId ? <a href={`#${fieldId}`}>{message}</a> : message}</li>
+            <li key={`${fieldId} ${message}`}>
+              {fieldId ? <a href={`#${fieldId}`}>{problems.length > 1 ? withLabel(fieldId, message) : message}</a> : message}
+            </li>
           ))}
         </ul>
       </Notice>

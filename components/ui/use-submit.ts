@@ -20,7 +20,7 @@ export type Submit = {
 /**
  * One way for every form to send: busy while it runs, problems at their fields afterwards, values never touched.
  *
- * @param fields ids of the controls by JSON pointer; an issue below a pointer belongs to it
+ * @param fields ids of the controls by JSON pointer, in the order of the form; an issue below a pointer belongs to it
  */
 export function useSubmit(fields: Readonly<Record<string, string>>): Submit {
   const [busy, setBusy] = useState(false);
@@ -50,8 +50,13 @@ export function useSubmit(fields: Readonly<Record<string, string>>): Submit {
 
 function formProblems({ issues, message }: RequestProblem, fields: Readonly<Record<string, string>>): FormProblem[] {
   if (issues.length === 0) return [{ message }];
-  return issues.map(({ pointer, detail }) => {
-    const match = Object.keys(fields).find((known) => pointer === known || pointer.startsWith(`${known}/`));
-    return { fieldId: match ? fields[match] : undefined, message: detail };
+  const pointers = Object.keys(fields);
+  const placed = issues.map(({ pointer, detail }) => {
+    const place = pointers.findIndex((known) => pointer === known || pointer.startsWith(`${known}/`));
+    return { place: place < 0 ? pointers.length : place, message: detail };
   });
+  // From top to bottom as the reader meets them, so that the focus goes to the first.
+  return placed
+    .sort((a, b) => a.place - b.place)
+    .map(({ place, message: detail }) => ({ fieldId: fields[pointers[place]], message: detail }));
 }

@@ -72,7 +72,7 @@ export async function request<T>(path: string, options: RequestOptions = {}): Pr
   const response = await send(path, options);
   if (!response.ok) throw await problemIn(response);
   const data = response.status === 204 ? undefined : await jsonIn(response);
-  const [, version] = /^"(\d+)"$/.exec(response.headers.get("etag") ?? "") ?? [];
+  const [, version] = /^"(\d+)(?:\.[0-9a-f]+)?"$/.exec(response.headers.get("etag") ?? "") ?? [];
   // Replies are parsed by their schema on the way out; parsing them again would put every schema into every page.
   return { data: data as T, version: version ? Number(version) : null, location: response.headers.get("location") };
 }
@@ -92,12 +92,13 @@ async function send(
     return await fetch(`${base}${path}${queryText(query)}`, init);
   } catch (error) {
     if (signal?.aborted) throw error;
-    throw localProblem(
-      "offline",
-      "No connection",
-      "The service did not answer. What you typed is kept; try again when you are connected.",
-    );
+    throw noConnection();
   }
+}
+
+export function noConnection(): RequestProblem {
+  const detail = "The service did not answer. What you typed is kept; try again when you are connected.";
+  return localProblem("offline", "No connection", detail);
 }
 
 function queryText(query: RequestOptions["query"] = {}): string {
@@ -105,13 +106,13 @@ function queryText(query: RequestOptions["query"] = {}): string {
   return given.length > 0 ? `?${new URLSearchParams(given)}` : "";
 }
 
-async function problemIn(response: Response): Promise<RequestProblem> {
+export async function problemIn(response: Response): Promise<RequestProblem> {
   const type = response.headers.get("content-type") ?? "";
   if (!type.startsWith("application/problem+json")) return unexpected(response);
   return new RequestProblem((await jsonIn(response)) as Problem);
 }
 
-async function jsonIn(response: Response): Promise<unknown> {
+export async function jsonIn(response: Response): Promise<unknown> {
   const type = response.headers.get("content-type") ?? "";
   if (!/^application\/(problem\+)?json/.test(type)) throw unexpected(response);
   try {

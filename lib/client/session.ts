@@ -1,17 +1,21 @@
-import { RequestProblem, request } from "./request";
+import { jsonIn, noConnection, problemIn, RequestProblem, request } from "./request";
 
 type AuthReply = { readonly url?: string };
 
-/** The form that next-auth takes, with the token that ties it to this browser. */
+/** The form that next-auth takes, with the token that ties it to this browser. @throws RequestProblem */
 async function postForm(path: string, fields: Readonly<Record<string, string>>): Promise<Response> {
   const { data } = await request<{ csrfToken: string }>("/api/auth/csrf");
-  return fetch(path, {
-    method: "POST",
-    headers: { "content-type": "application/x-www-form-urlencoded", accept: "application/json" },
-    credentials: "same-origin",
-    cache: "no-store",
-    body: new URLSearchParams({ ...fields, csrfToken: data.csrfToken, json: "true" }),
-  });
+  try {
+    return await fetch(path, {
+      method: "POST",
+      headers: { "content-type": "application/x-www-form-urlencoded", accept: "application/json" },
+      credentials: "same-origin",
+      cache: "no-store",
+      body: new URLSearchParams({ ...fields, csrfToken: data.csrfToken, json: "true" }),
+    });
+  } catch {
+    throw noConnection();
+  }
 }
 
 function wrongSignIn(): RequestProblem {
@@ -22,13 +26,13 @@ function wrongSignIn(): RequestProblem {
 /** @throws RequestProblem: wrong address or password, too many tries, no connection */
 export async function signIn(email: string, password: string): Promise<void> {
   const response = await postForm("/api/auth/callback/credentials", { email, password });
-  if (response.headers.get("content-type")?.startsWith("application/problem+json")) {
-    throw new RequestProblem(await response.json());
-  }
-  const { url } = (await response.json()) as AuthReply;
+  if (response.headers.get("content-type")?.startsWith("application/problem+json")) throw await problemIn(response);
+  const { url } = (await jsonIn(response)) as AuthReply;
   if (!response.ok || (url !== undefined && new URL(url, location.href).searchParams.has("error"))) throw wrongSignIn();
 }
 
+/** @throws RequestProblem: no connection, or the session could not be ended */
 export async function signOut(): Promise<void> {
-  await postForm("/api/auth/signout", {});
+  const response = await postForm("/api/auth/signout", {});
+  if (!response.ok) throw await problemIn(response);
 }

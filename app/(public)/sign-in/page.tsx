@@ -1,7 +1,7 @@
 import type { Metadata } from "next";
 import { redirect } from "next/navigation";
 import { SignInPage } from "@/components/account/sign-in-page";
-import { currentContext } from "@/lib/auth/session";
+import { currentPerson } from "@/lib/auth/session";
 import { NextPath } from "@/lib/schemas/next-path";
 import { demoSignIn } from "@/lib/services/account/demo-sign-in";
 
@@ -9,6 +9,6 @@ export const metadata: Metadata = { title: "Sign in" };
 
 export default async function Page({ searchParams }: Readonly<{ searchParams: Promise<{ next?: unknown }> }>) {
   const path = NextPath.parse((await searchParams).next);
-  if (await currentContext()) redirect(path);
+  if (await currentPerson()) redirect(path);
   return <SignInPage next={path} demo={demoSignIn()} />;
 }
