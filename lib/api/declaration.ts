@@ -51,7 +51,7 @@ type ReadOnly<T> = T extends readonly (infer U)[]
     ? { readonly [K in keyof T]: ReadOnly<T[K]> }
     : T;
 
-/** `version` becomes the strong ETag, `location` the address of what was created. */
+/** `version` becomes the strong ETag, of a read with a checksum behind it; `location` is the address of what was created. */
 export type RouteResult<D extends Declaration> = D["reply"] extends z.ZodType
   ? { readonly body: ReadOnly<z.input<D["reply"]>>; readonly version?: number; readonly location?: string }
   : D["reply"] extends FileReply

@@ -110,7 +110,12 @@ function headersOf({ ifMatch, idempotent }: Declaration): z.ZodObject {
 }
 
 function success({ reply, status = 200 }: Declaration): RouteConfig["responses"] {
-  const headers = { ETag: { description: "The version, where what is named has one", schema: { type: "string" as const } } };
+  const headers = {
+    ETag: {
+      description: "The version, where what is named has one; of a read also a checksum of the reply",
+      schema: { type: "string" as const },
+    },
+  };
   if (reply === null) return { 204: { description: "Done" } };
   if (isFileReply(reply)) {
     const text = { schema: { type: "string" as const } };

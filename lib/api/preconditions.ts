@@ -1,9 +1,17 @@
+import { createHash } from "node:crypto";
 import { DomainError } from "@/lib/errors";
 
 /** The strong tag of a version, as in `ETag: "7"`. */
 export const entityTag = (version: number): string => `"${version}"`;
 
-const STRONG_VERSION = /^"([1-9]\d{0,9})"$/;
+/**
+ * The tag of what a read gives, as in `ETag: "7.0f3a…"`: a reply may change without its version, as the number of a plant's
+ * designs does. A change looks at the version alone.
+ */
+export const readTag = (version: number, body: string): string =>
+  `"${version}.${createHash("sha256").update(body).digest("hex").slice(0, 16)}"`;
+
+const STRONG_VERSION = /^"([1-9]\d{0,9})(?:\.[0-9a-f]{16})?"$/;
 
 /** The version a change starts from. Exactly one strong tag: a list or `*` would change what nobody has looked at. */
 export function versionFromIfMatch(headers: Headers): number {

@@ -2,7 +2,7 @@ import { z } from "zod";
 import type { StoredReply } from "@/lib/services/idempotency/stored-reply";
 import type { Declaration } from "./declaration";
 import { type FileResult, isFileReply, sendFile } from "./file-reply";
-import { entityTag, isUnchanged } from "./preconditions";
+import { entityTag, isUnchanged, readTag } from "./preconditions";
 
 /** What any handler gives back; `RouteResult` narrows it for one declaration. */
 export type AnyResult =
@@ -18,9 +18,9 @@ export function toStored({ reply, status }: Declaration, result: AnyResult): Sto
   return { status: status ?? 200, body: JSON.stringify(reply.parse(result.body)), version, location };
 }
 
-export function sendStored({ status, body, version, location }: StoredReply): Response {
+export function sendStored({ status, body, version, location }: StoredReply, etag?: string): Response {
   const headers = new Headers();
-  if (version !== null) headers.set("etag", entityTag(version));
+  if (version !== null) headers.set("etag", etag ?? entityTag(version));
   if (location !== null) headers.set("location", location);
   if (body !== null) headers.set("content-type", "application/json");
   return new Response(body, { status, headers });
@@ -33,9 +33,8 @@ export function sendResult(declaration: Declaration, result: AnyResult, request:
     return sendFile(reply, result.file);
   }
   const stored = toStored(declaration, result);
-  if (request.method === "GET" && stored.version !== null) {
-    const etag = entityTag(stored.version);
-    if (isUnchanged(request.headers, etag)) return new Response(null, { status: 304, headers: { etag } });
-  }
-  return sendStored(stored);
+  if (request.method !== "GET" || stored.version === null || stored.body === null) return sendStored(stored);
+  const etag = readTag(stored.version, stored.body);
+  if (isUnchanged(request.headers, etag)) return new Response(null, { status: 304, headers: { etag } });
+  return sendStored(stored, etag);
 }

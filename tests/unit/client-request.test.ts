@@ -42,7 +42,9 @@ test("a change sends its version, key and JSON, and gets data, version and locat
   respond = (asked, reply) => {
     const { "if-match": match, "idempotency-key": key, "content-type": type } = asked.headers;
     seen = { method: asked.method, url: asked.url, match, key, type, text: asked.text };
-    reply.writeHead(201, { "content-type": "application/json", etag: '"8"', location: "/api/v1/plants/p" }).end('{"id":"p"}');
+    reply
+      .writeHead(201, { "content-type": "application/json", etag: '"8.0123456789abcdef"', location: "/api/v1/plants/p" })
+      .end('{"id":"p"}');
   };
   const query = { limit: 5, search: "a&b", none: undefined };
   const reply = await request("/api/v1/plants", {
