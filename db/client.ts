@@ -18,6 +18,7 @@ export type Settings = {
   readonly secret_hash?: string;
   readonly outbox_id?: string;
   readonly outbox_open?: "on";
+  readonly sweeping?: "on";
 };
 
 // One pool per process, also across the hot reloads of development, which evaluate this module anew.
