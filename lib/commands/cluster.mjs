@@ -72,11 +72,11 @@ async function untilReady(child, url) {
 }
 
 /**
- * Starts PostgreSQL on loopback only, without a socket file, on a free port.
- * @param {{ data: string, password: string, log: string, initdb?: string[], settings?: string[] }} options
+ * Starts PostgreSQL on loopback only, without a socket file, on `fixedPort` or else a free one.
+ * @param {{ data: string, password: string, log: string, initdb?: string[], settings?: string[], fixedPort?: number }} options
  * @returns {Promise<Cluster>}
  */
-export async function startCluster({ data, password, log, initdb = [], settings = [] }) {
+export async function startCluster({ data, password, log, initdb = [], settings = [], fixedPort }) {
   const programs = postgresPrograms(data);
   const account = postgresAccount();
   if (!existsSync(data)) initialise(programs, data, password, account, initdb);
@@ -86,7 +86,7 @@ export async function startCluster({ data, password, log, initdb = [], settings 
   }
   let child;
   for (let attempt = 0; attempt < 3; attempt++) {
-    const port = await freePort(host);
+    const port = fixedPort ?? (await freePort(host));
     const options = [`listen_addresses=${host}`, "unix_socket_directories=", `port=${port}`, "max_connections=200", ...settings];
     const args = ["-D", data, ...options.flatMap((option) => ["-c", option])];
     child = startChild(join(programs, "postgres"), args, {
