@@ -24,13 +24,15 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
   const [name, setName] = useState("");
   const [scope, setScope] = useState<Scope>("read");
   const [days, setDays] = useState<number | null>(USUAL_DAYS);
+  const [daysRead, setDaysRead] = useState(true);
   const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
 
   async function submit(event: FormEvent<HTMLFormElement>) {
     event.preventDefault();
     const done = await run(async () => {
-      // An emptied field is sent as it is, so that the refusal names it.
-      const token = await resume(() => createAccessToken({ name, scope, expiresInDays: days ?? Number.NaN }));
+      // What is no number is sent as none, so that the refusal names the field.
+      const expiresInDays = daysRead && days !== null ? days : Number.NaN;
+      const token = await resume(() => createAccessToken({ name, scope, expiresInDays }));
       onCreated(token);
     });
     if (done) setName("");
@@ -62,6 +64,7 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
         unit="days"
         value={days}
         onChange={setDays}
+        onUsable={setDaysRead}
         problem={at("/expiresInDays")}
         hint="From 1 to 365. Make a new one before it ends."
         className="max-w-48"

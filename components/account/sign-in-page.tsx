@@ -30,7 +30,7 @@ export function SignInPage({ next, demo }: SignInPageProps) {
             <ul className="mt-2 space-y-1.5">
               {demo.accounts.map((account) => (
                 <li key={account.email} className="flex flex-wrap items-center justify-between gap-x-3 gap-y-1">
-                  <code className="text-table break-all">{account.email}</code>
+                  <code className="text-xs break-all">{account.email}</code>
                   <DemoDoor
                     account={account}
                     password={demo.password}

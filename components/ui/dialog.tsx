@@ -15,6 +15,9 @@ type DialogProps = Readonly<{
   children: ReactNode;
 }>;
 
+/** Where a dialog asks for something, work starts there and not at the cross. */
+const FIRST_FIELD = "input:not([readonly]):not([hidden]), select, textarea";
+
 /** The browser's modal dialog: keeps focus inside, gives it back, and hides the rest from screen readers. */
 export function Dialog({ open, onClose, title, actions, wide, children }: DialogProps) {
   const element = useRef<HTMLDialogElement>(null);
@@ -22,7 +25,10 @@ export function Dialog({ open, onClose, title, actions, wide, children }: Dialog
   useEffect(() => {
     const dialog = element.current;
     if (!dialog) return;
-    if (open && !dialog.open) dialog.showModal();
+    if (open && !dialog.open) {
+      dialog.showModal();
+      dialog.querySelector<HTMLElement>(FIRST_FIELD)?.focus();
+    }
     if (!open && dialog.open) dialog.close();
   }, [open]);
   return (

@@ -43,6 +43,6 @@ export async function resetPassword(visitor: Visitor, { secret, password }: Rese
 
 function usedUp(): DomainError {
   return new DomainError("invalid", "This link was used already or is older than 60 minutes. Ask for a new one.", {}, [
-    { pointer: "/secret", detail: "The link no longer works" },
+    { pointer: "/secret", detail: "The link was used already or is older than 60 minutes. Ask for a new one" },
   ]);
 }

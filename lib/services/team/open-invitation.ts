@@ -14,7 +14,7 @@ export async function openInvitation(tx: Db, secret: string) {
   const invitation = await findOpenInvitation(tx, hashSecret(secret));
   if (!invitation) {
     throw new DomainError("invalid", "This invitation was used, withdrawn or is older than seven days. Ask for a new one.", {}, [
-      { pointer: "/secret", detail: "The link no longer works" },
+      { pointer: "/secret", detail: "The link was used, withdrawn or is older than seven days. Ask the lead for a new one" },
     ]);
   }
   await adopt(tx, { team_id: invitation.teamId, email: invitation.email });
