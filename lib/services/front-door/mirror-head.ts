@@ -1,3 +1,4 @@
+import "server-only";
 import type { WeightsRecipe } from "@/control/design/recipe";
 import type { PlantModel, Rows } from "@/control/plant/model";
 
