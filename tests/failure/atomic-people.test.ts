@@ -1,4 +1,3 @@
-import type { ScryptOptions } from "node:crypto";
 import { afterAll, describe, expect, test, vi } from "vitest";
 import { closePool } from "@/db/client";
 import { createAccessToken, revokeAccessToken } from "@/lib/services/account/access-tokens";
@@ -19,13 +18,7 @@ import { memberOf, newEmail, newTeam, PASSWORD, sessionOfMember, someone, visito
 import { testDatabase } from "../helpers/test-database";
 
 // Each verb runs some twenty times, and what a password costs is measured elsewhere.
-vi.mock("node:crypto", async (original) => {
-  const crypto = await original<typeof import("node:crypto")>();
-  type Done = (error: Error | null, key: Buffer) => void;
-  const scrypt = (password: string, salt: Buffer, length: number, options: ScryptOptions, done: Done) =>
-    crypto.scrypt(password, salt, length, { ...options, N: 2 ** 10 }, done);
-  return { ...crypto, scrypt };
-});
+vi.mock("node:crypto", async (original) => (await import("../helpers/quick-crypto")).quickCrypto(await original()));
 
 const { adminUrl } = await testDatabase();
 afterAll(closePool);

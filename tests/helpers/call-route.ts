@@ -1,5 +1,5 @@
 import { encode } from "next-auth/jwt";
-import type { DeclaredRoute } from "@/lib/api/route";
+import type { RouteContext } from "@/lib/api/read-input";
 import { sessionCookieName } from "@/lib/auth/cookies";
 import { env } from "@/lib/env";
 import type { Problem } from "@/lib/schemas/problem";
@@ -27,7 +27,7 @@ export async function signedIn(who: Pick<Context, "teamId" | "userId">): Promise
 
 /** Calls a route handler as the server does. */
 export function call(
-  route: DeclaredRoute,
+  route: (request: Request, context: RouteContext) => Promise<Response>,
   { method = "GET", path = "/api/v1/tests", params = {}, headers = {}, body }: Call = {},
 ) {
   const sent = new Headers(headers);

@@ -8,8 +8,9 @@ export const PATCH = route(
   async ({ ctx, params, body }) => ({ body: await changeRole(ctx, params.userId, body) }),
 );
 
+/** Anybody may leave; the service asks for more where somebody else is removed. */
 export const DELETE = route(
-  { summary: "Remove a member; what they made stays", params: MemberAddress, reply: null, right: "team:manage" },
+  { summary: "Remove a member, or leave; what they made stays", params: MemberAddress, reply: null, right: "account:own" },
   async ({ ctx, params }) => {
     await removeMember(ctx, params.userId);
     return null;
