@@ -73,8 +73,8 @@ export function openParameters(rows: readonly PublishRow[]): OpenParameter[] {
   const errors = open.flatMap((row, index) =>
     FIGURES.flatMap(({ key, label }) => {
       if (row[key] !== null && !row.unread.has(key)) return [];
-      const wrong = row.unread.has(key) ? "is not a number yet" : "value is missing";
-      return [{ pointer: `/content/openParameters/${index}/${key}`, detail: `${row.name}: the ${label.toLowerCase()} ${wrong}` }];
+      const wrong = row.unread.has(key) ? "is not a number yet" : "is missing";
+      return [{ pointer: `/content/openParameters/${index}/${key}`, detail: `${label} ${row.name} ${wrong}` }];
     }),
   );
   if (open.length === 0) errors.push({ pointer: "/content/openParameters", detail: "Open at least one parameter" });

@@ -3,6 +3,7 @@ import { formatNumber } from "@/control/words/format-number";
 import { headersOf } from "../designs/signal-headers";
 import { WovenMatrix } from "../matrix/woven-matrix";
 import { AxisTags } from "../plants/axis-tags";
+import { drivenStates } from "../plants/editor/matrix-headers";
 import { timeBaseText } from "../plants/time-base-text";
 import { AxisBar } from "../plots/axis-bar";
 
@@ -36,8 +37,8 @@ export function TemplatePlant({ model, source }: Readonly<{ model: PlantModel; s
       <WovenMatrix
         name="A"
         caption="how the states drive each other"
-        note="at the suggested values"
-        rows={states}
+        note="rows: rate of change of · columns: because of · at the suggested values"
+        rows={drivenStates(model)}
         columns={states}
         values={model.A}
         copy={false}

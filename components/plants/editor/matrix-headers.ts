@@ -1,4 +1,4 @@
-import type { PlantContent } from "@/lib/schemas/plant";
+import type { TimeBase } from "@/control/plant/model";
 import type { Header } from "../../matrix/header";
 
 type Named = { readonly name: string; readonly unit: string; readonly axis: number | null; readonly scale?: number | null };
@@ -11,8 +11,10 @@ function ratePerSecond(unit: string): string {
   return unit.endsWith("/s") ? `${unit}²` : `${unit}/s`;
 }
 
+type States = { readonly states: readonly Named[]; readonly timeBase: TimeBase };
+
 /** Rows of A and B say what is driven: the rate of a state, or its next value. */
-export function drivenStates({ states, timeBase }: Pick<PlantContent, "states" | "timeBase">): Header[] {
+export function drivenStates({ states, timeBase }: States): Header[] {
   const continuous = timeBase.kind === "continuous";
   return states.map((state) => ({
     ...asHeader(state),

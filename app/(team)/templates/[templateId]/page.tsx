@@ -39,6 +39,7 @@ export default async function Page({ params }: PageProps) {
   const { ctx, template } = await load((await params).templateId);
   const model = await suggestedModel(ctx, template);
   const { id, name, description, version, archivedAt, content } = template;
+  const mayStart = isAllowed(ctx, "template:use") && archivedAt === null;
   return (
     <PageBody>
       <PageHeading
@@ -53,10 +54,12 @@ export default async function Page({ params }: PageProps) {
       />
       {description ? <p className="mb-6 max-w-prose break-words whitespace-pre-line">{description}</p> : null}
       <div className="grid gap-x-16 lg:grid-cols-[minmax(20rem,30rem)_minmax(0,1fr)]">
-        <SheetSection title="Start from it" note="fill in the machine's own parameters">
-          <Start mayUse={isAllowed(ctx, "template:use")} archived={archivedAt !== null}>
+        <SheetSection title="Start from it" note={mayStart ? "fill in the machine's own parameters" : undefined}>
+          {mayStart ? (
             <StartFromTemplate templateId={id} parameters={content.openParameters} />
-          </Start>
+          ) : (
+            <NotToStart archived={archivedAt !== null} />
+          )}
         </SheetSection>
         <div className="min-w-0">
           <SheetSection title="The plant">
@@ -73,14 +76,11 @@ export default async function Page({ params }: PageProps) {
   );
 }
 
-function Start({ mayUse, archived, children }: Readonly<{ mayUse: boolean; archived: boolean; children: React.ReactNode }>) {
-  if (archived) {
-    return (
-      <Notice kind="caution" title="This template is out of use.">
-        Plants and designs made from it stay as they are. Ask a lead which template follows it.
-      </Notice>
-    );
-  }
-  if (!mayUse) return <p className="text-soft">A lead or an engineer of the team starts plants and designs from it.</p>;
-  return children;
+function NotToStart({ archived }: Readonly<{ archived: boolean }>) {
+  if (!archived) return <p className="text-soft">A lead or an engineer of the team starts plants and designs from it.</p>;
+  return (
+    <Notice kind="caution" title="This template is out of use.">
+      Plants and designs made from it stay as they are. Ask a lead which template follows it.
+    </Notice>
+  );
 }
