@@ -45,5 +45,8 @@ function matrixRecords({ symbol, meaning, rows, columns, entries }: NamedMatrix)
 }
 
 function fileName({ plant, design }: GainDocument, ending: string): string {
-  return `${plant.name} ${design.name} r${design.revision} gain.${ending}`;
+  return `${start(plant.name)} ${start(design.name)} r${design.revision} gain.${ending}`;
 }
+
+/** Two long names must not push the revision out of the file's name. */
+const start = (name: string) => [...name].slice(0, 48).join("").trimEnd();
