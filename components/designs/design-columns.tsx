@@ -1,9 +1,10 @@
 import Link from "next/link";
-import { formatPercent, formatSeconds } from "@/control/words/format-number";
+import { formatSeconds } from "@/control/words/format-number";
 import type { DesignSummary } from "@/lib/schemas/design";
 import { Chip } from "../ui/chip";
 import type { Column } from "../ui/data-table";
 import { StateMark } from "../ui/state-mark";
+import { percentText } from "./percent-text";
 import { METHOD_WORDS, OBSERVER_WORDS } from "./recipe/recipe-words";
 
 type Figures = NonNullable<DesignSummary["summary"]>;
@@ -20,7 +21,7 @@ export function worstOverLimit({ peakEffort }: Figures): number | null {
   return shares.length === 0 ? null : shares.reduce((most, share) => Math.max(most, share));
 }
 
-const percent = (value: number | null) => (value === null ? null : formatPercent(value / 100));
+const percent = (value: number | null) => (value === null ? null : percentText(value));
 
 function Effort({ summary }: DesignSummary) {
   const share = summary && worstOverLimit(summary);
@@ -28,7 +29,7 @@ function Effort({ summary }: DesignSummary) {
   return (
     <span className="inline-flex items-baseline gap-1.5">
       {share > 1 ? <StateMark kind="unmet" word="Beyond its limit: " /> : null}
-      {formatPercent(share, 3)}
+      {percentText(100 * share)}
     </span>
   );
 }
@@ -76,7 +77,7 @@ export const DESIGN_COLUMNS: readonly Column<DesignSummary>[] = [
     header: "Cross-axis peak",
     kind: "figure",
     sortBy: sortable(({ worstCrossPeak }) => worstCrossPeak?.peak),
-    cell: figure(({ worstCrossPeak }) => worstCrossPeak && formatPercent(worstCrossPeak.peak, 3)),
+    cell: figure(({ worstCrossPeak }) => worstCrossPeak && percentText(100 * worstCrossPeak.peak)),
   },
   {
     key: "effort",

@@ -14,7 +14,7 @@ const TONE: Readonly<Record<ButtonTone, string>> = {
 export function buttonStyle(tone: ButtonTone = "plain", size: ButtonSize = "normal", extra?: string): string {
   return joinClasses(
     "inline-flex items-center justify-center gap-2 rounded-md border font-semibold whitespace-nowrap no-underline",
-    "disabled:border-rule disabled:bg-transparent disabled:text-soft aria-disabled:border-rule aria-disabled:text-soft",
+    "disabled:border-rule disabled:bg-transparent disabled:text-soft aria-disabled:border-rule aria-disabled:bg-transparent aria-disabled:text-soft",
     size === "small" ? "min-h-7 min-w-7 px-2 text-sm" : "min-h-9 px-3.5 text-table",
     TONE[tone],
     extra,

@@ -2,6 +2,7 @@
 
 import { useMemo, useState } from "react";
 import { useSession } from "../../providers/session-provider";
+import { Button } from "../../ui/button";
 import { EmptyState } from "../../ui/empty-state";
 import { FormProblems } from "../../ui/form-problems";
 import { EvidencePanel } from "../evidence/evidence-panel";
@@ -41,7 +42,6 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
   // A recipe that cannot be sent is not asked a name for: its fields say first what is wrong.
   const open = (which: "revision" | "new") => (reading.recipe ? setDialog(which) : void bench.solve());
   const suggested = base.design ? `${base.design.name}, next`.slice(0, 120) : "";
-  const { solved } = bench.solving;
   return (
     <>
       <BenchHeading
@@ -50,8 +50,11 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
         onSaveAsNew={() => open("new")}
       />
       <BenchNotices {...{ bench, start, mayEdit }} />
-      {mayEdit ? <Editing bench={bench} /> : <Columns bench={bench} recipe={<Read bench={bench} />} />}
-      {solved ? <GainsSection solved={solved} plantName={start.plant.name} designName={base.design?.name ?? null} /> : null}
+      {mayEdit ? (
+        <Editing bench={bench} plantName={start.plant.name} />
+      ) : (
+        <Columns bench={bench} plantName={start.plant.name} recipe={<Read bench={bench} />} />
+      )}
       {base.design && base.revision ? <RevisionsList design={base.design} shownId={base.revision.id} /> : null}
       <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={() => setDialog(null)} />
       {dialog === "new" ? (
@@ -63,7 +66,7 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
 }
 
 /** Everything that is typed into stands below one context, anew for another plant revision. */
-function Editing({ bench }: Readonly<{ bench: Bench }>) {
+function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: string }>) {
   const { form, ground, change, undo, redo, setUsable, solving, reading } = bench;
   const { refusal } = solving;
   const problems = useMemo(() => shownProblems(refusal, reading), [refusal, reading]);
@@ -82,7 +85,7 @@ function Editing({ bench }: Readonly<{ bench: Bench }>) {
     <RecipeContext value={editing}>
       <div key={ground.plantRevision.id}>
         <Columns
-          bench={bench}
+          {...{ bench, plantName }}
           recipe={
             <>
               <SolveBar bench={bench} />
@@ -122,38 +125,53 @@ function Read({ bench: { base } }: Readonly<{ bench: Bench }>) {
   );
 }
 
-type ColumnsProps = Readonly<{ bench: Bench; recipe: React.ReactNode }>;
+type ColumnsProps = Readonly<{ bench: Bench; plantName: string; recipe: React.ReactNode }>;
 
-/** Three columns where there is room, one below the other on a tablet and on paper. */
-function Columns({ bench: { solving, base, stale }, recipe }: ColumnsProps) {
-  const { solved } = solving;
+/** Three columns where there is room, one part below the other on a tablet and on paper. */
+function Columns({ bench, plantName, recipe }: ColumnsProps) {
+  const { base, stale } = bench;
+  const { solved } = bench.solving;
   const ghostOf = solved?.source.kind === "computed" ? (base.revision?.id ?? null) : null;
   return (
-    <div className="mb-8 grid gap-x-6 gap-y-8 xl:grid-cols-[20rem_minmax(0,1fr)_20rem]">
-      <div className="flex min-w-0 flex-col gap-4">{recipe}</div>
-      <section aria-labelledby="responses-heading" className="min-w-0 xl:border-x xl:border-rule xl:px-6">
+    <div className="mb-8 grid gap-x-6 gap-y-8 xl:grid-cols-[20rem_minmax(0,1fr)_22rem] xl:grid-rows-[auto_1fr]">
+      <div className="flex min-w-0 flex-col gap-4 xl:row-span-2">{recipe}</div>
+      <section aria-labelledby="responses-heading" className={MIDDLE}>
         <h2 id="responses-heading" className="mb-1">
           Coupled response
         </h2>
         <p className="mb-3 text-sm text-soft">columns: what is commanded · rows: what the machine does</p>
-        {stale ? <p className="mb-3 text-sm">Drawn for the recipe as it was last solved.</p> : null}
-        {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved />}
+        {stale && solved ? (
+          <p className="mb-3 text-sm">
+            Drawn for the recipe as it was last solved, on plant revision {solved.ground.plantRevision.number}.
+          </p>
+        ) : null}
+        {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved bench={bench} />}
       </section>
-      <section aria-labelledby="evidence-heading" className="min-w-0">
+      <section aria-labelledby="evidence-heading" className="min-w-0 xl:row-span-2">
         <h2 id="evidence-heading" className="mb-3">
           Evidence
         </h2>
         {solved ? <EvidencePanel solved={solved} /> : <p className="text-soft">It appears with the first solution.</p>}
       </section>
+      <div className={MIDDLE}>
+        {solved ? <GainsSection solved={solved} plantName={plantName} designName={base.design?.name ?? null} /> : null}
+      </div>
     </div>
   );
 }
 
-function NothingSolved() {
+const MIDDLE = "min-w-0 xl:border-x xl:border-rule xl:px-6 xl:col-start-2 xl:-my-4 xl:py-4";
+
+function NothingSolved({ bench: { solving, solve } }: Readonly<{ bench: Bench }>) {
+  const action = (
+    <Button tone="primary" busy={solving.busy} onClick={solve}>
+      Solve
+    </Button>
+  );
   return (
-    <EmptyState title="Not solved yet">
-      The recipe beside this is ready as it stands: it starts from the plant's own largest acceptable deviations and limits. Press
-      Solve, or Ctrl+Enter, to see what every axis does when one is commanded.
+    <EmptyState title="Not solved yet" action={action}>
+      The recipe is ready as it stands: it starts from the plant's own largest acceptable deviations and limits. Solve it to see
+      what every axis does when one is commanded.
     </EmptyState>
   );
 }

@@ -14,14 +14,13 @@ export function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
   const { evidence, ground } = solved;
   const { model } = ground;
   const poles = computed(evidence.poles);
-  const observer = computed(evidence.observer);
   return (
     <div className="flex flex-col gap-6">
       <StepPart solved={solved} />
       <ReferencePart solved={solved} />
       {poles ? (
-        <EvidencePart title="Closed-loop poles">
-          <DesignPlane poles={poles} observer={observer?.poles ?? []} model={model} />
+        <EvidencePart title="Loop">
+          <DesignPlane title="Closed-loop poles" kind="closed" poles={poles} model={model} />
           <PoleFigures title="Closed-loop poles" poles={poles} model={model} />
         </EvidencePart>
       ) : null}
@@ -102,7 +101,8 @@ function ObserverPart({ solved: { evidence, ground } }: Readonly<{ solved: Solve
   }
   const { kind, poles, method, residual, bound } = observer.value;
   return (
-    <EvidencePart title={kind === "full" ? "Observer poles" : `Observer poles, order ${observer.value.order}`}>
+    <EvidencePart title={kind === "full" ? "Observer" : `Observer of order ${observer.value.order}`}>
+      {poles.length > 0 ? <DesignPlane title="Observer poles" kind="observer" poles={poles} model={ground.model} /> : null}
       <PoleFigures title="Observer poles" poles={poles} model={ground.model} />
       <div className="text-table">
         <p>{methodText(method)}.</p>

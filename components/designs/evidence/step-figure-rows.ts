@@ -1,5 +1,6 @@
 import type { PlantModel } from "@/control/plant/model";
-import { formatNumber, formatPercent, formatSeconds } from "@/control/words/format-number";
+import { formatNumber, formatSeconds } from "@/control/words/format-number";
+import { percentText } from "../percent-text";
 import type { StepFiguresReply } from "./figures-reply";
 
 export type FigureCell = { readonly text: string; readonly note?: string; readonly beyond?: boolean };
@@ -12,13 +13,13 @@ export const LOOP_WORDS: Readonly<Record<StepFiguresReply["loop"], string>> = {
 
 const NONE: FigureCell = { text: "–" };
 const seconds = (value: number | null): FigureCell => (value === null ? NONE : { text: formatSeconds(value) });
-const percent = (value: number | null): FigureCell => (value === null ? NONE : { text: formatPercent(value / 100, 3) });
+const percent = (value: number | null): FigureCell => (value === null ? NONE : { text: percentText(value) });
 
 /** Effort in its unit, and how much of its limit that is. */
 function effortCell({ peak, overLimit }: StepFiguresReply["effort"][number], unit: string): FigureCell {
   const text = `${formatNumber(peak)} ${unit}`;
   if (overLimit === null) return { text, note: "no limit given" };
-  return { text, note: `${formatPercent(overLimit, 3)} of its limit`, beyond: overLimit > 1 };
+  return { text, note: `${percentText(100 * overLimit)} of limit`, beyond: overLimit > 1 };
 }
 
 /** What is said of a step, one row per figure, one cell per loop. */

@@ -25,14 +25,17 @@ export function GainsSection({ solved, plantName, designName }: GainsSectionProp
   const timeBase = describeTimeBase(ground.model.timeBase);
   const stored = source.kind === "stored";
   const title = `${plantName}, revision ${ground.plantRevision.number}; ${designName ?? "new design"}, ${stored ? `revision ${source.number}` : "not saved"}`;
-  const copy = (
-    <CopyButton label="Copy with names and units" text={() => gainText({ title, law, observerLaw, timeBase, matrices })} />
+  const waysOut = (
+    <>
+      <CopyButton label="Copy with names and units" text={() => gainText({ title, law, observerLaw, timeBase, matrices })} />
+      <Downloads solved={solved} />
+    </>
   );
   return (
     <SheetSection
       title="Gains"
       note={stored ? `as stored with revision ${source.number}` : "as solved, not saved yet"}
-      actions={copy}
+      actions={waysOut}
       ruled
     >
       <div className="mb-4 flex flex-col gap-1 text-table">
@@ -45,9 +48,8 @@ export function GainsSection({ solved, plantName, designName }: GainsSectionProp
           <GainMatrixFigure key={matrix.symbol} matrix={matrix} />
         ))}
       </div>
-      <div className="mt-5 grid gap-4 xl:grid-cols-[minmax(0,1fr)_auto]">
+      <div className="mt-5">
         <Cautions />
-        <Downloads solved={solved} />
       </div>
     </SheetSection>
   );
@@ -65,20 +67,10 @@ function GainMatrixFigure({ matrix: { symbol, meaning, rows, columns, values } }
 
 /** Files hold what is stored, so that a number on a machine can be traced to a revision. */
 function Downloads({ solved: { source } }: Readonly<{ solved: Solved }>) {
-  if (source.kind === "computed") {
-    return (
-      <p className="no-print max-w-60 text-sm text-soft">
-        Save the design to download its gains: files always belong to a revision.
-      </p>
-    );
-  }
-  return (
-    <div className="no-print flex flex-wrap items-start gap-3">
-      {(["csv", "json"] as const).map((format) => (
-        <a key={format} href={gainFileAddress(source.revisionId, format)} download className={buttonStyle("plain")}>
-          Download {format.toUpperCase()}
-        </a>
-      ))}
-    </div>
-  );
+  if (source.kind === "computed") return <span className="text-sm text-soft">files once it is saved</span>;
+  return (["csv", "json"] as const).map((format) => (
+    <a key={format} href={gainFileAddress(source.revisionId, format)} download className={buttonStyle("plain", "small")}>
+      Download {format.toUpperCase()}
+    </a>
+  ));
 }

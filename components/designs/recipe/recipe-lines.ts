@@ -81,7 +81,7 @@ export function weightMatrixLines(recipe: WeightsRecipe, { states, inputs }: Pla
 }
 
 function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): RecipeLine[] {
-  const method = { section: "Recipe", key: "method", label: "method", text: METHOD_WORDS[recipe.method], exact: recipe.method };
+  const method = { section: "Method", key: "method", label: "method", text: METHOD_WORDS[recipe.method], exact: recipe.method };
   if (recipe.method === "poles") {
     const poles = recipe.poles.map((entry, k) => ({
       section: "Wanted poles",
@@ -94,7 +94,7 @@ function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): Re
   }
   const { degreeOfStability: degree, crossWeight } = recipe;
   const stability = {
-    section: "Recipe",
+    section: "Method",
     key: "stability",
     label: "degree of stability",
     text: degree === null ? "not asked for" : withUnit(degree, "1/s"),
@@ -142,7 +142,7 @@ function testLines({ reference, test }: Recipe, { states, inputs }: PlantModel):
   });
   const followed = reference.kind === "feed-through";
   return [
-    { section: "Recipe", key: "reference", label: "reference", text: followed ? "feed-through" : "none", exact: reference.kind },
+    { section: "Method", key: "reference", label: "reference", text: followed ? "feed-through" : "none", exact: reference.kind },
     {
       section,
       key: "horizon",
@@ -186,6 +186,6 @@ export function recipeDifferences(before: Sided, after: Sided): RecipeDifference
     // Rounded alike though different: both are then given in full.
     const full = a?.text === b?.text;
     const shown = (line: RecipeLine | undefined) => (line ? (full ? line.exact : line.text) : null);
-    return [{ key, place: section === "Recipe" ? label : `${section}: ${label}`, before: shown(a), after: shown(b) }];
+    return [{ key, place: section === "Method" ? label : `${section}: ${label}`, before: shown(a), after: shown(b) }];
   });
 }

@@ -79,19 +79,15 @@ function SignalFigure({ signal, index, what, value, pointer, unit, reasonOf, wri
   const open = reason !== undefined && (asked || Boolean(form.reasons[reason]));
   return (
     <>
-      <div className="grid grid-cols-[minmax(3.5rem,1fr)_minmax(0,10.5rem)_auto] items-start gap-x-2">
+      <div className="grid grid-cols-[minmax(2.5rem,1fr)_7.25rem_4.5rem_2.25rem] items-start gap-x-2">
         <span className="flex min-h-9 min-w-0 items-center gap-2 text-table [overflow-wrap:anywhere]">
           <AxisBar axis={signal.axis} />
           {signal.name}
         </span>
-        <RecipeNumber
-          pointer={pointer}
-          value={value}
-          unit={unit}
-          hideLabel
-          label={`${what} ${signal.name}, ${unit}`}
-          write={write}
-        />
+        <RecipeNumber pointer={pointer} value={value} hideLabel label={`${what} ${signal.name}, ${unit}`} write={write} />
+        <span aria-hidden="true" className="flex min-h-9 items-center text-table text-soft">
+          {unit}
+        </span>
         {reason ? (
           <Button
             size="small"

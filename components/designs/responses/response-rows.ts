@@ -113,7 +113,7 @@ export function responsePicture(
     const ghost = lineOf(ghostCurve, role, index);
     return {
       values,
-      estimated: role === "state" ? (lineOf(curve, "estimate", index) ?? null) : null,
+      estimated: role === "state" && loop !== "both" ? (lineOf(curve, "estimate", index) ?? null) : null,
       fullState: loop === "both" ? (lineOf(beside(curves, curve.source, "full-state"), role, index) ?? null) : null,
       ghost: ghost && ghostCurve ? resample(ghost, ghostCurve.step, time) : null,
       own: kind === "step" && role === "commanded" && index === curve.source,

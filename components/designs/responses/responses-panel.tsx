@@ -90,7 +90,7 @@ type LegendProps = Readonly<{ wanted: GridWanted; ghost: boolean; observed: bool
 
 function Legend({ wanted: { loop, roles }, ghost, observed }: LegendProps) {
   const parts = [
-    ...(roles.includes("state") && observed && loop !== "full-state" ? ["states: thick as they are, thin as estimated"] : []),
+    ...(roles.includes("state") && observed && loop === "observer" ? ["states: thick as they are, thin as estimated"] : []),
     ...(loop === "both" ? ["thick with the observer, thin with the full state"] : []),
     ...(ghost ? ["thin grey: the last saved revision"] : []),
     "dotted: value at rest",
