@@ -41,7 +41,13 @@ export function FormProblems({ problems, attempt, title = "This could not be sav
         <ul className="mt-1 list-disc pl-5">
           {problems.map(({ fieldId, message }) => (
             <li key={`${fieldId} ${message}`}>
-              {fieldId ? <a href={`#${fieldId}`}>{problems.length > 1 ? withLabel(fieldId, message) : message}</a> : message}
+              {fieldId ? (
+                <a href={`#${fieldId}`} className="inline-block py-0.5">
+                  {problems.length > 1 ? withLabel(fieldId, message) : message}
+                </a>
+              ) : (
+                message
+              )}
             </li>
           ))}
         </ul>

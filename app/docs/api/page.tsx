@@ -49,7 +49,9 @@ function Contents({ groups }: Groups) {
         <ul key={name} aria-label={name} className="mb-3 break-inside-avoid">
           {operations.map(({ id, summary }) => (
             <li key={id}>
-              <a href={`#${id}`}>{summary}</a>
+              <a href={`#${id}`} className="inline-block py-1">
+                {summary}
+              </a>
             </li>
           ))}
         </ul>
