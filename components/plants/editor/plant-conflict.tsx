@@ -19,11 +19,13 @@ type PlantConflictProps = Readonly<{
   busy: boolean;
   onKeepMine: (version: number) => void;
   onTakeTheirs: () => void;
+  /** Mine is kept elsewhere: this page has nothing unsaved any more. */
+  onCopied: () => void;
   onClose: () => void;
 }>;
 
 /** Somebody saved first: what they changed, and three ways on. Nothing is lost by any of them. */
-export function PlantConflict({ plant, content, busy, onKeepMine, onTakeTheirs, onClose }: PlantConflictProps) {
+export function PlantConflict({ plant, content, busy, onKeepMine, onTakeTheirs, onCopied, onClose }: PlantConflictProps) {
   const { resume } = useSession();
   const router = useRouter();
   const copy = useSubmit({});
@@ -42,6 +44,7 @@ export function PlantConflict({ plant, content, busy, onKeepMine, onTakeTheirs, 
   const saveCopy = () =>
     copy.run(async () => {
       const made = await resume(() => createPlant({ name: `${plant.name} (my changes)`.slice(0, 120), content, note: "" }));
+      onCopied();
       router.push(`/plants/${made.id}`);
     });
   const current = theirs.data?.current;

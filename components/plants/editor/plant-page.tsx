@@ -31,11 +31,16 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
   const [plant, setPlant] = useState(start);
   const [revisionId, setRevisionId] = useState(revision.id);
   const key = `gainwright:plant:${teamId}:${userId}:${plant.id}`;
-  const draft = usePlantDraft(key, { content: revision.content, name: plant.name, version: start.version });
+  const draft = usePlantDraft(key, { content: revision.content, name: "", version: plant.version });
   const evaluation = useEvaluation(draft.content);
   const readOnly = !mayWrite || plant.archivedAt !== null;
   const model = evaluation?.model ?? null;
   const shownModel = draft.dirty ? model : (model ?? revision.model);
+  /** A new name leaves the model as it is: an edit that started from the version before goes on from this one. */
+  const changed = (next: PlantSummary) => {
+    if (draft.version === plant.version) draft.rebase(next.version);
+    setPlant(next);
+  };
 
   return (
     <>
@@ -54,7 +59,7 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
         actions={
           <>
             {readOnly ? null : <UndoButtons {...draft} />}
-            {mayWrite ? <PlantActions plant={plant} onChanged={setPlant} /> : null}
+            {mayWrite ? <PlantActions plant={plant} onChanged={changed} /> : null}
             {mayPublish && !draft.dirty ? (
               <SaveAsTemplate plantId={plant.id} plantName={plant.name} content={draft.content} />
             ) : null}
@@ -76,6 +81,7 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
                   toast({ text: `Revision ${saved.currentRevision.number} is saved.`, kind: "met" });
                   router.refresh();
                 }}
+                onCopied={draft.discard}
                 onTakeTheirs={() => {
                   draft.discard();
                   window.location.reload();

@@ -20,10 +20,11 @@ type SaveRevisionProps = Readonly<{
   disabled: boolean;
   onSaved: (saved: PlantSummary, content: PlantContent) => void;
   onTakeTheirs: () => void;
+  onCopied: () => void;
 }>;
 
 /** Adds an immutable revision. Somebody else's newer one is never overwritten without a look. */
-export function SaveRevision({ plant, content, version, disabled, onSaved, onTakeTheirs }: SaveRevisionProps) {
+export function SaveRevision({ plant, content, version, disabled, onSaved, onTakeTheirs, onCopied }: SaveRevisionProps) {
   const { resume } = useSession();
   const [asking, setAsking] = useState(false);
   const [conflict, setConflict] = useState(false);
@@ -81,7 +82,11 @@ export function SaveRevision({ plant, content, version, disabled, onSaved, onTak
         </form>
       </Dialog>
       {conflict ? (
-        <PlantConflict {...{ plant, content, busy, onTakeTheirs }} onClose={() => setConflict(false)} onKeepMine={save} />
+        <PlantConflict
+          {...{ plant, content, busy, onTakeTheirs, onCopied }}
+          onClose={() => setConflict(false)}
+          onKeepMine={save}
+        />
       ) : null}
     </>
   );

@@ -36,11 +36,12 @@ export function usePlantDraft(key: string, start: Start) {
   const history = useHistory(start.content);
   const [name, setName] = useState(start.name);
   const [version, setVersion] = useState(start.version);
-  const [saved, setSaved] = useState(start.content);
+  const [saved, setSaved] = useState({ content: start.content, name: start.name });
   const [restoredAt, setRestoredAt] = useState<string | null>(null);
   const ready = useRef(false);
+  const letGo = useRef(false);
   const { present, set, reset } = history;
-  const dirty = present !== saved || name !== start.name;
+  const dirty = present !== saved.content || name !== saved.name;
 
   useEffect(() => {
     if (ready.current) return;
@@ -61,16 +62,19 @@ export function usePlantDraft(key: string, start: Start) {
 
   useEffect(() => {
     if (!dirty) return;
-    const warn = (event: BeforeUnloadEvent) => event.preventDefault();
+    letGo.current = false;
+    const warn = (event: BeforeUnloadEvent) => letGo.current || event.preventDefault();
     window.addEventListener("beforeunload", warn);
     return () => window.removeEventListener("beforeunload", warn);
   }, [dirty]);
 
   /** After a save, or to drop the changes: what the server keeps is the plant again. */
-  function settle(content: PlantContent, atVersion: number | null) {
+  function settle(content: PlantContent, atVersion: number | null, named = name) {
     keep(key, null);
+    letGo.current = true;
     setRestoredAt(null);
-    setSaved(content);
+    setSaved({ content, name: named });
+    setName(named);
     setVersion(atVersion);
     if (content !== present) reset(content);
   }
@@ -83,13 +87,10 @@ export function usePlantDraft(key: string, start: Start) {
     version,
     dirty,
     restoredAt,
-    /** Saved on top of a newer version after a look at what differs. */
+    /** The same content now starts from a newer version. */
     rebase: setVersion,
     settle,
-    discard: () => {
-      settle(start.content, start.version);
-      setName(start.name);
-    },
+    discard: () => settle(saved.content, start.version, saved.name),
   };
 }
 export type PlantDraft = ReturnType<typeof usePlantDraft>;
