@@ -15,7 +15,7 @@ export function FrontDoor({ entrance, sheet }: Readonly<{ entrance: ReactNode; s
             From the linear model to gains that a colleague can check: one law for all axes at once, its coupling in plain sight,
             units and limits beside every number.
           </p>
-          <div className="mb-7 flex flex-wrap gap-3">{entrance}</div>
+          <div className="no-print mb-7 flex flex-wrap gap-3">{entrance}</div>
           <FrontSteps />
         </div>
         {sheet}

@@ -37,7 +37,7 @@ export function InvitationsSection({ showsOutbox }: Readonly<{ showsOutbox: bool
     <>
       <InviteForm onInvited={refresh} />
       {showsOutbox ? (
-        <p className="mt-2 text-sm text-soft">
+        <p className="no-print mt-2 text-sm text-soft">
           In this demonstration the mail can be read in the <Link href="/outbox">outbox</Link>.
         </p>
       ) : null}
@@ -86,7 +86,12 @@ const invitationColumns = (onWithdraw: (invitation: Invitation) => void): readon
     key: "act",
     header: <span className="sr-only">Withdraw</span>,
     cell: (invitation) => (
-      <Button size="small" aria-label={`Withdraw the invitation to ${invitation.email}`} onClick={() => onWithdraw(invitation)}>
+      <Button
+        size="small"
+        className="no-print"
+        aria-label={`Withdraw the invitation to ${invitation.email}`}
+        onClick={() => onWithdraw(invitation)}
+      >
         Withdraw
       </Button>
     ),

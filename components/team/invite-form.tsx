@@ -30,7 +30,7 @@ export function InviteForm({ onInvited }: Readonly<{ onInvited: () => Promise<vo
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="max-w-3xl">
+    <form method="post" onSubmit={submit} noValidate className="no-print max-w-3xl">
       <FormProblems title="Nobody was invited." {...{ attempt, problems }} />
       <div className="flex flex-wrap items-start gap-4">
         <TextField

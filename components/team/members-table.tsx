@@ -63,7 +63,12 @@ export function MembersTable({ members, userId, mayManage, busy, onRole, onRemov
         const own = member.userId === userId;
         if (onlyLead(member) || !(own || mayManage)) return null;
         return (
-          <Button size="small" aria-label={own ? "Leave the team" : `Remove ${member.name}`} onClick={() => onRemove(member)}>
+          <Button
+            size="small"
+            className="no-print"
+            aria-label={own ? "Leave the team" : `Remove ${member.name}`}
+            onClick={() => onRemove(member)}
+          >
             {own ? "Leave" : "Remove"}
           </Button>
         );
