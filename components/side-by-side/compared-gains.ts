@@ -16,9 +16,14 @@ export type GainDifference = {
 /** A matrix minus another, signal by signal: rows and columns are matched by name and unit, not by place. */
 export function gainDifference(matrix: GainMatrix, first: GainMatrix): GainDifference {
   const [down, across] = [placesIn(first.rows, matrix.rows), placesIn(first.columns, matrix.columns)];
-  const known = <T,>(list: readonly T[], places: readonly number[]) => list.filter((_, index) => places[index] >= 0);
+  const known = <T>(list: readonly T[], places: readonly number[]) => list.filter((_, index) => places[index] >= 0);
   const values: Rows = known(
-    matrix.values.map((row, r) => known(row.map((value, c) => value - (first.values[down[r]]?.[across[c]] ?? 0)), across)),
+    matrix.values.map((row, r) =>
+      known(
+        row.map((value, c) => value - (first.values[down[r]]?.[across[c]] ?? 0)),
+        across,
+      ),
+    ),
     down,
   );
   const missing = (from: readonly Header[], to: readonly Header[]) =>
@@ -28,7 +33,10 @@ export function gainDifference(matrix: GainMatrix, first: GainMatrix): GainDiffe
     [matrix.columns, first.columns],
   ];
   const left = new Set(pairs.flatMap(([mine, theirs]) => [...missing(mine, theirs), ...missing(theirs, mine)]));
-  return { matrix: { ...matrix, rows: known(matrix.rows, down), columns: known(matrix.columns, across), values }, left: [...left] };
+  return {
+    matrix: { ...matrix, rows: known(matrix.rows, down), columns: known(matrix.columns, across), values },
+    left: [...left],
+  };
 }
 
 /** Whether an entry reads differently from the first design's, signal matched to signal. */

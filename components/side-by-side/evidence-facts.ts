@@ -113,7 +113,9 @@ export function evidenceFacts(revision: DesignRevision): Fact[] {
   return [
     ...(poles ? poleFacts(loop, poles, model) : refused(loop, evidence.poles)),
     ...(observer ? poleFacts(estimate, observer.poles, model) : refused(estimate, evidence.observer)),
-    ...(stepped && fullState ? summaryFacts("Figures with the full state, worst over everything commanded", fullState, model) : []),
+    ...(stepped && fullState
+      ? summaryFacts("Figures with the full state, worst over everything commanded", fullState, model)
+      : []),
     ...(stepped && observed ? summaryFacts("Figures with the observer, worst over everything commanded", observed, model) : []),
     ...refused("Responses", evidence.responses),
     ...setPointFacts(revision),

@@ -76,7 +76,10 @@ function wantedSignals({ signals }: ResponseCurves): Signal[] {
 const keyOf = ({ role, name, unit }: Signal) => `${role} ${name} ${unit}`;
 
 /** One picture per quantity and input, every design's curve in it. `curves[k]` belongs to `designs[k]`; null where there is none. */
-export function overlayPictures(designs: readonly OverlaidDesign[], curves: readonly (ResponseCurves | null)[]): OverlayPicture[] {
+export function overlayPictures(
+  designs: readonly OverlaidDesign[],
+  curves: readonly (ResponseCurves | null)[],
+): OverlayPicture[] {
   const drawn = designs.flatMap((design, place): Overlaid[] => {
     const curve = curves[place];
     return curve ? [{ design, place, curve }] : [];

@@ -1,58 +1,58 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
-import { DesignPicker } from "@/components/side-by-side/design-picker";
-import { SideBySide } from "@/components/side-by-side/side-by-side";
+import { cache } from "react";
+import { ChooseDesigns } from "@/components/side-by-side/choose-designs";
+import { compareDesigns } from "@/components/side-by-side/compare-designs";
+import { askedDesigns, FEWEST } from "@/components/side-by-side/side-by-side-ids";
+import { SideBySidePage } from "@/components/side-by-side/side-by-side-page";
 import { PageBody } from "@/components/ui/page-body";
 import { pageContext } from "@/lib/auth/session";
 import { NotFound } from "@/lib/errors";
-import { DesignRevisionAddress, PlantAddress } from "@/lib/schemas/addresses";
-import type { Context } from "@/lib/services/context";
+import { isAllowed } from "@/lib/permissions/allow";
+import { PlantAddress } from "@/lib/schemas/addresses";
 import { readDesignRevision } from "@/lib/services/designs/read-revision";
 import { readPlant } from "@/lib/services/plants/read";
-
-export const metadata: Metadata = { title: "Side by side" };
-
-const MOST = 6;
 
 type PageProps = Readonly<{
   params: Promise<{ plantId: string }>;
   searchParams: Promise<Readonly<Record<string, string | string[] | undefined>>>;
 }>;
 
-/** The ids of an address, each once. Anything else in it is answered like a design that does not exist. */
-function idsIn(asked: string | string[] | undefined): string[] {
-  const ids = [...new Set([asked ?? []].flat().flatMap((text) => text.split(",").filter(Boolean)))];
-  if (ids.some((revisionId) => !DesignRevisionAddress.safeParse({ revisionId }).success)) notFound();
-  return ids;
-}
-
-/** Another team's plant or design, and a design of another plant, is answered like one that does not exist. */
-async function load(ctx: Context, plantId: string, ids: readonly string[]) {
-  if (!PlantAddress.safeParse({ plantId }).success) notFound();
+/** Revisions of another team, of another plant and of nothing are answered alike. */
+const load = cache(async (plantId: string, designs: string) => {
+  const ctx = await pageContext(`/plants/${plantId}/side-by-side${designs && `?designs=${encodeURIComponent(designs)}`}`);
+  const { ids, nonsense, tooMany } = askedDesigns(designs);
+  if (nonsense || !PlantAddress.safeParse({ plantId }).success) notFound();
   try {
-    const { name } = await readPlant(ctx, plantId);
-    const designs = await Promise.all(ids.slice(0, MOST).map((id) => readDesignRevision(ctx, id)));
-    if (designs.some((design) => design.plantId !== plantId)) notFound();
-    return { plant: { id: plantId, name }, designs };
+    const { id, name } = await readPlant(ctx, plantId);
+    const revisions = await Promise.all(ids.map((revisionId) => readDesignRevision(ctx, revisionId)));
+    if (revisions.some((revision) => revision.plantId !== plantId)) notFound();
+    return { plant: { id, name }, ids, tooMany, revisions, maySave: isAllowed(ctx, "comparison:write") };
   } catch (error) {
     if (error instanceof NotFound) notFound();
     throw error;
   }
+});
+
+async function startOf({ params, searchParams }: PageProps) {
+  const [{ plantId }, { designs, choose }] = [await params, await searchParams];
+  const start = await load(plantId.toLowerCase(), [designs ?? []].flat().join(","));
+  return { ...start, choosing: start.tooMany || start.ids.length < FEWEST || choose === "yes" };
 }
 
-export default async function Page({ params, searchParams }: PageProps) {
-  const [{ plantId }, query] = [await params, await searchParams];
-  const asked = [query.designs ?? []].flat().join(",");
-  const ctx = await pageContext(`/plants/${plantId}/side-by-side${asked ? `?designs=${encodeURIComponent(asked)}` : ""}`);
-  const ids = idsIn(asked);
-  const { plant, designs } = await load(ctx, plantId, ids);
-  const enough = ids.length >= 2 && ids.length <= MOST;
+export async function generateMetadata(props: PageProps): Promise<Metadata> {
+  const { plant } = await startOf(props);
+  return { title: `Side-by-side, ${plant.name}` };
+}
+
+export default async function Page(props: PageProps) {
+  const { plant, ids, tooMany, revisions, maySave, choosing } = await startOf(props);
   return (
     <PageBody>
-      {enough ? (
-        <SideBySide key={ids.join(" ")} plant={plant} designs={designs} />
+      {choosing ? (
+        <ChooseDesigns key={ids.join()} plant={plant} chosen={ids} tooMany={tooMany} />
       ) : (
-        <DesignPicker plant={plant} chosen={ids.slice(0, MOST)} tooMany={ids.length > MOST} />
+        <SideBySidePage key={ids.join()} plant={plant} comparing={compareDesigns(revisions)} maySave={maySave} />
       )}
     </PageBody>
   );
