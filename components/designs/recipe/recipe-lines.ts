@@ -5,9 +5,26 @@ import { noiseUnit, weightUnit } from "../unit-text";
 import { weightOf } from "./recipe-form";
 import { METHOD_WORDS, OBSERVER_WORDS, poleEntryText, reasonPlace } from "./recipe-words";
 
+/** The sections that facts stand in, in the order they are read. */
+export const RECIPE_SECTIONS = [
+  "Method",
+  "Largest deviation accepted",
+  "Effort accepted",
+  "State weight",
+  "Input weight",
+  "Cross weight",
+  "Wanted poles",
+  "Observer",
+  "Noise on the states",
+  "Noise of the measurement",
+  "Test",
+  "Reasons",
+] as const;
+type Section = (typeof RECIPE_SECTIONS)[number];
+
 /** One fact of a recipe. Facts of two recipes with the same key are about the same thing. */
 export type RecipeLine = {
-  readonly section: string;
+  readonly section: Section;
   readonly key: string;
   readonly label: string;
   readonly text: string;
@@ -24,7 +41,7 @@ const withUnit = (value: number, unit: string) => (unit ? `${formatNumber(value)
 
 function deviationLines({ weights }: WeightsRecipe, { states, inputs }: PlantModel): RecipeLine[] {
   if (weights.form !== "deviations") return [];
-  const line = (section: string, { name, unit, axis }: Signal, value: number | null): RecipeLine => ({
+  const line = (section: Section, { name, unit, axis }: Signal, value: number | null): RecipeLine => ({
     section,
     key: `${section} ${name}`,
     label: name,
@@ -40,7 +57,7 @@ function deviationLines({ weights }: WeightsRecipe, { states, inputs }: PlantMod
 
 /** Diagonal entries, and those off the diagonal that are not zero. */
 function matrixLines(
-  section: string,
+  section: Section,
   matrix: Rows,
   rows: readonly Signal[],
   columns: readonly Signal[],
@@ -81,19 +98,27 @@ export function weightMatrixLines(recipe: WeightsRecipe, { states, inputs }: Pla
 }
 
 function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): RecipeLine[] {
-  const method = { section: "Method", key: "method", label: "method", text: METHOD_WORDS[recipe.method], exact: recipe.method };
+  const method: RecipeLine = {
+    section: "Method",
+    key: "method",
+    label: "method",
+    text: METHOD_WORDS[recipe.method],
+    exact: recipe.method,
+  };
   if (recipe.method === "poles") {
-    const poles = recipe.poles.map((entry, k) => ({
-      section: "Wanted poles",
-      key: `wanted ${k}`,
-      label: `entry ${k + 1}`,
-      text: poleEntryText(entry, model.timeBase),
-      exact: JSON.stringify(entry),
-    }));
+    const poles = recipe.poles.map(
+      (entry, k): RecipeLine => ({
+        section: "Wanted poles",
+        key: `wanted ${k}`,
+        label: `entry ${k + 1}`,
+        text: poleEntryText(entry, model.timeBase),
+        exact: JSON.stringify(entry),
+      }),
+    );
     return [method, ...poles];
   }
   const { degreeOfStability: degree, crossWeight } = recipe;
-  const stability = {
+  const stability: RecipeLine = {
     section: "Method",
     key: "stability",
     label: "degree of stability",
@@ -108,7 +133,13 @@ function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): Re
 
 function observerLines({ observer }: Recipe, { states, outputs, timeBase }: PlantModel): RecipeLine[] {
   const section = "Observer";
-  const kind = { section, key: "observer", label: "observer", text: OBSERVER_WORDS[observer.kind], exact: observer.kind };
+  const kind: RecipeLine = {
+    section,
+    key: "observer",
+    label: "observer",
+    text: OBSERVER_WORDS[observer.kind],
+    exact: observer.kind,
+  };
   if (observer.kind === "none") return [kind];
   if (observer.kind === "noise") {
     const sampled = timeBase.kind === "sampled";
@@ -120,13 +151,15 @@ function observerLines({ observer }: Recipe, { states, outputs, timeBase }: Plan
       ...matrixLines("Noise of the measurement", observer.measurement, outputs, outputs, measured),
     ];
   }
-  const poles = observer.poles.map((entry, k) => ({
-    section,
-    key: `observer ${k}`,
-    label: `observer pole entry ${k + 1}`,
-    text: poleEntryText(entry, timeBase),
-    exact: JSON.stringify(entry),
-  }));
+  const poles = observer.poles.map(
+    (entry, k): RecipeLine => ({
+      section,
+      key: `observer ${k}`,
+      label: `observer pole entry ${k + 1}`,
+      text: poleEntryText(entry, timeBase),
+      exact: JSON.stringify(entry),
+    }),
+  );
   return [kind, ...poles];
 }
 
@@ -157,7 +190,7 @@ function testLines({ reference, test }: Recipe, { states, inputs }: PlantModel):
 
 /** Everything a recipe says, in the order it is read. `asMatrices` writes accepted deviations as the weights they stand for. */
 export function recipeLines(recipe: Recipe, model: PlantModel, asMatrices = false): RecipeLine[] {
-  const reasons = Object.entries(recipe.reasons).map(([key, text]) => {
+  const reasons = Object.entries(recipe.reasons).map(([key, text]): RecipeLine => {
     const place = reasonPlace(key, model);
     return { section: "Reasons", key: `reason ${place}`, label: place, text, exact: text, prose: true };
   });
