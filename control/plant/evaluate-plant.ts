@@ -82,8 +82,19 @@ function idleSignals(content: PlantContent, values: Record<MatrixName, (number |
 }
 
 function assemble(content: PlantContent, matrices: Record<MatrixName, number[][]>): PlantModel {
-  const { timeBase, axes, states, inputs, outputs, disturbances } = content;
+  const { timeBase, axes, states, outputs, disturbances } = content;
   const rest = (signals: readonly unknown[]) => signals.map(() => 0);
-  const operatingPoint = content.operatingPoint ?? { states: rest(states), inputs: rest(inputs), outputs: rest(outputs) };
-  return { timeBase, axes, states, inputs, outputs, disturbances, commanded: commandedOf(content), ...matrices, operatingPoint };
+  const given = content.operatingPoint ?? { states: rest(states), inputs: rest(content.inputs), outputs: rest(outputs) };
+  const operatingPoint = {
+    states: given.states.map(unsignedZero),
+    inputs: given.inputs.map(unsignedZero),
+    outputs: given.outputs.map(unsignedZero),
+  };
+  const inputs = content.inputs.map((input) => ({ ...input, lower: limit(input.lower), upper: limit(input.upper) }));
+  const commanded = commandedOf(content).map((each) => ({ ...each, amplitude: unsignedZero(each.amplitude) }));
+  return { timeBase, axes, states, inputs, outputs, disturbances, commanded, ...matrices, operatingPoint };
 }
+
+/** JSON writes -0 as 0, and a plant is to have the same bits before it is stored and after. */
+const unsignedZero = (x: number) => x + 0;
+const limit = (x: number | null) => (x === null ? null : unsignedZero(x));

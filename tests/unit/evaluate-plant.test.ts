@@ -1,7 +1,9 @@
 import { describe, expect, test } from "vitest";
 import { evaluatePlant } from "@/control/plant/evaluate-plant";
-import { PlantContent } from "@/lib/schemas/plant";
+import { CheckPlant } from "@/lib/schemas/design";
+import { CreatePlant, PlantContent, PlantModel } from "@/lib/schemas/plant";
 import { twoCarriages } from "../helpers/plant-content";
+import { seededUniform } from "../helpers/seeded";
 
 const errors = (content: PlantContent) => evaluatePlant(content).problems.filter(({ severity }) => severity === "error");
 const replaced = (rows: string[][], i: number, j: number, text: string) =>
@@ -94,5 +96,63 @@ describe("evaluatePlant", () => {
     expect(PlantContent.safeParse({ ...content, A: [["1".repeat(201)]] }).success).toBe(false);
     expect(PlantContent.safeParse({ ...content, states: new Array(61).fill(content.states[0]) }).success).toBe(false);
     expect(PlantContent.safeParse(content).success).toBe(true);
+  });
+});
+
+describe("the doubles of a plant", () => {
+  /** Every number in it by its bits, so that nothing passes for equal that is not. */
+  const bitsOf = (model: unknown) =>
+    JSON.stringify(model, (_, value) => {
+      if (typeof value !== "number") return value;
+      const view = new DataView(new ArrayBuffer(8));
+      view.setFloat64(0, value);
+      return view.getBigUint64(0).toString(16);
+    });
+
+  test("are the same bits after JSON, after the schema and after a second evaluation", () => {
+    const random = seededUniform(4242);
+    const names = ["m", "k", "wn", "pi", "e"];
+    const operand = () =>
+      random() < 0.5 ? names[Math.floor(random() * 5)] : String((random() - 0.5) * 10 ** (12 * random() - 6));
+    const formula = () => {
+      const [a, b, c] = [operand(), operand(), operand()];
+      return [
+        `${a}*${b}-${c}`,
+        `(${a}+${b})/k`,
+        `-${a}`,
+        `sin(${a})*cos(${b})`,
+        `sqrt(m)*${c}`,
+        `0*(${a})`,
+        `m^-2*${b}`,
+        "1e-310",
+      ][Math.floor(random() * 8)].replaceAll("--", "+");
+    };
+    for (let round = 0; round < 300; round++) {
+      const content = twoCarriages({
+        A: twoCarriages().A.map((row) => row.map(formula)),
+        operatingPoint: { states: [-0, 0.1, 5e-324, 1e308], inputs: [-0, 1 / 3], outputs: [0, -0] },
+      });
+      const sent = JSON.parse(JSON.stringify(content)) as PlantContent;
+      const [here, there] = [evaluatePlant(content), evaluatePlant(sent)];
+      expect(here.problems).toEqual([]);
+      const bits = bitsOf(here.model);
+      expect(bitsOf(there.model)).toBe(bits);
+      expect(bitsOf(JSON.parse(JSON.stringify(here.model)))).toBe(bits);
+      expect(bitsOf(PlantModel.parse(JSON.parse(JSON.stringify(here.model))))).toBe(bits);
+      expect(bits).not.toContain("8000000000000000");
+    }
+  });
+
+  test("are never taken from whoever sends a plant, only the text they come from", () => {
+    const content = twoCarriages();
+    const { model } = evaluatePlant(content);
+    const body = { name: "Gantry", content };
+    expect(CreatePlant.safeParse(body).success).toBe(true);
+    for (const more of [{ model }, { values: { A: [[1]] } }, { version: 9 }]) {
+      expect(CreatePlant.safeParse({ ...body, ...more }).success).toBe(false);
+      expect(CheckPlant.safeParse({ content, ...more }).success).toBe(false);
+    }
+    for (const more of [{ model }, { values: {} }]) expect(PlantContent.safeParse({ ...content, ...more }).success).toBe(false);
+    expect(PlantContent.safeParse({ ...content, A: [[1, 2]] }).success).toBe(false);
   });
 });
