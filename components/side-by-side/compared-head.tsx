@@ -12,11 +12,12 @@ export function ComparedHead({ plantId, designs }: ComparedHeadProps) {
   return (
     <thead>
       <tr>
-        <td className="sticky left-0 z-1 border-b border-rule bg-paper print:static" />
+        <td className="sticky left-0 z-1 min-w-40 border-b border-rule bg-paper print:static print:min-w-0" />
         {designs.map(({ id, designId, name, number, plantRevision, outdated }, place) => (
           <th
             key={id}
             scope="col"
+            style={{ width: `${84 / designs.length}%` }}
             className="min-w-44 border-b border-rule px-3 pb-2 text-left align-top font-normal print:min-w-0"
           >
             <span className="flex items-center gap-2">

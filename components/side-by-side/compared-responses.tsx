@@ -15,6 +15,11 @@ import type { SideBySideView } from "./use-side-by-side-view";
 
 const CHART_HEIGHT = 260;
 
+const LOOP_NOTES: Readonly<Record<Loop, string>> = {
+  observer: "with the observer where there is one",
+  "full-state": "with the full state",
+};
+
 type ComparedResponsesProps = Readonly<{
   designs: readonly OverlaidDesign[];
   view: SideBySideView;
@@ -25,6 +30,7 @@ type ComparedResponsesProps = Readonly<{
 /** The answers of every design to one command, drawn over each other on the same axes. */
 export function ComparedResponses({ designs, view: [view, setView], whole }: ComparedResponsesProps) {
   const names = commandedNames(designs);
+  const observed = designs.some(({ hasObserver }) => hasObserver);
   const commanded = names.find((name) => name === view.commanded) ?? names.at(0);
   if (commanded === undefined) {
     return (
@@ -36,7 +42,7 @@ export function ComparedResponses({ designs, view: [view, setView], whole }: Com
   return (
     <SheetSection
       title={`Responses to ${commandText(designs, commanded)}`}
-      note="hue tells the axis, dash tells the design"
+      note={`${LOOP_NOTES[observed ? view.loop : "full-state"]}; hue tells the axis, dash tells the design`}
       ruled
     >
       <div className="no-print mb-4 flex flex-wrap items-end gap-5">
@@ -48,7 +54,7 @@ export function ComparedResponses({ designs, view: [view, setView], whole }: Com
             options={names.map((name) => ({ value: name, label: name }))}
           />
         ) : null}
-        {designs.some(({ hasObserver }) => hasObserver) ? (
+        {observed ? (
           <Segmented<Loop>
             legend="Loop"
             value={view.loop}
