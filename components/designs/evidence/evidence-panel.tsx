@@ -1,6 +1,7 @@
 import { Notice } from "../../ui/notice";
 import { StateMark } from "../../ui/state-mark";
 import type { Solved } from "../bench/bench-types";
+import { TWO_COLUMNS } from "../two-columns";
 import { EvidencePart } from "./evidence-part";
 import { methodText, referenceText } from "./evidence-words";
 import { computed } from "./figures-reply";
@@ -15,7 +16,7 @@ export function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
   const { model } = ground;
   const poles = computed(evidence.poles);
   return (
-    <div className="flex flex-col gap-6">
+    <div className={`flex flex-col gap-6 ${TWO_COLUMNS}`}>
       <StepPart solved={solved} />
       <ReferencePart solved={solved} />
       {poles ? (

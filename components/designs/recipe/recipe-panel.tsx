@@ -2,6 +2,7 @@
 
 import type { Complex } from "@/control/plant/model";
 import { Segmented } from "../../ui/radio-group";
+import { TWO_COLUMNS } from "../two-columns";
 import { ObserverFields } from "./observer-fields";
 import { PolesFields } from "./poles-fields";
 import { useRecipe } from "./recipe-context";
@@ -17,7 +18,7 @@ type RecipePanelProps = Readonly<{
 export function RecipePanel({ loopPoles }: RecipePanelProps) {
   const { form, change } = useRecipe();
   return (
-    <div className="flex flex-col gap-6">
+    <div className={`flex flex-col gap-6 ${TWO_COLUMNS}`}>
       <Segmented
         legend="Method"
         hideLegend

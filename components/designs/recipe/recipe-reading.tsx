@@ -1,6 +1,7 @@
 import type { Recipe } from "@/control/design/recipe";
 import type { PlantModel } from "@/control/plant/model";
 import { AxisBar } from "../../plots/axis-bar";
+import { TWO_COLUMNS } from "../two-columns";
 import { type RecipeLine, recipeLines } from "./recipe-lines";
 
 /** A recipe to read, for those who may not change it. */
@@ -8,7 +9,7 @@ export function RecipeReading({ recipe, model }: Readonly<{ recipe: Recipe; mode
   const lines = recipeLines(recipe, model);
   const sections = [...new Set(lines.map(({ section }) => section))];
   return (
-    <div className="flex flex-col gap-5">
+    <div className={`flex flex-col gap-6 ${TWO_COLUMNS}`}>
       {sections.map((section) => (
         <section key={section} aria-label={section}>
           <h3 className="text-table font-semibold">{section}</h3>

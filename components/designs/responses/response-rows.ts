@@ -61,6 +61,10 @@ function furthest(values: readonly number[], step: number): { peak: number; peak
   return { peak: values[at] ?? 0, peakAt: at * step };
 }
 
+const NEGLIGIBLE = 1e-9;
+/** What is left of rounding stands for zero, so that no sentence speaks of 1e-37 at rest. */
+const atRest = (final: number, peak: number) => (Math.abs(final) <= NEGLIGIBLE * Math.abs(peak) ? 0 : final);
+
 type Traced = Pick<ResponseCell, "final" | "peak" | "peakAt" | "settling">;
 
 /** Figures over all time where the evidence has them; else what the samples show. The sign comes from the samples. */
@@ -81,7 +85,7 @@ function figuresOf(
   }
   if (found && (role === "commanded" || role === "output")) {
     const { final, peak, peakAt, settling } = (role === "commanded" ? found.commanded : found.outputs)[index];
-    return { final, peak: signed(peak), peakAt, settling };
+    return { final: atRest(final, peak), peak: signed(peak), peakAt, settling };
   }
   return { final: null, ...seen };
 }
