@@ -1,10 +1,12 @@
 "use client";
 
-import { createContext, type ReactNode, useCallback, useContext, useMemo, useRef, useState } from "react";
+import dynamic from "next/dynamic";
+import { createContext, type ReactNode, useCallback, useContext, useEffect, useMemo, useRef, useState } from "react";
 import { RequestProblem } from "@/lib/client/request";
 import type { Role } from "@/lib/schemas/team";
-import { SignInForm } from "../account/sign-in-form";
-import { Dialog } from "../ui/dialog";
+
+const loadSignIn = () => import("../account/sign-in-again").then((module) => module.SignInAgain);
+const SignInAgain = dynamic(loadSignIn);
 
 export type PersonFacts = { readonly userId: string; readonly email: string };
 export type SessionFacts = PersonFacts & { readonly teamId: string; readonly role: Role };
@@ -37,12 +39,20 @@ type Waiting = { readonly signedIn: () => void; readonly givenUp: () => void };
 /** Keeps the page and everything typed while somebody signs in again. */
 export function SessionProvider({ facts, children }: Readonly<{ facts: PersonFacts | SessionFacts; children: ReactNode }>) {
   const [asking, setAsking] = useState(false);
+  // Stays in place once it was asked: only a dialog that is closed gives the focus back.
+  const [asked, setAsked] = useState(false);
   const waiting = useRef<Waiting[]>([]);
+
+  // Not needed to use the page, but must be there when the session ends, whatever has become of the server's files by then.
+  useEffect(() => {
+    loadSignIn().catch(() => undefined);
+  }, []);
 
   const askToSignIn = useCallback(
     () =>
       new Promise<boolean>((resolve) => {
         waiting.current.push({ signedIn: () => resolve(true), givenUp: () => resolve(false) });
+        setAsked(true);
         setAsking(true);
       }),
     [],
@@ -69,12 +79,9 @@ export function SessionProvider({ facts, children }: Readonly<{ facts: PersonFac
   return (
     <SessionContext value={session}>
       {children}
-      <Dialog open={asking} onClose={() => settle("givenUp")} title="Sign in again to go on">
-        <p className="mb-4">
-          Your session is over. Everything on this page is kept; what you were doing goes on as soon as you are signed in.
-        </p>
-        <SignInForm email={facts.email} onSignedIn={() => settle("signedIn")} />
-      </Dialog>
+      {asked ? (
+        <SignInAgain open={asking} email={facts.email} onSignedIn={() => settle("signedIn")} onGiveUp={() => settle("givenUp")} />
+      ) : null}
     </SessionContext>
   );
 }

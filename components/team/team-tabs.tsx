@@ -1,11 +1,16 @@
 "use client";
 
+import dynamic from "next/dynamic";
+import { LoadingState } from "../ui/loading-state";
 import { SheetSection } from "../ui/sheet-section";
 import { UrlTabs } from "../ui/url-tabs";
-import { AuditTrail } from "./audit-trail";
 import { InvitationsSection } from "./invitations-section";
 import { MembersSection } from "./members-section";
 import { ROLES } from "./role-words";
+
+const AuditTrail = dynamic(() => import("./audit-trail").then((module) => module.AuditTrail), {
+  loading: () => <LoadingState label="Loading the audit trail" lines={8} />,
+});
 
 type TeamTabsProps = Readonly<{ team: string; mayManage: boolean; showsOutbox: boolean }>;
 

@@ -1,11 +1,11 @@
 import type { Metadata } from "next";
-import { AccessTokens } from "@/components/account/access-tokens";
 import { InvitationLinkForm } from "@/components/account/invitation-link-form";
 import { NameForm } from "@/components/account/name-form";
 import { OwnTeams } from "@/components/account/own-teams";
 import { PasswordForm } from "@/components/account/password-form";
 import { SignOutEverywhere } from "@/components/account/sign-out-everywhere";
 import { StartTeamForm } from "@/components/account/start-team-form";
+import { TokenSection } from "@/components/account/token-section";
 import { Notice } from "@/components/ui/notice";
 import { PageBody } from "@/components/ui/page-body";
 import { PageHeading } from "@/components/ui/page-heading";
@@ -54,7 +54,7 @@ export default async function Page() {
           </SheetSection>
           {current ? (
             <SheetSection title="Access tokens" note={`for ${current.name}`}>
-              <AccessTokens team={current.name} />
+              <TokenSection team={current.name} />
             </SheetSection>
           ) : null}
         </div>
