@@ -29,7 +29,15 @@ export function overlayFigure(
     },
     hovertemplate: `%{y:.4g} ${plotText(unit)} at %{x:.4g} s<extra>${plotText(name)}</extra>`,
   }));
-  const ruling = { gridcolor: rule, zerolinecolor: soft, linecolor: soft, tickfont: { family: figures, size: 12, color: soft } };
+  // Units stand in the titles: no prefixes such as µ at the figures.
+  const exponentformat = "e" as const;
+  const ruling = {
+    exponentformat,
+    gridcolor: rule,
+    zerolinecolor: soft,
+    linecolor: soft,
+    tickfont: { family: figures, size: 12, color: soft },
+  };
   const layout: Partial<Layout> = {
     autosize: true,
     margin: { l: 64, r: 12, t: 8, b: 44 },

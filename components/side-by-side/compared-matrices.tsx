@@ -71,10 +71,12 @@ function Matrices({ symbol, designs, difference }: MatricesProps) {
             </p>
           );
         }
-        const copy = symbol === "K" ? <CopyButton label="Copy with names and units" text={() => gainText(gains)} /> : null;
+        const changed = difference && place > 0;
+        // Beside a difference a copy could be taken for it.
+        const copied = symbol === "K" && !changed;
         return (
           <div key={id} className="min-w-0">
-            {difference && place > 0 ? (
+            {changed ? (
               <Difference {...{ matrix, first, label }} base={designs[0].label} />
             ) : (
               <WovenMatrix
@@ -87,7 +89,7 @@ function Matrices({ symbol, designs, difference }: MatricesProps) {
                 copy={false}
               />
             )}
-            {copy}
+            {copied ? <CopyButton label="Copy with names and units" text={() => gainText(gains)} /> : null}
           </div>
         );
       })}
