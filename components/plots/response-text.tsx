@@ -29,7 +29,12 @@ export function ResponseText({ rows, columns, time }: ResponseTextProps) {
                   time={time}
                   series={rows.flatMap(({ key, label, unit, cells }) => {
                     const cell = cells[c];
-                    return cell ? [{ key, label, unit, values: cell.values }] : [];
+                    if (!cell) return [];
+                    return [
+                      { key, label, unit, values: cell.values },
+                      ...beside(`${key} estimated`, `${label}, estimated`, unit, cell.estimated),
+                      ...beside(`${key} full state`, `${label}, full state`, unit, cell.fullState),
+                    ];
                   })}
                 />
               </ScrollBox>
@@ -39,3 +44,7 @@ export function ResponseText({ rows, columns, time }: ResponseTextProps) {
     </Disclosure>
   );
 }
+
+/** A thin line drawn beside a curve stands beside it in the figures, too. */
+const beside = (key: string, label: string, unit: string, values: ArrayLike<number> | null | undefined) =>
+  values ? [{ key, label, unit, values }] : [];

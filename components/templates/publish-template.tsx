@@ -31,20 +31,18 @@ export function PublishTemplate({ plantName, content, designs }: PublishTemplate
   const router = useRouter();
   const keyFor = useCreateKey();
   const [open, setOpen] = useState(false);
-  const [draft, setDraft] = useState(() => startDraft(plantName, content, designs[0]?.revisionId ?? ""));
+  const [kept, setDraft] = useState(() => startDraft(plantName, content, ""));
+  // The designs may arrive after the dialog was opened, and the chosen one may be gone.
+  const known = designs.some(({ revisionId }) => revisionId === kept.revisionId);
+  const draft = known ? kept : { ...kept, revisionId: designs[0]?.revisionId ?? "" };
   const submit = useSubmit(publishFields(draft.rows));
   const possible = draft.rows.length > 0 && designs.length > 0;
 
   const start = () => {
     // A plant that was saved meanwhile has other parameters; what was typed for those that remain is kept.
-    const fresh = startDraft(plantName, content, designs[0]?.revisionId ?? "");
-    const kept = new Map(draft.rows.filter((row) => row.open).map((row) => [row.name, row]));
-    const known = designs.some(({ revisionId }) => revisionId === draft.revisionId);
-    setDraft({
-      ...draft,
-      revisionId: known ? draft.revisionId : fresh.revisionId,
-      rows: fresh.rows.map((row) => kept.get(row.name) ?? row),
-    });
+    const { rows } = startDraft(plantName, content, "");
+    const opened = new Map(draft.rows.filter((row) => row.open).map((row) => [row.name, row]));
+    setDraft({ ...draft, rows: rows.map((row) => opened.get(row.name) ?? row) });
     setOpen(true);
   };
   const publish = async () => {
