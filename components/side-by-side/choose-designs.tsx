@@ -5,7 +5,7 @@ import { DesignsTable } from "../designs/designs-table";
 import { Notice } from "../ui/notice";
 import { PageHeading } from "../ui/page-heading";
 import { SheetSection } from "../ui/sheet-section";
-import { MOST } from "./side-by-side-ids";
+import { MOST } from "./design-limits";
 
 type ChooseDesignsProps = Readonly<{
   plant: { readonly id: string; readonly name: string };

@@ -1,7 +1,5 @@
 import { Id } from "@/lib/schemas/common";
-
-export const FEWEST = 2;
-export const MOST = 6;
+import { MOST } from "./design-limits";
 
 export type AskedDesigns = {
   /** Each once, in the order of the address, as many as fit. */
