@@ -4,10 +4,13 @@ import dynamic from "next/dynamic";
 import { LoadingState } from "../ui/loading-state";
 import { SheetSection } from "../ui/sheet-section";
 import { UrlTabs } from "../ui/url-tabs";
-import { InvitationsSection } from "./invitations-section";
 import { MembersSection } from "./members-section";
 import { ROLES } from "./role-words";
 
+/** Only leads meet it. */
+const InvitationsSection = dynamic(() => import("./invitations-section").then((module) => module.InvitationsSection), {
+  loading: () => <LoadingState label="Loading the invitations" lines={3} />,
+});
 const AuditTrail = dynamic(() => import("./audit-trail").then((module) => module.AuditTrail), {
   loading: () => <LoadingState label="Loading the audit trail" lines={8} />,
 });
