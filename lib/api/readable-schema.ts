@@ -1,6 +1,7 @@
 /** As much of a JSON schema as the generator writes. */
 export type JsonSchema = {
   readonly $ref?: string;
+  readonly description?: string;
   readonly type?: string | readonly string[];
   readonly format?: string;
   readonly enum?: readonly unknown[];
@@ -19,8 +20,13 @@ export type JsonSchema = {
   readonly additionalProperties?: boolean | JsonSchema;
 };
 
-/** `name` of a field inside another one is written as its way down, such as `axes[].tag`. */
-export type ReadableField = { readonly name: string; readonly type: string; readonly required: boolean };
+/** `name` of a field inside another one is written as its way down, such as `axes[].tag`; `note` says the unit of numbers. */
+export type ReadableField = {
+  readonly name: string;
+  readonly type: string;
+  readonly required: boolean;
+  readonly note: string;
+};
 
 /** A type in a few words; what has a name is called by it. */
 export function typeInWords(schema: JsonSchema): string {
@@ -76,7 +82,8 @@ export function fieldsOf(schema: JsonSchema, prefix = ""): readonly (readonly Re
   const alternatives = schema.oneOf ?? schema.anyOf;
   if (alternatives) return alternatives.flatMap((one) => fieldsOf(one, prefix));
   const fields = Object.entries(schema.properties ?? {}).flatMap(([name, field]) => {
-    const own = { name: `${prefix}${name}`, type: typeInWords(field), required: schema.required?.includes(name) ?? false };
+    const required = schema.required?.includes(name) ?? false;
+    const own = { name: `${prefix}${name}`, type: typeInWords(field), required, note: field.description ?? "" };
     return [own, ...inner(field, own.name)];
   });
   return [fields];

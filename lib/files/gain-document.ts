@@ -86,7 +86,8 @@ function gainMatrices({ model, gains, reference }: GainSource): NamedMatrix[] {
 function observerMatrices(observer: ObserverEvidence, model: PlantModel): NamedMatrix[] {
   const [x, u, y] = [model.states, model.inputs, model.outputs].map((signals) => signals.map(named));
   if (observer.kind === "full") return [{ symbol: "L", meaning: "observer gain", rows: x, columns: y, entries: observer.L }];
-  const w = Array.from({ length: observer.order }, (_, index) => ({ name: `w${index + 1}`, unit: "" }));
+  // Mixtures of states, in units of nobody but this observer.
+  const w = Array.from({ length: observer.order }, (_, index) => ({ name: `w${index + 1}`, unit: "own" }));
   return [
     { symbol: "Fw", meaning: "observer dynamics", rows: w, columns: w, entries: observer.Fw },
     { symbol: "Fy", meaning: "observer, measured outputs", rows: w, columns: y, entries: observer.Fy },

@@ -27,6 +27,13 @@ export const Positive = Finite.positive("A number above zero is needed here");
 export const Version = z.int().positive();
 export const Timestamp = z.iso.datetime();
 
+/** Says in the API description which unit a number has, or the numbers of a list or matrix have. */
+export const inUnit = <T extends z.ZodType>(schema: T, unit: string): T => schema.meta({ description: unit });
+export const Seconds = inUnit(Finite, "in seconds");
+export const Plain = inUnit(Finite, "without a unit");
+/** For a field whose unit stands beside it. */
+export const OwnUnit = "in `unit`";
+
 export const Rows = z.array(z.array(Finite).max(60)).max(60);
 
 export const PageQuery = z.strictObject({

@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { Finite, Rows } from "./common";
+import { Finite, inUnit, OwnUnit, Plain, Rows, Seconds } from "./common";
 
 /** A refused part says in the reader's own signal names which assumption failed and what to change. */
 export const Refusal = z.strictObject({
@@ -21,49 +21,72 @@ function optionalPart<T extends z.ZodType>(value: T) {
   return z.discriminatedUnion("state", [z.strictObject({ state: z.literal("computed"), value }), Refusal, Absent]);
 }
 
-export const Complex = z.strictObject({ re: Finite, im: Finite });
-const MaybeNumber = Finite.nullable();
+const PoleUnit = inUnit(Finite, "in rad/s; of a sampled plant, in the z-plane, without a unit");
+export const Complex = z.strictObject({ re: PoleUnit, im: PoleUnit });
+const MaybeSeconds = inUnit(Finite.nullable(), "in seconds");
+const MaybePlain = inUnit(Finite.nullable(), "without a unit");
+const MaybePercent = inUnit(Finite.nullable(), "in percent of the final value");
+const MaybeLimits = inUnit(Finite.nullable(), "over the nearest limit of the input, without a unit");
+const SignalUnit = inUnit(Finite, "in the unit of the signal");
+const InputUnit = inUnit(Finite, "in the unit of the input");
+const PlainRows = inUnit(Rows, "without a unit");
+const Shares = inUnit(z.array(Finite), "without a unit");
+/** Per second where the plant is continuous, per step where it is sampled. */
+const rate = (of: string) => inUnit(Rows, `${of}, per second; of a sampled plant per step`);
 
 export const PoleReport = z.strictObject({
   pole: Complex,
-  naturalFrequency: MaybeNumber,
-  damping: MaybeNumber,
-  timeConstant: MaybeNumber,
+  naturalFrequency: inUnit(Finite.nullable(), "in rad/s"),
+  damping: MaybePlain,
+  timeConstant: MaybeSeconds,
   mainState: z.int().nullable(),
 });
 
 export const GainEvidence = z.strictObject({
-  K: Rows,
+  K: inUnit(Rows, "unit of the row's input over unit of the column's state"),
   method: z.string(),
-  residual: Finite,
-  bound: Finite,
-  errorBound: MaybeNumber,
-  P: Rows.nullable(),
-  eigenvectorCondition: MaybeNumber,
-  poleError: MaybeNumber,
+  residual: Plain,
+  bound: Plain,
+  errorBound: MaybePlain,
+  P: inUnit(Rows.nullable(), "unit of the cost over the units of both states"),
+  eigenvectorCondition: MaybePlain,
+  poleError: MaybePlain,
 });
 
 export const ReferenceEvidence = z.strictObject({
-  F: Rows,
-  steadyState: Rows,
+  F: inUnit(Rows, "unit of the row's input over unit of the column's commanded quantity"),
+  steadyState: inUnit(Rows, "unit of the row's commanded quantity over that of the column"),
   reached: z.array(z.boolean()),
   obstacle: z.enum(["too-few-inputs", "zero-at-rest", "rank"]).nullable(),
 });
 
-const verified = { residual: Finite, bound: Finite, poles: z.array(PoleReport), method: z.string() };
+const verified = { residual: Plain, bound: Plain, poles: z.array(PoleReport), method: z.string() };
 export const ObserverEvidence = z.discriminatedUnion("kind", [
-  z.strictObject({ kind: z.literal("full"), L: Rows, ...verified }),
-  z.strictObject({ kind: z.literal("reduced"), order: z.int(), Fw: Rows, Fy: Rows, Fu: Rows, Gw: Rows, Gy: Rows, ...verified }),
+  z.strictObject({
+    kind: z.literal("full"),
+    L: rate("unit of the row's state over unit of the column's output"),
+    ...verified,
+  }),
+  z.strictObject({
+    kind: z.literal("reduced"),
+    order: z.int(),
+    Fw: rate("between the observer's own coordinates"),
+    Fy: rate("own coordinate over unit of the column's output"),
+    Fu: rate("own coordinate over unit of the column's input"),
+    Gw: inUnit(Rows, "unit of the row's state over own coordinate"),
+    Gy: inUnit(Rows, "unit of the row's state over unit of the column's output"),
+    ...verified,
+  }),
 ]);
 
 const SignalFigures = z.strictObject({
-  final: Finite,
-  peak: Finite,
-  peakAt: MaybeNumber,
-  overshoot: MaybeNumber,
-  undershoot: MaybeNumber,
-  rise: MaybeNumber,
-  settling: MaybeNumber,
+  final: SignalUnit,
+  peak: SignalUnit,
+  peakAt: MaybeSeconds,
+  overshoot: MaybePercent,
+  undershoot: MaybePercent,
+  rise: MaybeSeconds,
+  settling: MaybeSeconds,
 });
 export const Loop = z.enum(["full-state", "observer"]);
 export const StepFigures = z.strictObject({
@@ -71,20 +94,22 @@ export const StepFigures = z.strictObject({
   source: z.int(),
   commanded: z.array(SignalFigures),
   outputs: z.array(SignalFigures),
-  effort: z.array(z.strictObject({ peak: Finite, at: MaybeNumber, overLimit: MaybeNumber })),
+  effort: z.array(z.strictObject({ peak: InputUnit, at: MaybeSeconds, overLimit: MaybeLimits })),
 });
+const CrossPeak = inUnit(Finite, "over the signal's own test amplitude, without a unit");
 export const Summary = z.strictObject({
-  worstSettling: MaybeNumber,
-  worstRise: MaybeNumber,
-  worstOvershoot: MaybeNumber,
-  worstCrossPeak: z.strictObject({ source: z.int(), signal: z.int(), peak: Finite }).nullable(),
-  peakEffort: z.array(z.strictObject({ peak: Finite, overLimit: MaybeNumber })),
+  worstSettling: MaybeSeconds,
+  worstRise: MaybeSeconds,
+  worstOvershoot: MaybePercent,
+  worstCrossPeak: z.strictObject({ source: z.int(), signal: z.int(), peak: CrossPeak }).nullable(),
+  /** In the order of the plant's inputs. */
+  peakEffort: z.array(z.strictObject({ peak: InputUnit, overLimit: MaybeLimits })),
 });
 export type Summary = z.infer<typeof Summary>;
 
 /** Everything of the responses but the curves, which are fetched apart. */
 export const ResponseFigures = z.strictObject({
-  horizon: Finite,
+  horizon: Seconds,
   figures: z.array(StepFigures),
   summary: z.strictObject({ fullState: Summary, observer: Summary.nullable() }),
 });
@@ -110,14 +135,14 @@ export const ResponseCurves = z.strictObject({
   loop: Loop,
   source: z.int(),
   sourceName: z.string(),
-  amplitude: Finite,
+  amplitude: inUnit(Finite, OwnUnit),
   unit: z.string(),
-  step: Finite,
+  step: Seconds,
   samples: z.int(),
   signals: z.array(
     z.strictObject({ role: SignalRole, index: z.int(), name: z.string(), unit: z.string(), axis: z.int().nullable() }),
   ),
-  values: z.array(z.array(Finite)),
+  values: inUnit(z.array(z.array(Finite)), "each row in the unit of its signal"),
 });
 export type ResponseCurves = z.infer<typeof ResponseCurves>;
 export const ResponseList = z.strictObject({ items: z.array(ResponseCurves) });
@@ -139,26 +164,26 @@ export type ResponseQuery = z.infer<typeof ResponseQuery>;
 
 const ModeReport = z.strictObject({
   pole: Complex,
-  naturalFrequency: MaybeNumber,
-  damping: MaybeNumber,
-  timeConstant: MaybeNumber,
+  naturalFrequency: inUnit(Finite.nullable(), "in rad/s"),
+  damping: MaybePlain,
+  timeConstant: MaybeSeconds,
   stable: z.boolean(),
   marginal: z.boolean(),
-  participation: z.array(Finite),
-  controlDistance: Finite,
-  observeDistance: Finite,
+  participation: Shares,
+  controlDistance: Plain,
+  observeDistance: Plain,
   controllable: z.boolean(),
   observable: z.boolean(),
-  inputShare: z.array(Finite),
-  outputShare: z.array(Finite),
+  inputShare: Shares,
+  outputShare: Shares,
 });
 const RankReport = z.strictObject({
   rank: z.int(),
   full: z.int(),
-  singularValues: z.array(Finite),
-  tolerance: Finite,
-  weakestDirection: z.array(Finite),
-  weakestValue: Finite,
+  singularValues: Shares,
+  tolerance: Plain,
+  weakestDirection: Shares,
+  weakestValue: Plain,
 });
 
 export const ChecksReply = z.strictObject({
@@ -168,10 +193,10 @@ export const ChecksReply = z.strictObject({
   stabilizable: part(z.boolean()),
   detectable: part(z.boolean()),
   zeros: part(z.array(z.strictObject({ value: Complex, minimumPhase: z.boolean() }))),
-  coupling: part(z.strictObject({ blocks: Rows, relativeGain: Rows.nullable() })),
+  coupling: part(z.strictObject({ blocks: PlainRows, relativeGain: PlainRows.nullable() })),
   scaling: z.strictObject({
-    spreadAsGiven: Finite,
-    spreadScaled: Finite,
+    spreadAsGiven: Plain,
+    spreadScaled: Plain,
     caution: z.boolean(),
     assumedStates: z.array(z.int()),
     assumedInputs: z.array(z.int()),

@@ -1,11 +1,26 @@
 import { z } from "zod";
 import type { PlantContent as Content } from "@/control/plant/content";
 import { SIZE_LIMITS } from "@/control/plant/model";
-import { AxisTag, Finite, Id, Name, PageQuery, Positive, Remark, Rows, SignalName, Timestamp, Unit, Version } from "./common";
+import {
+  AxisTag,
+  Finite,
+  Id,
+  inUnit,
+  Name,
+  OwnUnit,
+  PageQuery,
+  Positive,
+  Remark,
+  Rows,
+  SignalName,
+  Timestamp,
+  Unit,
+  Version,
+} from "./common";
 
 export const TimeBase = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("continuous") }),
-  z.strictObject({ kind: z.literal("sampled"), period: Positive }),
+  z.strictObject({ kind: z.literal("sampled"), period: inUnit(Positive, "in seconds") }),
 ]);
 
 /** The length limit comes before any parsing: a deep expression must never reach the parser. */
@@ -14,13 +29,15 @@ const entries = (rows: number, columns: number) => z.array(z.array(Entry).max(co
 
 const AxisIndex = z.int().min(0).max(19).nullable();
 const signal = { name: SignalName, unit: Unit, axis: AxisIndex };
-const scaled = { ...signal, scale: Positive.nullable() };
+const own = inUnit(Finite, OwnUnit);
+const maybeOwn = inUnit(Finite.nullable(), OwnUnit);
+const scaled = { ...signal, scale: inUnit(Positive.nullable(), OwnUnit) };
 const { states, inputs, outputs, commanded, disturbances } = SIZE_LIMITS;
 
 const OperatingPoint = z.strictObject({
-  states: z.array(Finite).max(states),
-  inputs: z.array(Finite).max(inputs),
-  outputs: z.array(Finite).max(outputs),
+  states: inUnit(z.array(Finite).max(states), "each in the unit of its state"),
+  inputs: inUnit(z.array(Finite).max(inputs), "each in the unit of its input"),
+  outputs: inUnit(z.array(Finite).max(outputs), "each in the unit of its output"),
 });
 
 /** Bounds and types only. Shapes, names, units and expressions are judged by `evaluatePlant`, alike in browser and server. */
@@ -33,13 +50,13 @@ export const PlantContent = z.strictObject({
     .max(64, "At most 64 parameters"),
   states: z.array(z.strictObject(scaled)).min(1, "A plant needs at least one state").max(states, `At most ${states} states`),
   inputs: z
-    .array(z.strictObject({ ...scaled, lower: Finite.nullable(), upper: Finite.nullable() }))
+    .array(z.strictObject({ ...scaled, lower: maybeOwn, upper: maybeOwn }))
     .min(1, "A plant needs at least one input")
     .max(inputs, `At most ${inputs} inputs`),
   outputs: z.array(z.strictObject(scaled)).max(outputs, `At most ${outputs} outputs`),
   disturbances: z.array(z.strictObject(scaled)).max(disturbances),
   commanded: z
-    .array(z.strictObject({ ...signal, amplitude: Finite }))
+    .array(z.strictObject({ ...signal, amplitude: own }))
     .max(commanded, `At most ${commanded} commanded quantities`)
     .nullable(),
   A: entries(states, states),
@@ -54,23 +71,25 @@ export const PlantContent = z.strictObject({
 }) satisfies z.ZodType<Content>;
 export type PlantContent = z.infer<typeof PlantContent>;
 
+const RATIOS = "unit of the row's signal over unit of the column's signal";
+const RATES = `${RATIOS}, per second; of a sampled plant per step`;
 const ModelSignal = z.strictObject(signal);
 /** The evaluated doubles: they are the plant, everything is computed from them. */
 export const PlantModel = z.strictObject({
   timeBase: TimeBase,
   axes: z.array(z.strictObject({ name: z.string(), tag: z.string() })),
-  states: z.array(ModelSignal.extend({ scale: Finite.nullable() })),
-  inputs: z.array(ModelSignal.extend({ scale: Finite.nullable(), lower: Finite.nullable(), upper: Finite.nullable() })),
-  outputs: z.array(ModelSignal.extend({ scale: Finite.nullable() })),
-  disturbances: z.array(ModelSignal.extend({ scale: Finite.nullable() })),
-  commanded: z.array(ModelSignal.extend({ amplitude: Finite })),
-  A: Rows,
-  B: Rows,
-  C: Rows,
-  D: Rows,
-  E: Rows,
-  H: Rows,
-  J: Rows,
+  states: z.array(ModelSignal.extend({ scale: maybeOwn })),
+  inputs: z.array(ModelSignal.extend({ scale: maybeOwn, lower: maybeOwn, upper: maybeOwn })),
+  outputs: z.array(ModelSignal.extend({ scale: maybeOwn })),
+  disturbances: z.array(ModelSignal.extend({ scale: maybeOwn })),
+  commanded: z.array(ModelSignal.extend({ amplitude: own })),
+  A: inUnit(Rows, RATES),
+  B: inUnit(Rows, RATES),
+  C: inUnit(Rows, RATIOS),
+  D: inUnit(Rows, RATIOS),
+  E: inUnit(Rows, RATES),
+  H: inUnit(Rows, RATIOS),
+  J: inUnit(Rows, RATIOS),
   operatingPoint: OperatingPoint,
 });
 

@@ -16,10 +16,10 @@ export const Problem = z.strictObject({
   /** What to change, place by place. */
   errors: z.array(ProblemIssue).optional(),
   /** Seconds to wait before the same request is worth sending again. */
-  retryAfter: z.number().optional(),
+  retryAfter: z.int().optional(),
   /** The version that was sent and the one that is stored now. */
-  given: z.number().optional(),
-  current: z.number().optional(),
+  given: z.int().optional(),
+  current: z.int().optional(),
   /** Facts of a refused computation; the code says which. */
   data: z.record(z.string(), z.unknown()).optional(),
 });

@@ -1,14 +1,19 @@
 import { z } from "zod";
 import type { Recipe as RecipeDocument } from "@/control/design/recipe";
-import { Finite, Positive, Rows } from "./common";
+import { Finite, inUnit, Positive, Rows } from "./common";
 
+const PLANE = "in rad/s; of a sampled plant, in the z-plane, without a unit";
 const NotNegative = Finite.min(0, "A number of zero or more is needed here");
 
 export const PoleEntry = z.discriminatedUnion("kind", [
-  z.strictObject({ kind: z.literal("real"), value: Finite }),
-  z.strictObject({ kind: z.literal("pair"), re: Finite, im: Positive }),
-  z.strictObject({ kind: z.literal("damping"), frequency: Positive, damping: Positive }),
-  z.strictObject({ kind: z.literal("time-constant"), seconds: Positive }),
+  z.strictObject({ kind: z.literal("real"), value: inUnit(Finite, PLANE) }),
+  z.strictObject({ kind: z.literal("pair"), re: inUnit(Finite, PLANE), im: inUnit(Positive, PLANE) }),
+  z.strictObject({
+    kind: z.literal("damping"),
+    frequency: inUnit(Positive, "in rad/s"),
+    damping: inUnit(Positive, "without a unit"),
+  }),
+  z.strictObject({ kind: z.literal("time-constant"), seconds: inUnit(Positive, "in seconds") }),
 ]);
 export type PoleEntry = z.infer<typeof PoleEntry>;
 
@@ -17,16 +22,24 @@ const Poles = z.array(PoleEntry).max(60);
 export const Weights = z.discriminatedUnion("form", [
   z.strictObject({
     form: z.literal("deviations"),
-    states: z.array(Positive.nullable()).max(60),
-    inputs: z.array(Positive).max(12),
+    states: inUnit(z.array(Positive.nullable()).max(60), "each in the unit of its state"),
+    inputs: inUnit(z.array(Positive).max(12), "each in the unit of its input"),
   }),
-  z.strictObject({ form: z.literal("matrices"), state: Rows, input: Rows }),
+  z.strictObject({
+    form: z.literal("matrices"),
+    state: inUnit(Rows, "unit of the cost over the units of both states"),
+    input: inUnit(Rows, "unit of the cost over the units of both inputs"),
+  }),
 ]);
 
 export const ObserverRecipe = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("none") }),
   z.strictObject({ kind: z.literal("poles"), poles: Poles }),
-  z.strictObject({ kind: z.literal("noise"), process: Rows, measurement: Rows }),
+  z.strictObject({
+    kind: z.literal("noise"),
+    process: inUnit(Rows, "units of both states, per second; of a sampled plant per step"),
+    measurement: inUnit(Rows, "units of both outputs, times seconds; of a sampled plant per sample"),
+  }),
   z.strictObject({ kind: z.literal("reduced"), poles: Poles }),
 ]);
 
@@ -38,9 +51,9 @@ const base = {
     z.strictObject({ kind: z.literal("none") }),
   ]),
   test: z.strictObject({
-    horizon: Positive.nullable(),
-    initialState: z.array(Finite).max(60),
-    inputDisturbance: z.array(Finite).max(12),
+    horizon: inUnit(Positive.nullable(), "in seconds"),
+    initialState: inUnit(z.array(Finite).max(60), "each in the unit of its state"),
+    inputDisturbance: inUnit(z.array(Finite).max(12), "each in the unit of its input"),
   }),
   /** Keys such as `weights`, `observer`, `state:2`: what the reason stands beside. */
   reasons: z.record(z.string().regex(/^[a-z]{1,20}(:\d{1,2})?$/), z.string().trim().max(1000, "At most 1000 characters")),
@@ -51,8 +64,8 @@ export const Recipe = z.discriminatedUnion("method", [
     ...base,
     method: z.literal("weights"),
     weights: Weights,
-    crossWeight: Rows.nullable(),
-    degreeOfStability: NotNegative.nullable(),
+    crossWeight: inUnit(Rows.nullable(), "unit of the cost over the units of state and input"),
+    degreeOfStability: inUnit(NotNegative.nullable(), "per second"),
   }),
   z.strictObject({ ...base, method: z.literal("poles"), poles: Poles }),
 ]) satisfies z.ZodType<RecipeDocument>;

@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { Finite, Id, Name, Remark, Timestamp, Unit, Version } from "./common";
+import { Finite, Id, inUnit, Name, OwnUnit, Remark, Timestamp, Unit, Version } from "./common";
 import { PlantContent } from "./plant";
 import { Recipe } from "./recipe";
 
@@ -8,9 +8,9 @@ export const OpenParameter = z
   .strictObject({
     name: z.string().trim().min(1).max(40),
     unit: Unit,
-    lowest: Finite,
-    highest: Finite,
-    suggested: Finite,
+    lowest: inUnit(Finite, OwnUnit),
+    highest: inUnit(Finite, OwnUnit),
+    suggested: inUnit(Finite, OwnUnit),
     help: z.string().trim().max(400, "At most 400 characters"),
   })
   .refine(({ lowest, highest }) => lowest < highest, { path: ["highest"], error: "The highest value must lie above the lowest" })
@@ -48,7 +48,7 @@ export type Template = z.infer<typeof Template>;
 export const StartFromTemplate = z.strictObject({
   plantName: Name,
   designName: Name,
-  values: z.record(z.string().max(40), Finite),
+  values: z.record(z.string().max(40), inUnit(Finite, "in the unit of the parameter")),
 });
 export type StartFromTemplate = z.infer<typeof StartFromTemplate>;
 export const StartedFromTemplate = z.strictObject({ plantId: Id, designId: Id });

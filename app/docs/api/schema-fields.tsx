@@ -29,7 +29,7 @@ function Fields({ title, shown, fields }: FieldsProps) {
           </tr>
         </thead>
         <tbody>
-          {fields.map(({ name, type, required }) => (
+          {fields.map(({ name, type, required, note }) => (
             <tr key={name} className="border-b border-rule">
               <th scope="row" className="py-0.5 pr-4 text-left align-baseline font-mono text-sm font-normal">
                 {name}
@@ -37,6 +37,7 @@ function Fields({ title, shown, fields }: FieldsProps) {
               </th>
               <td className="py-0.5">
                 <Shape text={type} />
+                {note && <span className="text-soft"> {note}</span>}
               </td>
             </tr>
           ))}
