@@ -1,8 +1,8 @@
+import type { StepFigures } from "@/control/design/evidence";
 import type { PlantModel } from "@/control/plant/model";
 import { formatNumber } from "@/control/words/format-number";
 import type { ResponseCurves } from "@/lib/schemas/evidence";
 import type { ResponseCell, ResponseColumn, ResponseRow, TimeGrid } from "../../plots/response-data";
-import type { StepFiguresReply } from "../evidence/figures-reply";
 
 export type RowRole = "commanded" | "output" | "state" | "input";
 export type LoopChoice = ResponseCurves["loop"] | "both";
@@ -18,7 +18,7 @@ export type ResponseData = {
   readonly curves: readonly ResponseCurves[];
   /** Of the last saved revision, drawn thin and grey. */
   readonly ghosts: readonly ResponseCurves[];
-  readonly figures: readonly StepFiguresReply[];
+  readonly figures: readonly StepFigures[];
 };
 
 export type ResponsePicture = {
