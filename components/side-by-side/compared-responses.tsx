@@ -4,6 +4,7 @@ import { joinNames } from "@/control/words/join-names";
 import { OverlayPlot } from "../plots/overlay-plot";
 import { Button } from "../ui/button";
 import { ErrorState } from "../ui/error-state";
+import { joinClasses } from "../ui/join-classes";
 import { LoadingState } from "../ui/loading-state";
 import { Segmented } from "../ui/radio-group";
 import { Select } from "../ui/select";
@@ -14,6 +15,8 @@ import { useOverlaidCurves } from "./use-overlaid-curves";
 import type { SideBySideView } from "./use-side-by-side-view";
 
 const CHART_HEIGHT = 260;
+/** What fits between the margins of A4 and Letter. */
+const PAPER_WIDTH = "max-w-[41rem]";
 
 const LOOP_NOTES: Readonly<Record<Loop, string>> = {
   observer: "with the observer where there is one",
@@ -95,7 +98,7 @@ function Overlays({ designs, commanded, loop, whole }: OverlaysProps) {
   return (
     <>
       <Silent designs={silent} commanded={commanded} />
-      <div className="grid gap-x-8 gap-y-8 lg:grid-cols-2 print:grid-cols-2">
+      <div className={joinClasses("grid gap-x-8 gap-y-8", whole ? PAPER_WIDTH : "lg:grid-cols-2")}>
         {overlayPictures(designs, curves).map(({ key, name, unit, effort, traces, summary }) => (
           <div key={key} data-chart="" className="min-w-0 break-inside-avoid">
             <OnceSeen height={CHART_HEIGHT} now={whole}>
