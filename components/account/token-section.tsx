@@ -1,9 +1,15 @@
 "use client";
 
-import dynamic from "next/dynamic";
+import { lazy, Suspense } from "react";
 import { LoadingState } from "../ui/loading-state";
 
+const AccessTokens = lazy(() => import("./access-tokens").then((module) => ({ default: module.AccessTokens })));
+
 /** Comes after the rest of the account, since few come for it. */
-export const TokenSection = dynamic(() => import("./access-tokens").then((module) => module.AccessTokens), {
-  loading: () => <LoadingState label="Loading your access tokens" lines={6} />,
-});
+export function TokenSection({ team }: Readonly<{ team: string }>) {
+  return (
+    <Suspense fallback={<LoadingState label="Loading your access tokens" lines={6} />}>
+      <AccessTokens team={team} />
+    </Suspense>
+  );
+}

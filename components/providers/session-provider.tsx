@@ -1,12 +1,22 @@
 "use client";
 
-import dynamic from "next/dynamic";
-import { createContext, type ReactNode, useCallback, useContext, useEffect, useMemo, useRef, useState } from "react";
+import {
+  createContext,
+  lazy,
+  type ReactNode,
+  Suspense,
+  useCallback,
+  useContext,
+  useEffect,
+  useMemo,
+  useRef,
+  useState,
+} from "react";
 import { RequestProblem } from "@/lib/client/request";
 import type { Role } from "@/lib/schemas/team";
 
-const loadSignIn = () => import("../account/sign-in-again").then((module) => module.SignInAgain);
-const SignInAgain = dynamic(loadSignIn);
+const loadSignIn = () => import("../account/sign-in-again").then((module) => ({ default: module.SignInAgain }));
+const SignInAgain = lazy(loadSignIn);
 
 export type PersonFacts = { readonly userId: string; readonly email: string };
 export type SessionFacts = PersonFacts & { readonly teamId: string; readonly role: Role };

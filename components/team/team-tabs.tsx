@@ -1,6 +1,6 @@
 "use client";
 
-import dynamic from "next/dynamic";
+import { lazy, Suspense } from "react";
 import { LoadingState } from "../ui/loading-state";
 import { SheetSection } from "../ui/sheet-section";
 import { UrlTabs } from "../ui/url-tabs";
@@ -8,12 +8,8 @@ import { MembersSection } from "./members-section";
 import { ROLES } from "./role-words";
 
 /** Only leads meet it. */
-const InvitationsSection = dynamic(() => import("./invitations-section").then((module) => module.InvitationsSection), {
-  loading: () => <LoadingState label="Loading the invitations" lines={3} />,
-});
-const AuditTrail = dynamic(() => import("./audit-trail").then((module) => module.AuditTrail), {
-  loading: () => <LoadingState label="Loading the audit trail" lines={8} />,
-});
+const InvitationsSection = lazy(() => import("./invitations-section").then((module) => ({ default: module.InvitationsSection })));
+const AuditTrail = lazy(() => import("./audit-trail").then((module) => ({ default: module.AuditTrail })));
 
 type TeamTabsProps = Readonly<{ team: string; mayManage: boolean; showsOutbox: boolean }>;
 
@@ -25,7 +21,9 @@ export function TeamTabs({ team, mayManage, showsOutbox }: TeamTabsProps) {
       </SheetSection>
       {mayManage ? (
         <SheetSection title="Invitations" note="by mail, with a link that works once and for seven days">
-          <InvitationsSection showsOutbox={showsOutbox} />
+          <Suspense fallback={<LoadingState label="Loading the invitations" lines={3} />}>
+            <InvitationsSection showsOutbox={showsOutbox} />
+          </Suspense>
         </SheetSection>
       ) : null}
       <SheetSection title="Roles">
@@ -40,12 +38,17 @@ export function TeamTabs({ team, mayManage, showsOutbox }: TeamTabsProps) {
       </SheetSection>
     </>
   );
+  const trail = (
+    <Suspense fallback={<LoadingState label="Loading the audit trail" lines={8} />}>
+      <AuditTrail />
+    </Suspense>
+  );
   return (
     <UrlTabs
       label="Parts of the team page"
       tabs={[
         { key: "people", label: "People", panel: people },
-        { key: "trail", label: "Audit trail", panel: <AuditTrail /> },
+        { key: "trail", label: "Audit trail", panel: trail },
       ]}
     />
   );

@@ -1,13 +1,13 @@
 "use client";
 
 import { Button } from "./button";
+import { buttonStyle } from "./button-style";
 import { ErrorState } from "./error-state";
-import { LinkButton } from "./link-button";
 import { PageBody } from "./page-body";
 
 export type PageFailureProps = Readonly<{ error: Error & { digest?: string }; reset: () => void }>;
 
-/** What a page says when its own making failed. */
+/** What a page says when its own making failed. The way out is a full load, which also mends what failed in the browser. */
 export function PageFailure({ error, reset }: PageFailureProps) {
   return (
     <PageBody>
@@ -20,7 +20,9 @@ export function PageFailure({ error, reset }: PageFailureProps) {
             <Button tone="primary" onClick={reset}>
               Try again
             </Button>
-            <LinkButton href="/plants">Go to your plants</LinkButton>
+            <a href="/plants" className={buttonStyle()}>
+              Go to your plants
+            </a>
           </>
         }
       >
