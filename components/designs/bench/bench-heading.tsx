@@ -49,6 +49,7 @@ export function BenchHeading({ bench, start, mayWrite, mayEdit, onSave, onSaveAs
         <>
           {revision ? <Chip>Revision {revision.number}</Chip> : null}
           {design?.archivedAt ? <Chip>archived</Chip> : null}
+          {start.plant.archived ? <Chip>plant archived</Chip> : null}
           <span role="status">{dirty && mayEdit ? <Chip kind="caution">Unsaved changes, {KEEPING[keeping]}</Chip> : null}</span>
         </>
       }

@@ -94,7 +94,7 @@ function SignalFigure({ signal, index, what, value, pointer, unit, reasonOf, wri
             tone="quiet"
             className="mt-1 font-normal text-soft"
             aria-expanded={open}
-            aria-label={`Reason for ${signal.name}`}
+            aria-label={`why: reason for ${signal.name}`}
             onClick={() => setAsked(true)}
           >
             why

@@ -1,6 +1,6 @@
 "use client";
 
-import { keepPreviousData, useQuery } from "@tanstack/react-query";
+import { useQuery } from "@tanstack/react-query";
 import { type CurveQuery, compute, designKeys, fetchCurves } from "@/lib/client/designs";
 import type { ResponseCurves } from "@/lib/schemas/evidence";
 import { useSession } from "../../providers/session-provider";
@@ -22,7 +22,8 @@ export function useStoredCurves(revisionId: string | null, kind: Kind, withState
     queryFn: ({ signal }) => resume(() => fetchCurves(revisionId ?? "", query, signal)),
     enabled: revisionId !== null,
     staleTime: Number.POSITIVE_INFINITY,
-    placeholderData: keepPreviousData,
+    // While rows are switched on, those that are there already stay in sight.
+    placeholderData: (before) => (before?.some((curve) => curve.kind === kind) ? before : undefined),
   });
 }
 

@@ -13,8 +13,10 @@ const SHOWN = 40;
 /** What differs between two recipes, place by place. */
 export function RecipeChanges({ caption, differences, before, after }: RecipeChangesProps) {
   if (differences.length === 0) return <p className="text-soft">The recipes are the same.</p>;
+  // A region that scrolls has to be reached by keys, too.
+  const region = { role: "region", "aria-label": caption, tabIndex: 0 } as const;
   return (
-    <div className="max-h-72 overflow-auto">
+    <div {...region} className="max-h-72 overflow-auto">
       <table className="w-full border-collapse text-table">
         <caption className="pb-1 text-left font-semibold">{caption}</caption>
         <thead>

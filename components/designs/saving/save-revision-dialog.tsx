@@ -17,10 +17,16 @@ import type { Saving } from "./use-saving";
 
 const FIELDS = { "/note": "save-revision-note" };
 
-type SaveRevisionDialogProps = Readonly<{ bench: Bench; saving: Saving; open: boolean; onClose: () => void }>;
+type SaveRevisionDialogProps = Readonly<{
+  bench: Bench;
+  saving: Saving;
+  open: boolean;
+  onClose: () => void;
+  onSaved: () => void;
+}>;
 
 /** The next revision of the design, with what changed and a note for those who read it later. */
-export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisionDialogProps) {
+export function SaveRevisionDialog({ bench, saving, open, onClose, onSaved }: SaveRevisionDialogProps) {
   const { base, ground, reading } = bench;
   const say = useToast();
   const [note, setNote] = useState("");
@@ -41,6 +47,7 @@ export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisio
     if (!saved) return;
     setNote("");
     say({ text: `Revision ${next} is saved.`, kind: "met" });
+    onSaved();
   };
   return (
     <Dialog open={open} onClose={onClose} title={`Save revision ${next}`} wide>
