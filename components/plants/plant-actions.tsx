@@ -3,13 +3,13 @@
 import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { archivePlant, duplicatePlant, renamePlant } from "@/lib/client/plants";
+import { RequestProblem } from "@/lib/client/request";
 import type { PlantSummary } from "@/lib/schemas/plant";
 import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Menu } from "../ui/menu";
 import { NameDialog } from "../ui/name-dialog";
 import { useCreateKey } from "../ui/use-create-key";
-import { useSubmit } from "../ui/use-submit";
 
 type PlantActionsProps = Readonly<{ plant: PlantSummary; onChanged: (plant: PlantSummary) => void }>;
 
@@ -20,7 +20,6 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
   const toast = useToast();
   const keyFor = useCreateKey();
   const [asking, setAsking] = useState<"rename" | "duplicate" | null>(null);
-  const act = useSubmit({});
 
   const rename = async (name: string) => onChanged(await resume(() => renamePlant(plant.id, plant.version, name)));
   const duplicate = async (name: string) => {
@@ -28,7 +27,7 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
     router.push(`/plants/${copy.id}`);
   };
   const archive = async (archived: boolean, from = plant) => {
-    const done = await act.run(async () => {
+    try {
       const changed = await resume(() => archivePlant(from.id, from.version, archived));
       onChanged(changed);
       toast({
@@ -36,8 +35,10 @@ export function PlantActions({ plant, onChanged }: PlantActionsProps) {
         kind: "met",
         action: archived ? { label: "Undo", run: () => void archive(false, changed) } : undefined,
       });
-    });
-    if (!done) toast({ text: "That could not be done; reload the page and try again.", kind: "unmet" });
+    } catch (error) {
+      if (!(error instanceof RequestProblem)) throw error;
+      toast({ text: error.message, kind: "unmet" });
+    }
   };
 
   return (

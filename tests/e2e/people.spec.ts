@@ -188,7 +188,7 @@ test("a forgotten password is replaced by mail, which ends every session and wor
   await untilTakenOver(late);
   await textbox(late, "New password").fill(OTHER_PASSWORD);
   await late.getByRole("button", { name: "Save the new password" }).click();
-  await expect(late.getByRole("main")).toContainText("This link was used already or is older than 60 minutes");
+  await expect(late.getByRole("main")).toContainText("The link was used already or is older than 60 minutes. Ask for a new one");
 });
 
 test("a changed password ends the other sessions and keeps this one", async ({ page, anotherPerson }) => {

@@ -1,7 +1,12 @@
 import { randomUUID } from "node:crypto";
 import { type APIRequestContext, type Page, type PlaywrightWorkerArgs, request as requests } from "@playwright/test";
-import type { PlantContent, PlantSummary } from "@/lib/schemas/plant";
+import { defaultRecipe } from "@/control/design/default-recipe";
+import { evaluatePlant } from "@/control/plant/evaluate-plant";
+import type { PlantModel } from "@/control/plant/model";
+import type { DesignSummary } from "@/lib/schemas/design";
+import type { PlantContent, PlantRevision, PlantSummary } from "@/lib/schemas/plant";
 import type { Role } from "@/lib/schemas/team";
+import type { Template } from "@/lib/schemas/template";
 import { mailedSecret, newAddress, signUpAs, told } from "./browser-requests";
 import { expect, test as watched } from "./browser-test";
 import { twoCarriages } from "./plant-content";
@@ -79,6 +84,28 @@ export function storedPlant(
   { name = "Two carriages", ...content }: Partial<PlantContent> & { name?: string } = {},
 ): Promise<PlantSummary> {
   return told<PlantSummary>(request, "/api/v1/plants", { data: { name, content: twoCarriages(content), note: "" } });
+}
+
+/** A design by the recipe that a new design starts from. */
+export async function storedDesign(
+  request: APIRequestContext,
+  plant: PlantSummary,
+  name = "By deviations",
+): Promise<DesignSummary> {
+  const revision = await told<PlantRevision>(request, `/api/v1/plants/${plant.id}/revisions/${plant.currentRevision.id}`);
+  const recipe = defaultRecipe(revision.model as PlantModel);
+  const body = { name, plantRevisionId: revision.id, recipe, note: "" };
+  return told<DesignSummary>(request, `/api/v1/plants/${plant.id}/designs`, { data: body });
+}
+
+/** A template of two carriages whose mass is left open. */
+export function storedTemplate(request: APIRequestContext, name = "Two carriages on a beam"): Promise<Template> {
+  const plant = twoCarriages();
+  const { model } = evaluatePlant(plant);
+  if (!model) throw new Error("the plant of the template cannot be evaluated");
+  const mass = { name: "m", unit: "kg", lowest: 8, highest: 20, suggested: 12, help: "Weigh one carriage." };
+  const content = { plant, recipe: defaultRecipe(model), openParameters: [mass] };
+  return told<Template>(request, "/api/v1/templates", { data: { name, description: "For either drive.", content } });
 }
 
 export { expect };

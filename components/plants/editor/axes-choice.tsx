@@ -29,7 +29,7 @@ export function AxesChoice({ fresh, onChoose }: Readonly<{ fresh: boolean; onCho
       <TextField
         id={id}
         label="Axes, separated by commas"
-        className="w-80"
+        className="w-80 max-w-full"
         placeholder="travel, turn"
         value={text}
         problem={problem}

@@ -60,7 +60,7 @@ export function NewPlantPage() {
         <TextField
           id="new-plant-name"
           label="Name of the plant"
-          className="w-80"
+          className="w-80 max-w-full"
           value={draft.name}
           maxLength={120}
           problem={at("/name")}
