@@ -54,7 +54,8 @@ test(`200 000 random texts (seed ${SEED}) give a finite number or a typed refusa
     ["a", 0.5],
     ["b_1", -3],
   ]);
-  const started = performance.now();
+  // Processor time of this process, so that a busy machine fails nothing.
+  const started = process.cpuUsage();
   let values = 0;
   for (let k = 0; k < 200_000; k++) {
     const pieces = k % 2 === 0 ? PIECES : FORMULA;
@@ -71,7 +72,7 @@ test(`200 000 random texts (seed ${SEED}) give a finite number or a typed refusa
     }
   }
   expect(values).toBeGreaterThan(5_000);
-  expect(performance.now() - started).toBeLessThan(10_000);
+  expect(process.cpuUsage(started).user / 1_000).toBeLessThan(10_000);
 });
 
 test("random well-formed formulas agree with the same arithmetic done directly", () => {

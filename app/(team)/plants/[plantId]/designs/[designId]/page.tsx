@@ -57,7 +57,8 @@ export default async function Page(props: PageProps) {
   const start = await startOf(props);
   return (
     <PageBody>
-      <DesignBench key={start.revision?.id} start={start} />
+      {/* A page that saved a later revision in place starts anew when the one it began from is asked for. */}
+      <DesignBench key={`${start.revision?.id} ${start.older ? "older" : "newest"}`} start={start} />
     </PageBody>
   );
 }
