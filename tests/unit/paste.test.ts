@@ -1,5 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { parsePasted } from "@/components/matrix/parse-pasted";
+import { processorMs } from "../helpers/processor-time";
 import { seededUniform } from "../helpers/seeded";
 
 const read = (text: string, columns?: number) => parsePasted(text, columns).entries;
@@ -208,8 +209,8 @@ describe("pasted text", () => {
 
   test("of 50 by 50 entries is read well within a frame or two", () => {
     const text = Array.from({ length: 50 }, (_, r) => Array.from({ length: 50 }, (_, c) => `${r},${c}5`).join(";")).join("\r\n");
-    const start = performance.now();
+    const start = processorMs();
     expect(read(text)).toHaveLength(50);
-    expect(performance.now() - start).toBeLessThan(100);
+    expect(processorMs() - start).toBeLessThan(100);
   });
 });

@@ -6,6 +6,7 @@ import { frobeniusNorm } from "../../control/linalg/norms";
 import type { Complex } from "../../control/plant/model";
 import { matchPoles } from "../../control/poles/match-poles";
 import { placePoles } from "../../control/poles/place-poles";
+import { processorMs } from "../helpers/processor-time";
 import { seededMatrix, seededUniform } from "../helpers/seeded";
 
 const real = (...values: number[]): Complex[] => values.map((re) => ({ re, im: 0 }));
@@ -337,9 +338,9 @@ describe("placePoles copes with", () => {
     const n = 60;
     const A = seededMatrix(random, n, n);
     const B = seededMatrix(random, n, 12);
-    const started = performance.now();
+    const started = processorMs();
     const placed = placePoles({ A, B, poles: spread(n) });
-    expect(performance.now() - started).toBeLessThan(10_000);
+    expect(processorMs() - started).toBeLessThan(10_000);
     expect(placed.poleError).toBeLessThan(1e-12 * (placed.conditioning ?? 0));
   });
 });
