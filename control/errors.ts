@@ -1,4 +1,7 @@
-/** What can go wrong in the core. Facts only: `control/words/` turns them into sentences with the user's signal names. */
+/**
+ * What can go wrong in the core. Facts only: `control/words/` turns them into sentences with the user's signal names.
+ * `of: "observer"` among the facts says that an observer was refused.
+ */
 export type NumericalErrorCode =
   | "shape-mismatch" // { expected, given } or one entry per matrix
   | "not-finite" // { matrix, row, column }
@@ -7,7 +10,7 @@ export type NumericalErrorCode =
   | "singular" // { matrix, row }
   | "not-symmetric" // { matrix, row, column }
   | "not-positive-definite" // { matrix, index }
-  | "not-positive-semidefinite" // { matrix, eigenvalue }
+  | "not-positive-semidefinite" // { matrix, eigenvalue, index? }
   | "not-stabilizable" // { pole: Complex, state: number, distance }
   | "not-detectable" // { pole: Complex, state: number, distance }
   | "not-controllable" // { pole: Complex, state: number, distance }

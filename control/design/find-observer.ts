@@ -1,4 +1,5 @@
 import { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
 import { observerByPoles } from "../observer/observer-by-poles";
 import { observerFromNoise } from "../observer/observer-from-noise";
 import { reducedObserver } from "../observer/reduced-observer";
@@ -24,6 +25,15 @@ type Wanted = Exclude<ObserverRecipe, { kind: "none" }>;
  * Accuracy  as those
  */
 export function findObserver(plant: PlantMatrices, wanted: Wanted, timeBase: TimeBase, scale: Float64Array): FoundObserver {
+  try {
+    return find(plant, wanted, timeBase, scale);
+  } catch (error) {
+    if (!(error instanceof NumericalError)) throw error;
+    throw new NumericalError(error.code, { ...error.data, of: "observer" });
+  }
+}
+
+function find(plant: PlantMatrices, wanted: Wanted, timeBase: TimeBase, scale: Float64Array): FoundObserver {
   if (wanted.kind === "reduced") return reduced(plant, stablePoles(wanted.poles, timeBase), timeBase);
   const { A, C } = plant;
   const { L, residual, bound, method } =

@@ -3,8 +3,9 @@ import { NumericalError } from "../errors";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
-import { describeFixedMode } from "../poles/fixed-modes";
+import { describeFixedMode, keepFixedModes } from "../poles/fixed-modes";
 import { type Placement, placePoles } from "../poles/place-poles";
+import { groupPoles } from "../poles/wanted-poles";
 import { outputCoordinates } from "./output-coordinates";
 
 export type ReducedProblem = {
@@ -85,9 +86,21 @@ function placeHidden(A: Matrix, C: Matrix, A22: Matrix, A12: Matrix, poles: read
   try {
     return placePoles({ A: A22.transpose(), B: A12.transpose(), poles });
   } catch (error) {
-    if (!(error instanceof NumericalError) || error.code !== "not-controllable") throw error;
-    const pole = error.data.pole as Complex;
+    if (!(error instanceof NumericalError)) throw error;
+    const pole = error.code === "not-controllable" ? (error.data.pole as Complex) : unseenMode(A, C, poles);
+    if (!pole) throw error;
     throw new NumericalError("not-observable", describeFixedMode(A.transpose(), C.transpose(), pole));
+  }
+}
+
+/** A mode that no output sees and no wanted pole stands for: rounding in the hidden part alone may have covered it. */
+function unseenMode(A: Matrix, C: Matrix, poles: readonly Complex[]): Complex | undefined {
+  try {
+    keepFixedModes(A.transpose(), C.transpose(), groupPoles(poles, poles.length));
+    return undefined;
+  } catch (error) {
+    if (error instanceof NumericalError && error.code === "not-controllable") return error.data.pole as Complex;
+    throw error;
   }
 }
 

@@ -82,5 +82,7 @@ export function describeFixedMode(A: Matrix, B: Matrix, pole: Complex): { pole: 
       state = i;
     }
   }
-  return { pole, state, distance: relative * normRatio };
+  const rounding = 4 * n * Number.EPSILON * flatNorm(a);
+  const settled = { re: Math.abs(pole.re) <= rounding ? 0 : pole.re, im: Math.abs(pole.im) <= rounding ? 0 : pole.im };
+  return { pole: settled, state, distance: relative * normRatio };
 }

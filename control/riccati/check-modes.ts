@@ -2,12 +2,14 @@ import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { balance } from "../linalg/balance";
 import type { ComplexVector } from "../linalg/complex";
+import { eigensystem } from "../linalg/eigensystem";
 import { eigenvalues } from "../linalg/eigenvalues";
-import { fromFlat, pythagoras } from "../linalg/flat";
+import { fromFlat, pythagoras, toFlat } from "../linalg/flat";
 import { frobeniusNorm } from "../linalg/norms";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { smallestSingularComplex } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
+import { eigenvalueAccuracy } from "../structure/eigenvalue-accuracy";
 import type { FlatProblem } from "./problem";
 
 /** How near a mode comes to being out of reach (or out of sight), relative to the norm of the tested matrix. */
@@ -44,7 +46,7 @@ export function leastReachable({ n, m, a, b, sampled }: FlatProblem): ModeDistan
   unitColumns(B, frobeniusNorm(A) || 1);
   let least: ModeDistance | null = null;
   const slack = boundarySlack(A, sampled);
-  for (const pole of eigenvalues(A)) {
+  for (const pole of settledPoles(A, sampled)) {
     if (pole.im < 0 || boundaryMargin(pole, sampled) > slack) continue;
     const found = settledDistance(A, pole, B, sampled);
     if (!least || found.distance < least.distance) least = { ...found, state: order[found.state] };
@@ -62,7 +64,7 @@ function hiddenBoundaryMode(problem: FlatProblem): ModeDistance | null {
   const Q = new Matrix(n, n);
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) Q.set(i, j, q[order[i] * n + order[j]] * scale[i]);
   unitColumns(Q, frobeniusNorm(A) || 1);
-  for (const pole of eigenvalues(A)) {
+  for (const pole of settledPoles(A, sampled)) {
     if (pole.im < 0 || Math.abs(boundaryMargin(pole, sampled)) > slack) continue;
     const found = pencilDistance(At, pole, Q);
     if (found.distance <= rankTolerance(n)) return { pole, state: order[found.state], distance: found.distance };
@@ -120,7 +122,31 @@ export function boundaryMargin({ re, im }: Complex, sampled: boolean): number {
 }
 
 function boundarySlack(A: Matrix, sampled: boolean): number {
-  return 4 * A.rows * Number.EPSILON * Math.max(frobeniusNorm(A), sampled ? 1 : 0);
+  return 4 * A.rows * Number.EPSILON * boundarySize(A, sampled);
+}
+
+function boundarySize(A: Matrix, sampled: boolean): number {
+  return Math.max(frobeniusNorm(A), sampled ? 1 : 0);
+}
+
+/** The eigenvalues, those put on the stability boundary that rounding alone may have moved off it, each by its own condition. */
+function settledPoles(A: Matrix, sampled: boolean): Complex[] {
+  const most = rankTolerance(A.rows) * boundarySize(A, sampled);
+  const values = eigenvalues(A);
+  if (!values.some((pole) => Math.abs(boundaryMargin(pole, sampled)) <= most)) return values;
+  const spectrum = eigensystem(A);
+  const accuracy = eigenvalueAccuracy(toFlat(A), A.rows, spectrum);
+  const slack = boundarySlack(A, sampled);
+  return spectrum.values.map((pole, k) => {
+    const limit = Math.max(slack, Math.min(accuracy[k], most));
+    return Math.abs(boundaryMargin(pole, sampled)) <= limit ? onBoundary(pole, sampled) : pole;
+  });
+}
+
+function onBoundary({ re, im }: Complex, sampled: boolean): Complex {
+  if (!sampled) return { re: 0, im };
+  const size = pythagoras(re, im);
+  return { re: re / size, im: im / size };
 }
 
 /** Smallest singular value of [A - pole I, B] over its Frobenius norm, its left vector and the largest place of that. */

@@ -79,9 +79,12 @@ function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | null {
   )[0];
   if (least >= -tolerance) return null;
   const given = new Matrix(Array.from({ length: size }, (_, i) => Array.from({ length: size }, (_, j) => entry(i, j))));
+  const matrix = s.some((x) => x !== 0) ? "[Q S; S' R]" : blame(given, n);
+  const index = firstNegative(block, size, tolerance);
   return new NumericalError("not-positive-semidefinite", {
-    matrix: s.some((x) => x !== 0) ? "[Q S; S' R]" : blame(given, n),
+    matrix,
     eigenvalue: symmetricEigenvalues(given)[0],
+    ...(index !== null && { index: matrix === "R" ? index - n : index }),
   });
 }
 
@@ -90,6 +93,24 @@ function blame(block: Matrix, n: number): "Q" | "R" {
   const q = symmetricEigenvalues(block.subMatrix(0, n - 1, 0, n - 1))[0];
   const r = symmetricEigenvalues(block.subMatrix(n, block.rows - 1, n, block.rows - 1))[0];
   return q <= r ? "Q" : "R";
+}
+
+/** The place at which elimination without pivoting first meets less than nothing; null where it never does. */
+function firstNegative(block: Float64Array, n: number, tolerance: number): number | null {
+  const a = block.slice();
+  for (let k = 0; k < n; k++) {
+    const pivot = a[k * n + k];
+    if (pivot < -tolerance) return k;
+    if (pivot <= tolerance) {
+      for (let j = k + 1; j < n; j++) if (a[k * n + j] * a[k * n + j] > tolerance) return k;
+      continue;
+    }
+    for (let i = k + 1; i < n; i++) {
+      const factor = a[i * n + k] / pivot;
+      if (factor !== 0) for (let j = k + 1; j < n; j++) a[i * n + j] -= factor * a[k * n + j];
+    }
+  }
+  return null;
 }
 
 /** Quick proof by elimination without pivoting: pivots positive, or an exactly zero row. */

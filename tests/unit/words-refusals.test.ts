@@ -114,3 +114,26 @@ test("noise is told as noise, not as a weight", () => {
   expect(words.sentence).toContain("enc1");
   expect(words.sentence).not.toContain("cost");
 });
+
+test("what refuses an observer is told in its outputs, noise and estimate, not in inputs, weights and loop", () => {
+  const of = (code: NumericalErrorCode, data: Record<string, unknown>) => {
+    const { sentence, nextStep } = explainRefusal(code, { ...data, of: "observer" }, gantry);
+    return `${sentence} ${nextStep}`;
+  };
+  expect(of("pole-multiplicity", { pole: { re: -1, im: 0 }, multiplicity: 2, rank: 1 })).toMatch(
+    /enc1, 1 independent output, allows it once/,
+  );
+  expect(of("unweighted-boundary-mode", { pole: { re: 0, im: 2 }, state: 0 })).toMatch(/process noise never stirs.*\bth\b/);
+  expect(of("on-stability-boundary", { distance: 2e-9 })).toMatch(/With this noise the best observer.*more process noise/);
+  expect(of("unstable-pole", { index: 0, pole: { re: 1, im: 0 } })).toContain("the estimate would not come to rest");
+  expect(of("inaccurate", { residual: 1, bound: 0 })).toContain("poles or noise levels of the observer");
+});
+
+test("advice fits the mode: what decays by itself can be left alone, what does not needs an input or a sensor", () => {
+  const next = (code: NumericalErrorCode, re: number) => explainRefusal(code, { pole: { re, im: 0 }, state: 0 }, gantry).nextStep;
+  expect(next("not-controllable", -1)).toContain("Design by weights");
+  expect(next("not-controllable", 0)).toContain("Add an input");
+  expect(next("not-observable", -1)).toContain("by noise");
+  expect(next("not-observable", 0)).toContain("Add a sensor");
+  expect(next("not-stabilizable", -1)).toContain("smaller degree of stability");
+});

@@ -22,6 +22,9 @@ export function poleOf(data: Facts): Complex | null {
   return { re, im };
 }
 
+/** Whether an observer was refused and not the regulator. */
+export const ofObserver = (data: Facts): boolean => data.of === "observer";
+
 /** "3 × 2" of a pair of sizes. */
 export function sizeOf(data: Facts, name: string): string | null {
   const value = data[name];

@@ -27,6 +27,7 @@ const NAMES: Readonly<Record<string, string>> = {
 const RESULTS: Readonly<Record<string, string>> = {
   eigenvalue: "A mode of the plant",
   response: "A response",
+  entry: "A rate of the loop times the length of the response",
   gain: "A gain",
   "closed loop": "The closed loop",
   "gain at rest": "The gain at rest",
@@ -43,6 +44,7 @@ function signalsOf(matrix: string, side: "row" | "column", model: PlantModel): r
   const byInput = side === "row" ? ["R", "K", "F"] : ["B", "D", "J", "R", "S"];
   if (byState.includes(matrix) || matrix === "process noise") return model.states;
   if (byInput.includes(matrix)) return model.inputs;
+  if (matrix === "[Q S; S' R]") return [...model.states, ...model.inputs];
   if (matrix === "E") return model.disturbances;
   if (["H", "J", "F"].includes(matrix)) return model.commanded;
   return ["C", "D", "L", "measurement noise"].includes(matrix) ? model.outputs : [];
@@ -85,7 +87,10 @@ function tooLarge(data: Facts): RefusalWords {
   return {
     title: "Numbers too large",
     sentence: `${name} goes beyond ${limit === null ? "the limit" : `the limit of ${formatNumber(limit)}`}.`,
-    nextStep: "Choose units in which the entries lie nearer to 1, or make the problem smaller.",
+    nextStep:
+      what === "entry"
+        ? "Choose a shorter length of the response."
+        : "Choose units in which the entries lie nearer to 1, or make the problem smaller.",
   };
 }
 
@@ -99,13 +104,13 @@ function notPositiveDefinite(data: Facts, model: PlantModel): RefusalWords {
   };
 }
 
-function notPositiveSemidefinite(data: Facts): RefusalWords {
+function notPositiveSemidefinite(data: Facts, model: PlantModel): RefusalWords {
   const noise = (textOf(data, "matrix") ?? "").endsWith("noise");
   const least = numberOf(data, "eigenvalue");
   const found = least === null ? "" : ` (smallest eigenvalue ${formatNumber(least)})`;
   return {
     title: noise ? "Noise below zero" : "Weight rewards motion",
-    sentence: `${startSentence(matrixName(data))} is negative in one direction${found}${noise ? ", which no noise can be" : ", so that motion would lower the cost"}.`,
+    sentence: `${startSentence(matrixName(data))} is negative in one direction${alongDiagonal(data, model)}${found}${noise ? ", which no noise can be" : ", so that motion would lower the cost"}.`,
     nextStep: noise
       ? "Make the diagonal larger, or the entries beside it smaller."
       : "Make the diagonal larger, or the entries beside it smaller; with a cross weight, the state weight must outweigh it.",

@@ -1,7 +1,8 @@
 import type { PlantModel } from "../../plant/model";
 import { formatComplex } from "../format-complex";
-import { numberOf, poleOf } from "./facts";
-import type { Explainers, Facts } from "./types";
+import { joinNames } from "../join-names";
+import { numberOf, ofObserver, poleOf } from "./facts";
+import type { Explainers, Facts, RefusalWords } from "./types";
 
 function pole(data: Facts): string {
   const value = poleOf(data);
@@ -15,6 +16,25 @@ function entry(data: Facts): string {
 
 function boundary(model: PlantModel): string {
   return model.timeBase.kind === "sampled" ? "inside the unit circle" : "left of the imaginary axis";
+}
+
+function poleMultiplicity(data: Facts, model: PlantModel): RefusalWords {
+  const multiplicity = numberOf(data, "multiplicity");
+  const rank = numberOf(data, "rank");
+  const signals = ofObserver(data) ? model.outputs : model.inputs;
+  const one = ofObserver(data) ? "output" : "input";
+  const names = signals.length > 4 ? `the ${signals.length} ${one}s` : joinNames(signals.map(({ name }) => name));
+  const allowed =
+    rank === null
+      ? `${names} allow fewer`
+      : `${names}, ${rank} independent ${rank === 1 ? one : `${one}s`}, ${signals.length === 1 ? "allows" : "allow"} it ${rank === 1 ? "once" : `${rank} times`}`;
+  return {
+    title: "A pole is repeated too often",
+    sentence: `${pole(data)} is asked for ${multiplicity === null ? "more" : multiplicity} times, but ${allowed} without losing the robustness of ${
+      ofObserver(data) ? "the observer" : "the loop"
+    }.`,
+    nextStep: "Spread the repeated poles apart by a few percent.",
+  };
 }
 
 /** Refusals about wanted poles. */
@@ -33,22 +53,10 @@ export const explainPoles: Pick<Explainers, "pole-count" | "poles-not-conjugate"
     sentence: `${pole(data)}${entry(data)} has no mirror image about the real axis, and a real gain can only place both.`,
     nextStep: "Enter it as a pair.",
   }),
-  "pole-multiplicity": (data) => {
-    const multiplicity = numberOf(data, "multiplicity");
-    const rank = numberOf(data, "rank");
-    return {
-      title: "A pole is repeated too often",
-      sentence: `${pole(data)} is asked for ${multiplicity === null ? "more" : multiplicity} times, but ${
-        rank === null
-          ? "the inputs allow fewer"
-          : `${rank} independent ${rank === 1 ? "input allows" : "inputs allow"} it ${rank === 1 ? "once" : `${rank} times`}`
-      } without losing the loop's robustness.`,
-      nextStep: "Spread the repeated poles apart by a few percent.",
-    };
-  },
+  "pole-multiplicity": poleMultiplicity,
   "unstable-pole": (data, model) => ({
     title: "A wanted pole is not stable",
-    sentence: `${pole(data)}${entry(data)} does not lie ${boundary(model)}: the loop would not come to rest.`,
+    sentence: `${pole(data)}${entry(data)} does not lie ${boundary(model)}: ${ofObserver(data) ? "the estimate" : "the loop"} would not come to rest.`,
     nextStep: `Choose a pole ${boundary(model)}.`,
   }),
 };
