@@ -90,7 +90,15 @@ export function SessionProvider({ facts, children }: Readonly<{ facts: PersonFac
     <SessionContext value={session}>
       {children}
       {asked ? (
-        <SignInAgain open={asking} email={facts.email} onSignedIn={() => settle("signedIn")} onGiveUp={() => settle("givenUp")} />
+        // Its own boundary: without one, the page behind would be hidden while this loads, with all that was typed.
+        <Suspense>
+          <SignInAgain
+            open={asking}
+            email={facts.email}
+            onSignedIn={() => settle("signedIn")}
+            onGiveUp={() => settle("givenUp")}
+          />
+        </Suspense>
       ) : null}
     </SessionContext>
   );
