@@ -1,6 +1,5 @@
 "use client";
 
-import { useRouter } from "next/navigation";
 import { useMemo, useState } from "react";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
@@ -34,7 +33,6 @@ import { useSolveKey } from "./use-solve-key";
 
 /** The page of a design: recipe, coupled responses and evidence side by side, the gains below. */
 export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
-  const router = useRouter();
   const mayWrite = useSession().role !== "reviewer";
   const bench = useBench(start, mayWrite);
   const saving = useSaving(bench, start.plant.id);
@@ -45,8 +43,6 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
   useSolveKey(() => void (bench.solving.busy || bench.solve()), mayEdit);
   // A recipe that cannot be sent is not asked a name for: its fields say first what is wrong.
   const open = (which: "revision" | "new") => (reading.recipe ? setDialog(which) : void bench.solve());
-  // The address of an older revision goes on showing that one; what was just saved is the newest.
-  const onSaved = () => start.older && router.replace(`/plants/${start.plant.id}/designs/${start.design?.id}`);
   const suggested = base.design ? `${base.design.name}, next`.slice(0, 120) : "";
   return (
     <>
@@ -62,7 +58,7 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
         <Columns bench={bench} plantName={start.plant.name} recipe={<Read bench={bench} />} />
       )}
       {base.design && base.revision ? <RevisionsList design={base.design} shownId={base.revision.id} /> : null}
-      <SaveRevisionDialog {...{ bench, saving, onSaved }} open={dialog === "revision"} onClose={() => setDialog(null)} />
+      <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={() => setDialog(null)} />
       {dialog === "new" ? (
         <SaveNewDialog {...{ bench, saving, suggested }} plantId={start.plant.id} open onClose={() => setDialog(null)} />
       ) : null}

@@ -22,11 +22,10 @@ type SaveRevisionDialogProps = Readonly<{
   saving: Saving;
   open: boolean;
   onClose: () => void;
-  onSaved: () => void;
 }>;
 
 /** The next revision of the design, with what changed and a note for those who read it later. */
-export function SaveRevisionDialog({ bench, saving, open, onClose, onSaved }: SaveRevisionDialogProps) {
+export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisionDialogProps) {
   const { base, ground, reading } = bench;
   const say = useToast();
   const [note, setNote] = useState("");
@@ -47,7 +46,6 @@ export function SaveRevisionDialog({ bench, saving, open, onClose, onSaved }: Sa
     if (!saved) return;
     setNote("");
     say({ text: `Revision ${next} is saved.`, kind: "met" });
-    onSaved();
   };
   return (
     <Dialog open={open} onClose={onClose} title={`Save revision ${next}`} wide>

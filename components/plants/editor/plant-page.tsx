@@ -3,7 +3,7 @@
 import { useRouter } from "next/navigation";
 import { useState } from "react";
 import type { PlantRevision, PlantSummary } from "@/lib/schemas/plant";
-import { DesignsTable } from "../../designs/designs-table";
+import { PlantDesigns } from "../../designs/plant-designs";
 import { useSession } from "../../providers/session-provider";
 import { useToast } from "../../providers/toast-provider";
 import { Button } from "../../ui/button";
@@ -96,7 +96,12 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
       <EditorTabs
         {...{ draft, evaluation, readOnly }}
         more={[
-          { key: "designs", label: "Designs", count: plant.designCount, panel: <DesignsTable plantId={plant.id} /> },
+          {
+            key: "designs",
+            label: "Designs",
+            count: plant.designCount,
+            panel: <PlantDesigns plantId={plant.id} designCount={plant.designCount} />,
+          },
           { key: "history", label: "History", panel: <HistoryTab plantId={plant.id} /> },
         ]}
       />
