@@ -60,7 +60,7 @@ function withPlainPatterns(description: ApiDescription): ApiDescription {
 const INTRODUCTION = [
   "State feedback for coupled machines: plants, recipes, designs and their evidence.",
   "Control law u = -K x + F r, in deviations from the operating point; matrices are lists of rows; times are in seconds and UTC.",
-  "Every refusal is a problem document (RFC 9457); its `type` leads to a page that says what to do.",
+  "Every refusal is a problem document (RFC 9457); its `type` leads to a page that says what to do. A method that an address does not know is answered 405 with an empty body.",
   "Changes carry the ETag of what they change in `If-Match`; creates carry an `Idempotency-Key`, so that they can be repeated safely.",
 ].join("\n\n");
 

@@ -14,7 +14,8 @@ export default function ProblemsPage() {
       <p className="mb-6 max-w-prose">
         A refused request is answered with a problem document (RFC 9457). Its <code>code</code> is one of these; its{" "}
         <code>detail</code> says what it means for this request, <code>errors</code> what to correct and where, and{" "}
-        <code>requestId</code> finds it in the log.
+        <code>requestId</code> finds it in the log. Only a method that an address does not know is answered without one: by 405
+        and an empty body.
       </p>
       <dl className="max-w-prose">
         {entries.map(([code, { status, title, meaning, nextStep }]) => (
