@@ -49,7 +49,7 @@ export function MembersTable({ members, userId, mayManage, busy, onRole, onRemov
             disabled={busy || onlyLead(member)}
             hint={onlyLead(member) ? "the only lead: make somebody else one first" : undefined}
             onChange={({ target }) => onRole(member, roleOf(target.value))}
-            className="w-44"
+            className="w-36"
           />
         ) : (
           member.role

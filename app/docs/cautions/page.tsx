@@ -30,8 +30,8 @@ export default function CautionsPage() {
               sample rate is a decision of yours, and costs margin.
             </li>
             <li>
-              Everything shown was verified: the residual of the equation it came from stands beside it, and what could not be
-              verified is refused with the reason, never shown as a guess.
+              Gains are verified before they are shown: the residual of the equation they came from stands beside them, and what
+              could not be verified is refused with the reason, never shown as a guess.
             </li>
           </ul>
         </SheetSection>
