@@ -28,7 +28,7 @@ export function OwnTeams({ teams, currentTeamId }: Pick<Profile, "teams" | "curr
         id === currentTeamId ? (
           <Chip>you work here now</Chip>
         ) : (
-          <Button size="small" busy={busy} aria-label={`Work in ${name}`} onClick={() => work(id)}>
+          <Button size="small" busy={busy} aria-label={`Work in this team: ${name}`} onClick={() => work(id)}>
             Work in this team
           </Button>
         ),

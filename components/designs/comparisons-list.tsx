@@ -71,7 +71,7 @@ function ComparisonEntry({ comparison, onPutAway }: Readonly<{ comparison: Compa
         </span>
         {note ? <p className="max-w-[70ch] text-table whitespace-pre-line">{note}</p> : null}
       </div>
-      <Button size="small" tone="quiet" onClick={onPutAway} aria-label={`Take “${title}” off this list`}>
+      <Button size="small" tone="quiet" onClick={onPutAway} aria-label={`Take off the list: ${title}`}>
         Take off the list
       </Button>
     </li>

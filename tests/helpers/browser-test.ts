@@ -1,4 +1,4 @@
-import { type BrowserContext, test as base, expect, type Page } from "@playwright/test";
+import { type BrowserContext, type BrowserContextOptions, test as base, expect, type Page } from "@playwright/test";
 import { newAddress } from "./browser-requests";
 
 type Watch = {
@@ -6,7 +6,7 @@ type Watch = {
   expectedProblems: RegExp[];
   problems: string[];
   /** A page of somebody else, with cookies of their own, watched like the first. */
-  anotherPerson: () => Promise<Page>;
+  anotherPerson: (options?: BrowserContextOptions) => Promise<Page>;
 };
 
 /** Puts everything a clean page never says into `problems`. */
@@ -41,8 +41,8 @@ export const test = base.extend<Watch>({
   },
   anotherPerson: async ({ browser, baseURL, problems }, use) => {
     const contexts: BrowserContext[] = [];
-    await use(async () => {
-      const context = await browser.newContext({ baseURL });
+    await use(async (options) => {
+      const context = await browser.newContext({ baseURL, ...options });
       contexts.push(context);
       await watch(context, problems);
       return context.newPage();

@@ -40,10 +40,15 @@ export async function pasteAt(page: Page, cell: Locator, text: string): Promise<
 
 /** Until then a click may find no one listening: React marks the elements it has taken over. */
 export async function untilTakenOver(page: Page): Promise<void> {
-  await page.waitForFunction(() => {
-    const main = document.querySelector("main :is(button, input, a, [role=grid])");
-    return main !== null && Object.keys(main).some((key) => key.startsWith("__reactProps"));
-  });
+  await page.waitForFunction(
+    () => {
+      const main = document.querySelector("main");
+      const part = main?.querySelector("button, input, [role=grid], a") ?? main;
+      return part !== null && Object.keys(part).some((key) => key.startsWith("__reactProps"));
+    },
+    undefined,
+    { timeout: 30_000 },
+  );
 }
 
 export async function openPlant(page: Page, path: string): Promise<void> {
