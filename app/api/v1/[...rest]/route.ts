@@ -1,8 +1,9 @@
+import { z } from "zod";
 import { publicRoute } from "@/lib/api/route";
 import { NotFound } from "@/lib/errors";
 
 /** Addresses under /api/v1 that name nothing are answered like any other refusal, not with a page. */
-const nothingHere = publicRoute({ summary: "Nothing is here", reply: null }, async () => {
+const nothingHere = publicRoute({ summary: "Nothing is here", query: z.looseObject({}), reply: null }, async () => {
   throw new NotFound("What this address names");
 });
 
