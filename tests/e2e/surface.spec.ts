@@ -59,6 +59,33 @@ test("what production does not need is not there", async ({ request }) => {
   expect(await traced.text()).not.toContain("do-not-repeat-this");
 });
 
+test("no header skips what stands in front of pages and routes, nor the question who asks", async ({ request }) => {
+  for (const skip of ["proxy", "proxy:proxy:proxy:proxy:proxy", "middleware", "src/middleware:src/middleware:src/middleware"]) {
+    const headers = { "x-middleware-subrequest": skip, "x-middleware-next": "1", "x-nonce": "AAAAAAAAAAAAAAAAAAAAAA==" };
+    const page = await request.get("/plants", { headers, maxRedirects: 0 });
+    expect([page.status(), page.headers().location], skip).toEqual([307, "/sign-in?next=%2Fplants"]);
+    expect(page.headers()["content-security-policy"], skip).toContain("frame-ancestors 'none'");
+    expect(page.headers()["content-security-policy"], skip).not.toContain("AAAAAAAA");
+    expect((await request.get("/api/v1/plants", { headers })).status(), skip).toBe(401);
+  }
+});
+
+test("an address or a method that is not known tells nothing of what is behind it", async ({ request }) => {
+  for (const [method, path, status] of [
+    ["PUT", "/api/v1/plants", 405],
+    ["DELETE", "/api/health", 405],
+    ["GET", "/api/v1/%00", 404],
+    ["GET", "/api/v1/no-such-thing?x=%ff", 404],
+    ["GET", "/_next/static/chunks/no-such-file.js.map", 404],
+    ["GET", "/__nextjs_original-stack-frames", 404],
+    ["GET", "/_next/image?url=http://127.0.0.1:5432/&w=640&q=75", 400],
+  ] as const) {
+    const reply = await request.fetch(path, { method });
+    expect(reply.status(), path).toBe(status);
+    expect(await reply.text(), path).not.toMatch(/node_modules|webpack|turbopack:|\.tsx?:|\bat [\w.]+ \(/);
+  }
+});
+
 test("the files that browsers load hold no source map and no secret's name", () => {
   const folder = join(root, ".next/static");
   const files = readdirSync(folder, { recursive: true, encoding: "utf8" });
