@@ -6,7 +6,7 @@ export function Shape({ text }: Readonly<{ text: string }>) {
     <span className="font-mono text-sm">
       {piecesOf(text).map(({ at, words, isName }) =>
         isName ? (
-          <a key={at} href={`#shape-${words}`}>
+          <a key={at} href={`#shape-${words}`} className="inline-flex min-h-6 items-center">
             {words}
           </a>
         ) : (

@@ -25,7 +25,7 @@ export function AxesChoice({ fresh, onChoose }: Readonly<{ fresh: boolean; onCho
     if (names.length > 0 && !problem) onChoose(names);
   };
   return (
-    <form onSubmit={submit} className="flex flex-wrap items-start gap-3">
+    <form onSubmit={submit} className="flex max-w-full min-w-0 flex-wrap items-start gap-3">
       <TextField
         id={id}
         label="Axes, separated by commas"

@@ -56,8 +56,13 @@ export function usePlantDraft(key: string, start: Start) {
 
   useEffect(() => {
     if (!ready.current || !dirty) return;
-    const timer = setTimeout(() => keep(key, { content: present, name, version, at: new Date().toISOString() }), SAVE_AFTER_MS);
-    return () => clearTimeout(timer);
+    const now = () => letGo.current || keep(key, { content: present, name, version, at: new Date().toISOString() });
+    const timer = setTimeout(now, SAVE_AFTER_MS);
+    window.addEventListener("pagehide", now);
+    return () => {
+      clearTimeout(timer);
+      window.removeEventListener("pagehide", now);
+    };
   }, [key, present, name, version, dirty]);
 
   useEffect(() => {
