@@ -152,6 +152,7 @@ test("each kind of observer is solved, and states as they are stand beside state
   };
   await choose(page, /^By poles/);
   await press(page, "Propose four times as fast as the loop");
+  await expect(page.getByText("4 of 4 poles")).toBeVisible();
   await estimates("xhat' = A xhat + B u + L (y - C xhat - D u)", ["K", "F", "L"]);
   await choose(page, /^From noise/);
   await expect(figure(page, "Noise on v1, (m/s)²/s")).not.toHaveValue("");
