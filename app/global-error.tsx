@@ -7,7 +7,7 @@ import { fontVariables } from "./fonts";
 import "./globals.css";
 
 /** Stands in for the root layout when that fails itself. */
-export default function GlobalError({ error, reset }: Readonly<{ error: Error & { digest?: string }; reset: () => void }>) {
+export default function GlobalError({ error }: Readonly<{ error: Error & { digest?: string } }>) {
   return (
     <html lang="en" className={fontVariables}>
       <body>
@@ -18,7 +18,7 @@ export default function GlobalError({ error, reset }: Readonly<{ error: Error & 
             title="Something failed on our side."
             requestId={error.digest}
             action={
-              <Button tone="primary" onClick={reset}>
+              <Button tone="primary" onClick={() => window.location.reload()}>
                 Try again
               </Button>
             }

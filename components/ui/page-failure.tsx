@@ -5,10 +5,10 @@ import { buttonStyle } from "./button-style";
 import { ErrorState } from "./error-state";
 import { PageBody } from "./page-body";
 
-export type PageFailureProps = Readonly<{ error: Error & { digest?: string }; reset: () => void }>;
+export type PageFailureProps = Readonly<{ error: Error & { digest?: string } }>;
 
-/** What a page says when its own making failed. The way out is a full load, which also mends what failed in the browser. */
-export function PageFailure({ error, reset }: PageFailureProps) {
+/** What a page says when its own making failed. Both ways out are full loads, which also mend what failed in the browser. */
+export function PageFailure({ error }: PageFailureProps) {
   return (
     <PageBody>
       <h1 className="mb-4 text-title font-bold">This page could not be shown</h1>
@@ -17,7 +17,7 @@ export function PageFailure({ error, reset }: PageFailureProps) {
         requestId={error.digest}
         action={
           <>
-            <Button tone="primary" onClick={reset}>
+            <Button tone="primary" onClick={() => window.location.reload()}>
               Try again
             </Button>
             <a href="/plants" className={buttonStyle()}>

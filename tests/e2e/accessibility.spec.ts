@@ -79,6 +79,21 @@ test.describe("axe finds nothing, in light and in dark,", () => {
     });
   });
 
+  test.describe("and on", () => {
+    test.use({ expectedProblems: [/./] });
+
+    test("a page whose making failed, which keeps the header and tries again", async ({ page, context }) => {
+      await context.route("**/api/v1/plants?*", (route) => route.fulfill({ json: { items: [{}], nextCursor: null } }));
+      await page.goto("/plants");
+      await expect(page.getByRole("heading", { level: 1, name: "This page could not be shown" })).toBeVisible();
+      await expect(page.getByRole("button", { name: /account menu$/ })).toBeVisible();
+      await inBothThemes(page, "page that failed");
+      await context.unroute("**/api/v1/plants?*");
+      await page.getByRole("button", { name: "Try again" }).click();
+      await expect(page.getByRole("heading", { level: 1, name: "Plants" })).toBeVisible();
+    });
+  });
+
   test("on open menus and dialogs", async ({ page, team }) => {
     test.setTimeout(180_000);
     const plant = await storedPlant(team.lead.request);
