@@ -9,8 +9,6 @@ export default defineConfig({
   globalTimeout: 1_700_000,
   expect: { timeout: 20_000 },
   workers: 2,
-  // Server, database and browser share the cores: a press can come before its page. A defect fails twice.
-  retries: 1,
   forbidOnly: true,
   reporter: "list",
   use: {

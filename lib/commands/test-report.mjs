@@ -44,14 +44,14 @@ export function readVitest(report) {
 }
 
 /**
- * A browser test that passed at its second try has passed: the list above names it as flaky.
+ * A browser test that passed at its second try has failed once: it counts as failed.
  * @param {unknown} report
  * @returns {Tally}
  */
 export function readPlaywright(report) {
   const { stats, errors } =
     /** @type {{ stats: Record<"expected" | "unexpected" | "flaky" | "skipped", number>, errors: unknown[] }} */ (report);
-  return { passed: stats.expected + stats.flaky, failed: stats.unexpected + errors.length, skipped: stats.skipped };
+  return { passed: stats.expected, failed: stats.unexpected + stats.flaky + errors.length, skipped: stats.skipped };
 }
 
 /** @param {Tally} tally */

@@ -14,14 +14,17 @@ import { twoCarriages } from "./plant-content";
 type Person = { readonly name: string; readonly email: string; readonly request: APIRequestContext };
 type Team = { readonly id: string; readonly name: string; readonly lead: Person };
 
-/** Hashing passwords is slow on purpose, so a worker's people stay the same; each test has a team of its own. */
+/** Requests that solve are limited for each person and minute: nobody is shared by more tests than that allows for. */
+const TESTS_PER_PERSON = 3;
+
+/** Hashing passwords is slow on purpose, so a worker's people serve a few tests; each test has a team of its own. */
 class Staff {
   private readonly people = new Map<Role, { person: Promise<Person>; teams: number }>();
 
-  /** Somebody to join one more team; replaced before reaching the most teams one person may have. */
+  /** Somebody to join one more team. */
   of(role: Role): Promise<Person> {
     const known = this.people.get(role);
-    const one = known && known.teams < 15 ? known : { person: this.hire(role), teams: 0 };
+    const one = known && known.teams < TESTS_PER_PERSON ? known : { person: this.hire(role), teams: 0 };
     one.teams += 1;
     this.people.set(role, one);
     return one.person;
