@@ -1,5 +1,6 @@
 import { NumericalError } from "../errors";
 import { balance } from "../linalg/balance";
+import type { Wide } from "../linalg/double-double";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 
 /** x[order[k]] = scale[k] z[k] turns x' = A x into z' = matrix z. */
@@ -25,6 +26,22 @@ export function balanceDynamics(a: Float64Array, n: number): BalancedDynamics {
   if (size === 0) return { matrix, order, scale };
   for (let block = 1; block + 1 < starts.length; block++) shrinkBlock(matrix, n, starts[block], starts[block + 1], size, scale);
   return { matrix, order, scale };
+}
+
+/** The same for a matrix with twice the digits, judged by its leading parts. */
+export function balanceWide(a: Wide, n: number): BalancedDynamics & { readonly wide: Wide } {
+  const balanced = balanceDynamics(a.hi, n);
+  const { matrix, order, scale } = balanced;
+  const lo = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < n; j++) lo[i * n + j] = rescaled(a.lo[order[i] * n + order[j]], scale[j], scale[i]);
+  }
+  return { ...balanced, wide: { hi: matrix, lo } };
+}
+
+/** entry · up / down, in the order that cannot overflow on the way. */
+export function rescaled(entry: number, up: number, down: number): number {
+  return up > 1 === down > 1 ? entry * (up / down) : (entry * up) / down;
 }
 
 /** Places where the lower left of a block upper triangular matrix is empty. */

@@ -2,7 +2,7 @@ import { flatProduct } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
 import { NODE_GRID, NODES, POINTS } from "./cell-basis";
-import { flatExponential, squared } from "./matrix-exponential";
+import { flatExponential } from "./matrix-exponential";
 
 /** Everything to cross a cell of length h: the state at its end, and all signals at its nodes, from the state at its start. */
 export type Cell = { readonly h: number; readonly phi: Float64Array; readonly nodes: Float64Array };
@@ -65,4 +65,11 @@ function signalsAtNodes(step: Float64Array, n: number, rows: Float64Array): Floa
     node++;
   }
   return nodes;
+}
+
+/** Φ², Φ⁴, ... : `times` squarings. */
+function squared(phi: Float64Array, n: number, times: number): Float64Array {
+  let power = phi;
+  for (let k = 0; k < times; k++) power = flatProduct(power, power, n, n, n);
+  return power;
 }
