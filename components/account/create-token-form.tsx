@@ -1,16 +1,15 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
+import { useState } from "react";
 import { createAccessToken } from "@/lib/client/account";
 import type { CreatedAccessToken } from "@/lib/schemas/account";
 import type { Scope } from "@/lib/schemas/team";
 import { usePerson } from "../providers/session-provider";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
 import { NumberField } from "../ui/number-field";
 import { type Choice, RadioGroup } from "../ui/radio-group";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
 
 const FIELDS = { "/name": "token-name", "/scope": "token-scope", "/expiresInDays": "token-days" };
 const SCOPES: readonly Choice<Scope>[] = [
@@ -25,11 +24,10 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
   const [scope, setScope] = useState<Scope>("read");
   const [days, setDays] = useState<number | null>(USUAL_DAYS);
   const [daysRead, setDaysRead] = useState(true);
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const done = await run(async () => {
+  async function make() {
+    const done = await submit.run(async () => {
       // What is no number is sent as none, so that the refusal names the field.
       const expiresInDays = daysRead && days !== null ? days : Number.NaN;
       const token = await resume(() => createAccessToken({ name, scope, expiresInDays }));
@@ -39,15 +37,21 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
-      <FormProblems title="No token was made." {...{ attempt, problems }} />
+    <AccountForm
+      submit={submit}
+      refused="No token was made."
+      label="Make an access token"
+      busyLabel="Making it…"
+      className="max-w-md"
+      onSend={make}
+    >
       <TextField
         id={FIELDS["/name"]}
         label="What it is for"
         value={name}
         onChange={({ target }) => setName(target.value)}
         autoComplete="off"
-        problem={at("/name")}
+        problem={submit.at("/name")}
         hint="For example the program or the machine that will hold it."
       />
       <RadioGroup
@@ -56,7 +60,7 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
         choices={SCOPES}
         value={scope}
         onChange={setScope}
-        problem={at("/scope")}
+        problem={submit.at("/scope")}
       />
       <NumberField
         id={FIELDS["/expiresInDays"]}
@@ -65,15 +69,10 @@ export function CreateTokenForm({ onCreated }: Readonly<{ onCreated: (token: Cre
         value={days}
         onChange={setDays}
         onUsable={setDaysRead}
-        problem={at("/expiresInDays")}
+        problem={submit.at("/expiresInDays")}
         hint="From 1 to 365. Make a new one before it ends."
         className="max-w-48"
       />
-      <div>
-        <Button type="submit" busy={busy}>
-          {busy ? "Making it…" : "Make an access token"}
-        </Button>
-      </div>
-    </form>
+    </AccountForm>
   );
 }

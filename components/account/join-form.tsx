@@ -1,24 +1,21 @@
 "use client";
 
-import type { FormEvent } from "react";
 import { joinByInvitation } from "@/lib/client/account";
 import { signIn } from "@/lib/client/session";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
+import { EmailField } from "./email-field";
 import { PasswordField } from "./password-field";
 
 const FIELDS = { "/name": "join-name", "/password": "join-password" };
 
 export function JoinForm({ secret, email }: Readonly<{ secret: string; email: string }>) {
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const form = new FormData(event.currentTarget);
-    const [name, password] = [String(form.get("name")), String(form.get("password"))];
-    const done = await run(async () => {
+  async function join(typed: (name: string) => string) {
+    const [name, password] = [typed("name"), typed("password")];
+    const done = await submit.run(async () => {
       await joinByInvitation({ secret, name, password });
       await signIn(email, password);
     });
@@ -26,22 +23,17 @@ export function JoinForm({ secret, email }: Readonly<{ secret: string; email: st
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
-      <FormProblems title="You have not joined yet." {...{ attempt, problems }} />
-      <TextField label="E-mail address" name="email" type="email" autoComplete="username" value={email} readOnly />
-      <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />
-      <PasswordField
-        id={FIELDS["/password"]}
-        name="password"
-        label="Password"
-        autoComplete="new-password"
-        problem={at("/password")}
-      />
-      <div>
-        <Button type="submit" tone="primary" busy={busy}>
-          {busy ? "Joining…" : "Join the team"}
-        </Button>
-      </div>
-    </form>
+    <AccountForm
+      submit={submit}
+      refused="You have not joined yet."
+      label="Join the team"
+      busyLabel="Joining…"
+      tone="primary"
+      onSend={join}
+    >
+      <EmailField settled={email} />
+      <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={submit.at("/name")} />
+      <PasswordField id={FIELDS["/password"]} kind="new" problem={submit.at("/password")} />
+    </AccountForm>
   );
 }

@@ -1,24 +1,21 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
+import { useState } from "react";
 import { resetPassword } from "@/lib/client/account";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
 import { LinkButton } from "../ui/link-button";
 import { Notice } from "../ui/notice";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
 import { PasswordField } from "./password-field";
 
 const FIELDS = { "/password": "new-password" };
 
 export function NewPasswordForm({ secret }: Readonly<{ secret: string }>) {
   const [changed, setChanged] = useState(false);
-  const { busy, attempt, problems, refusal, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const password = String(new FormData(event.currentTarget).get("password"));
-    if (await run(() => resetPassword(secret, password))) setChanged(true);
+  async function change(typed: (name: string) => string) {
+    if (await submit.run(() => resetPassword(secret, typed("password")))) setChanged(true);
   }
 
   if (changed) {
@@ -38,26 +35,26 @@ export function NewPasswordForm({ secret }: Readonly<{ secret: string }>) {
     );
   }
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
-      <FormProblems title="The password was not changed." {...{ attempt, problems }} />
-      {refusal?.at("/secret").length ? (
+    <AccountForm
+      submit={submit}
+      refused="The password was not changed."
+      label="Save the new password"
+      busyLabel="Saving…"
+      tone="primary"
+      onSend={change}
+    >
+      {submit.refusal?.at("/secret").length ? (
         <div>
           <LinkButton href="/forgotten-password">Ask for a new link</LinkButton>
         </div>
       ) : null}
       <PasswordField
         id={FIELDS["/password"]}
-        name="password"
         label="New password"
-        autoComplete="new-password"
+        kind="new"
         hint="You are signed out everywhere."
-        problem={at("/password")}
+        problem={submit.at("/password")}
       />
-      <div>
-        <Button type="submit" tone="primary" busy={busy}>
-          {busy ? "Saving…" : "Save the new password"}
-        </Button>
-      </div>
-    </form>
+    </AccountForm>
   );
 }

@@ -8,22 +8,20 @@ import { CONTROL_STYLE, describedBy } from "../ui/field-style";
 
 type PasswordFieldProps = Readonly<{
   id: string;
-  name: string;
-  label: string;
-  /** `new-password` also says what is asked of one. */
-  autoComplete: "current-password" | "new-password";
+  name?: string;
+  label?: string;
+  /** A new one also says what is asked of it. */
+  kind: "current" | "new";
   /** After what is asked of a new password. */
   hint?: string;
   problem?: string;
 }>;
 
 /** A password that can be looked at, pasted, and filled in by a password manager. */
-export function PasswordField({ id, name, label, autoComplete, hint = "", problem }: PasswordFieldProps) {
+export function PasswordField({ id, name = "password", label = "Password", kind, hint = "", problem }: PasswordFieldProps) {
   const [shown, setShown] = useState(false);
   const asked =
-    autoComplete === "new-password"
-      ? `At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better. `
-      : "";
+    kind === "new" ? `At least ${PASSWORD_LENGTH.least} characters; ${PASSWORD_LENGTH.advised} or more are better. ` : "";
   const said = `${asked}${hint}`;
   return (
     <Field id={id} label={label} hint={said} problem={problem}>
@@ -32,7 +30,7 @@ export function PasswordField({ id, name, label, autoComplete, hint = "", proble
           id={id}
           name={name}
           type={shown ? "text" : "password"}
-          autoComplete={autoComplete}
+          autoComplete={`${kind}-password`}
           autoCapitalize="none"
           spellCheck={false}
           aria-invalid={problem ? true : undefined}

@@ -1,12 +1,11 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
+import { useState } from "react";
 import { changePassword } from "@/lib/client/account";
 import { usePerson } from "../providers/session-provider";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
 import { Notice } from "../ui/notice";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
 import { PasswordField } from "./password-field";
 
 const FIELDS = { "/currentPassword": "present-password", "/newPassword": "changed-password" };
@@ -14,22 +13,25 @@ const FIELDS = { "/currentPassword": "present-password", "/newPassword": "change
 export function PasswordForm() {
   const { email, resume } = usePerson();
   const [changed, setChanged] = useState(false);
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const form = event.currentTarget;
-    const typed = new FormData(form);
-    const body = { currentPassword: String(typed.get("currentPassword")), newPassword: String(typed.get("newPassword")) };
+  async function change(typed: (name: string) => string, form: HTMLFormElement) {
+    const body = { currentPassword: typed("currentPassword"), newPassword: typed("newPassword") };
     setChanged(false);
-    if (!(await run(() => resume(() => changePassword(body))))) return;
+    if (!(await submit.run(() => resume(() => changePassword(body))))) return;
     form.reset();
     setChanged(true);
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex max-w-md flex-col gap-4">
-      <FormProblems title="The password was not changed." {...{ attempt, problems }} />
+    <AccountForm
+      submit={submit}
+      refused="The password was not changed."
+      label="Change the password"
+      busyLabel="Changing…"
+      className="max-w-md"
+      onSend={change}
+    >
       {changed ? (
         <Notice kind="met" title="The password is changed." role="status">
           Every other session of yours was ended, and a mail about it is on its way to you.
@@ -41,21 +43,16 @@ export function PasswordForm() {
         id={FIELDS["/currentPassword"]}
         name="currentPassword"
         label="Present password"
-        autoComplete="current-password"
-        problem={at("/currentPassword")}
+        kind="current"
+        problem={submit.at("/currentPassword")}
       />
       <PasswordField
         id={FIELDS["/newPassword"]}
         name="newPassword"
         label="New password"
-        autoComplete="new-password"
-        problem={at("/newPassword")}
+        kind="new"
+        problem={submit.at("/newPassword")}
       />
-      <div>
-        <Button type="submit" busy={busy}>
-          {busy ? "Changing…" : "Change the password"}
-        </Button>
-      </div>
-    </form>
+    </AccountForm>
   );
 }

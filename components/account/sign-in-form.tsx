@@ -1,12 +1,11 @@
 "use client";
 
-import { type FormEvent, type ReactNode, useState } from "react";
+import { type ReactNode, useState } from "react";
 import { RequestProblem } from "@/lib/client/request";
 import { signIn } from "@/lib/client/session";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
-import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
+import { EmailField } from "./email-field";
 import { PasswordField } from "./password-field";
 
 const FIELDS = { "/email": "sign-in-email", "/password": "sign-in-password" };
@@ -20,14 +19,12 @@ type SignInFormProps = Readonly<{
 
 /** Values stay when it is refused, and password managers and paste work. */
 export function SignInForm({ email, onSignedIn, children }: SignInFormProps) {
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
   const [signedIn, setSignedIn] = useState(false);
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const form = new FormData(event.currentTarget);
-    const [address, password] = [email ?? String(form.get("email")), String(form.get("password"))];
-    const done = await run(async () => {
+  async function enter(typed: (name: string) => string) {
+    const [address, password] = [typed("email"), typed("password")];
+    const done = await submit.run(async () => {
       requireBoth(address, password);
       await signIn(address, password).catch(atPassword);
     });
@@ -37,33 +34,20 @@ export function SignInForm({ email, onSignedIn, children }: SignInFormProps) {
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
-      <FormProblems title="You are not signed in yet." {...{ attempt, problems }} />
-      <TextField
-        id={FIELDS["/email"]}
-        name="email"
-        type="email"
-        label="E-mail address"
-        autoComplete="username"
-        defaultValue={email}
-        readOnly={email !== undefined}
-        problem={at("/email")}
-      />
-      <PasswordField
-        id={FIELDS["/password"]}
-        name="password"
-        label="Password"
-        autoComplete="current-password"
-        problem={at("/password")}
-      />
-      <div className="flex flex-wrap items-center gap-4">
-        {/* Stays busy until the next page is there. */}
-        <Button type="submit" tone="primary" busy={busy || signedIn}>
-          {busy || signedIn ? "Signing in…" : "Sign in"}
-        </Button>
-        {children}
-      </div>
-    </form>
+    <AccountForm
+      submit={submit}
+      refused="You are not signed in yet."
+      label="Sign in"
+      busyLabel="Signing in…"
+      // Stays busy until the next page is there.
+      busy={submit.busy || signedIn}
+      tone="primary"
+      beside={children}
+      onSend={enter}
+    >
+      <EmailField id={FIELDS["/email"]} settled={email} problem={submit.at("/email")} />
+      <PasswordField id={FIELDS["/password"]} kind="current" problem={submit.at("/password")} />
+    </AccountForm>
   );
 }
 

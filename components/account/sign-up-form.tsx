@@ -1,12 +1,11 @@
 "use client";
 
-import type { FormEvent } from "react";
 import { signUp } from "@/lib/client/account";
 import { signIn } from "@/lib/client/session";
-import { Button } from "../ui/button";
-import { FormProblems } from "../ui/form-problems";
 import { TextField } from "../ui/text-field";
 import { useSubmit } from "../ui/use-submit";
+import { AccountForm } from "./account-form";
+import { EmailField } from "./email-field";
 import { PasswordField } from "./password-field";
 
 const FIELDS = {
@@ -17,14 +16,17 @@ const FIELDS = {
 };
 
 export function SignUpForm() {
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
+  const submit = useSubmit(FIELDS);
+  const { at } = submit;
 
-  async function submit(event: FormEvent<HTMLFormElement>) {
-    event.preventDefault();
-    const form = new FormData(event.currentTarget);
-    const field = (name: string) => String(form.get(name));
-    const account = { name: field("name"), email: field("email"), password: field("password"), teamName: field("teamName") };
-    const done = await run(async () => {
+  async function start(typed: (name: string) => string) {
+    const account = {
+      name: typed("name"),
+      email: typed("email"),
+      password: typed("password"),
+      teamName: typed("teamName"),
+    };
+    const done = await submit.run(async () => {
       await signUp(account);
       await signIn(account.email, account.password);
     });
@@ -32,8 +34,14 @@ export function SignUpForm() {
   }
 
   return (
-    <form method="post" onSubmit={submit} noValidate className="flex flex-col gap-4">
-      <FormProblems title="The team could not be started yet." {...{ attempt, problems }} />
+    <AccountForm
+      submit={submit}
+      refused="The team could not be started yet."
+      label="Start the team"
+      busyLabel="Starting the team…"
+      tone="primary"
+      onSend={start}
+    >
       <TextField
         id={FIELDS["/teamName"]}
         name="teamName"
@@ -42,27 +50,8 @@ export function SignUpForm() {
         problem={at("/teamName")}
       />
       <TextField id={FIELDS["/name"]} name="name" label="Your name" autoComplete="name" problem={at("/name")} />
-      <TextField
-        id={FIELDS["/email"]}
-        name="email"
-        type="email"
-        label="E-mail address"
-        autoComplete="username"
-        problem={at("/email")}
-      />
-      <PasswordField
-        id={FIELDS["/password"]}
-        name="password"
-        label="Password"
-        autoComplete="new-password"
-        hint="Several words do well."
-        problem={at("/password")}
-      />
-      <div>
-        <Button type="submit" tone="primary" busy={busy}>
-          {busy ? "Starting the team…" : "Start the team"}
-        </Button>
-      </div>
-    </form>
+      <EmailField id={FIELDS["/email"]} problem={at("/email")} />
+      <PasswordField id={FIELDS["/password"]} kind="new" hint="Several words do well." problem={at("/password")} />
+    </AccountForm>
   );
 }
