@@ -1,10 +1,11 @@
+import { acceleratedWideProduct } from "../accelerator/accelerator";
+import { SPLITTER, wideProductByLoops } from "./wide-product-loops";
+
 /** Unevaluated sum hi + lo of two doubles per entry, |lo| ≤ ulp(hi) / 2: about 32 decimal digits. */
 export type Wide = { readonly hi: Float64Array; readonly lo: Float64Array };
 
 /** A matrix of doubles with each entry split into two halves of at most 26 bits, once, for exact products. */
 export type Split = { readonly value: Float64Array; readonly head: Float64Array; readonly tail: Float64Array };
-
-const SPLITTER = 134217729; // 2^27 + 1 (Veltkamp)
 
 /** Entries must be below 2^990, or the split overflows. */
 export function split(value: Float64Array): Split {
@@ -30,29 +31,7 @@ export function widen(value: Float64Array): Wide {
  * Source    Ogita, Rump & Oishi, Accurate sum and dot product, SIAM J. Sci. Comput. 26 (2005) 1955-1988, algorithm 5.3
  */
 export function wideProduct(a: Split, b: Wide, rows: number, inner: number, columns: number): Wide {
-  const right = split(b.hi);
-  const hi = new Float64Array(rows * columns);
-  const lo = new Float64Array(rows * columns);
-  for (let i = 0; i < rows; i++) {
-    const out = i * columns;
-    for (let k = 0; k < inner; k++) {
-      const x = a.value[i * inner + k];
-      if (x === 0) continue;
-      const xh = a.head[i * inner + k];
-      const xt = a.tail[i * inner + k];
-      for (let j = 0, at = k * columns; j < columns; j++, at++) {
-        const product = x * right.value[at];
-        const below = xt * right.tail[at] - (product - xh * right.head[at] - xt * right.head[at] - xh * right.tail[at]);
-        const sum = hi[out + j];
-        const total = sum + product;
-        const part = total - sum;
-        lo[out + j] += sum - (total - part) + (product - part) + (below + x * b.lo[at]);
-        hi[out + j] = total;
-      }
-    }
-  }
-  renormalise(hi, lo);
-  return { hi, lo };
+  return acceleratedWideProduct(a.value, b, rows, inner, columns) ?? wideProductByLoops(a, b, rows, inner, columns);
 }
 
 /** x + sign·y into x. */

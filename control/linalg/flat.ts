@@ -1,4 +1,6 @@
 import { Matrix } from "ml-matrix";
+import { acceleratedProduct } from "../accelerator/accelerator";
+import { productByLoops } from "./product-loops";
 
 /** Row-major entries of M in one array: what every inner loop of this folder works on. */
 export function toFlat(M: Matrix): Float64Array {
@@ -27,17 +29,7 @@ export function flatTranspose(a: Float64Array, rows: number, columns: number): F
 
 /** a (rows×inner) times b (inner×columns); sums run in order of the inner index. */
 export function flatProduct(a: Float64Array, b: Float64Array, rows: number, inner: number, columns: number): Float64Array {
-  const product = new Float64Array(rows * columns);
-  for (let i = 0; i < rows; i++) {
-    const out = i * columns;
-    for (let k = 0; k < inner; k++) {
-      const factor = a[i * inner + k];
-      if (factor === 0) continue;
-      const from = k * columns;
-      for (let j = 0; j < columns; j++) product[out + j] += factor * b[from + j];
-    }
-  }
-  return product;
+  return acceleratedProduct(a, b, rows, inner, columns) ?? productByLoops(a, b, rows, inner, columns);
 }
 
 /** a' (columnsA×rows) times b (rows×columnsB), both stored untransposed. */
@@ -48,15 +40,7 @@ export function flatTransposedProduct(
   columnsA: number,
   columnsB: number,
 ): Float64Array {
-  const product = new Float64Array(columnsA * columnsB);
-  for (let k = 0; k < rows; k++) {
-    for (let i = 0; i < columnsA; i++) {
-      const factor = a[k * columnsA + i];
-      if (factor === 0) continue;
-      for (let j = 0; j < columnsB; j++) product[i * columnsB + j] += factor * b[k * columnsB + j];
-    }
-  }
-  return product;
+  return flatProduct(flatTranspose(a, rows, columnsA), b, columnsA, rows, columnsB);
 }
 
 /** Largest size of an entry; NaN when any is NaN, so that no norm can hide one. */

@@ -1,0 +1,124 @@
+import fc from "fast-check";
+import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
+import { acceleratedProduct, acceleratedWideProduct, useAccelerator } from "../../control/accelerator/accelerator";
+import { split } from "../../control/linalg/double-double";
+import { flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
+import { productByLoops } from "../../control/linalg/product-loops";
+import { wideProductByLoops } from "../../control/linalg/wide-product-loops";
+
+afterEach(() => {
+  useAccelerator(true);
+});
+
+/** Ordinary numbers, halves of the smallest, the largest, and zeros of both signs. */
+const entry = fc.oneof(
+  { weight: 4, arbitrary: fc.double({ noNaN: true, noDefaultInfinity: true, min: -8, max: 8 }) },
+  { weight: 1, arbitrary: fc.double({ noNaN: true, noDefaultInfinity: true }) },
+  { weight: 1, arbitrary: fc.constantFrom(0, -0, 5e-324, -5e-324, 2.2e-308, -1.1e-308, 1, -1, 1e-160, -1e150) },
+);
+const flat = (length: number) => fc.array(entry, { minLength: length, maxLength: length }).map((list) => Float64Array.from(list));
+/** Every remainder of the tiles; the inner size makes up for small sides, so that a call is always worth its copies. */
+const shape = fc.tuple(fc.integer({ min: 1, max: 11 }), fc.integer({ min: 2, max: 11 })).chain(([rows, columns]) => {
+  const least = Math.ceil(400 / (rows * columns));
+  return fc.record({ rows: fc.constant(rows), columns: fc.constant(columns), inner: fc.integer({ min: least, max: least + 5 }) });
+});
+
+/** Both products of the same random matrices; b's second half lies below b, as in a wide number. */
+const operands = shape.chain(({ rows, columns, inner }) =>
+  fc.record({
+    rows: fc.constant(rows),
+    columns: fc.constant(columns),
+    inner: fc.constant(inner),
+    a: flat(rows * inner),
+    b: flat(inner * columns),
+    below: flat(inner * columns).map((list) => list.map((x) => x * 2 ** -54)),
+  }),
+);
+
+/** Places where two arrays differ in a bit; all NaN count as one. */
+const different = (x: Float64Array | undefined, y: Float64Array) =>
+  x === undefined ? ["missing"] : Array.from(y.keys()).filter((i) => !Object.is(x[i], y[i]));
+
+describe("with the accelerator and without it every bit agrees", () => {
+  beforeEach(() => {
+    expect(useAccelerator(true)).toBe(true);
+  });
+
+  test("in products of any shape, with subnormals, zeros of both signs and overflow", () => {
+    fc.assert(
+      fc.property(operands, ({ a, b, rows, inner, columns }) => {
+        const fast = acceleratedProduct(a, b, rows, inner, columns);
+        expect(different(fast ?? undefined, productByLoops(a, b, rows, inner, columns))).toEqual([]);
+      }),
+      { numRuns: 300, seed: 71 },
+    );
+  });
+
+  test("in double-double products of any shape", () => {
+    fc.assert(
+      fc.property(operands, ({ a, b, below, rows, inner, columns }) => {
+        const right = { hi: b, lo: below };
+        const fast = acceleratedWideProduct(a, right, rows, inner, columns);
+        const loops = wideProductByLoops(split(a), right, rows, inner, columns);
+        expect(different(fast?.hi, loops.hi)).toEqual([]);
+        expect(different(fast?.lo, loops.lo)).toEqual([]);
+      }),
+      { numRuns: 300, seed: 72 },
+    );
+  });
+});
+
+test("the loops sum every entry in order of the inner index, whatever the tile", () => {
+  fc.assert(
+    fc.property(operands, ({ a, b, rows, inner, columns }) => {
+      const plain = Float64Array.from({ length: rows * columns }, (_, at) => {
+        let sum = 0;
+        for (let k = 0; k < inner; k++) sum += a[Math.floor(at / columns) * inner + k] * b[k * columns + (at % columns)];
+        return sum;
+      });
+      expect(different(productByLoops(a, b, rows, inner, columns), plain)).toEqual([]);
+      const turned = flatTranspose(a, rows, inner);
+      expect(different(flatTransposedProduct(turned, b, inner, rows, columns), plain)).toEqual([]);
+    }),
+    { numRuns: 100, seed: 73 },
+  );
+});
+
+test("memory grows with the matrices, and beyond its limit the loops take over", () => {
+  const n = 300;
+  const a = Float64Array.from({ length: n * n }, (_, i) => ((i * 7919) % 1009) / 1009 - 0.5);
+  const fast = acceleratedProduct(a, a, n, n, n);
+  expect(different(fast ?? undefined, productByLoops(a, a, n, n, n))).toEqual([]);
+  expect(acceleratedProduct(new Float64Array(2_000_000), new Float64Array(4), 1_000_000, 2, 2)).toBeNull();
+});
+
+test("switched off, it is not called", () => {
+  const a = new Float64Array(400).fill(1);
+  expect(useAccelerator(false)).toBe(false);
+  expect(acceleratedProduct(a, a, 20, 20, 20)).toBeNull();
+  expect(acceleratedWideProduct(a, { hi: a, lo: a }, 20, 20, 20)).toBeNull();
+  expect(flatProduct(a, a, 20, 20, 20)).toEqual(new Float64Array(400).fill(20));
+});
+
+class RefusedModule {
+  constructor() {
+    throw new EvalError("Refused to compile or instantiate WebAssembly module");
+  }
+}
+
+describe("where the engine cannot compile it, the loops serve", () => {
+  test.each([
+    ["no WebAssembly", undefined],
+    ["a policy that forbids it", { Module: RefusedModule }],
+  ])("%s", async (_name, engine) => {
+    vi.stubGlobal("WebAssembly", engine);
+    vi.resetModules();
+    const fresh = await import("../../control/accelerator/accelerator");
+    const { flatProduct: product } = await import("../../control/linalg/flat");
+    const a = new Float64Array(400).fill(0.5);
+    expect(fresh.useAccelerator(true)).toBe(false);
+    expect(product(a, a, 20, 20, 20)).toEqual(new Float64Array(400).fill(5));
+    vi.unstubAllGlobals();
+    vi.resetModules();
+  });
+});
