@@ -10,6 +10,7 @@ export type * from "./design/evidence";
 // A recipe, and the evidence it gives
 export type * from "./design/recipe";
 export { type RecipeProblem, recipeProblems } from "./design/recipe-problems";
+export { type ContinuousCost, discretiseCost, type SampledCost } from "./discrete/discretise-cost";
 export { NumericalError, type NumericalErrorCode } from "./errors";
 export { eigenvalues } from "./linalg/eigenvalues";
 export { type LyapunovProblem, type LyapunovSolution, solveLyapunov } from "./linalg/solve-lyapunov";

@@ -49,7 +49,7 @@ export function checkProblem({ A, B, Q, R, S, sampled = false, allowIndefinite =
   return { problem, indefinite };
 }
 
-function symmetricFlat(M: Matrix): Float64Array {
+export function symmetricFlat(M: Matrix): Float64Array {
   const n = M.rows;
   const flat = toFlat(M);
   for (let i = 0; i < n; i++)
@@ -58,7 +58,7 @@ function symmetricFlat(M: Matrix): Float64Array {
 }
 
 /** The block [Q S; S' R], scaled by powers of two to a diagonal near one, may be negative only by rounding. */
-function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | null {
+export function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | null {
   const size = n + m;
   const entry = (i: number, j: number): number => {
     if (i < n) return j < n ? q[i * n + j] : s[i * m + j - n];

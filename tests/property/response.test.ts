@@ -1,7 +1,9 @@
 import fc from "fast-check";
 import { Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
+import { discretiseCost } from "@/control/discrete/discretise-cost";
 import { eigenvalues } from "@/control/linalg/eigenvalues";
+import { symmetricEigenvalues } from "@/control/linalg/symmetric-eigenvalues";
 import { holdEquivalent } from "@/control/response/hold-equivalent";
 import { matrixExponential } from "@/control/response/matrix-exponential";
 import { type ResponseRequest, respond } from "@/control/response/respond";
@@ -206,3 +208,56 @@ function inverse(M: Matrix): Matrix {
   }
   return new Matrix(work.map((row) => row.slice(n)));
 }
+
+describe("discretiseCost", () => {
+  // Abscissas and weights of Gauss's rule with eight points on [-1, 1]: Abramowitz & Stegun, table 25.4 (from memory).
+  const rule = [
+    [0.1834346424956498, 0.362683783378362],
+    [0.525532409916329, 0.3137066458778873],
+    [0.7966664774136267, 0.2223810344533745],
+    [0.9602898564975363, 0.1012285362903763],
+  ].flatMap(([x, w]) => [
+    [-x, w],
+    [x, w],
+  ]);
+
+  test("is the integral of the cost along held motions, symmetric and semidefinite", () => {
+    fc.assert(
+      fc.property(seeds, (seed) => {
+        const random = seededUniform(seed);
+        const [n, m] = [1 + Math.floor(5 * random()), 1 + Math.floor(3 * random())];
+        const [A, B] = [seededMatrix(random, n, n), seededMatrix(random, n, m)];
+        const factor = seededMatrix(random, 1 + Math.floor((n + m) * random()), n + m);
+        const cost = factor.transpose().mmul(factor);
+        const weights = { Q: cost.subMatrix(0, n - 1, 0, n - 1), R: cost.subMatrix(n, n + m - 1, n, n + m - 1) };
+        const period = 0.5 + random();
+        const sampled = discretiseCost({ A, B, ...weights, S: cost.subMatrix(0, n - 1, n, n + m - 1), period });
+        const whole = Matrix.zeros(n + m, n + m);
+        whole.setSubMatrix(A, 0, 0);
+        whole.setSubMatrix(B, 0, n);
+        const integral = Matrix.zeros(n + m, n + m);
+        for (let panel = 0; panel < 4; panel++) {
+          for (const [x, w] of rule) {
+            const motion = matrixExponential(Matrix.mul(whole, ((panel + (x + 1) / 2) * period) / 4));
+            integral.add(
+              motion
+                .transpose()
+                .mmul(cost)
+                .mmul(motion)
+                .mul((w * period) / 8),
+            );
+          }
+        }
+        const found = Matrix.zeros(n + m, n + m);
+        found.setSubMatrix(sampled.Qd, 0, 0);
+        found.setSubMatrix(sampled.Sd, 0, n);
+        found.setSubMatrix(sampled.Sd.transpose(), n, 0);
+        found.setSubMatrix(sampled.Rd, n, n);
+        expect(Matrix.sub(found, integral).norm() / integral.norm()).toBeLessThanOrEqual(1e-13);
+        expect(found.isSymmetric()).toBe(true);
+        expect(symmetricEigenvalues(found)[0]).toBeGreaterThanOrEqual(-4 * (n + m) * Number.EPSILON * found.norm());
+      }),
+      { numRuns: 60 },
+    );
+  });
+});
