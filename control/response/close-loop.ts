@@ -1,7 +1,8 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { frobeniusNorm } from "../linalg/norms";
-import { requireShape } from "../linalg/require";
+import { requireFinite, requireShape, requireSquare } from "../linalg/require";
+import { requireRepresentable } from "../linalg/require-representable";
 import { solveLinear } from "../linalg/solve-linear";
 
 export type LoopPlant = {
@@ -64,7 +65,8 @@ type ObserverError = {
  *
  * Shapes    n states, m inputs, p outputs, q commanded: K m×n, F m×q or null (then no references), signals q + p + n + (n) + m
  * Units     as the plant's
- * Throws    shape-mismatch; inaccurate for matrices of a reduced-order observer that do not belong to the plant
+ * Throws    shape-mismatch; not-finite; too-large when a product leaves the range of numbers; inaccurate for matrices of a
+ *           reduced-order observer that do not belong to the plant
  * Accuracy  a few roundings per entry. Observers are written in their error, so that their poles and the regulator's stand in
  *           separate blocks and a set point does not disturb the estimate; continuous and sampled alike
  * Source    Luenberger, IEEE Trans. Automatic Control 16 (1971) 596-602
@@ -75,8 +77,7 @@ export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observe
   const m = B.columns;
   const references = F ? H.rows : 0;
   const feed = F ?? Matrix.zeros(m, 0);
-  requireShape("K", K, m, n);
-  requireShape("F", feed, m, references);
+  requireLoop(plant, K, feed, references);
   const error = observerError(plant, observer);
   const order = error.self.rows;
   const fromState = Matrix.mul(K, -1);
@@ -86,7 +87,7 @@ export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observe
   const through = (onState: Matrix, onInput: Matrix) =>
     beside(Matrix.add(onState, onInput.mmul(fromState)), onInput.mmul(fromError));
   const estimates = observer ? n : 0;
-  return {
+  const system = {
     A: stack([through(A, B), beside(Matrix.zeros(order, n), error.self)]),
     B: stack([B.mmul(atInput), beside(Matrix.zeros(order, references), error.disturbed)]),
     C: stack([
@@ -103,11 +104,28 @@ export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observe
       beside(Matrix.zeros(estimates, references), observer ? error.misled : Matrix.zeros(0, m)),
       beside(feed, fromDisturbance),
     ]),
+  };
+  for (const M of Object.values(system)) requireRepresentable("closed loop", M.to1DArray());
+  return {
+    ...system,
     references,
     disturbances: m,
     counts: { commanded: H.rows, outputs: C.rows, states: n, estimates, inputs: m },
     startFrom: (x0) => Float64Array.from([...x0, ...error.start.mmul(Matrix.columnVector([...x0])).to1DArray()]),
   };
+}
+
+function requireLoop({ A, B, C, D, H, J }: LoopPlant, K: Matrix, F: Matrix, references: number): void {
+  const [n, m] = [A.rows, B.columns];
+  requireSquare("A", A);
+  requireShape("B", B, n, m);
+  requireShape("C", C, C.rows, n);
+  requireShape("D", D, C.rows, m);
+  requireShape("H", H, H.rows, n);
+  requireShape("J", J, H.rows, m);
+  requireShape("K", K, m, n);
+  requireShape("F", F, m, references);
+  for (const [name, M] of Object.entries({ A, B, C, D, H, J, K, F })) requireFinite(name, M);
 }
 
 function observerError(plant: LoopPlant, observer: ObserverInLoop | null): ObserverError {

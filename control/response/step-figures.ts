@@ -23,7 +23,7 @@ export function signalFigures(track: SignalTrack, whole: boolean): SignalFigures
   const size = Math.abs(final);
   const beyond = (rising > 0 ? track.high.value : -track.low.value) - size;
   const behind = rising > 0 ? -track.low.value : track.high.value;
-  const percent = (part: number) => (part > Math.max(NO_OVERSHOOT * size, track.noise) ? (100 * part) / size : 0);
+  const percent = (part: number) => (part > Math.max(NO_OVERSHOOT * size, track.noise) ? 100 * (part / size) : 0);
   const rise = track.reached10 === null || track.reached90 === null ? null : track.reached90 - track.reached10;
   return { final, peak, peakAt, overshoot: percent(beyond), undershoot: percent(behind), rise, settling: settledAt(track) };
 }

@@ -1,4 +1,5 @@
 import { NumericalError } from "../errors";
+import { largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import type { PlantModel, Rows } from "../plant/model";
 import type { CouplingReport } from "../plant/report";
@@ -24,8 +25,10 @@ function blockShares(model: PlantModel, { A }: ScaledPlant): Rows {
   const groups = model.axes.length + 1;
   const group = model.states.map(({ axis }) => axis ?? model.axes.length);
   const entries = Array.from({ length: groups * groups }, (): number[] => []);
+  // Shares alone are wanted: beside the largest entry no norm overflows.
+  const largest = largestEntry(A.to1DArray());
   for (let i = 0; i < A.rows; i++) {
-    for (let j = 0; j < A.columns; j++) if (A.get(i, j) !== 0) entries[group[i] * groups + group[j]].push(A.get(i, j));
+    for (let j = 0; j < A.columns; j++) if (A.get(i, j) !== 0) entries[group[i] * groups + group[j]].push(A.get(i, j) / largest);
   }
   const norms = entries.map((block) => flatNorm(block));
   const whole = flatNorm(norms);

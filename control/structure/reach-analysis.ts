@@ -1,3 +1,4 @@
+import { NumericalError } from "../errors";
 import { modulus } from "../linalg/complex";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { fromFlat, pythagoras } from "../linalg/flat";
@@ -24,11 +25,12 @@ const APART = 1e-3;
  * smallest singular value of [A - λ I, B] in the given units; a mode reached in one choice of units is reached.
  *
  * Shapes    a n×n, b n×m, row-major; values: the eigenvalues of a, pairs adjacent with im > 0 first
- * Throws    no-convergence
+ * Throws    shape-mismatch without any state; no-convergence
  * Accuracy  a verdict "not reached" holds for a pair within 4 (n + m) ε of the given one, in both choices of units
  * Source    Paige, IEEE Trans. Automatic Control 26 (1981) 130-138
  */
 export function analyseReach(a: Float64Array, b: Float64Array, n: number, m: number, values: readonly Complex[]): ReachAnalysis {
+  if (n === 0) throw new NumericalError("shape-mismatch", { A: [n, n], B: [n, m] });
   const limit = 4 * (n + m) * Number.EPSILON;
   const certain = ({ relative, normRatio }: ModeDistance) => relative * normRatio > limit;
   const fastest = values.reduce((size, value) => Math.max(size, modulus(value)), 0);
