@@ -9,6 +9,7 @@ const entries = {
   seed: "lib/commands/seed.ts",
   worker: "lib/commands/worker.ts",
   bench: "lib/commands/bench.ts",
+  "fuzz-worker": "lib/commands/fuzz/fuzz-worker.ts",
   "numeric-worker": "lib/jobs/numeric-worker.ts",
 };
 
