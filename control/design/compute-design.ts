@@ -27,6 +27,7 @@ const ABSENT = { state: "absent" } as const;
  * Units     the signals' units, seconds, percent
  * Throws    nothing that user data can cause: refusals are results
  * Accuracy  as the parts state; the same bits for the same plant and recipe
+ * Source    those of the parts
  */
 export function computeDesign(model: PlantModel, recipe: Recipe): Evidence {
   const prepared = attempt(() => ({ plant: plantMatrices(model), scale: scalePlant(model).stateScale }));

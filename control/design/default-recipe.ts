@@ -16,6 +16,12 @@ function effortRoom(model: PlantModel, index: number): number | null {
 /**
  * A recipe to start from: every state and input weighted by its own largest acceptable deviation or limit (Bryson & Ho), no
  * observer, feed-through, a test that starts at the largest acceptable deviations and disturbs each input by a tenth of its room.
+ *
+ * Shapes    those of the plant
+ * Units     the signals' units
+ * Throws    nothing
+ * Accuracy  deviations and limits as given
+ * Source    Bryson & Ho, Applied Optimal Control, Blaisdell 1969, section 5.2
  */
 export function defaultRecipe(model: PlantModel): WeightsRecipe {
   const accepted = model.inputs.map(({ scale }, index) => scale ?? effortRoom(model, index) ?? 1);

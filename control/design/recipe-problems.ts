@@ -80,6 +80,12 @@ function observerProblems(observer: ObserverRecipe, { states, outputs }: PlantMo
 /**
  * Whether a recipe fits the plant it is for: lengths, shapes, symmetry, numbers of poles. What depends on the numbers
  * (definite weights, modes that cannot be moved) is for the solvers to say.
+ *
+ * Shapes    any recipe beside any plant
+ * Units     none
+ * Throws    nothing
+ * Accuracy  exact: lengths are counted and entries compared as they are
+ * Source    the shapes stated beside `Recipe`
  */
 export function recipeProblems(recipe: Recipe, model: PlantModel): RecipeProblem[] {
   const { test } = recipe;

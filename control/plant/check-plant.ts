@@ -21,6 +21,7 @@ import { scalePlant } from "./scale-plant";
  * Units     rad/s and s; shares, distances and directions belong to signals divided by their largest acceptable deviations
  * Throws    shape-mismatch; not-finite
  * Accuracy  as stated by each part
+ * Source    those of the parts
  */
 export function checkPlant(model: PlantModel): PlantChecks {
   const scaled = scalePlant(model);

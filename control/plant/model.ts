@@ -41,4 +41,5 @@ export type PlantModel = {
   };
 };
 
+/** The largest plants that are taken. */
 export const SIZE_LIMITS = { states: 60, inputs: 12, outputs: 12, commanded: 12, disturbances: 12 } as const;

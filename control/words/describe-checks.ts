@@ -8,7 +8,15 @@ import { stabilityFinding } from "./findings/stability";
 import { timeBaseFinding } from "./findings/time-base";
 import { zerosFinding } from "./findings/zeros";
 
-/** What the checks say, in the order in which a reviewer asks. Nothing is said of a time base that raises no doubt. */
+/**
+ * What the checks say, in the order in which a reviewer asks. Nothing is said of a time base that raises no doubt.
+ *
+ * Shapes    the checks of that plant
+ * Units     in the sentences
+ * Throws    nothing
+ * Accuracy  figures rounded for reading
+ * Source    the verdicts of `checkPlant`
+ */
 export function describeChecks(checks: PlantChecks, model: PlantModel): Finding[] {
   return [
     ...timeBaseFinding(checks, model),

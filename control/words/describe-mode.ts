@@ -5,7 +5,15 @@ import { poleFigures, stabilityMargin } from "../structure/continuous-pole";
 import { formatFrequency, formatSeconds } from "./format-number";
 import { joinNames, leadingNames } from "./join-names";
 
-/** A short label: what the mode does and which states take part, such as "oscillation at 15.8 Hz, mostly th and om". */
+/**
+ * A short label: what the mode does and which states take part, such as "oscillation at 15.8 Hz, mostly th and om".
+ *
+ * Shapes    a mode of that plant
+ * Units     in the label
+ * Throws    nothing
+ * Accuracy  figures rounded for reading
+ * Source    the modes of `checkPlant`
+ */
 export function describeMode(mode: ModeReport, model: PlantModel): string {
   const { kind, figure } = motionOf(mode, model.timeBase, mode.marginal);
   const { participation } = mode;

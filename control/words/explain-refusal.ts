@@ -13,6 +13,12 @@ const EXPLAINERS: Explainers = { ...explainMatrix, ...explainStructure, ...expla
 /**
  * A refusal in plain words: which assumption failed, with the reader's own signal names, and one change to try.
  * Never throws, whatever `data` holds: a fact that is missing is left out of the sentence.
+ *
+ * Shapes    the code and the facts of a `NumericalError`, and the plant that was refused
+ * Units     in the sentences
+ * Throws    nothing
+ * Accuracy  figures rounded for reading
+ * Source    the facts listed beside `NumericalErrorCode`
  */
 export function explainRefusal(code: NumericalErrorCode, data: Facts, model: PlantModel): RefusalWords {
   const explain = Object.hasOwn(EXPLAINERS, code) ? EXPLAINERS[code] : unknownReason;
