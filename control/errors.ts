@@ -22,11 +22,13 @@ export type NumericalErrorCode =
   | "pole-count" // { expected, given }
   | "poles-not-conjugate" // { index, pole: Complex }
   | "pole-multiplicity" // { pole: Complex, multiplicity, rank }
+  | "too-sensitive" // { poleError?, limit }: rounding moves the wanted poles by more than the limit, relative to their size
   | "unstable-pole" // { index, pole: Complex }
   | "period-missing" // {}
   | "bad-option" // { option, given }
   | "bad-expression"; // { text, position, reason, name? }
 
+/** The one error that the core throws on purpose: a code, and the facts that belong to it. */
 export class NumericalError extends Error {
   readonly code: NumericalErrorCode;
   readonly data: Readonly<Record<string, unknown>>;

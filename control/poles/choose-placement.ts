@@ -8,7 +8,7 @@ import { gainFromVectors } from "./gain-from-vectors";
 import { robustEigenvectors } from "./robust-eigenvectors";
 import { type ScaledPlant, scalePlant } from "./scale-plant";
 import { evenStateUnits } from "./state-units";
-import { type Placed, type PlacementCheck, verifyPlacement } from "./verify-placement";
+import { type Placed, type PlacementCheck, USABLE_POLE_ERROR, verifyPlacement } from "./verify-placement";
 import type { WantedPole } from "./wanted-poles";
 
 export type Candidate = { readonly K: Matrix; readonly method: string; readonly check: PlacementCheck };
@@ -25,7 +25,7 @@ const LIKE_UNITS = 4;
  *
  * Shapes    A n×n, B n×m, blocks covering n poles; `defective` when a pole is repeated more often than rank B
  * Units     entries and poles of like size, or they may not be squared
- * Throws    inaccurate { residual, bound }; no-convergence
+ * Throws    too-sensitive { poleError?, limit }; no-convergence
  * Accuracy  the check's
  */
 export function freePlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[], defective: boolean): Candidate {
@@ -63,13 +63,12 @@ function unitsDiffer(A: Matrix, B: Matrix): boolean {
   return Math.max(...units) > LIKE_UNITS * Math.min(...units);
 }
 
-/** The candidate with the smallest pole error among those that hold. */
+/** The candidate with the smallest pole error, if it holds. */
 function accept(candidates: readonly Candidate[]): Candidate {
   const sorted = candidates.toSorted((p, q) => p.check.poleError - q.check.poleError);
-  const best = sorted.find(({ check }) => check.holds && check.poleBound < 1);
+  const best = sorted.find(({ check }) => check.holds);
   if (best) return best;
-  const { poleError, poleBound } = sorted[0]?.check ?? { poleError: 1, poleBound: 0 };
-  throw new NumericalError("inaccurate", { residual: poleError, bound: Math.min(poleBound, 1) });
+  throw new NumericalError("too-sensitive", { poleError: sorted[0]?.check.poleError, limit: USABLE_POLE_ERROR });
 }
 
 function robustCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[], balanced: boolean): Candidate | null {

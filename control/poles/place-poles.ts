@@ -1,4 +1,5 @@
 import type { Matrix } from "ml-matrix";
+import { NumericalError } from "../errors";
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
@@ -9,6 +10,7 @@ import { freePlacement, robustPlacement } from "./choose-placement";
 import { keepFixedModes } from "./fixed-modes";
 import { matchPoles } from "./match-poles";
 import { repeatsTooOften } from "./repeats-too-often";
+import { isStablePole } from "./require-stable-poles";
 import { groupPoles } from "./wanted-poles";
 
 export type PlacementProblem = {
@@ -48,8 +50,10 @@ export type Placement = {
  * Units     poles in the plant's plane; K in input per state
  * Throws    shape-mismatch; not-finite; pole-count; poles-not-conjugate; pole-multiplicity { pole, multiplicity, rank };
  *           not-controllable { pole, state, distance } when a mode that no input moves is not among the wanted poles;
- *           inaccurate { residual, bound } when the poles of A - B K miss by more than rounding accounts for; no-convergence; too-large
- * Accuracy  poleError ≤ poleBound, residual ≤ bound = 16 n ε, both checked before return
+ *           too-sensitive { poleError?, limit } when even that gain, rounded to doubles, misses by more than a sixteenth of a pole;
+ *           not-stabilising { pole } when so rounded it leaves the boundary that all wanted poles respect; no-convergence; too-large
+ * Accuracy  poleError is that of the gain returned, with poles found with 32 digits: 1e-12 κ or better. One input: every entry
+ *           of the gain the double next to the exact one, or its neighbour
  * Source    Kautsky, Nichols & Van Dooren, Int. J. Control 41 (1985) 1129-1155; Tits & Yang, IEEE Trans. Autom. Control 41
  *           (1996) 1432-1452; one input: Ackermann 1972 in double-double
  */
@@ -70,6 +74,7 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
     fixed.length === 0 ? freePlacement(fast, strong, inTime, defective) : robustPlacement(fast, strong, inTime);
   const gain = K.clone().mul(effort).div(time);
   const achieved = check.achieved.map(({ re, im }) => ({ re: re / time, im: im / time }));
+  requireSameSide(poles, achieved);
   const gainNorm = (singularValues(K)[0] * effort) / time;
   requireRepresentable("gain", [gainNorm, ...gain.to1DArray()]);
   requireRepresentable(
@@ -89,6 +94,15 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
     poleShiftPerGainDigit: check.poleShiftPerGainDigit,
     fixedModes: fixed,
   };
+}
+
+/** Throws not-stabilising when all poles were wanted on the stable side of a boundary and one is not there. */
+function requireSameSide(wanted: readonly Complex[], achieved: readonly Complex[]): void {
+  for (const sampled of [false, true]) {
+    if (!wanted.every((pole) => isStablePole(pole, sampled))) continue;
+    const pole = achieved.find((value) => !isStablePole(value, sampled));
+    if (pole) throw new NumericalError("not-stabilising", { pole });
+  }
 }
 
 function unitPower(size: number): number {

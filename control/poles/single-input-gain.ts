@@ -1,8 +1,6 @@
 import type { WantedPole } from "./wanted-poles";
+import { type EliminationStep, eliminateColumn, swapEntries } from "./wide-hessenberg";
 import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
-
-/** One elimination: rows `pivot` and `row` changed places, then multiples of row `pivot` left the rows below it. */
-type Step = { readonly pivot: number; readonly row: number; readonly factors: WideRows };
 
 /**
  * The one gain that places the poles of a plant with a single input, with some 32 digits carried throughout:
@@ -19,11 +17,11 @@ type Step = { readonly pivot: number; readonly row: number; readonly factors: Wi
 export function singleInputGain(a: Float64Array, b: Float64Array, n: number, blocks: readonly WantedPole[]): Float64Array | null {
   const h: WideRows = { hi: a.slice(), lo: new Float64Array(n * n) };
   const input: WideRows = { hi: b.slice(), lo: new Float64Array(n) };
-  const steps: Step[] = [];
+  const steps: EliminationStep[] = [];
   const divisors: WideNumber[] = [];
   for (let pivot = 0; pivot < n; pivot++) {
     // The column to clear is the input first, then column pivot - 1 of the matrix.
-    const step = eliminate(h, n, pivot, (i) => (pivot === 0 ? wideAt(input, i) : wideAt(h, i * n + pivot - 1)));
+    const step = eliminateColumn(h, n, pivot, (i) => (pivot === 0 ? wideAt(input, i) : wideAt(h, i * n + pivot - 1)));
     if (!step) return null;
     if (pivot === 0) divisors.push(wideAt(input, step.row));
     else divisors.push(wideAt(h, pivot * n + pivot - 1));
@@ -35,29 +33,6 @@ export function singleInputGain(a: Float64Array, b: Float64Array, n: number, blo
     swapEntries(row, pivot, other);
   }
   return row.hi.every(Number.isFinite) ? row.hi : null;
-}
-
-/** Similarity that leaves only the pivot in the given column below row `pivot` - 1; null when nothing is there. */
-function eliminate(h: WideRows, n: number, pivot: number, column: (i: number) => WideNumber): Step | null {
-  let row = pivot;
-  for (let i = pivot + 1; i < n; i++) if (Math.abs(column(i).hi) > Math.abs(column(row).hi)) row = i;
-  const top = column(row);
-  if (top.hi === 0) return null;
-  const factors = wideZeros(n);
-  for (let i = pivot + 1; i < n; i++) {
-    const { hi, lo } = divideWide(column(i === row ? pivot : i), top);
-    factors.hi[i] = hi;
-    factors.lo[i] = lo;
-  }
-  for (let j = 0; j < n && row !== pivot; j++) swapEntries(h, pivot * n + j, row * n + j);
-  for (let i = 0; i < n && row !== pivot; i++) swapEntries(h, i * n + pivot, i * n + row);
-  for (let i = pivot + 1; i < n; i++) {
-    const factor = wideAt(factors, i);
-    if (factor.hi === 0) continue;
-    addMultiple(h, i * n, h, pivot * n, n, 1, negative(factor));
-    addMultiple(h, pivot, h, i, n, n, factor);
-  }
-  return { pivot, row, factors };
 }
 
 /** Last row of the wanted polynomial of H over the product of the divisors, which are used from the last to the first. */
@@ -96,9 +71,4 @@ function squareOf(x: number): WideNumber {
   const square = wideZeros(1);
   addMultiple(square, 0, { hi: Float64Array.of(x), lo: new Float64Array(1) }, 0, 1, 1, { hi: x, lo: 0 });
   return wideAt(square, 0);
-}
-
-function swapEntries(x: WideRows, i: number, j: number): void {
-  [x.hi[i], x.hi[j]] = [x.hi[j], x.hi[i]];
-  [x.lo[i], x.lo[j]] = [x.lo[j], x.lo[i]];
 }

@@ -1,7 +1,6 @@
 import { Matrix } from "ml-matrix";
 import { balance } from "../linalg/balance";
 import { modulus } from "../linalg/complex";
-import { eigenvalues } from "../linalg/eigenvalues";
 import { flatIdentity, flatProduct, flatTranspose, pythagoras, toFlat } from "../linalg/flat";
 import { factorLu, solveLu } from "../linalg/lu";
 import { flatNorm, frobeniusNorm } from "../linalg/norms";
@@ -9,19 +8,19 @@ import { powerOfTwo } from "../linalg/power-of-two";
 import { singularValues } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
 import { modeDistance } from "../structure/mode-distance";
+import { achievedPoles } from "./achieved-poles";
 import { columnsAsMatrix, type Frame } from "./eigenvector-frame";
 import { residualColumns } from "./gain-from-vectors";
-import { matchPoles } from "./match-poles";
 import type { ScaledPlant } from "./scale-plant";
 import { polesOf, samePole, type WantedPole } from "./wanted-poles";
 
 export type PlacementCheck = {
   /** Eigenvalues of A - B K, in the order of the blocks. */
   readonly achieved: readonly Complex[];
-  /** Largest error of a pole over its size, and what rounding of the loop and of its eigenvalues can account for. */
+  /** Largest error of a pole over its size, and what rounding of the gain, and of eigenvalues not found exactly, can account for. */
   readonly poleError: number;
   readonly poleBound: number;
-  /** Every pole within its own bound, and the equation within its. */
+  /** No pole off by more than is usable; poles told by plain eigenvalues within their bounds, and the equation within its. */
   readonly holds: boolean;
   readonly conditioning: number | null;
   readonly residual: number;
@@ -46,6 +45,9 @@ type Vectors = { readonly frame: Frame; readonly plant: ScaledPlant; readonly X:
 /** Roundings counted per entry of a bound. */
 const SLACK = 16;
 
+/** Beyond this share of its size a pole is not where it was wanted: a model is seldom better known. */
+export const USABLE_POLE_ERROR = 1 / 16;
+
 /**
  * Checks a gain against the poles it was made for: eigenvalues of A - B K, residual, conditioning, sensitivity.
  *
@@ -58,20 +60,20 @@ const SLACK = 16;
 export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): PlacementCheck {
   const loop = { B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows };
   const wanted = polesOf(blocks);
-  const achieved = matchPoles(wanted, eigenvalues(loop.closed));
-  const errors = wanted.map((pole, k) => modulus({ re: pole.re - achieved[k].re, im: pole.im - achieved[k].im }));
+  const { poles: achieved, errors, exact } = achievedPoles(A, B, K, wanted);
   const floor = frobeniusNorm(loop.closed) || 1;
   const sizes = wanted.map((pole) => modulus(pole) || floor);
   const set = vectors && inGivenUnits(vectors.frame, vectors.plant, blocks);
-  const { bounds, shifts } = set ? simpleBounds(loop, blocks, set, wide) : defectiveBounds(loop, blocks);
+  const { bounds, shifts } = set ? simpleBounds(loop, blocks, set, wide, exact) : defectiveBounds(loop, blocks);
   const { residual, bound } = set ? vectorResidual(set, K, blocks) : distanceResidual(loop, blocks);
   const values = set ? singularValues(set.X) : [1, 0];
   const condition = values[0] / values[loop.n - 1];
+  const poleError = Math.max(...errors.map((error, k) => error / sizes[k]));
   return {
     achieved,
-    poleError: Math.max(...errors.map((error, k) => error / sizes[k])),
+    poleError,
     poleBound: Math.max(...bounds.map((limit, k) => limit / sizes[k])),
-    holds: residual <= bound && errors.every((error, k) => error <= bounds[k]),
+    holds: poleError <= USABLE_POLE_ERROR && (exact || (residual <= bound && errors.every((error, k) => error <= bounds[k]))),
     conditioning: condition * loop.n * Number.EPSILON < 1 ? condition : null,
     residual,
     bound,
@@ -95,10 +97,16 @@ function inGivenUnits(frame: Frame, plant: ScaledPlant, blocks: readonly WantedP
 }
 
 /**
- * Per pole: its condition times rounding of the loop, in the units its eigenvalues are computed in and in those the gain
- * was solved for in, and |y|'|B||K||x|.
+ * Per pole: its condition times rounding of the loop, in the units its eigenvalues are computed in unless those are exact and
+ * in those the gain was solved for in, and |y|'|B||K||x|.
  */
-function simpleBounds({ B, K, closed, n }: Loop, blocks: readonly WantedPole[], { X, inverse, plant }: Vectors, wide: boolean) {
+function simpleBounds(
+  { B, K, closed, n }: Loop,
+  blocks: readonly WantedPole[],
+  { X, inverse, plant }: Vectors,
+  wide: boolean,
+  exact: boolean,
+) {
   const { matrix, order, scale: ordered, shift } = balance(toFlat(closed), n);
   const norm = flatNorm(matrix) * powerOfTwo(-shift);
   const scale = new Float64Array(n);
@@ -113,7 +121,7 @@ function simpleBounds({ B, K, closed, n }: Loop, blocks: readonly WantedPole[], 
   for (const { column, width } of blocks) {
     const right = modulusOf(columns, column, width, n);
     const left = modulusOf(inverse, column, width, n);
-    const ofEigenvalue = norm * productOfNorms(right, left, (i) => scale[i]);
+    const ofEigenvalue = exact ? 0 : norm * productOfNorms(right, left, (i) => scale[i]);
     const ofGain = wide ? 0 : sizeIn(plant, K) * productOfNorms(right, left, (i) => plant.state[i]);
     const effort = flatProduct(absK, right, B.columns, n, 1);
     const moved = flatProduct(flatProduct(left, absB, 1, n, B.columns), effort, 1, B.columns, 1)[0];

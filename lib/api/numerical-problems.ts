@@ -97,7 +97,12 @@ export const NUMERICAL_PROBLEMS: Readonly<Record<Exclude<NumericalErrorCode, Dom
   "pole-multiplicity": refused(
     "A pole is repeated too often",
     "A pole can be repeated at most as often as there are independent inputs.",
-    "Move the repeated poles apart a little.",
+    "Move the repeated poles apart a little, or allow dependent eigenvectors in the recipe.",
+  ),
+  "too-sensitive": refused(
+    "The wanted poles are too sensitive",
+    "No gain of 16 digits holds these poles: rounding it moves them by more than the limit in the data.",
+    "Ask for poles nearer to the plant's own, spread poles that lie close together, or use another input.",
   ),
   "unstable-pole": refused(
     "A wanted pole is not stable",

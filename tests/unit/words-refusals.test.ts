@@ -48,6 +48,7 @@ const CASES: Record<NumericalErrorCode, { data: Record<string, unknown>; names: 
     data: { pole: { re: -1, im: 0 }, multiplicity: 3, rank: 1 },
     names: ["−1", "3 times", "1 independent input"],
   },
+  "too-sensitive": { data: { poleError: 0.25, limit: 1 / 16 }, names: ["25 %", "6.3 %", "another input"] },
   "unstable-pole": { data: { index: 0, pole: { re: 1, im: 0 } }, names: ["1", "left of the imaginary axis"] },
   "period-missing": { data: {}, names: ["sample time"] },
   "bad-option": { data: { option: "inputs", index: 0, given: -1 }, names: ["F1cmd", "−1"] },
@@ -126,6 +127,7 @@ test("what refuses an observer is told in its outputs, noise and estimate, not i
   expect(of("unweighted-boundary-mode", { pole: { re: 0, im: 2 }, state: 0 })).toMatch(/process noise never stirs.*\bth\b/);
   expect(of("on-stability-boundary", { distance: 2e-9 })).toMatch(/With this noise the best observer.*more process noise/);
   expect(of("unstable-pole", { index: 0, pole: { re: 1, im: 0 } })).toContain("the estimate would not come to rest");
+  expect(of("too-sensitive", {})).toContain("another sensor");
   expect(of("inaccurate", { residual: 1, bound: 0 })).toContain("poles or noise levels of the observer");
 });
 

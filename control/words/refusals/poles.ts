@@ -1,5 +1,6 @@
 import type { PlantModel } from "../../plant/model";
 import { formatComplex } from "../format-complex";
+import { formatNumber } from "../format-number";
 import { joinNames } from "../join-names";
 import { numberOf, ofObserver, poleOf } from "./facts";
 import type { Explainers, Facts, RefusalWords } from "./types";
@@ -33,12 +34,31 @@ function poleMultiplicity(data: Facts, model: PlantModel): RefusalWords {
     sentence: `${pole(data)} is asked for ${multiplicity === null ? "more" : multiplicity} times, but ${allowed} without losing the robustness of ${
       ofObserver(data) ? "the observer" : "the loop"
     }.`,
-    nextStep: "Spread the repeated poles apart by a few percent.",
+    nextStep:
+      "Spread the repeated poles apart by a few percent, or allow dependent eigenvectors and accept poles that small errors move far.",
+  };
+}
+
+function tooSensitive(data: Facts): RefusalWords {
+  const error = numberOf(data, "poleError");
+  const limit = numberOf(data, "limit");
+  const share = (value: number) => `${formatNumber(100 * value, 2)} %`;
+  const found = error === null || error > 1 ? "by more than their own size" : `by ${share(error)} of their size`;
+  const one = ofObserver(data) ? "sensor" : "input";
+  return {
+    title: "The wanted poles are too sensitive",
+    sentence: `Even with every digit a computer keeps, rounding the gain moves the poles ${found}${
+      limit === null ? "" : `, where ${share(limit)} is allowed`
+    }, so it is not shown.`,
+    nextStep: `Ask for poles nearer to the plant's own, spread poles that lie close together, or use another ${one}.`,
   };
 }
 
 /** Refusals about wanted poles. */
-export const explainPoles: Pick<Explainers, "pole-count" | "poles-not-conjugate" | "pole-multiplicity" | "unstable-pole"> = {
+export const explainPoles: Pick<
+  Explainers,
+  "pole-count" | "poles-not-conjugate" | "pole-multiplicity" | "too-sensitive" | "unstable-pole"
+> = {
   "pole-count": (data, model) => {
     const expected = numberOf(data, "expected") ?? model.states.length;
     const given = numberOf(data, "given");
@@ -54,6 +74,7 @@ export const explainPoles: Pick<Explainers, "pole-count" | "poles-not-conjugate"
     nextStep: "Enter it as a pair.",
   }),
   "pole-multiplicity": poleMultiplicity,
+  "too-sensitive": tooSensitive,
   "unstable-pole": (data, model) => ({
     title: "A wanted pole is not stable",
     sentence: `${pole(data)}${entry(data)} does not lie ${boundary(model)}: ${ofObserver(data) ? "the estimate" : "the loop"} would not come to rest.`,
