@@ -16,10 +16,12 @@ type FormProblemsProps = Readonly<{
   title?: string;
 }>;
 
-/** Two fields may have the same thing wrong with them, so each is named. */
+type Labelled = HTMLInputElement | HTMLTextAreaElement | HTMLSelectElement;
+
+/** The words at a field speak of "here"; away from it they need its name. */
 function withLabel(fieldId: string, message: string): string {
-  const field = document.getElementById(fieldId);
-  const label = field instanceof HTMLInputElement ? field.labels?.[0]?.firstChild?.textContent : null;
+  const field = document.querySelector<Labelled>(`:is(input, textarea, select)#${CSS.escape(fieldId)}`);
+  const label = field?.labels?.[0]?.firstChild?.textContent;
   return label && !message.startsWith(label) ? `${label}: ${message}` : message;
 }
 
@@ -42,8 +44,8 @@ export function FormProblems({ problems, attempt, title = "This could not be sav
           {problems.map(({ fieldId, message }) => (
             <li key={`${fieldId} ${message}`}>
               {fieldId ? (
-                <a href={`#${fieldId}`} className="inline-block py-0.5">
-                  {problems.length > 1 ? withLabel(fieldId, message) : message}
+                <a href={`#${fieldId}`} className="block w-fit py-0.5">
+                  {withLabel(fieldId, message)}
                 </a>
               ) : (
                 message
