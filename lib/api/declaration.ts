@@ -1,4 +1,5 @@
 import type { z } from "zod";
+import type { Issue } from "@/lib/errors";
 import type { Right } from "@/lib/permissions/rights";
 import type { Context, Person, Visitor } from "@/lib/services/context";
 import type { Cost } from "@/lib/services/limits/spend";
@@ -11,6 +12,8 @@ export type Declaration = {
   readonly params?: z.ZodType;
   readonly query?: z.ZodType;
   readonly body?: z.ZodType;
+  /** What else to say of a body that its schema refuses, and that a service would say one try later. */
+  readonly alsoRefused?: (body: unknown) => readonly Issue[];
   /** A body that works as it stands, for the API description; a test sends it. */
   readonly example?: unknown;
   /** `null`: nothing but the status 204. */
@@ -22,7 +25,7 @@ export type Declaration = {
   readonly idempotent?: true;
   readonly status?: 200 | 201 | 202;
   readonly bodyLimit?: number;
-  /** Without it: `read` for GET, `write` for the rest. What costs `solve` takes its turn among the computations. */
+  /** Without it: `read` for GET, `write` for the rest. What costs `check` or `solve` takes its turn among the computations. */
   readonly cost?: Cost;
   /** A body of more bytes than this takes its turn too: it may bring formulas enough for a numeric thread. */
   readonly inTurnAbove?: number;

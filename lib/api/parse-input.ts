@@ -3,11 +3,17 @@ import { DomainError, type Issue, NotFound } from "@/lib/errors";
 import { issuesOf, issueWords, pointerTo } from "@/lib/schemas/issues";
 import { refuseUnstorableText } from "./read-body";
 
-/** 422 with one line for each place that has to change. */
-export function parseBody<S extends z.ZodType>(schema: S, value: unknown): z.output<S> {
+/** 422 with one line for each place that has to change; `also` finds more of them once the schema has refused. */
+export function parseBody<S extends z.ZodType>(
+  schema: S,
+  value: unknown,
+  also: (value: unknown) => readonly Issue[] = () => [],
+): z.output<S> {
   const parsed = schema.safeParse(value, { error: issueWords });
   if (parsed.success) return parsed.data;
-  throw new DomainError("invalid", "Some of what was sent cannot be taken as it is.", {}, issuesOf(parsed.error));
+  const issues = issuesOf(parsed.error);
+  const more = also(value).filter(({ pointer }) => issues.every((issue) => issue.pointer !== pointer));
+  throw new DomainError("invalid", "Some of what was sent cannot be taken as it is.", {}, [...issues, ...more]);
 }
 
 /** A path that cannot name anything is answered like one that names nothing. */

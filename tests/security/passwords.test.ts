@@ -1,5 +1,6 @@
 import { dictionary } from "@zxcvbn-ts/language-common";
 import { afterAll, describe, expect, test } from "vitest";
+import { POST } from "@/app/api/v1/sign-up/route";
 import { closePool } from "@/db/client";
 import { withClient } from "@/lib/commands/databases.mjs";
 import { NewPassword, SignUp } from "@/lib/schemas/account";
@@ -7,6 +8,7 @@ import { hashPassword, passwordMatches } from "@/lib/services/account/password-h
 import { isCommonPassword } from "@/lib/services/account/refuse-weak-password";
 import { signIn } from "@/lib/services/account/sign-in";
 import { signUp } from "@/lib/services/account/sign-up";
+import { call, ORIGIN, problemIn } from "../helpers/call-route";
 import { newEmail, PASSWORD, refusalOf, someone, visitor } from "../helpers/people";
 import { testDatabase } from "../helpers/test-database";
 
@@ -58,6 +60,30 @@ describe("what may be chosen", () => {
       expect(refusal, password).toMatchObject({ code: "invalid", issues: [{ pointer: "/password" }] });
     }
   });
+});
+
+describe("what else is wrong beside a weak password", () => {
+  const refused = async (body: unknown) => {
+    const reply = await call(POST, { method: "POST", path: "/api/v1/sign-up", headers: { origin: ORIGIN }, body });
+    expect(reply.status).toBe(422);
+    const { errors = [] } = await problemIn(reply);
+    return errors.map(({ pointer }) => pointer).toSorted();
+  };
+
+  test("is said in the same answer, each place once", async () => {
+    const typed = { name: " ", email: "nobody", teamName: "Saltmarsh Motion", password: "password123" };
+    expect(await refused(typed)).toEqual(["/email", "/name", "/password"]);
+    expect(await refused({ ...typed, password: "saltmarsh motion1" })).toEqual(["/email", "/name", "/password"]);
+    expect(await refused({ ...typed, password: "aaa" })).toEqual(["/email", "/name", "/password"]);
+    expect(await refused({ ...typed, password: PASSWORD })).toEqual(["/email", "/name"]);
+  });
+
+  test.each([null, [], 12, { password: 12 }, { password: ["x"], name: {} }, { password: "x".repeat(100_000) }])(
+    "and no shape of body upsets the judge: case %#",
+    async (body) => {
+      expect((await refused(body)).length).toBeGreaterThan(0);
+    },
+  );
 });
 
 describe("how it is kept", () => {
