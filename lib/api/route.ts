@@ -73,7 +73,7 @@ export function publicRoute<const D extends Declaration & { readonly idempotent?
 }
 
 const takesTurn = ({ cost, inTurnAbove = Number.POSITIVE_INFINITY }: Declaration, bytes: Uint8Array) =>
-  cost === "solve" || bytes.length > inTurnAbove;
+  cost === "solve" || cost === "check" || bytes.length > inTurnAbove;
 const isChange = ({ method }: Request) => method !== "GET" && method !== "HEAD";
 const ourOrigin = () => new URL(env().NEXTAUTH_URL).origin;
 const costOf = ({ cost }: Declaration, request: Request): Cost => cost ?? (isChange(request) ? "write" : "read");

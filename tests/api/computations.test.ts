@@ -1,7 +1,9 @@
 import { randomUUID } from "node:crypto";
 import { afterAll, expect, test } from "vitest";
+import { POST as checkContent } from "@/app/api/v1/checks/route";
 import { twoTanks } from "@/app/api/v1/computations/example";
 import { POST } from "@/app/api/v1/computations/route";
+import { GET as checkRevision } from "@/app/api/v1/plants/[plantId]/revisions/[revisionId]/checks/route";
 import { CAUTIONS } from "@/control/words/cautions";
 import { closePool } from "@/db/client";
 import { closeNumericPool } from "@/lib/jobs/run-numeric";
@@ -108,7 +110,26 @@ test("more than thirty computations a minute of one person are answered 429 with
   expect(new Set(statuses)).toEqual(new Set([422]));
   expect(last.status).toBe(429);
   expect(Number(last.headers.get("retry-after"))).toBeGreaterThan(0);
-  expect(await problemIn(last)).toMatchObject({ code: "too-many-requests" });
+  expect(await problemIn(last)).toMatchObject({
+    code: "too-many-requests",
+    detail: expect.stringMatching(/^At most 30 computations a minute for you\. Wait \d+ s, then try again\.$/),
+  });
+});
+
+test("looking at plants leaves the computations alone: sixty checks a minute are counted for themselves", async () => {
+  const headers = await tokenOf("read");
+  const asked = { plantId: randomUUID(), revisionId: randomUUID() };
+  const statuses = new Set<number>();
+  for (let count = 1; count <= 30; count++) {
+    statuses.add((await call(checkRevision, { headers, params: asked })).status);
+    statuses.add((await call(checkContent, { method: "POST", headers, body: {} })).status);
+  }
+  expect(statuses).toEqual(new Set([404, 422]));
+  expect(await problemIn(await call(checkRevision, { headers, params: asked }))).toMatchObject({
+    status: 429,
+    detail: expect.stringContaining("60 checks of a plant a minute for you"),
+  });
+  expect((await compute(headers, {})).status).toBe(422);
 });
 
 test("a token that is none is refused, whatever cookie comes with it", async () => {

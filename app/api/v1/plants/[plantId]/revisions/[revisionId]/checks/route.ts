@@ -10,7 +10,7 @@ export const GET = route(
     params: PlantRevisionAddress,
     reply: ChecksReply,
     right: "plant:read",
-    cost: "solve",
+    cost: "check",
   },
   async ({ ctx, params, signal }) => ({ body: await checkPlantRevision(ctx, params.plantId, params.revisionId, signal) }),
 );
