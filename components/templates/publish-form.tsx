@@ -2,10 +2,10 @@
 
 import type { PlantContent } from "@/lib/schemas/plant";
 import { FormProblems } from "../ui/form-problems";
+import { NameField } from "../ui/name-field";
 import { Notice } from "../ui/notice";
 import { Select } from "../ui/select";
 import { TextArea } from "../ui/text-area";
-import { TextField } from "../ui/text-field";
 import type { Submit } from "../ui/use-submit";
 import { derivedNames, type PublishDraft, type PublishRow, type RecipeChoice } from "./publish-draft";
 import { PublishRowFields } from "./publish-row";
@@ -40,12 +40,11 @@ export function PublishForm({ id, content, designs, draft, submit, possible, onC
     >
       <FormProblems title={refusal?.title ?? ""} {...{ attempt, problems }} />
       <div className="grid gap-4 sm:grid-cols-2">
-        <TextField
+        <NameField
           id="template-name"
           label="Name of the template"
           value={draft.name}
-          onChange={({ target }) => onChange(() => ({ name: target.value }))}
-          maxLength={120}
+          onChange={(name) => onChange(() => ({ name }))}
           problem={at("/name")}
         />
         <Select

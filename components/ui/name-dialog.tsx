@@ -1,10 +1,8 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
-import { Button } from "./button";
-import { Dialog } from "./dialog";
-import { FormProblems } from "./form-problems";
-import { TextField } from "./text-field";
+import { useState } from "react";
+import { DialogForm } from "./dialog-form";
+import { NameField } from "./name-field";
 import { useSubmit } from "./use-submit";
 
 const FIELDS = { "/name": "asked-name" };
@@ -23,30 +21,13 @@ type NameDialogProps = Readonly<{
 /** Asks for a name: to rename, or for a duplicate. */
 export function NameDialog({ title, label, confirm, start, onClose, onName }: NameDialogProps) {
   const [name, setName] = useState(start);
-  const { busy, attempt, problems, at, run } = useSubmit(FIELDS);
-  const send = async (event: FormEvent) => {
-    event.preventDefault();
-    if (await run(() => onName(name.trim()))) onClose();
+  const submit = useSubmit(FIELDS);
+  const send = async () => {
+    if (await submit.run(() => onName(name.trim()))) onClose();
   };
   return (
-    <Dialog open onClose={onClose} title={title}>
-      <form onSubmit={send} noValidate className="flex flex-col gap-4">
-        <FormProblems {...{ attempt, problems }} />
-        <TextField
-          id={FIELDS["/name"]}
-          label={label}
-          maxLength={120}
-          value={name}
-          problem={at("/name")}
-          onChange={({ target }) => setName(target.value)}
-        />
-        <div className="flex flex-wrap justify-end gap-3">
-          <Button onClick={onClose}>Leave it</Button>
-          <Button type="submit" tone="primary" busy={busy}>
-            {confirm}
-          </Button>
-        </div>
-      </form>
-    </Dialog>
+    <DialogForm submit={submit} onClose={onClose} title={title} leave="Leave it" label={confirm} onSend={send}>
+      <NameField id={FIELDS["/name"]} label={label} value={name} problem={submit.at("/name")} onChange={setName} />
+    </DialogForm>
   );
 }

@@ -10,7 +10,7 @@ import { useSubmit } from "../../ui/use-submit";
 import type { Bench } from "../bench/use-bench";
 import { recipeDifferences } from "../recipe/recipe-lines";
 import { RecipeChanges } from "./recipe-changes";
-import { Refusal } from "./save-revision-dialog";
+import { SaveRefusal } from "./save-refusal";
 import type { Conflict, Saving } from "./use-saving";
 
 const FIELDS = {};
@@ -74,7 +74,7 @@ function Choices({
       }
     >
       <div className="flex flex-col gap-4">
-        <Refusal submit={submit} model={bench.ground.model} />
+        <SaveRefusal submit={submit} model={bench.ground.model} />
         <p>
           {theirs.createdBy ?? "Somebody"} saved it on {whenText(theirs.createdAt)}
           {theirs.note ? `: “${theirs.note}”` : "."} Yours is kept on this page until you choose; theirs stays in the list of

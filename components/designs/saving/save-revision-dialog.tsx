@@ -1,18 +1,14 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
-import type { PlantModel } from "@/control/plant/model";
+import { useState } from "react";
 import { useToast } from "../../providers/toast-provider";
-import { Button } from "../../ui/button";
-import { Dialog } from "../../ui/dialog";
-import { FormProblems } from "../../ui/form-problems";
-import { TextArea } from "../../ui/text-area";
+import { DialogForm } from "../../ui/dialog-form";
+import { NoteField } from "../../ui/note-field";
 import { useSubmit } from "../../ui/use-submit";
-import { isUnsolvable } from "../bench/recipe-refusal";
-import { SolveRefusal } from "../bench/solve-refusal";
 import type { Bench } from "../bench/use-bench";
 import { recipeDifferences } from "../recipe/recipe-lines";
 import { RecipeChanges } from "./recipe-changes";
+import { SaveRefusal } from "./save-refusal";
 import type { Saving } from "./use-saving";
 
 const FIELDS = { "/note": "save-revision-note" };
@@ -35,8 +31,7 @@ export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisio
   const differences = open
     ? recipeDifferences({ recipe: base.recipe, model: base.ground.model }, { recipe: reading.recipe, model: ground.model })
     : [];
-  const send = async (event: FormEvent) => {
-    event.preventDefault();
+  const send = async () => {
     let saved = false;
     const sent = await submit.run(async () => {
       saved = await saving.saveRevision(note.trim());
@@ -48,45 +43,34 @@ export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisio
     say({ text: `Revision ${next} is saved.`, kind: "met" });
   };
   return (
-    <Dialog open={open} onClose={onClose} title={`Save revision ${next}`} wide>
-      <form onSubmit={send} noValidate className="flex flex-col gap-4">
-        <Refusal submit={submit} model={ground.model} />
-        <RecipeChanges
-          caption={`Changed since revision ${base.revision.number}`}
-          differences={differences}
-          before={`Revision ${base.revision.number}`}
-          after={`Revision ${next}`}
-        />
-        {base.ground.plantRevision.id === ground.plantRevision.id ? null : (
-          <p>
-            It moves from plant revision {base.ground.plantRevision.number} to {ground.plantRevision.number}.
-          </p>
-        )}
-        <TextArea
-          id={FIELDS["/note"]}
-          label="Note for this revision"
-          optional
-          maxLength={2000}
-          value={note}
-          problem={submit.at("/note")}
-          onChange={({ target }) => setNote(target.value)}
-        />
-        <div className="flex flex-wrap justify-end gap-3">
-          <Button onClick={onClose}>Go on editing</Button>
-          <Button type="submit" tone="primary" busy={submit.busy}>
-            {submit.busy ? "Solving and saving…" : `Save revision ${next}`}
-          </Button>
-        </div>
-      </form>
-    </Dialog>
+    <DialogForm
+      {...{ submit, open, onClose }}
+      title={`Save revision ${next}`}
+      wide
+      leave="Go on editing"
+      label={`Save revision ${next}`}
+      busyLabel="Solving and saving…"
+      refusal={<SaveRefusal submit={submit} model={ground.model} />}
+      onSend={send}
+    >
+      <RecipeChanges
+        caption={`Changed since revision ${base.revision.number}`}
+        differences={differences}
+        before={`Revision ${base.revision.number}`}
+        after={`Revision ${next}`}
+      />
+      {base.ground.plantRevision.id === ground.plantRevision.id ? null : (
+        <p>
+          It moves from plant revision {base.ground.plantRevision.number} to {ground.plantRevision.number}.
+        </p>
+      )}
+      <NoteField
+        id={FIELDS["/note"]}
+        label="Note for this revision"
+        value={note}
+        problem={submit.at("/note")}
+        onChange={setNote}
+      />
+    </DialogForm>
   );
-}
-
-type Submit = ReturnType<typeof useSubmit>;
-
-/** Why a save was refused: the recipe cannot be solved, or a field wants mending. */
-export function Refusal({ submit, model }: Readonly<{ submit: Submit; model: PlantModel }>) {
-  const { refusal, attempt, problems } = submit;
-  if (refusal && isUnsolvable(refusal)) return <SolveRefusal problem={refusal} model={model} />;
-  return <FormProblems {...{ attempt, problems }} />;
 }

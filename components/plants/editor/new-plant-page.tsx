@@ -5,8 +5,8 @@ import { createPlant } from "@/lib/client/plants";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
 import { FormProblems } from "../../ui/form-problems";
+import { NameField } from "../../ui/name-field";
 import { PageHeading } from "../../ui/page-heading";
-import { TextField } from "../../ui/text-field";
 import { useCreateKey } from "../../ui/use-create-key";
 import { useSubmit } from "../../ui/use-submit";
 import { PlantChecks } from "../plant-checks";
@@ -57,15 +57,14 @@ export function NewPlantPage() {
       <DraftNotice draft={draft} />
       <FormProblems {...{ attempt, problems }} />
       <div className="mb-6 flex flex-wrap items-start gap-x-8 gap-y-4">
-        <TextField
+        <NameField
           id="new-plant-name"
           label="Name of the plant"
           className="w-80 max-w-full"
           value={draft.name}
-          maxLength={120}
           problem={at("/name")}
           hint="The machine, as your team calls it."
-          onChange={({ target }) => draft.setName(target.value)}
+          onChange={draft.setName}
         />
         <AxesChoice fresh={fresh} onChoose={(names) => draft.set(blankPlant(names))} />
       </div>

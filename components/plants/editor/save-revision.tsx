@@ -1,16 +1,17 @@
 "use client";
 
-import { type FormEvent, useState } from "react";
+import { useState } from "react";
 import { addPlantRevision } from "@/lib/client/plants";
 import { RequestProblem } from "@/lib/client/request";
 import type { PlantContent, PlantSummary } from "@/lib/schemas/plant";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
-import { Dialog } from "../../ui/dialog";
-import { FormProblems } from "../../ui/form-problems";
-import { TextArea } from "../../ui/text-area";
+import { DialogForm } from "../../ui/dialog-form";
+import { NoteField } from "../../ui/note-field";
 import { useSubmit } from "../../ui/use-submit";
 import { PlantConflict } from "./plant-conflict";
+
+const FIELDS = { "/note": "revision-note" };
 
 type SaveRevisionProps = Readonly<{
   plant: PlantSummary;
@@ -29,10 +30,10 @@ export function SaveRevision({ plant, content, version, disabled, onSaved, onTak
   const [asking, setAsking] = useState(false);
   const [conflict, setConflict] = useState(false);
   const [note, setNote] = useState("");
-  const { busy, attempt, problems, at, run } = useSubmit({ "/note": "revision-note" });
+  const submit = useSubmit(FIELDS);
 
   async function save(atVersion: number) {
-    await run(async () => {
+    await submit.run(async () => {
       try {
         const saved = await resume(() => addPlantRevision(plant.id, atVersion, { content, note }));
         setAsking(false);
@@ -47,43 +48,34 @@ export function SaveRevision({ plant, content, version, disabled, onSaved, onTak
     });
   }
 
-  const submit = (event: FormEvent) => {
-    event.preventDefault();
-    void save(version);
-  };
   return (
     <>
       <Button tone="primary" disabled={disabled} onClick={() => setAsking(true)}>
         Save revision {plant.currentRevision.number + 1}
       </Button>
-      <Dialog
+      <DialogForm
+        submit={submit}
         open={asking}
         onClose={() => setAsking(false)}
         title={`Save revision ${plant.currentRevision.number + 1} of ${plant.name}`}
+        leave="Go on editing"
+        label="Save"
+        busyLabel="Saving…"
+        onSend={() => save(version)}
       >
-        <form onSubmit={submit}>
-          <FormProblems {...{ attempt, problems }} />
-          <TextArea
-            id="revision-note"
-            label="What changed and why"
-            optional
-            maxLength={2000}
-            value={note}
-            problem={at("/note")}
-            onChange={({ target }) => setNote(target.value)}
-          />
-          <p className="mt-2 text-sm text-soft">Designs made on earlier revisions stay as they are and are marked as outdated.</p>
-          <div className="mt-4 flex justify-end gap-3">
-            <Button onClick={() => setAsking(false)}>Go on editing</Button>
-            <Button type="submit" tone="primary" busy={busy}>
-              {busy ? "Saving…" : "Save"}
-            </Button>
-          </div>
-        </form>
-      </Dialog>
+        <NoteField
+          id={FIELDS["/note"]}
+          label="What changed and why"
+          value={note}
+          problem={submit.at("/note")}
+          onChange={setNote}
+        />
+        <p className="text-sm text-soft">Designs made on earlier revisions stay as they are and are marked as outdated.</p>
+      </DialogForm>
       {conflict ? (
         <PlantConflict
-          {...{ plant, content, busy, onTakeTheirs, onCopied }}
+          {...{ plant, content, onTakeTheirs, onCopied }}
+          busy={submit.busy}
           onClose={() => setConflict(false)}
           onKeepMine={save}
         />
