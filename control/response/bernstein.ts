@@ -113,6 +113,7 @@ export function firstReaching(b: Float64Array, level: number): number | null {
     if (!piece) return null;
     if (piece.b[0] >= level) return piece.from;
     if (largest(piece.b) < level) continue;
+    if (isRising(piece.b)) return piece.from + piece.size * crossing(piece.b, level);
     if (piece.size < SMALLEST_PIECE) return piece.from + piece.size;
     const [left, right] = halve(piece);
     open.push(right, left);
@@ -129,9 +130,43 @@ export function lastOutside(b: Float64Array, low: number, high: number): number 
     const end = piece.b[piece.b.length - 1];
     if (end < low || end > high) return piece.from + piece.size;
     if (smallest(piece.b) >= low && largest(piece.b) <= high) continue;
+    if (isRising(piece.b)) return piece.from + piece.size * crossing(piece.b, low);
+    const mirrored = negative(piece.b);
+    if (isRising(mirrored)) return piece.from + piece.size * crossing(mirrored, -high);
     if (piece.size < SMALLEST_PIECE) return piece.from;
     const [left, right] = halve(piece);
     open.push(left, right);
   }
   return null;
+}
+
+export function negative(b: Float64Array): Float64Array {
+  const mirrored = new Float64Array(b.length);
+  for (let i = 0; i < b.length; i++) mirrored[i] = -b[i];
+  return mirrored;
+}
+
+/** No coefficient is below the one before, so the polynomial never falls. */
+function isRising(b: Float64Array): boolean {
+  for (let i = 1; i < b.length; i++) if (b[i] < b[i - 1]) return false;
+  return true;
+}
+
+/** Where a rising polynomial that begins below the level and ends at or above it passes it: Newton inside a bracket. */
+function crossing(b: Float64Array, level: number): number {
+  const degree = b.length - 1;
+  let low = 0;
+  let high = 1;
+  let at = (level - b[0]) / (b[degree] - b[0]);
+  for (let round = 0; round < 60 && high - low > SMALLEST_PIECE; round++) {
+    const [p0, p1] = casteljau(b, at, 2);
+    const beyond = p0 + at * (p1 - p0) - level;
+    if (beyond < 0) low = at;
+    else high = at;
+    const next = at - beyond / (degree * (p1 - p0));
+    const inside = next > low && next < high ? next : (low + high) / 2;
+    if (Math.abs(inside - at) < SMALLEST_PIECE) return inside;
+    at = inside;
+  }
+  return at;
 }

@@ -37,28 +37,52 @@ function chebyshev(k: number, t: number): number {
   return here;
 }
 
+/** Largest size of the interpolating polynomial over the cell for values of size one at the nodes, from a grid with some to spare. */
+export const LEBESGUE = 1.05 * lebesgue(2048);
+
+function lebesgue(steps: number): number {
+  let most = 0;
+  for (let step = 0; step <= steps; step++) {
+    const t = (NODE_GRID * step) / steps;
+    let sum = 0;
+    for (const node of NODES) {
+      let value = 1;
+      for (const other of NODES) if (other !== node) value *= (t - other) / (node - other);
+      sum += Math.abs(value);
+    }
+    most = Math.max(most, sum);
+  }
+  return most;
+}
+
 /** How far the last two coefficients of the interpolating polynomial reach; `values` holds POINTS numbers from `at` on. */
 export function interpolationError(values: Float64Array, at: number): number {
+  const start = values[at];
   let last = 0;
   let other = 0;
-  for (let j = 0; j < POINTS; j++) {
-    const value = values[at + j] - values[at];
+  for (let j = 1; j < POINTS; j++) {
+    const value = values[at + j] - start;
     other += TO_CHEBYSHEV_END[j] * value;
     last += TO_CHEBYSHEV_END[POINTS + j] * value;
   }
   return Math.abs(last) + Math.abs(other);
 }
 
-/** Bernstein coefficients of the polynomial through values at the nodes, plus `offset`; the end values are kept exactly. */
-export function bernsteinCoefficients(values: Float64Array, at: number, offset: number): Float64Array {
+/** Bernstein coefficients of the polynomial through values at the nodes, plus `offset`, into `b`; the end values are kept exactly. */
+export function bernsteinCoefficients(values: Float64Array, at: number, offset: number, b: Float64Array): void {
   const start = values[at];
-  const coefficients = new Float64Array(POINTS);
-  for (let i = 1; i < DEGREE; i++) {
+  for (let i = 1; i < DEGREE; i += 2) {
+    const row = i * POINTS;
     let sum = 0;
-    for (let j = 1; j < POINTS; j++) sum += TO_BERNSTEIN[i * POINTS + j] * (values[at + j] - start);
-    coefficients[i] = sum + start + offset;
+    let next = 0; // of row i + 1; beyond the last inner row it is not used
+    for (let j = 1; j < POINTS; j++) {
+      const value = values[at + j] - start;
+      sum += TO_BERNSTEIN[row + j] * value;
+      next += TO_BERNSTEIN[row + POINTS + j] * value;
+    }
+    b[i] = sum + start + offset;
+    b[i + 1] = next + start + offset;
   }
-  coefficients[0] = start + offset;
-  coefficients[DEGREE] = values[at + DEGREE] + offset;
-  return coefficients;
+  b[0] = start + offset;
+  b[DEGREE] = values[at + DEGREE] + offset;
 }

@@ -1,12 +1,13 @@
 import type { StepFigures } from "../design/evidence";
 import { NumericalError } from "../errors";
 import { POINTS } from "./cell-basis";
+import { type DistinctRows, distinctRows } from "./distinct-rows";
 import { boundaryDistance, type Drive, type LoopDynamics } from "./loop-dynamics";
 import type { Experiment } from "./loop-experiments";
 import { largestDeparture, NO_BAND, type SignalTrack, settledAt, startTrack } from "./signal-track";
 import { peakOf, SETTLING_BAND, signalFigures } from "./step-figures";
 import { tailBound } from "./tail-bound";
-import { continuousWalker, walkContinuous } from "./walk-continuous";
+import { continuousWalker, ROUGHLY_RESOLVED, walkContinuous } from "./walk-continuous";
 import { BLOCK, sampledWalker, walkSampled } from "./walk-sampled";
 
 /** Way up and down from the operating point to an input's limits; null: no limit. */
@@ -25,40 +26,57 @@ const SAMPLES = { least: 2_000, most: 400_000 };
 
 type Walk = (drive: Drive, tracks: readonly SignalTrack[]) => void;
 
+/** Walks for the figures of steps, which watch everything, and for settling times, which watch the shown signals alone. */
+type Walks = { readonly step: Walk; readonly settling: Walk };
+
 /**
  * Figures of every step and the longest settling time of one loop, over all t ≥ 0.
  *
  * Units     signals' units, seconds, percent
  * Throws    on-stability-boundary
  * Limits    about 10⁹ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is null
- * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves
+ * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves. The settling of
+ *           starts and disturbances, which only the time axis needs, is known to about 1e-6
  */
 export function loopFigures(dynamics: LoopDynamics, experiments: readonly Experiment[], room: readonly InputRoom[]): LoopFigures {
   const { counts } = dynamics.loop;
   const shown = counts.commanded + counts.outputs;
-  const firstInput = dynamics.signals - counts.inputs;
-  const watched = Array.from({ length: shown + counts.inputs }, (_, i) => (i < shown ? i : firstInput + i - shown));
-  const rows = rowsOf(dynamics, watched);
-  const walk = walkOf(dynamics, rows, experiments.length);
+  const watched = Array.from({ length: shown }, (_, i) => i);
+  if (experiments.some(({ kind }) => kind === "step"))
+    for (let row = dynamics.signals - counts.inputs; row < dynamics.signals; row++) watched.push(row);
+  const distinct = distinctRows(dynamics, watched);
+  const shownRows = Math.max(...distinct.of.slice(0, shown), -1) + 1; // the shown ones come first
+  const walks = walksOf(dynamics, distinct.rows, experiments.length);
   const steps: Omit<StepFigures, "loop">[] = [];
   let longest = 0;
   for (const { kind, source, drive } of experiments) {
-    const starts = startsOf(rows, dynamics.order, drive, watched);
-    const band = (row: number) =>
-      kind === "step" ? { width: SETTLING_BAND * Math.abs(drive.final[row]) } : { share: SETTLING_BAND };
-    const tracks = watched.map((row, i) => startTrack(drive.final[row], i < shown ? band(row) : NO_BAND, starts[i]));
-    walk(drive, tracks);
     if (kind !== "step") {
-      for (const track of tracks.slice(0, shown)) longest = Math.max(longest, settlingOf(track));
+      longest = Math.max(longest, longestSettling(walks.settling, drive, distinct, shownRows));
       continue;
     }
-    const commanded = tracks.slice(0, counts.commanded).map((track, i) => signalFigures(track, i === source));
-    const outputs = tracks.slice(counts.commanded, shown).map((track) => signalFigures(track, true));
-    const effort = tracks.slice(shown).map((track, i) => effortOf(track, room[i]));
+    const tracks = distinct.places.map((row, i) => {
+      const final = drive.final[row];
+      const start = startOf(distinct, drive, i);
+      if (i >= shownRows) return startTrack(final, NO_BAND, start, "effort");
+      return startTrack(final, { width: SETTLING_BAND * Math.abs(final) }, start, "figures");
+    });
+    walks.step(drive, tracks);
+    const found = distinct.of.map((place) => tracks[place]);
+    const commanded = found.slice(0, counts.commanded).map((track, i) => signalFigures(track, i === source));
+    const outputs = found.slice(counts.commanded, shown).map((track) => signalFigures(track, true));
+    const effort = found.slice(shown).map((track, i) => effortOf(track, room[i]));
     steps.push({ source, commanded, outputs, effort });
     for (const { settling } of [commanded[source], ...outputs]) longest = Math.max(longest, settling ?? 0);
   }
   return { steps, longest };
+}
+
+function longestSettling(walk: Walk, drive: Drive, distinct: DistinctRows, shownRows: number): number {
+  const tracks = distinct.places
+    .slice(0, shownRows)
+    .map((row, i) => startTrack(drive.final[row], { share: SETTLING_BAND }, startOf(distinct, drive, i), "settling"));
+  walk(drive, tracks);
+  return tracks.reduce((longest, track) => Math.max(longest, settlingOf(track)), 0);
 }
 
 /** When a signal of a free or disturbed motion stays within 2 % of its largest departure; 0 for one that hardly moves. */
@@ -76,7 +94,7 @@ function effortOf(track: SignalTrack, { up, down }: InputRoom): StepFigures["eff
   return { peak, at: peakAt, overLimit: shares.length > 0 ? Math.max(...shares) : null };
 }
 
-function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number): Walk {
+function walksOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number): Walks {
   const { a, order, period } = dynamics;
   const signals = order === 0 ? 0 : rows.length / order;
   const tail = tailBound(a, order, rows, period !== null);
@@ -86,25 +104,21 @@ function walkOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number)
   if (period !== null) {
     const limit = allowed(signals * order + (order * order) / BLOCK, SAMPLES);
     const walker = sampledWalker(a, order, rows, period, tail);
-    return (drive, tracks) => walkSampled(walker, drive.departure, tracks, limit);
+    const walk: Walk = (drive, tracks) => walkSampled(walker, drive.departure, tracks, limit);
+    return { step: walk, settling: walk };
   }
   const limit = allowed(signals * POINTS * (order + POINTS) + order * order, CELLS);
   const walker = continuousWalker(dynamics, rows, tail);
-  return (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit);
+  return {
+    step: (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit),
+    settling: (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit, ROUGHLY_RESOLVED),
+  };
 }
 
-function rowsOf({ c, order }: LoopDynamics, watched: readonly number[]): Float64Array {
-  const rows = new Float64Array(watched.length * order);
-  watched.forEach((row, i) => {
-    rows.set(c.subarray(row * order, (row + 1) * order), i * order);
-  });
-  return rows;
-}
-
-function startsOf(rows: Float64Array, order: number, { departure, final }: Drive, watched: readonly number[]): Float64Array {
-  return Float64Array.from(watched, (row, i) => {
-    let sum = 0;
-    for (let k = 0; k < order; k++) sum += rows[i * order + k] * departure[k];
-    return final[row] + sum;
-  });
+/** Value of a signal at t = 0. */
+function startOf({ places, rows }: DistinctRows, { departure, final }: Drive, i: number): number {
+  const order = departure.length;
+  let sum = 0;
+  for (let k = 0; k < order; k++) sum += rows[i * order + k] * departure[k];
+  return final[places[i]] + sum;
 }

@@ -1,12 +1,12 @@
 import type { Matrix } from "ml-matrix";
 import type { ResponseEvidence, ResponseRecord } from "../design/evidence";
 import { NumericalError } from "../errors";
-import { closeLoop, type LoopPlant, type ObserverInLoop } from "./close-loop";
+import { closeLoop, type LoopPlant, type ObserverInLoop, type SignalCounts } from "./close-loop";
 import { type LoopDynamics, prepareLoop } from "./loop-dynamics";
 import { type Experiment, type Experiments, loopExperiments } from "./loop-experiments";
 import { type InputRoom, type LoopFigures, loopFigures } from "./loop-figures";
 import { responseHorizon } from "./response-horizon";
-import { recordMaker, timeGrid } from "./sample-record";
+import { recordMaker, type TimeGrid, timeGrid } from "./sample-record";
 import { summarise } from "./summarise";
 
 export type ResponseRequest = {
@@ -24,7 +24,6 @@ export type ResponseRequest = {
 };
 
 type Analysed = {
-  readonly loop: "full-state" | "observer";
   readonly dynamics: LoopDynamics;
   readonly experiments: readonly Experiment[];
   readonly figures: LoopFigures;
@@ -48,34 +47,47 @@ const MOST_VALUES = 2 ** 21;
  */
 export function respond(request: ResponseRequest): ResponseEvidence {
   requireLengths(request);
-  const loops: Analysed[] = [analyse(request, null)];
-  if (request.observer) loops.push(analyse(request, request.observer));
+  const { amplitudes } = request.experiments;
+  const fullState = analyse(request, null);
+  const observer = request.observer ? analyse(request, request.observer) : null;
+  const loops = observer ? [fullState, observer] : [fullState];
   const longest = loops.reduce((most, { figures }) => Math.max(most, figures.longest), 0);
   const poles = loops.flatMap(({ dynamics }) => dynamics.poles);
   const horizon = responseHorizon(request.horizon, longest, poles, request.period);
+  const steps = fullState.figures.steps;
+  const stepCount = request.observer ? steps.length : 0;
   const wanted = loops.reduce((sum, { experiments, dynamics }) => sum + experiments.length * dynamics.signals, 0);
-  const most = Math.max(LEAST_SAMPLES, Math.min(MOST_SAMPLES, Math.floor(MOST_VALUES / Math.max(1, wanted))));
-  const { amplitudes } = request.experiments;
-  const inputs = request.K.rows;
+  const all = wanted + (observer ? stepCount * observer.dynamics.signals : 0);
+  const most = Math.max(LEAST_SAMPLES, Math.min(MOST_SAMPLES, Math.floor(MOST_VALUES / Math.max(1, all))));
+  const grid = timeGrid(horizon, request.period, most);
+  const records = recordsOf("full-state", fullState, grid);
+  const summary = summarise(steps, amplitudes, request.K.rows);
+  if (!observer)
+    return {
+      horizon,
+      records,
+      figures: steps.map((step) => ({ loop: "full-state", ...step })),
+      summary: { fullState: summary, observer: null },
+    };
+  const { counts } = fullState.dynamics.loop;
+  const followed = records.filter(({ kind }) => kind === "step").map((record) => withEstimates(record, counts));
   return {
     horizon,
-    records: loops.flatMap((analysed) => recordsOf(analysed, horizon, most)),
-    figures: loops.flatMap(({ loop, figures }) => figures.steps.map((step) => ({ loop, ...step }))),
-    summary: {
-      fullState: summarise(loops[0].figures.steps, amplitudes, inputs),
-      observer: loops.length > 1 ? summarise(loops[1].figures.steps, amplitudes, inputs) : null,
-    },
+    records: [...records, ...followed, ...recordsOf("observer", observer, grid)],
+    figures: (["full-state", "observer"] as const).flatMap((loop) => steps.map((step) => ({ loop, ...step }))),
+    summary: { fullState: summary, observer: summary },
   };
 }
 
+/** A loop with its experiments; a set point does not disturb the estimate, so steps are those of the full state. */
 function analyse({ plant, period, K, F, experiments, room }: ResponseRequest, observer: ObserverInLoop | null): Analysed {
   const dynamics = prepareLoop(closeLoop(plant, K, F, observer), period);
-  const list = loopExperiments(dynamics, experiments);
-  return { loop: observer ? "observer" : "full-state", dynamics, experiments: list, figures: loopFigures(dynamics, list, room) };
+  const amplitudes = experiments.amplitudes.map((amplitude) => (observer ? 0 : amplitude));
+  const list = loopExperiments(dynamics, { ...experiments, amplitudes });
+  return { dynamics, experiments: list, figures: loopFigures(dynamics, list, room) };
 }
 
-function recordsOf({ loop, dynamics, experiments }: Analysed, horizon: number, most: number): ResponseRecord[] {
-  const grid = timeGrid(horizon, dynamics.period, most);
+function recordsOf(loop: ResponseRecord["loop"], { dynamics, experiments }: Analysed, grid: TimeGrid): ResponseRecord[] {
   if (experiments.length === 0) return [];
   const valuesOf = recordMaker(dynamics, grid);
   return experiments.map(({ kind, source, amplitude, drive }) => ({
@@ -86,6 +98,16 @@ function recordsOf({ loop, dynamics, experiments }: Analysed, horizon: number, m
     ...grid,
     values: valuesOf(drive),
   }));
+}
+
+/** The step of the loop with observer: that of the full state, with the states once more as their own estimates. */
+function withEstimates(record: ResponseRecord, { commanded, outputs, states, inputs }: SignalCounts): ResponseRecord {
+  const { samples, values } = record;
+  const shown = commanded + outputs;
+  const whole = new Float64Array((shown + 2 * states + inputs) * samples);
+  whole.set(values.subarray(0, (shown + states) * samples));
+  whole.set(values.subarray(shown * samples), (shown + states) * samples);
+  return { ...record, loop: "observer", values: whole };
 }
 
 function requireLengths({ plant, experiments, room }: ResponseRequest): void {

@@ -1,7 +1,8 @@
 import { NumericalError } from "../errors";
+import { distinctRows } from "./distinct-rows";
 import type { Drive, LoopDynamics } from "./loop-dynamics";
 import { flatExponential } from "./matrix-exponential";
-import { timesVector } from "./walk-continuous";
+import { timesVector } from "./times-vector";
 import { BLOCK, signalBlock, transitionPower } from "./walk-sampled";
 
 /** `samples` moments, `step` seconds apart, from 0 on. */
@@ -26,10 +27,10 @@ export function timeGrid(horizon: number, period: number | null, most: number): 
  * transition over one step, 16 moments to a block.
  *
  * Throws    too-large when a value leaves the range of doubles
- * Accuracy  as `matrixExponential`; about ε per block beyond that
+ * Accuracy  as the quick exponential; about ε per block beyond that
  */
 export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid): (drive: Drive) => Float64Array {
-  const { a, order, c, signals, period } = dynamics;
+  const { a, order, signals, period } = dynamics;
   const phi =
     period === null
       ? flatExponential(
@@ -37,26 +38,36 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
           order,
         )
       : transitionPower(a, order, Math.max(1, Math.round(step / period)));
-  const block = signalBlock(phi, order, c, BLOCK);
+  const everything = Array.from({ length: signals }, (_, i) => i);
+  const { places, of, rows } = distinctRows(dynamics, everything);
+  const block = signalBlock(phi, order, rows);
   const phiBlock = transitionPower(phi, order, BLOCK);
+  const departed = new Float64Array(places.length * BLOCK);
   return ({ departure, final }) => {
     const values = new Float64Array(signals * samples);
-    let state = departure;
+    let [state, after] = [departure.slice(), new Float64Array(order)];
     for (let first = 0; first < samples; first += BLOCK) {
       const here = Math.min(BLOCK, samples - first);
-      for (let k = 0; k < here; k++) {
-        for (let i = 0; i < signals; i++) {
-          const row = (k * signals + i) * order;
-          let sum = 0;
-          for (let j = 0; j < order; j++) sum += block[row + j] * state[j];
-          values[i * samples + first + k] = final[i] + sum + 0;
-        }
+      timesVector(block, state, order, departed);
+      for (let i = 0; i < places.length; i++) {
+        const rest = final[places[i]];
+        const to = places[i] * samples + first;
+        for (let k = 0; k < here; k++) values[to + k] = rest + departed[i * BLOCK + k] + 0;
       }
-      state = timesVector(phiBlock, state, order);
+      timesVector(phiBlock, state, order, after);
+      [state, after] = [after, state];
     }
-    for (const value of values) {
-      if (!Number.isFinite(value)) throw new NumericalError("too-large", { what: "response", limit: Number.MAX_VALUE });
-    }
+    requireFiniteValues(values);
+    of.forEach((known, i) => {
+      const from = places[known] * samples;
+      if (places[known] !== i) values.copyWithin(i * samples, from, from + samples);
+    });
     return values;
   };
+}
+
+function requireFiniteValues(values: Float64Array): void {
+  let sum = 0;
+  for (let k = 0; k < values.length; k++) sum += values[k] * 0; // NaN as soon as one is not finite
+  if (sum !== 0) throw new NumericalError("too-large", { what: "response", limit: Number.MAX_VALUE });
 }

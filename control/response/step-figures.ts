@@ -1,9 +1,7 @@
 import type { SignalFigures } from "../design/evidence";
-import { type SignalTrack, settledAt, sizeOf } from "./signal-track";
+import { hasSetPoint, type SignalTrack, settledAt, sizeOf } from "./signal-track";
 
 export const SETTLING_BAND = 0.02;
-/** A final value below this part of the signal's peak is no set point to measure against. */
-const NEGLIGIBLE_FINAL = 1e-6;
 /** Parts of the final value that count as rounding. */
 const NO_OVERSHOOT = 1e-12;
 
@@ -18,7 +16,7 @@ const NO_OVERSHOOT = 1e-12;
 export function signalFigures(track: SignalTrack, whole: boolean): SignalFigures {
   const { final, finished, rising } = track;
   const { peak, peakAt } = peakOf(track);
-  const measurable = whole && finished && Math.abs(final) > Math.max(NEGLIGIBLE_FINAL * peak, 4 * track.noise);
+  const measurable = whole && finished && hasSetPoint(track) && Math.abs(final) > 4 * track.noise;
   if (!measurable) return { final, peak, peakAt, overshoot: null, undershoot: null, rise: null, settling: null };
   const size = Math.abs(final);
   const beyond = (rising > 0 ? track.high.value : -track.low.value) - size;

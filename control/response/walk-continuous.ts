@@ -1,14 +1,17 @@
 import { exponentOf } from "../linalg/power-of-two";
-import { bernsteinCoefficients, interpolationError, POINTS } from "./cell-basis";
+import { bernsteinCoefficients, interpolationError, LEBESGUE, POINTS } from "./cell-basis";
 import { type Cell, cellLadder } from "./cell-ladder";
 import type { LoopDynamics } from "./loop-dynamics";
-import { finishTracks, followPiece, isHopeless, type SignalTrack, sizeOf } from "./signal-track";
+import { finishTracks, followPiece, isHopeless, isUneventful, type SignalTrack, sizeOf } from "./signal-track";
 import type { TailBound } from "./tail-bound";
+import { timesVector } from "./times-vector";
 
 /** Last coefficients of a cell's polynomials, in parts of the signal, up to which the cell counts as resolved. */
 const RESOLVED = 1e-10;
-/** Doubling a cell raises them by 2^11 to 2^12. */
-const EASY = RESOLVED / 8192;
+/** Ample where only the settling time is sought, and that for no more than the time axis. */
+export const ROUGHLY_RESOLVED = 1e-6;
+/** A cell as many times better resolved than it has to be is followed by one twice as long, which costs 2^11 to 2^12. */
+const EASIER = 8192;
 /** Rounding beyond the sums' own that is put up with in long cells of stiff loops. */
 const LEARNT_ROUNDING = 1e-8;
 /** Cells before a longer one that failed is tried again, and failures after which the length is taken to be final. */
@@ -48,15 +51,23 @@ export function continuousWalker(
  * Follows the watched signals of a free motion until everything sought about them is proved, in cells whose length adapts
  * so that in each a polynomial of degree 12 through exact values stands for the signal.
  *
- * Accuracy  values to about 1e-11 of the signal's size, times likewise over its slope; where rounding in a stiff loop is larger,
+ * Accuracy  `resolved` in parts of the signal's size, times likewise over its slope; where rounding in a stiff loop is larger,
  *           down to 1e-8, it is learnt and kept in the tracks as their noise
  * Limits    at most `limit` cells, tried or taken, fewer where these cannot suffice; what is not finished stays unfinished
  */
-export function walkContinuous(walker: Walker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
+export function walkContinuous(
+  walker: Walker,
+  departure: Float64Array,
+  tracks: readonly SignalTrack[],
+  limit: number,
+  resolved = RESOLVED,
+): void {
   const { order, ladder, tail, firstLevel } = walker;
   const pace = { size: tail.size(departure), count: 0 };
+  const values = new Float64Array(tracks.length * POINTS);
+  let [here, other] = [newMisses(tracks.length), newMisses(tracks.length)];
+  let [state, after] = [departure.slice(), new Float64Array(order)];
   let level = firstLevel;
-  let state = departure;
   let time = 0;
   let before: Misses | null = null; // of the shorter cell before, when this one is tried because that one was easy
   let raiseFrom = 0;
@@ -69,40 +80,71 @@ export function walkContinuous(walker: Walker, departure: Float64Array, tracks: 
     if (doubtful && isHopeless(pace, size, factor, count, limit)) return;
     const cell = ladder(level);
     raiseNoise(walker.rows, order, state, tracks);
-    const values = signalsIn(cell, state, order);
-    const misses = missesOf(values, tracks);
-    if (level === firstLevel || (before && isPutUpWith(misses, before))) learnNoise(misses, tracks);
-    const worst = worstOf(misses, tracks);
-    if (worst > RESOLVED) {
-      if (before && isRounding(misses, before)) failures++;
+    timesVector(cell.nodes, state, order, values);
+    measureMisses(values, tracks, here);
+    if (level === firstLevel || (before && isPutUpWith(here, before, resolved))) learnNoise(here, tracks);
+    const worst = worstOf(here, tracks);
+    if (worst > resolved) {
+      if (before && isRounding(here, before, resolved)) failures++;
       if (before) raiseFrom = count + PAUSE;
       before = null;
       level--;
       continue;
     }
-    for (let i = 0; i < tracks.length; i++) {
-      if (!tracks[i].finished) followPiece(tracks[i], bernsteinCoefficients(values, i * POINTS, tracks[i].final), time, cell.h);
-    }
-    state = timesVector(cell.phi, state, order);
+    followCell(tracks, values, time, cell.h);
+    timesVector(cell.phi, state, order, after);
+    [state, after] = [after, state];
     time += cell.h;
-    const raise = worst < EASY && level < firstLevel + MOST_DOUBLINGS && count >= raiseFrom;
-    before = raise ? misses : null;
-    if (raise) level++;
+    const raise = worst < resolved / EASIER && level < firstLevel + MOST_DOUBLINGS && count >= raiseFrom;
+    before = raise ? here : null;
+    if (!raise) continue;
+    [here, other] = [other, here];
+    level++;
+  }
+}
+
+const coefficients = new Float64Array(POINTS);
+
+/** Every unfinished signal takes in its stretch; those whose values alone show that nothing happens need no polynomial. */
+function followCell(tracks: readonly SignalTrack[], values: Float64Array, time: number, h: number): void {
+  for (let i = 0; i < tracks.length; i++) {
+    const track = tracks[i];
+    if (track.finished) continue;
+    let low = values[i * POINTS];
+    let high = low;
+    for (let j = i * POINTS + 1; j < (i + 1) * POINTS; j++) {
+      const value = values[j];
+      if (value < low) low = value;
+      else if (value > high) high = value;
+    }
+    const middle = track.final + (low + high) / 2;
+    const reach = (LEBESGUE * (high - low)) / 2;
+    if (isUneventful(track, middle - reach, middle + reach)) continue;
+    bernsteinCoefficients(values, i * POINTS, track.final, coefficients);
+    followPiece(track, coefficients, time, h);
   }
 }
 
 /** What the polynomials of a cell miss, and the sizes of the signals, one each per signal. */
 type Misses = { readonly miss: Float64Array; readonly size: Float64Array };
 
-function missesOf(values: Float64Array, tracks: readonly SignalTrack[]): Misses {
-  const miss = new Float64Array(tracks.length);
-  const size = Float64Array.from(tracks, sizeOf);
+function newMisses(signals: number): Misses {
+  return { miss: new Float64Array(signals), size: new Float64Array(signals) };
+}
+
+function measureMisses(values: Float64Array, tracks: readonly SignalTrack[], { miss, size }: Misses): void {
   for (let i = 0; i < tracks.length; i++) {
-    if (tracks[i].finished) continue;
-    miss[i] = interpolationError(values, i * POINTS);
-    for (let j = 0; j < POINTS; j++) size[i] = Math.max(size[i], Math.abs(values[i * POINTS + j]));
+    let most = sizeOf(tracks[i]);
+    miss[i] = 0;
+    if (!tracks[i].finished) {
+      miss[i] = interpolationError(values, i * POINTS);
+      for (let j = i * POINTS; j < (i + 1) * POINTS; j++) {
+        const value = Math.abs(values[j]);
+        if (value > most) most = value;
+      }
+    }
+    size[i] = most;
   }
-  return { miss, size };
 }
 
 /** Largest miss beyond the noise, in parts of the signal. */
@@ -119,17 +161,19 @@ function worstOf({ miss, size }: Misses, tracks: readonly SignalTrack[]): number
  * In a cell twice as long a smooth signal is missed by at most 2^12 as much, rounding grows twofold: what was missed by next to
  * nothing, or has hardly grown, is rounding.
  */
-function isRounding({ miss, size }: Misses, before: Misses): boolean {
+function isRounding({ miss, size }: Misses, before: Misses, resolved: number): boolean {
   for (let i = 0; i < miss.length; i++) {
-    const allowed =
-      before.miss[i] < EASY * before.size[i] ? Number.POSITIVE_INFINITY : Math.max(4 * before.miss[i], RESOLVED * size[i]);
+    const next = before.miss[i] < (resolved / EASIER) * before.size[i];
+    const allowed = next ? Number.POSITIVE_INFINITY : Math.max(4 * before.miss[i], resolved * size[i]);
     if (miss[i] > allowed) return false;
   }
   return true;
 }
 
-function isPutUpWith(misses: Misses, before: Misses): boolean {
-  return isRounding(misses, before) && misses.miss.every((miss, i) => miss <= LEARNT_ROUNDING * misses.size[i]);
+function isPutUpWith(misses: Misses, before: Misses, resolved: number): boolean {
+  const { miss, size } = misses;
+  for (let i = 0; i < miss.length; i++) if (miss[i] > LEARNT_ROUNDING * size[i]) return false;
+  return isRounding(misses, before, resolved);
 }
 
 function learnNoise({ miss }: Misses, tracks: readonly SignalTrack[]): void {
@@ -138,29 +182,9 @@ function learnNoise({ miss }: Misses, tracks: readonly SignalTrack[]): void {
 
 /** Allows for the rounding of the sums that make each signal from the state. */
 export function raiseNoise(rows: Float64Array, order: number, state: Float64Array, tracks: readonly SignalTrack[]): void {
-  tracks.forEach((track, i) => {
+  for (let i = 0; i < tracks.length; i++) {
     let sum = 0;
-    for (let k = 0; k < order; k++) sum += Math.abs(rows[i * order + k] * state[k]);
-    track.noise = Math.max(track.noise, ROUNDING * sum);
-  });
-}
-
-function signalsIn({ nodes }: Cell, state: Float64Array, order: number): Float64Array {
-  const values = new Float64Array(order === 0 ? 0 : nodes.length / order);
-  for (let r = 0; r < values.length; r++) {
-    let sum = 0;
-    for (let k = 0; k < order; k++) sum += nodes[r * order + k] * state[k];
-    values[r] = sum;
+    for (let k = 0, at = i * order; k < order; k++, at++) sum += Math.abs(rows[at] * state[k]);
+    if (ROUNDING * sum > tracks[i].noise) tracks[i].noise = ROUNDING * sum;
   }
-  return values;
-}
-
-export function timesVector(m: Float64Array, v: Float64Array, n: number): Float64Array {
-  const product = new Float64Array(n);
-  for (let i = 0; i < n; i++) {
-    let sum = 0;
-    for (let k = 0; k < n; k++) sum += m[i * n + k] * v[k];
-    product[i] = sum;
-  }
-  return product;
 }

@@ -1,7 +1,8 @@
 import { flatProduct } from "../linalg/flat";
-import { finishTracks, followSample, isHopeless, type SignalTrack } from "./signal-track";
+import { finishTracks, followSample, isHopeless, isUneventful, type SignalTrack } from "./signal-track";
 import type { TailBound } from "./tail-bound";
-import { raiseNoise, timesVector } from "./walk-continuous";
+import { timesVector } from "./times-vector";
+import { raiseNoise } from "./walk-continuous";
 
 /** Samples that one stacked product gives at once. */
 export const BLOCK = 16;
@@ -10,7 +11,7 @@ export type SampledWalker = {
   readonly order: number;
   readonly period: number;
   readonly rows: Float64Array;
-  /** Signals now, one sample later, ..., 15 later: (signals · BLOCK)×order, the samples of one moment together. */
+  /** Signals now, one sample later, ..., 15 later: (signals · BLOCK)×order, the samples of one signal together. */
   readonly block: Float64Array;
   /** A^BLOCK */
   readonly phi: Float64Array;
@@ -24,17 +25,17 @@ export function sampledWalker(
   period: number,
   tail: TailBound,
 ): SampledWalker {
-  return { order, period, rows, block: signalBlock(a, order, rows, BLOCK), phi: transitionPower(a, order, BLOCK), tail };
+  return { order, period, rows, block: signalBlock(a, order, rows), phi: transitionPower(a, order, BLOCK), tail };
 }
 
-/** Rows, rows·a, rows·a², ... stacked `length` times. */
-export function signalBlock(a: Float64Array, order: number, rows: Float64Array, length: number): Float64Array {
+/** rows, rows·a, ..., rows·a^15, those of one signal together. */
+export function signalBlock(a: Float64Array, order: number, rows: Float64Array): Float64Array {
   const signals = order === 0 ? 0 : rows.length / order;
-  const block = new Float64Array(rows.length * length);
+  const block = new Float64Array(rows.length * BLOCK);
   let moved = rows;
-  for (let k = 0; k < length; k++) {
-    block.set(moved, k * rows.length);
-    if (k + 1 < length) moved = flatProduct(moved, a, signals, order, order);
+  for (let k = 0; k < BLOCK; k++) {
+    if (k > 0) moved = flatProduct(moved, a, signals, order, order);
+    for (let i = 0; i < signals; i++) block.set(moved.subarray(i * order, (i + 1) * order), (i * BLOCK + k) * order);
   }
   return block;
 }
@@ -58,24 +59,28 @@ export function transitionPower(a: Float64Array, n: number, k: number): Float64A
  */
 export function walkSampled(walker: SampledWalker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
   const { order, period, rows, block, phi, tail } = walker;
-  const signals = tracks.length;
   const pace = { size: tail.size(departure), count: 0 };
-  let state = departure;
+  const values = new Float64Array(tracks.length * BLOCK);
+  let [state, after] = [departure.slice(), new Float64Array(order)];
   for (let first = 0; first < limit; first += BLOCK) {
     const size = tail.size(state);
     const factor = finishTracks(tracks, tail.gains, size);
     if (factor === null || isHopeless(pace, size, factor, first, limit)) return;
     raiseNoise(rows, order, state, tracks);
-    for (let i = 0; i < signals; i++) {
-      const track = tracks[i];
-      if (track.finished) continue;
-      for (let k = 0; k < BLOCK; k++) {
-        const row = (k * signals + i) * order;
-        let departed = 0;
-        for (let j = 0; j < order; j++) departed += block[row + j] * state[j];
-        followSample(track, track.final + departed, first + k, period);
-      }
-    }
-    state = timesVector(phi, state, order);
+    timesVector(block, state, order, values);
+    for (let i = 0; i < tracks.length; i++) if (!tracks[i].finished) followBlock(tracks[i], values, i * BLOCK, first, period);
+    timesVector(phi, state, order, after);
+    [state, after] = [after, state];
   }
+}
+
+function followBlock(track: SignalTrack, values: Float64Array, at: number, first: number, period: number): void {
+  let low = values[at];
+  let high = low;
+  for (let k = at + 1; k < at + BLOCK; k++) {
+    if (values[k] < low) low = values[k];
+    else if (values[k] > high) high = values[k];
+  }
+  if (isUneventful(track, track.final + low, track.final + high)) return;
+  for (let k = 0; k < BLOCK; k++) followSample(track, track.final + values[at + k], first + k, period);
 }
