@@ -1,16 +1,20 @@
 "use client";
 
-import { X } from "lucide-react";
 import type { PlantEvaluation } from "@/control/plant/evaluate-plant";
 import { AxisSample } from "../../plots/axis-bar";
-import { Button } from "../../ui/button";
-import { SheetSection } from "../../ui/sheet-section";
-import { TextField } from "../../ui/text-field";
+import { EditorField } from "./editor-field";
+import { EditorSection } from "./editor-section";
 import { removeAxis } from "./plant-document";
+import { RowButton } from "./row-button";
 import { fieldProblem } from "./use-evaluation";
 import type { PlantDraft } from "./use-plant-draft";
 
 type AxesTableProps = Readonly<{ draft: PlantDraft; evaluation: PlantEvaluation | null; readOnly: boolean }>;
+
+const TEXTS = [
+  { field: "name", header: "Name", width: "w-56", limit: 40 },
+  { field: "tag", header: "Tag", width: "w-20", limit: 4 },
+] as const;
 
 /** Each axis has its hue and dash by its place, the same in every table, matrix and plot. */
 export function AxesTable({ draft, evaluation, readOnly }: AxesTableProps) {
@@ -21,56 +25,42 @@ export function AxesTable({ draft, evaluation, readOnly }: AxesTableProps) {
     set((now) => ({ ...now, axes: [...now.axes, { name: `axis ${now.axes.length + 1}`, tag: String(now.axes.length + 1) }] }));
   const places = content.axes.map((axis, index) => ({ key: `axis ${index + 1}`, axis, index }));
   return (
-    <SheetSection
+    <EditorSection
       title="Axes"
       note="a degree of freedom of the machine: its states, inputs and outputs share one hue and one dash"
-      actions={
-        readOnly ? null : (
-          <Button size="small" onClick={add}>
-            Add axis
-          </Button>
-        )
-      }
+      one="axis"
+      onAdd={readOnly ? undefined : add}
+      none="None."
+      count={places.length}
     >
-      {places.length === 0 ? <p className="text-soft">None.</p> : null}
       <ul className="flex flex-col gap-2">
         {places.map(({ key, axis, index }) => (
           <li key={key} className="flex flex-wrap items-start gap-3">
             <span className="flex min-h-9 items-center">
               <AxisSample axis={index} />
             </span>
-            <TextField
-              label={`Name of axis ${index + 1}`}
-              hideLabel
-              className="w-56"
-              value={axis.name}
-              readOnly={readOnly}
-              maxLength={40}
-              problem={fieldProblem(evaluation, `/axes/${index}/name`)}
-              onChange={({ target }) => change(index, { name: target.value })}
-            />
-            <TextField
-              label={`Tag of axis ${index + 1}`}
-              hideLabel
-              className="w-20"
-              value={axis.tag}
-              readOnly={readOnly}
-              maxLength={4}
-              problem={fieldProblem(evaluation, `/axes/${index}/tag`)}
-              onChange={({ target }) => change(index, { tag: target.value })}
-            />
+            {TEXTS.map(({ field, header, width, limit }) => (
+              <EditorField
+                key={field}
+                label={`${header} of axis ${index + 1}`}
+                className={width}
+                value={axis[field]}
+                readOnly={readOnly}
+                maxLength={limit}
+                problem={fieldProblem(evaluation, `/axes/${index}/${field}`)}
+                onChange={(text) => change(index, { [field]: text })}
+              />
+            ))}
             {readOnly ? null : (
-              <Button
-                tone="quiet"
-                aria-label={`Remove axis ${axis.name || index + 1}`}
+              <RowButton
+                act="remove"
+                name={`axis ${axis.name || index + 1}`}
                 onClick={() => set((now) => removeAxis(now, index))}
-              >
-                <X aria-hidden size={16} />
-              </Button>
+              />
             )}
           </li>
         ))}
       </ul>
-    </SheetSection>
+    </EditorSection>
   );
 }

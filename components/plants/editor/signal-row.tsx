@@ -1,16 +1,20 @@
 "use client";
 
-import { ArrowDown, ArrowUp, X } from "lucide-react";
 import type { ReactNode } from "react";
 import type { PlantEvaluation } from "@/control/plant/evaluate-plant";
 import { AxisBar } from "../../plots/axis-bar";
-import { Button } from "../../ui/button";
 import { NumberField } from "../../ui/number-field";
 import { Select } from "../../ui/select";
-import { TextField } from "../../ui/text-field";
+import { EditorField } from "./editor-field";
 import { changeSignal, moveSignal, removeSignal, type SignalList, withOperatingValue } from "./plant-document";
+import { RowButton } from "./row-button";
 import { fieldProblem } from "./use-evaluation";
 import type { PlantDraft } from "./use-plant-draft";
+
+const TEXTS = [
+  { field: "name", header: "Name", width: "min-w-32", limit: 40 },
+  { field: "unit", header: "Unit", width: "min-w-24", limit: 24 },
+] as const;
 
 export type NumberColumn = {
   readonly field: "scale" | "lower" | "upper" | "amplitude";
@@ -45,28 +49,18 @@ export function SignalRow({ list, one, numbers, operating, draft, evaluation, re
   const label = (what: string) => `${what} of ${one} ${index + 1}${signal.name ? `, ${signal.name}` : ""}`;
   return (
     <tr className="border-b border-rule align-top">
-      <td className="min-w-32 px-2 py-1.5">
-        <TextField
-          label={label("Name")}
-          hideLabel
-          value={signal.name}
-          readOnly={readOnly}
-          maxLength={40}
-          problem={at("name")}
-          onChange={({ target }) => change({ name: target.value })}
-        />
-      </td>
-      <td className="min-w-24 px-2 py-1.5">
-        <TextField
-          label={label("Unit")}
-          hideLabel
-          value={signal.unit}
-          readOnly={readOnly}
-          maxLength={24}
-          problem={at("unit")}
-          onChange={({ target }) => change({ unit: target.value })}
-        />
-      </td>
+      {TEXTS.map(({ field, header, width, limit }) => (
+        <td key={field} className={`${width} px-2 py-1.5`}>
+          <EditorField
+            label={label(header)}
+            value={signal[field]}
+            readOnly={readOnly}
+            maxLength={limit}
+            problem={at(field)}
+            onChange={(text) => change({ [field]: text })}
+          />
+        </td>
+      ))}
       <td className="min-w-36 px-2 py-1.5">
         <div className="flex items-center gap-2">
           <AxisBar axis={signal.axis} />
@@ -138,32 +132,9 @@ type RowActionsProps = Readonly<{ list: SignalList; name: string; set: PlantDraf
 function RowActions({ list, name, set, index, last }: RowActionsProps) {
   return (
     <>
-      <Button
-        size="small"
-        tone="quiet"
-        aria-label={`Move ${name} up`}
-        disabled={index === 0}
-        onClick={() => set((now) => moveSignal(now, list, index, -1))}
-      >
-        <ArrowUp aria-hidden size={16} />
-      </Button>
-      <Button
-        size="small"
-        tone="quiet"
-        aria-label={`Move ${name} down`}
-        disabled={index === last}
-        onClick={() => set((now) => moveSignal(now, list, index, 1))}
-      >
-        <ArrowDown aria-hidden size={16} />
-      </Button>
-      <Button
-        size="small"
-        tone="quiet"
-        aria-label={`Remove ${name}`}
-        onClick={() => set((now) => removeSignal(now, list, index))}
-      >
-        <X aria-hidden size={16} />
-      </Button>
+      <RowButton name={name} act="up" disabled={index === 0} onClick={() => set((now) => moveSignal(now, list, index, -1))} />
+      <RowButton name={name} act="down" disabled={index === last} onClick={() => set((now) => moveSignal(now, list, index, 1))} />
+      <RowButton name={name} act="remove" onClick={() => set((now) => removeSignal(now, list, index))} />
     </>
   );
 }

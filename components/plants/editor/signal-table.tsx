@@ -1,8 +1,7 @@
 "use client";
 
-import { Button } from "../../ui/button";
-import { ScrollBox } from "../../ui/scroll-box";
-import { SheetSection } from "../../ui/sheet-section";
+import { EditorSection } from "./editor-section";
+import { EditorTable } from "./editor-table";
 import { addSignal } from "./plant-document";
 import { type AnySignal, SignalRow, type SignalTableProps } from "./signal-row";
 
@@ -14,43 +13,17 @@ export function SignalTable(props: SignalTableProps) {
   const places = signals.map((signal, index) => ({ key: `${list} ${index + 1}`, signal, index }));
   const headers = ["Name", "Unit", "Axis", ...numbers.map(({ header }) => header), ...(operating ? ["Operating point"] : [])];
   return (
-    <SheetSection
-      title={title}
-      note={note}
-      actions={
-        readOnly ? null : (
-          <Button size="small" onClick={() => draft.set((now) => addSignal(now, list))}>
-            Add {one}
-          </Button>
-        )
-      }
+    <EditorSection
+      {...{ title, note, one }}
+      onAdd={readOnly ? undefined : () => draft.set((now) => addSignal(now, list))}
+      none="None."
+      count={signals.length}
     >
-      {signals.length === 0 ? (
-        <p className="text-soft">None.</p>
-      ) : (
-        <ScrollBox label={title}>
-          <table className="w-full border-collapse text-table">
-            <caption className="sr-only">{title}</caption>
-            <thead>
-              <tr className="border-b border-ink text-left">
-                {headers.map((header) => (
-                  <th key={header} scope="col" className="px-2 py-1 font-normal text-soft">
-                    {header}
-                  </th>
-                ))}
-                <th scope="col" className="sr-only">
-                  Order and removal
-                </th>
-              </tr>
-            </thead>
-            <tbody>
-              {places.map(({ key, signal, index }) => (
-                <SignalRow key={key} {...props} signal={signal} index={index} last={signals.length - 1} />
-              ))}
-            </tbody>
-          </table>
-        </ScrollBox>
-      )}
-    </SheetSection>
+      <EditorTable caption={title} headers={headers} buttons="Order and removal">
+        {places.map(({ key, signal, index }) => (
+          <SignalRow key={key} {...props} signal={signal} index={index} last={signals.length - 1} />
+        ))}
+      </EditorTable>
+    </EditorSection>
   );
 }

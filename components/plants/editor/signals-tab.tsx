@@ -17,6 +17,19 @@ const LIMITS: readonly NumberColumn[] = [
 ];
 const AMPLITUDE: NumberColumn = { field: "amplitude", header: "Test amplitude", whenEmpty: 0 };
 
+/** The lists that have a place in the operating point. */
+const OPERATED = [
+  { list: "states", one: "state", title: "States", note: "in the order of A", numbers: [SCALE] },
+  {
+    list: "inputs",
+    one: "input",
+    title: "Inputs",
+    note: "actuators; limits are absolute, not deviations",
+    numbers: [SCALE, ...LIMITS],
+  },
+  { list: "outputs", one: "output", title: "Outputs", note: "what is measured", numbers: [SCALE] },
+] as const;
+
 export function SignalsTab({ draft, evaluation, readOnly }: SignalsTabProps) {
   const shared = { draft, evaluation, readOnly };
   const { content, set } = draft;
@@ -24,33 +37,9 @@ export function SignalsTab({ draft, evaluation, readOnly }: SignalsTabProps) {
   return (
     <>
       <AxesTable {...shared} />
-      <SignalTable
-        {...shared}
-        list="states"
-        one="state"
-        title="States"
-        note="in the order of A"
-        numbers={[SCALE]}
-        operating="states"
-      />
-      <SignalTable
-        {...shared}
-        list="inputs"
-        one="input"
-        title="Inputs"
-        note="actuators; limits are absolute, not deviations"
-        numbers={[SCALE, ...LIMITS]}
-        operating="inputs"
-      />
-      <SignalTable
-        {...shared}
-        list="outputs"
-        one="output"
-        title="Outputs"
-        note="what is measured"
-        numbers={[SCALE]}
-        operating="outputs"
-      />
+      {OPERATED.map((table) => (
+        <SignalTable key={table.list} {...shared} {...table} operating={table.list} />
+      ))}
       <div className="mb-4">
         <RadioGroup
           legend="Commanded quantities"
