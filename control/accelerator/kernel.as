@@ -156,3 +156,130 @@ export function wideProduct(
     }
   }
 }
+
+/** y += factor x, count numbers. */
+function addMultiple(y: usize, x: usize, count: usize, factor: f64): void {
+  const f = f64x2.splat(factor);
+  for (const end = y + ((count & ~1) << 3); y < end; y += 16, x += 16) {
+    v128.store(y, f64x2.add(v128.load(y), f64x2.mul(f, v128.load(x))));
+  }
+  if (count & 1) store<f64>(y, load<f64>(y) + factor * load<f64>(x));
+}
+
+/** Rows from..to of h, from the given byte on, times the reflection I - beta v v'; `sums` is room for a row. */
+function reflectRows(h: usize, stride: usize, rows: usize, count: usize, v: usize, beta: f64, sums: usize): void {
+  memory.fill(sums, 0, count << 3);
+  let row = h;
+  for (let i: usize = 0; i < rows; i++, row += stride) addMultiple(sums, row, count, load<f64>(v + (i << 3)));
+  row = h;
+  for (let i: usize = 0; i < rows; i++, row += stride) addMultiple(row, sums, count, -(beta * load<f64>(v + (i << 3))));
+}
+
+/** As `hessenbergByLoops`; q is the address of qt or 0, v and sums are room for n numbers each. */
+export function hessenberg(h: usize, q: usize, n: usize, v: usize, sums: usize): void {
+  const stride = n << 3;
+  for (let k: usize = 0; k + 2 < n; k++) {
+    const count = n - k - 1;
+    const corner = h + (k + 1) * stride + (k << 3);
+    const bottom = corner + count * stride;
+    let below: f64 = 0;
+    for (let at = corner + stride; at < bottom; at += stride) below = max(below, abs(load<f64>(at)));
+    if (below == 0) continue;
+    const scale = max(below, abs(load<f64>(corner)));
+    let sum: f64 = 0;
+    for (let at = corner, to = v; at < bottom; at += stride, to += 8) {
+      const x = load<f64>(at) / scale;
+      store<f64>(to, x);
+      sum += x * x;
+    }
+    const length = sqrt(sum);
+    const first = load<f64>(v);
+    store<f64>(v, first + (first >= 0 ? length : -length));
+    let square: f64 = 0;
+    for (let to = v; to < v + (count << 3); to += 8) square += load<f64>(to) * load<f64>(to);
+    const beta = 2 / square;
+    reflectRows(corner, stride, count, count + 1, v, beta, sums);
+    const edge = h + ((k + 1) << 3);
+    for (let at = edge; at < edge + n * stride; at += stride) {
+      let pair = f64x2.splat(0);
+      const pairs = (count & ~1) << 3;
+      for (let j: usize = 0; j < pairs; j += 16) pair = f64x2.add(pair, f64x2.mul(v128.load(at + j), v128.load(v + j)));
+      let even = f64x2.extract_lane(pair, 0);
+      if (count & 1) even += load<f64>(at + pairs) * load<f64>(v + pairs);
+      addMultiple(at, v, count, -((even + f64x2.extract_lane(pair, 1)) * beta));
+    }
+    if (q) reflectRows(q + (k + 1) * stride, stride, count, n, v, beta, sums);
+    for (let at = corner + stride; at < bottom; at += stride) store<f64>(at, 0);
+  }
+}
+
+/** `three` rows (else two) from the byte at `x` up to `end` times a reflection. */
+function turnRows(x: usize, end: usize, stride: usize, three: bool, u: f64, w: f64, tau: f64): void {
+  const us = f64x2.splat(u);
+  const ws = f64x2.splat(w);
+  const taus = f64x2.splat(tau);
+  let y = x + stride;
+  let z = three ? y + stride : y;
+  for (; x + 8 < end; x += 16, y += 16, z += 16) {
+    const a = v128.load(x);
+    const b = v128.load(y);
+    const c = v128.load(z);
+    let sum = f64x2.add(a, f64x2.mul(us, b));
+    if (three) sum = f64x2.add(sum, f64x2.mul(ws, c));
+    sum = f64x2.mul(sum, taus);
+    v128.store(x, f64x2.sub(a, sum));
+    v128.store(y, f64x2.sub(b, f64x2.mul(sum, us)));
+    if (three) v128.store(z, f64x2.sub(c, f64x2.mul(sum, ws)));
+  }
+  if (x < end) turnEntry(x, y, z, three, u, w, tau);
+}
+
+/** One column of `turnRows`, or one row of a reflection of columns. */
+function turnEntry(x: usize, y: usize, z: usize, three: bool, u: f64, w: f64, tau: f64): void {
+  const a = load<f64>(x);
+  const b = load<f64>(y);
+  let sum = a + u * b;
+  if (three) sum += w * load<f64>(z);
+  sum *= tau;
+  store<f64>(x, a - sum);
+  store<f64>(y, b - sum * u);
+  if (three) store<f64>(z, load<f64>(z) - sum * w);
+}
+
+/** As the sweep of `chaseByLoops`; q is the address of qt or 0. */
+export function sweep(
+  h: usize, q: usize, n: usize, full: bool, m: usize, start: usize, end: usize, v0: f64, v1: f64, v2: f64
+): void {
+  const stride = n << 3;
+  for (let k = m; k < end; k++) {
+    const three = k + 2 <= end;
+    const at = h + k * stride + (k << 3) - 8;
+    const a = k > m ? load<f64>(at) : v0;
+    const b = k > m ? load<f64>(at + stride) : v1;
+    const c = three ? (k > m ? load<f64>(at + 2 * stride) : v2) : 0;
+    const rest = max(abs(b), abs(c));
+    if (rest == 0) continue;
+    const largest = max(abs(a), rest);
+    const x = a / largest;
+    const y = b / largest;
+    const z = c / largest;
+    const length = sqrt(x * x + y * y + z * z);
+    const beta = x >= 0 ? -length : length;
+    const tau = (beta - x) / beta;
+    const u = y / (x - beta);
+    const w = z / (x - beta);
+    if (k > m) {
+      store<f64>(at, beta * largest);
+      store<f64>(at + stride, 0);
+      if (three) store<f64>(at + 2 * stride, 0);
+    } else if (m > start) {
+      store<f64>(at, load<f64>(at) * (1 - tau));
+    }
+    const row = h + k * stride;
+    turnRows(row + (k << 3), row + ((full ? n : end + 1) << 3), stride, three, u, w, tau);
+    const column = h + (k << 3);
+    const last = column + min(k + 3, end) * stride;
+    for (let i = column + (full ? 0 : start) * stride; i <= last; i += stride) turnEntry(i, i + 8, i + 16, three, u, w, tau);
+    if (q) turnRows(q + k * stride, q + (k + 1) * stride, stride, three, u, w, tau);
+  }
+}

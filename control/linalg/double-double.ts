@@ -1,4 +1,4 @@
-import { acceleratedWideProduct } from "../accelerator/accelerator";
+import { acceleratedWideProduct } from "../accelerator/accelerated-product";
 import { SPLITTER, wideProductByLoops } from "./wide-product-loops";
 
 /** Unevaluated sum hi + lo of two doubles per entry, |lo| ≤ ulp(hi) / 2: about 32 decimal digits. */

@@ -1,5 +1,5 @@
 import { Matrix } from "ml-matrix";
-import { acceleratedProduct } from "../accelerator/accelerator";
+import { acceleratedProduct } from "../accelerator/accelerated-product";
 import { productByLoops } from "./product-loops";
 
 /** Row-major entries of M in one array: what every inner loop of this folder works on. */

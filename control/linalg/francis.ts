@@ -1,4 +1,6 @@
+import { acceleratedChase } from "../accelerator/accelerated-schur";
 import { NumericalError } from "../errors";
+import { type Chase, chaseByLoops } from "./bulge-chase";
 import { standardiseBlock } from "./standardise-block";
 
 const EPS = Number.EPSILON / 2;
@@ -6,8 +8,7 @@ const TINY = 2.2250738585072014e-308;
 /** Far more than the two or three sweeps an eigenvalue usually takes. */
 const SWEEP_LIMIT = 60;
 
-/** What the sweeps of one call share: `full` keeps the whole triangular factor, `qt` (or null) gathers the transposed basis. */
-type Work = { readonly h: Float64Array; readonly n: number; readonly full: boolean; readonly qt: Float64Array | null };
+type Block = { readonly h: Float64Array; readonly n: number };
 
 /**
  * Francis double-shift iteration from Hessenberg to real Schur form, in place; 2×2 blocks end in standard form.
@@ -20,26 +21,34 @@ type Work = { readonly h: Float64Array; readonly n: number; readonly full: boole
  *           LAPACK Working Note 122, 1997
  */
 export function francisIteration(h: Float64Array, n: number, full: boolean, qt: Float64Array | null): void {
-  const work: Work = { h, n, full, qt };
+  const accelerated = acceleratedChase(h, n, full, qt);
+  deflateAll(accelerated ?? chaseByLoops(h, n, full, qt));
+  if (!accelerated) return;
+  h.set(accelerated.h);
+  if (qt && accelerated.qt) qt.set(accelerated.qt);
+}
+
+function deflateAll(chase: Chase): void {
+  const { h, n } = chase;
   const small = TINY * (n / EPS);
   let end = n - 1;
   while (end >= 0) {
     let start = 0;
     let sweep = 0;
     for (; sweep <= SWEEP_LIMIT; sweep++) {
-      start = deflatedStart(work, end, small);
+      start = deflatedStart(h, n, end, small);
       if (start > 0) h[start * n + start - 1] = 0;
       if (start >= end - 1) break;
-      doubleShiftSweep(work, start, end, sweep);
+      doubleShiftSweep(chase, start, end, sweep);
     }
     if (start < end - 1) throw new NumericalError("no-convergence", { routine: "francis-iteration", limit: SWEEP_LIMIT });
-    if (start === end - 1) standardiseAt(work, start);
+    if (start === end - 1) standardiseAt(chase, start);
     end = start - 1;
   }
 }
 
 /** Start of the unreduced block that ends at `end`. */
-function deflatedStart({ h, n }: Work, end: number, small: number): number {
+function deflatedStart(h: Float64Array, n: number, end: number, small: number): number {
   for (let k = end; k > 0; k--) {
     const below = Math.abs(h[k * n + k - 1]);
     if (below <= small) return k;
@@ -64,7 +73,7 @@ function deflatedStart({ h, n }: Work, end: number, small: number): number {
 }
 
 /** Sum and product data of the two shifts: the trailing 2×2 block, or an exceptional one every tenth sweep. */
-function shiftBlock({ h, n }: Work, start: number, end: number, sweep: number): [number, number, number, number] {
+function shiftBlock({ h, n }: Block, start: number, end: number, sweep: number): [number, number, number, number] {
   if (sweep > 0 && sweep % 20 === 0) {
     const s = Math.abs(h[end * n + end - 1]) + Math.abs(h[(end - 1) * n + end - 2]);
     const d = 0.75 * s + h[end * n + end];
@@ -93,103 +102,32 @@ function shifts(block: [number, number, number, number]): [number, number, numbe
   return [real, 0, real, 0];
 }
 
-function doubleShiftSweep(work: Work, start: number, end: number, sweep: number): void {
-  const { h, n } = work;
-  const [re1, im1, re2, im2] = shifts(shiftBlock(work, start, end, sweep));
-  const v = new Float64Array(3);
+function doubleShiftSweep(chase: Chase, start: number, end: number, sweep: number): void {
+  const { h, n } = chase;
+  const [re1, im1, re2, im2] = shifts(shiftBlock(chase, start, end, sweep));
+  let [v0, v1, v2] = [0, 0, 0];
   let m = end - 2;
   for (; m >= start; m--) {
-    const h21 = Math.abs(h[(m + 1) * n + m]);
-    const scale = Math.abs(h[m * n + m] - re2) + Math.abs(im2) + h21;
-    const ratio = h[(m + 1) * n + m] / scale;
-    v[0] = ratio * h[m * n + m + 1] + (h[m * n + m] - re1) * ((h[m * n + m] - re2) / scale) - im1 * (im2 / scale);
-    v[1] = ratio * (h[m * n + m] + h[(m + 1) * n + m + 1] - re1 - re2);
-    v[2] = ratio * h[(m + 2) * n + m + 1];
-    const sum = Math.abs(v[0]) + Math.abs(v[1]) + Math.abs(v[2]);
-    if (sum > 0) for (let i = 0; i < 3; i++) v[i] /= sum;
+    const at = m * n + m;
+    const here = h[at];
+    const below = h[at + n];
+    const next = h[at + n + 1];
+    const scale = Math.abs(here - re2) + Math.abs(im2) + Math.abs(below);
+    const ratio = below / scale;
+    v0 = ratio * h[at + 1] + (here - re1) * ((here - re2) / scale) - im1 * (im2 / scale);
+    v1 = ratio * (here + next - re1 - re2);
+    v2 = ratio * h[at + 2 * n + 1];
     if (m === start) break;
-    const neighbours = Math.abs(h[(m - 1) * n + m - 1]) + Math.abs(h[m * n + m]) + Math.abs(h[(m + 1) * n + m + 1]);
-    if (Math.abs(h[m * n + m - 1]) * (Math.abs(v[1]) + Math.abs(v[2])) <= 2 * EPS * Math.abs(v[0]) * neighbours) break;
+    const rest = Math.abs(v1) + Math.abs(v2);
+    const sum = Math.abs(v0) + rest;
+    const neighbours = Math.abs(h[at - n - 1]) + Math.abs(here) + Math.abs(next);
+    if (Math.abs(h[at - 1]) * (rest / sum) <= 2 * EPS * (Math.abs(v0) / sum) * neighbours) break;
   }
-  for (let k = m; k < end; k++) chaseBulge(work, k, m, start, end, v);
-}
-
-/** One step of the bulge chase: a reflection of three rows and columns (two at the end). */
-function chaseBulge(work: Work, k: number, m: number, start: number, end: number, v: Float64Array): void {
-  const { h, n, full, qt } = work;
-  const size = Math.min(3, end - k + 1);
-  if (k > m) for (let i = 0; i < 3; i++) v[i] = i < size ? h[(k + i) * n + k - 1] : 0;
-  if (size < 3) v[2] = 0;
-  const largest = Math.max(Math.abs(v[0]), Math.abs(v[1]), Math.abs(v[2]));
-  const rest = Math.max(Math.abs(v[1]), Math.abs(v[2]));
-  if (rest === 0) return;
-  const x = v[0] / largest;
-  const y = v[1] / largest;
-  const z = v[2] / largest;
-  const length = Math.sqrt(x * x + y * y + z * z);
-  const beta = x >= 0 ? -length : length;
-  const tau = (beta - x) / beta;
-  const v1 = y / (x - beta);
-  const v2 = z / (x - beta);
-  if (k > m) {
-    h[k * n + k - 1] = beta * largest;
-    h[(k + 1) * n + k - 1] = 0;
-    if (size === 3) h[(k + 2) * n + k - 1] = 0;
-  } else if (m > start) {
-    // The small subdiagonal entries that let the sweep start here are kept, not assumed zero.
-    h[k * n + k - 1] *= 1 - tau;
-  }
-  const last = full ? n - 1 : end;
-  reflectThreeRows(h, n, k, size, v1, v2, tau, k, last);
-  reflectThreeColumns(h, n, k, size, v1, v2, tau, full ? 0 : start, Math.min(k + 3, end));
-  if (qt) reflectThreeRows(qt, n, k, size, v1, v2, tau, 0, n - 1);
-}
-
-function reflectThreeRows(
-  h: Float64Array,
-  n: number,
-  k: number,
-  size: number,
-  v1: number,
-  v2: number,
-  tau: number,
-  first: number,
-  last: number,
-): void {
-  const r0 = k * n;
-  const r1 = r0 + n;
-  const r2 = size === 3 ? r1 + n : r1;
-  const w = size === 3 ? v2 : 0;
-  for (let j = first; j <= last; j++) {
-    const sum = (h[r0 + j] + v1 * h[r1 + j] + w * h[r2 + j]) * tau;
-    h[r0 + j] -= sum;
-    h[r1 + j] -= sum * v1;
-    if (size === 3) h[r2 + j] -= sum * w;
-  }
-}
-
-function reflectThreeColumns(
-  h: Float64Array,
-  n: number,
-  k: number,
-  size: number,
-  v1: number,
-  v2: number,
-  tau: number,
-  first: number,
-  last: number,
-): void {
-  for (let i = first; i <= last; i++) {
-    const at = i * n + k;
-    const sum = (h[at] + v1 * h[at + 1] + (size === 3 ? v2 * h[at + 2] : 0)) * tau;
-    h[at] -= sum;
-    h[at + 1] -= sum * v1;
-    if (size === 3) h[at + 2] -= sum * v2;
-  }
+  chase.sweep(m, start, end, v0, v1, v2);
 }
 
 /** Brings the 2×2 diagonal block at k to standard form and turns the rest of the matrix along. */
-export function standardiseAt({ h, n, full, qt }: Work, k: number): void {
+export function standardiseAt({ h, n, full, qt }: Pick<Chase, "h" | "n" | "full" | "qt">, k: number): void {
   const at = k * n + k;
   const block = standardiseBlock(h[at], h[at + 1], h[at + n], h[at + n + 1]);
   h[at] = block.a;

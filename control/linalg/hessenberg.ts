@@ -1,3 +1,5 @@
+import { acceleratedHessenberg } from "../accelerator/accelerated-schur";
+
 /**
  * Reduces h to upper Hessenberg form by orthogonal similarity, in place.
  *
@@ -6,6 +8,11 @@
  * Source    Golub & Van Loan, Matrix Computations, 4th ed. 2013, algorithm 7.4.2
  */
 export function reduceToHessenberg(h: Float64Array, n: number, qt: Float64Array | null): void {
+  if (!acceleratedHessenberg(h, n, qt)) hessenbergByLoops(h, n, qt);
+}
+
+/** The reference for the accelerator: sums over rows in order, sums along a row as those of even and of odd places. */
+export function hessenbergByLoops(h: Float64Array, n: number, qt: Float64Array | null): void {
   const v = new Float64Array(n);
   const sums = new Float64Array(n);
   for (let k = 0; k < n - 2; k++) {
@@ -20,7 +27,6 @@ export function reduceToHessenberg(h: Float64Array, n: number, qt: Float64Array 
 
 /** v and beta with (I - beta v v') mapping column k below the diagonal onto its first entry; 0 when nothing is to be done. */
 function reflectorOfColumn(h: Float64Array, n: number, k: number, v: Float64Array): number {
-  v.fill(0);
   let below = 0;
   for (let i = k + 2; i < n; i++) below = Math.max(below, Math.abs(h[i * n + k]));
   if (below === 0) return 0;
@@ -48,22 +54,27 @@ function reflectRows(
 ): void {
   sums.fill(0);
   for (let i = first; i < n; i++) {
-    if (v[i] === 0) continue;
-    for (let j = column; j < n; j++) sums[j] += v[i] * h[i * n + j];
+    const factor = v[i];
+    for (let j = column, at = i * n + column; j < n; j++, at++) sums[j] += factor * h[at];
   }
   for (let i = first; i < n; i++) {
-    if (v[i] === 0) continue;
     const factor = beta * v[i];
-    for (let j = column; j < n; j++) h[i * n + j] -= factor * sums[j];
+    for (let j = column, at = i * n + column; j < n; j++, at++) h[at] -= factor * sums[j];
   }
 }
 
 function reflectColumns(h: Float64Array, n: number, first: number, v: Float64Array, beta: number): void {
   for (let i = 0; i < n; i++) {
-    let sum = 0;
-    for (let j = first; j < n; j++) sum += h[i * n + j] * v[j];
-    if (sum === 0) continue;
-    sum *= beta;
-    for (let j = first; j < n; j++) h[i * n + j] -= sum * v[j];
+    const at = i * n;
+    let even = 0;
+    let odd = 0;
+    let j = first;
+    for (; j < n - 1; j += 2) {
+      even += h[at + j] * v[j];
+      odd += h[at + j + 1] * v[j + 1];
+    }
+    if (j < n) even += h[at + j] * v[j];
+    const factor = (even + odd) * beta;
+    for (j = first; j < n; j++) h[at + j] -= factor * v[j];
   }
 }

@@ -13,7 +13,7 @@ export async function kernelModule() {
   /** @type {Uint8Array | undefined} */
   let bytes;
   const { error, stderr } = await compiler.main(
-    ["kernel.ts", "--outFile", "kernel.wasm", "-O3", "--noAssert", "--runtime", "stub", "--enable", "simd"],
+    ["kernel.ts", "--outFile", "kernel.wasm", "-O2", "--noAssert", "--runtime", "stub", "--enable", "simd"],
     {
       readFile: (name) => (name === "kernel.ts" ? readFileSync(source, "utf8") : null),
       writeFile: (_name, contents) => {

@@ -1,9 +1,13 @@
 import fc from "fast-check";
 import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
-import { acceleratedProduct, acceleratedWideProduct, useAccelerator } from "../../control/accelerator/accelerator";
+import { acceleratedProduct, acceleratedWideProduct } from "../../control/accelerator/accelerated-product";
+import { acceleratedHessenberg } from "../../control/accelerator/accelerated-schur";
+import { useAccelerator } from "../../control/accelerator/accelerator";
 import { split } from "../../control/linalg/double-double";
-import { flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
+import { flatIdentity, flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
+import { hessenbergByLoops } from "../../control/linalg/hessenberg";
 import { productByLoops } from "../../control/linalg/product-loops";
+import { flatSchur } from "../../control/linalg/real-schur";
 import { wideProductByLoops } from "../../control/linalg/wide-product-loops";
 
 afterEach(() => {
@@ -35,6 +39,17 @@ const operands = shape.chain(({ rows, columns, inner }) =>
   }),
 );
 
+/** Square matrices as they are typed and as they come out of scaling, dense and sparse. */
+const square = fc.integer({ min: 5, max: 14 }).chain((n) => {
+  const number = fc.oneof(
+    { weight: 3, arbitrary: fc.double({ noNaN: true, noDefaultInfinity: true, min: -8, max: 8 }) },
+    { weight: 2, arbitrary: fc.constantFrom(0, 0, 0, -0, 1, -1, 2 ** -40, -(2 ** 30), 1e-200) },
+  );
+  const list = fc.array(number, { minLength: n * n, maxLength: n * n });
+  const sparse = fc.array(fc.constantFrom(0, 0, 1, -1), { minLength: n * n, maxLength: n * n });
+  return fc.record({ n: fc.constant(n), a: fc.oneof(list, sparse).map((entries) => Float64Array.from(entries)) });
+});
+
 /** Places where two arrays differ in a bit; all NaN count as one. */
 const different = (x: Float64Array | undefined, y: Float64Array) =>
   x === undefined ? ["missing"] : Array.from(y.keys()).filter((i) => !Object.is(x[i], y[i]));
@@ -64,6 +79,36 @@ describe("with the accelerator and without it every bit agrees", () => {
         expect(different(fast?.lo, loops.lo)).toEqual([]);
       }),
       { numRuns: 300, seed: 72 },
+    );
+  });
+});
+
+describe("reductions of a square matrix have the same bits either way", () => {
+  test("to Hessenberg form, with its basis", () => {
+    fc.assert(
+      fc.property(square, ({ n, a }) => {
+        const [fast, loops] = [a.slice(), a.slice()];
+        const [fastBasis, basis] = [flatIdentity(n), flatIdentity(n)];
+        expect(acceleratedHessenberg(fast, n, fastBasis)).toBe(true);
+        hessenbergByLoops(loops, n, basis);
+        expect(different(fast, loops)).toEqual([]);
+        expect(different(fastBasis, basis)).toEqual([]);
+      }),
+      { numRuns: 300, seed: 74 },
+    );
+  });
+
+  test("to real Schur form, with its basis", () => {
+    fc.assert(
+      fc.property(square, ({ n, a }) => {
+        useAccelerator(true);
+        const fast = flatSchur(a, n);
+        useAccelerator(false);
+        const loops = flatSchur(a, n);
+        expect(different(fast.t, loops.t)).toEqual([]);
+        expect(different(fast.qt, loops.qt)).toEqual([]);
+      }),
+      { numRuns: 300, seed: 75 },
     );
   });
 });

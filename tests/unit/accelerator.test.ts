@@ -11,15 +11,15 @@ const file = join(root, "control/accelerator/kernel-bytes.ts");
 test("the committed bytes of the accelerator are what its source compiles to", async () => {
   const committed = readFileSync(file, "utf8");
   expect(await kernelModule()).toBe(committed);
-  expect(committed.length).toBeLessThan(4096);
 }, 60_000);
 
-test("the accelerator imports nothing and exports its memory and two products", () => {
+test("the accelerator imports nothing and is small enough to be compiled on the spot in any engine", () => {
   const bytes = Buffer.from(KERNEL_BYTES, "base64");
+  expect(bytes.length).toBeLessThan(4096);
   const module = new WebAssembly.Module(bytes);
   expect(WebAssembly.Module.imports(module)).toEqual([]);
   expect(WebAssembly.Module.exports(module).map(({ name }) => name)).toEqual(
-    expect.arrayContaining(["memory", "product", "wideProduct"]),
+    expect.arrayContaining(["memory", "product", "wideProduct", "hessenberg", "sweep"]),
   );
 });
 
