@@ -11,12 +11,12 @@ import { EmptyState } from "../ui/empty-state";
 import { ErrorState } from "../ui/error-state";
 import { LinkButton } from "../ui/link-button";
 import { LoadingState } from "../ui/loading-state";
-import { Select } from "../ui/select";
+import { ShowMore } from "../ui/show-more";
+import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { DESIGN_COLUMNS } from "./design-columns";
 import { sideBySideAddress } from "./side-by-side-address";
 import { useDesigns } from "./use-designs";
 
-const SHOWN = ["no", "yes", "all"] as const;
 const LEAST = 2;
 const MOST = 6;
 
@@ -49,16 +49,7 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
   return (
     <>
       <div className="mb-4 flex flex-wrap items-end gap-4">
-        <Select
-          label="Show"
-          value={archived}
-          onChange={({ target }) => setArchived(SHOWN.find((shown) => shown === target.value) ?? "no")}
-          options={[
-            { value: "no", label: "in use" },
-            { value: "yes", label: "archived" },
-            { value: "all", label: "all" },
-          ]}
-        />
+        <ShownSelect value={archived} onChange={setArchived} />
         <Comparing plantId={plantId} picked={picked} />
         {mayWrite ? (
           <LinkButton href={`/plants/${plantId}/designs/new`} className="ml-auto">
@@ -79,13 +70,7 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
           rowKey={({ id }) => id}
         />
       )}
-      {designs.hasNextPage ? (
-        <div className="mt-4">
-          <Button busy={designs.isFetchingNextPage} onClick={() => designs.fetchNextPage()}>
-            Show more
-          </Button>
-        </div>
-      ) : null}
+      <ShowMore list={designs} />
     </>
   );
 }

@@ -9,6 +9,7 @@ import { Button } from "../ui/button";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
 import { SheetSection } from "../ui/sheet-section";
+import { ShowMore } from "../ui/show-more";
 import { When } from "../ui/when";
 import { sideBySideAddress } from "./side-by-side-address";
 
@@ -43,11 +44,7 @@ export function RevisionsList({ design, shownId }: RevisionsListProps) {
             ))}
         </ol>
       ) : null}
-      {revisions.hasNextPage ? (
-        <Button className="mt-3" busy={revisions.isFetchingNextPage} onClick={() => revisions.fetchNextPage()}>
-          Show more
-        </Button>
-      ) : null}
+      <ShowMore list={revisions} />
     </SheetSection>
   );
 }

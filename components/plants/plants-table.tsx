@@ -12,14 +12,14 @@ import { type Column, DataTable, type Sort } from "../ui/data-table";
 import { EmptyState } from "../ui/empty-state";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
-import { Select } from "../ui/select";
+import { ShowMore } from "../ui/show-more";
+import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { TextField } from "../ui/text-field";
 import { AxisTags } from "./axis-tags";
 import { timeBaseText } from "./time-base-text";
 import { whenText } from "./when-text";
 
 const SORTS = ["name", "-name", "updated", "-updated"] as const;
-const SHOWN = ["no", "yes", "all"] as const;
 const SEARCH_PAUSE_MS = 250;
 
 const columns: readonly Column<PlantSummary>[] = [
@@ -79,16 +79,7 @@ export function PlantsTable({ firstPlant }: Readonly<{ firstPlant: React.ReactNo
           onChange={({ target }) => setView({ search: target.value })}
           className="min-w-64"
         />
-        <Select
-          label="Show"
-          value={view.archived}
-          onChange={({ target }) => setView({ archived: SHOWN.find((shown) => shown === target.value) ?? "no" })}
-          options={[
-            { value: "no", label: "in use" },
-            { value: "yes", label: "archived" },
-            { value: "all", label: "all" },
-          ]}
-        />
+        <ShownSelect value={view.archived} onChange={(archived) => setView({ archived })} />
       </div>
       {rows.length === 0 ? (
         <EmptyState title="No plant matches" action={<Button onClick={() => setView(null)}>Show all plants</Button>}>
@@ -104,13 +95,7 @@ export function PlantsTable({ firstPlant }: Readonly<{ firstPlant: React.ReactNo
           onSort={(sort) => setView({ sort: sortText(sort) })}
         />
       )}
-      {plants.hasNextPage ? (
-        <div className="mt-4">
-          <Button busy={plants.isFetchingNextPage} onClick={() => plants.fetchNextPage()}>
-            Show more
-          </Button>
-        </div>
-      ) : null}
+      <ShowMore list={plants} />
     </>
   );
 }

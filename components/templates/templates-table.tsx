@@ -13,10 +13,9 @@ import { type Column, DataTable } from "../ui/data-table";
 import { EmptyState } from "../ui/empty-state";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
-import { Select } from "../ui/select";
+import { ShowMore } from "../ui/show-more";
+import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { When } from "../ui/when";
-
-const SHOWN = ["no", "yes", "all"] as const;
 
 const columns: readonly Column<TemplateSummary>[] = [
   {
@@ -66,17 +65,7 @@ export function TemplatesTable({ firstTemplate }: Readonly<{ firstTemplate: Reac
   const rows = templates.data.pages.flatMap(({ items }) => items);
   return (
     <>
-      <Select
-        label="Show"
-        value={archived}
-        onChange={({ target }) => setArchived(SHOWN.find((shown) => shown === target.value) ?? "no")}
-        options={[
-          { value: "no", label: "in use" },
-          { value: "yes", label: "archived" },
-          { value: "all", label: "all" },
-        ]}
-        className="mb-4 w-44"
-      />
+      <ShownSelect value={archived} onChange={setArchived} className="mb-4 w-44" />
       {rows.length > 0 ? (
         <DataTable caption="Templates of the team" columns={columns} rows={rows} rowKey={({ id }) => id} />
       ) : archived === "no" ? (
@@ -86,13 +75,7 @@ export function TemplatesTable({ firstTemplate }: Readonly<{ firstTemplate: Reac
           {archived === "yes" ? "No template was archived." : "The team has no template."}
         </EmptyState>
       )}
-      {templates.hasNextPage ? (
-        <div className="mt-4">
-          <Button busy={templates.isFetchingNextPage} onClick={() => templates.fetchNextPage()}>
-            Show more
-          </Button>
-        </div>
-      ) : null}
+      <ShowMore list={templates} />
     </>
   );
 }

@@ -5,13 +5,13 @@ import { buttonStyle } from "./button-style";
 import { ErrorState } from "./error-state";
 import { PageBody } from "./page-body";
 
-export type PageFailureProps = Readonly<{ error: Error & { digest?: string } }>;
+export type PageFailureProps = Readonly<{ error: Error & { digest?: string }; title?: string }>;
 
 /** What a page says when its own making failed. Both ways out are full loads, which also mend what failed in the browser. */
-export function PageFailure({ error }: PageFailureProps) {
+export function PageFailure({ error, title = "This page could not be shown" }: PageFailureProps) {
   return (
     <PageBody>
-      <h1 className="mb-4 text-title font-bold">This page could not be shown</h1>
+      <h1 className="mb-4 text-title font-bold">{title}</h1>
       <ErrorState
         title="Something failed on our side."
         requestId={error.digest}
