@@ -10,6 +10,7 @@ const entries = {
   worker: "lib/commands/worker.ts",
   bench: "lib/commands/bench.ts",
   "fuzz-worker": "lib/commands/fuzz/fuzz-worker.ts",
+  reference: "lib/commands/reference/compare.ts",
   "numeric-worker": "lib/jobs/numeric-worker.ts",
 };
 
