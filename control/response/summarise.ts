@@ -1,6 +1,10 @@
 import type { StepFigures, Summary } from "../design/evidence";
+import { requireRepresentable } from "../linalg/require-representable";
 
-/** Worst of the steps of one loop: the commanded quantity for settling, rise and overshoot, all others for the cross-axis peak. */
+/**
+ * Worst of the steps of one loop: the commanded quantity for settling, rise and overshoot, all others for the cross-axis peak.
+ * Throws too-large where that peak is beyond the largest double times its amplitude.
+ */
 export function summarise(steps: readonly Omit<StepFigures, "loop">[], amplitudes: readonly number[], inputs: number): Summary {
   const own = steps.map(({ commanded, source }) => commanded[source]);
   return {
@@ -26,6 +30,7 @@ function worstCross(steps: readonly Omit<StepFigures, "loop">[], amplitudes: rea
     commanded.forEach(({ peak }, signal) => {
       if (signal === source) return;
       const share = peak / (Math.abs(amplitudes[signal]) || 1);
+      requireRepresentable("response", [share]);
       if (found === null || share > found.peak) found = { source, signal, peak: share };
     });
   }

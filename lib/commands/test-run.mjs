@@ -79,6 +79,8 @@ export async function testAll(filters, count) {
   if (whole) {
     const { checks } = await import("./checks.mjs");
     for (const { name, run } of checks) count(await step(name, async () => one(await run())));
+    const { checkReference } = await import("./reference/check.mjs");
+    count(await step("the core against SciPy", checkReference));
   }
   if (files.vitest.length > 0 || whole) count(await step("vitest", () => vitest(whole ? [] : files.vitest)));
   const zones = whole ? (process.env.GAINWRIGHT_TEST_ZONES ?? "").split(" ").filter(Boolean) : [];
