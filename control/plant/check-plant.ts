@@ -8,8 +8,9 @@ import { scalingReport } from "../structure/scaling-report";
 import { settleAssumed } from "../structure/settle-assumed";
 import { timeBaseSuspicion } from "../structure/time-base-suspicion";
 import { transmissionZeros } from "../structure/transmission-zeros";
+import type { TransmissionZero } from "../structure/zero-directions";
 import { attempt } from "./attempt";
-import type { Complex, PlantModel, TimeBase } from "./model";
+import type { PlantModel, TimeBase } from "./model";
 import type { PlantChecks, ZeroReport } from "./report";
 import { scalePlant } from "./scale-plant";
 
@@ -45,10 +46,18 @@ export function checkPlant(model: PlantModel): PlantChecks {
 }
 
 /** A zero counts as minimum phase only when it lies inside the boundary by more than rounding beside the largest of them. */
-function judgeZeros(zeros: readonly Complex[], timeBase: TimeBase): ZeroReport[] {
+function judgeZeros(zeros: readonly TransmissionZero[], timeBase: TimeBase): ZeroReport[] {
   const largest = zeros.reduce((size, zero) => Math.max(size, modulus(zero)), timeBase.kind === "sampled" ? 1 : 0);
   const rounding = 64 * zeros.length * Number.EPSILON * largest;
-  return zeros.map((value) => ({ value, minimumPhase: stabilityMargin(value, timeBase) > rounding }));
+  return zeros.map(({ re, im, ...directions }) => {
+    const { inputDirection, stateDirection, outputDirection } = directions;
+    return {
+      value: { re, im },
+      minimumPhase: stabilityMargin({ re, im }, timeBase) > rounding,
+      ...(inputDirection && stateDirection ? { inputDirection, stateDirection } : {}),
+      ...(outputDirection ? { outputDirection } : {}),
+    };
+  });
 }
 
 /** Computes at most once; a refusal is remembered like a result. */

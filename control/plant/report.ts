@@ -41,7 +41,15 @@ export type RankReport = {
   readonly weakestValue: number;
 };
 
-export type ZeroReport = { readonly value: Complex; readonly minimumPhase: boolean };
+export type ZeroReport = {
+  readonly value: Complex;
+  readonly minimumPhase: boolean;
+  /** Inputs that move as this times e^(zero t), from this state on, leave every output at rest; absent where it is not unique. */
+  readonly inputDirection?: readonly Complex[];
+  readonly stateDirection?: readonly Complex[];
+  /** Weights of the outputs in the combination that answers to no input at the zero; absent where it is not unique. */
+  readonly outputDirection?: readonly Complex[];
+};
 
 export type CouplingReport = {
   /** axes × axes: share of the Frobenius norm of scaled A that stands in each block, row axis acted on by column axis. Last row and column: signals of no axis. */

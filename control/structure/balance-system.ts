@@ -3,8 +3,16 @@ import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { MOST_EXPONENT } from "./balance-states";
 import type { FlatSystem } from "./reduce-system";
 
-/** `timeScale` is the power of two by which a and b were multiplied, so that poles and zeros were too. */
-export type BalancedSystem = FlatSystem & { readonly timeScale: number };
+/**
+ * `timeScale` is the power of two by which a and b were multiplied, so that poles and zeros were too. Old state =
+ * stateScale · new state, likewise inputs; new output = outputScale · old output.
+ */
+export type BalancedSystem = FlatSystem & {
+  readonly timeScale: number;
+  readonly stateScale: Float64Array;
+  readonly inputScale: Float64Array;
+  readonly outputScale: Float64Array;
+};
 
 /** Few, because a system without a rate of its own (a chain of integrators) would go on shrinking. */
 const MOST_PASSES = 4;
@@ -21,8 +29,17 @@ const MOST_ROUNDS = 40;
  * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304, carried over to systems with inputs and outputs
  */
 export function balanceSystem(given: FlatSystem, spectralRadius: number): BalancedSystem {
-  const system = { ...given, a: given.a.slice(), b: given.b.slice(), c: given.c.slice(), d: given.d.slice() };
-  const { n, a, b } = system;
+  const { n, m, p } = given;
+  const system = {
+    ...given,
+    a: given.a.slice(),
+    b: given.b.slice(),
+    c: given.c.slice(),
+    d: given.d.slice(),
+    inputScale: new Float64Array(m).fill(1),
+    outputScale: new Float64Array(p).fill(1),
+  };
+  const { a, b } = system;
   const inner = innerStates(system);
   const exponents = new Int32Array(n);
   let timeScale = 1;
@@ -41,8 +58,10 @@ export function balanceSystem(given: FlatSystem, spectralRadius: number): Balanc
     }
   }
   sizeSignals(system);
-  return { ...system, timeScale };
+  return { ...system, timeScale, stateScale: Float64Array.from(exponents, powerOfTwo) };
 }
+
+type Sized = Omit<BalancedSystem, "timeScale" | "stateScale">;
 
 /** States on a way from an input to an output: only these say how fast the whole is, the unit of the others is free. */
 function innerStates({ n, m, p, a, b, c }: FlatSystem): number[] {
@@ -96,9 +115,10 @@ function moveStates({ n, m, p, a, b, c }: FlatSystem, exponents: Int32Array, los
 }
 
 /** Columns of [B; D] and rows of [C D] brought to the size of 1; one lost in rounding beside the largest stays that small. */
-function sizeSignals({ n, m, p, b, c, d }: FlatSystem): void {
+function sizeSignals({ n, m, p, b, c, d, inputScale, outputScale }: Sized): void {
   const inputs = Array.from({ length: m }, (_, j) => Math.max(stridedLargest(b, n, m, j), stridedLargest(d, p, m, j)));
   scaleToOne(inputs, (j, f) => {
+    inputScale[j] *= f;
     for (let i = 0; i < n; i++) b[i * m + j] *= f;
     for (let k = 0; k < p; k++) d[k * m + j] *= f;
   });
@@ -106,6 +126,7 @@ function sizeSignals({ n, m, p, b, c, d }: FlatSystem): void {
     Math.max(largestEntry(c.subarray(k * n, k * n + n)), largestEntry(d.subarray(k * m, k * m + m))),
   );
   scaleToOne(outputs, (k, f) => {
+    outputScale[k] *= f;
     for (let j = 0; j < n; j++) c[k * n + j] *= f;
     for (let j = 0; j < m; j++) d[k * m + j] *= f;
   });

@@ -185,6 +185,14 @@ const RankReport = z.strictObject({
   weakestDirection: Shares,
   weakestValue: Plain,
 });
+const Direction = z.array(z.strictObject({ re: Plain, im: Plain }));
+const ZeroReport = z.strictObject({
+  value: Complex,
+  minimumPhase: z.boolean(),
+  inputDirection: Direction.optional(),
+  stateDirection: Direction.optional(),
+  outputDirection: Direction.optional(),
+});
 
 export const ChecksReply = z.strictObject({
   modes: part(z.array(ModeReport)),
@@ -192,7 +200,7 @@ export const ChecksReply = z.strictObject({
   observability: part(RankReport),
   stabilizable: part(z.boolean()),
   detectable: part(z.boolean()),
-  zeros: part(z.array(z.strictObject({ value: Complex, minimumPhase: z.boolean() }))),
+  zeros: part(z.array(ZeroReport)),
   coupling: part(z.strictObject({ blocks: PlainRows, relativeGain: PlainRows.nullable() })),
   scaling: z.strictObject({
     spreadAsGiven: Plain,

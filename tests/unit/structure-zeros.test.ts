@@ -22,7 +22,7 @@ test("the zeros of a single-input plant are the roots of its numerator", () => {
   const pair = zerosOf(INTEGRATORS, [[0], [0], [1]], [[5, 2, 1]]);
   expect(pair[0].re).toBeCloseTo(-1, 14);
   expect(pair[0].im).toBeCloseTo(2, 14);
-  expect(pair[1]).toEqual({ re: pair[0].re, im: -pair[0].im });
+  expect(pair[1]).toMatchObject({ re: pair[0].re, im: -pair[0].im });
   // (s - 3) / s³
   const single = zerosOf(INTEGRATORS, [[0], [0], [1]], [[-3, 1, 0]]);
   expect(single).toHaveLength(1);
@@ -30,7 +30,7 @@ test("the zeros of a single-input plant are the roots of its numerator", () => {
 });
 
 test("with feed-through there are as many zeros as states: 2 + 1/(s + 1) has one at -1.5", () => {
-  expect(zerosOf([[-1]], [[1]], [[1]], [[2]])).toEqual([{ re: -1.5, im: 0 }]);
+  expect(zerosOf([[-1]], [[1]], [[1]], [[2]])).toMatchObject([{ re: -1.5, im: 0 }]);
 });
 
 test("a chain measured at its end, a plant without outputs and one whose output sees nothing have no zeros", () => {
