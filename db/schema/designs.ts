@@ -1,8 +1,8 @@
 import { sql } from "drizzle-orm";
 import { check, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
 import type { ObserverRecipe, Recipe } from "@/control/design/recipe";
-import { createdAt, id, time, updatedAt, version } from "./columns";
-import { memberships } from "./people";
+import { authorOf } from "./author";
+import { id, kept, remarked } from "./columns";
 import { plantRevisions, plants } from "./plants";
 
 export const designs = pgTable(
@@ -12,12 +12,8 @@ export const designs = pgTable(
     teamId: uuid("team_id").notNull(),
     plantId: uuid("plant_id").notNull(),
     name: text("name").notNull(),
-    version: version(),
     currentRevision: integer("current_revision").notNull().default(1),
-    archivedAt: time("archived_at"),
-    createdBy: uuid("created_by").notNull(),
-    createdAt: createdAt(),
-    updatedAt: updatedAt(),
+    ...kept(),
   },
   (table) => [
     unique("designs_team_id").on(table.teamId, table.plantId, table.id),
@@ -26,12 +22,7 @@ export const designs = pgTable(
       columns: [table.teamId, table.plantId],
       foreignColumns: [plants.teamId, plants.id],
     }),
-    foreignKey({
-      name: "designs_author",
-      columns: [table.teamId, table.createdBy],
-      foreignColumns: [memberships.teamId, memberships.userId],
-    }),
-    index("designs_author_index").on(table.teamId, table.createdBy),
+    ...authorOf("designs", table),
     index("designs_by_update").on(table.teamId, table.plantId, table.updatedAt, table.id),
     check("designs_name_length", sql`length(${table.name}) between 1 and 120`),
     check("designs_version", sql`${table.version} >= 1 and ${table.currentRevision} >= 1`),
@@ -55,9 +46,7 @@ export const designRevisions = pgTable(
       .notNull()
       .generatedAlwaysAs(sql`recipe -> 'observer' ->> 'kind'`),
     methodVersion: text("method_version").notNull(),
-    note: text("note").notNull().default(""),
-    createdBy: uuid("created_by").notNull(),
-    createdAt: createdAt(),
+    ...remarked(),
   },
   (table) => [
     unique("design_revisions_number").on(table.designId, table.number),
@@ -72,14 +61,9 @@ export const designRevisions = pgTable(
       columns: [table.teamId, table.plantId, table.plantRevisionId],
       foreignColumns: [plantRevisions.teamId, plantRevisions.plantId, plantRevisions.id],
     }),
-    foreignKey({
-      name: "design_revisions_author",
-      columns: [table.teamId, table.createdBy],
-      foreignColumns: [memberships.teamId, memberships.userId],
-    }),
+    ...authorOf("design_revisions", table),
     index("design_revisions_design_index").on(table.teamId, table.plantId, table.designId),
     index("design_revisions_plant_revision_index").on(table.teamId, table.plantId, table.plantRevisionId),
-    index("design_revisions_author_index").on(table.teamId, table.createdBy),
     check("design_revisions_number_positive", sql`${table.number} >= 1`),
     check("design_revisions_note_length", sql`length(${table.note}) <= 2000`),
   ],

@@ -2,8 +2,9 @@ import { sql } from "drizzle-orm";
 import { check, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
 import type { PlantModel } from "@/control/plant/model";
 import type { PlantContent } from "@/lib/schemas/plant";
-import { createdAt, id, time, updatedAt, version } from "./columns";
-import { memberships, teams } from "./people";
+import { authorOf } from "./author";
+import { id, kept, remarked } from "./columns";
+import { teams } from "./people";
 
 export const plants = pgTable(
   "plants",
@@ -13,21 +14,12 @@ export const plants = pgTable(
       .notNull()
       .references(() => teams.id),
     name: text("name").notNull(),
-    version: version(),
     currentRevision: integer("current_revision").notNull().default(1),
-    archivedAt: time("archived_at"),
-    createdBy: uuid("created_by").notNull(),
-    createdAt: createdAt(),
-    updatedAt: updatedAt(),
+    ...kept(),
   },
   (table) => [
     unique("plants_team_id").on(table.teamId, table.id),
-    foreignKey({
-      name: "plants_author",
-      columns: [table.teamId, table.createdBy],
-      foreignColumns: [memberships.teamId, memberships.userId],
-    }),
-    index("plants_author_index").on(table.teamId, table.createdBy),
+    ...authorOf("plants", table),
     index("plants_by_update").on(table.teamId, table.updatedAt, table.id),
     index("plants_by_name").on(table.teamId, table.name, table.id),
     check("plants_name_length", sql`length(${table.name}) between 1 and 120`),
@@ -53,9 +45,7 @@ export const plantRevisions = pgTable(
     stateCount: integer("state_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'states')`),
     inputCount: integer("input_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'inputs')`),
     outputCount: integer("output_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(model -> 'outputs')`),
-    note: text("note").notNull().default(""),
-    createdBy: uuid("created_by").notNull(),
-    createdAt: createdAt(),
+    ...remarked(),
   },
   (table) => [
     unique("plant_revisions_number").on(table.plantId, table.number),
@@ -65,12 +55,7 @@ export const plantRevisions = pgTable(
       columns: [table.teamId, table.plantId],
       foreignColumns: [plants.teamId, plants.id],
     }),
-    foreignKey({
-      name: "plant_revisions_author",
-      columns: [table.teamId, table.createdBy],
-      foreignColumns: [memberships.teamId, memberships.userId],
-    }),
-    index("plant_revisions_author_index").on(table.teamId, table.createdBy),
+    ...authorOf("plant_revisions", table),
     check("plant_revisions_number_positive", sql`${table.number} >= 1`),
     check("plant_revisions_note_length", sql`length(${table.note}) <= 2000`),
   ],

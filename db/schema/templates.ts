@@ -1,8 +1,9 @@
 import { sql } from "drizzle-orm";
-import { check, foreignKey, index, integer, jsonb, pgTable, text, uuid } from "drizzle-orm/pg-core";
+import { check, index, integer, jsonb, pgTable, text, uuid } from "drizzle-orm/pg-core";
 import type { TemplateContent } from "@/lib/schemas/template";
-import { createdAt, id, time, updatedAt, version } from "./columns";
-import { memberships, teams } from "./people";
+import { authorOf } from "./author";
+import { id, kept } from "./columns";
+import { teams } from "./people";
 
 export const templates = pgTable(
   "templates",
@@ -18,20 +19,11 @@ export const templates = pgTable(
       .notNull()
       .generatedAlwaysAs(sql`jsonb_array_length(content -> 'openParameters')`),
     stateCount: integer("state_count").notNull().generatedAlwaysAs(sql`jsonb_array_length(content -> 'plant' -> 'states')`),
-    version: version(),
-    archivedAt: time("archived_at"),
-    createdBy: uuid("created_by").notNull(),
-    createdAt: createdAt(),
-    updatedAt: updatedAt(),
+    ...kept(),
   },
   (table) => [
-    foreignKey({
-      name: "templates_author",
-      columns: [table.teamId, table.createdBy],
-      foreignColumns: [memberships.teamId, memberships.userId],
-    }),
+    ...authorOf("templates", table),
     index("templates_by_name").on(table.teamId, table.name, table.id),
-    index("templates_author_index").on(table.teamId, table.createdBy),
     check("templates_name_length", sql`length(${table.name}) between 1 and 120`),
     check("templates_description_length", sql`length(${table.description}) <= 2000`),
   ],
