@@ -3,6 +3,7 @@
 import { useRouter } from "next/navigation";
 import { parseAsStringLiteral, useQueryState } from "nuqs";
 import { useState } from "react";
+import { FEWEST, MOST } from "@/lib/schemas/compared-count";
 import type { DesignSummary } from "@/lib/schemas/design";
 import { useSession } from "../providers/session-provider";
 import { Button } from "../ui/button";
@@ -16,9 +17,6 @@ import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { DESIGN_COLUMNS } from "./design-columns";
 import { sideBySideAddress } from "./side-by-side-address";
 import { useDesigns } from "./use-designs";
-
-const LEAST = 2;
-const MOST = 6;
 
 type DesignsTableProps = Readonly<{
   plantId: string;
@@ -94,11 +92,11 @@ const choiceColumn = (picked: readonly string[], onToggle: (revisionId: string) 
 
 function Comparing({ plantId, picked }: Readonly<{ plantId: string; picked: readonly string[] }>) {
   const router = useRouter();
-  const enough = picked.length >= LEAST;
+  const enough = picked.length >= FEWEST;
   const said =
     picked.length === 0
       ? "Choose two to six designs to compare."
-      : `${picked.length} chosen${picked.length < LEAST ? ", one more is needed" : picked.length === MOST ? ", as many as fit" : ""}.`;
+      : `${picked.length} chosen${picked.length < FEWEST ? ", one more is needed" : picked.length === MOST ? ", as many as fit" : ""}.`;
   return (
     <div className="flex flex-wrap items-center gap-3">
       <Button tone="primary" disabled={!enough} onClick={() => router.push(sideBySideAddress(plantId, picked))}>

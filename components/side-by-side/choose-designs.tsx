@@ -1,11 +1,11 @@
 "use client";
 
+import { MOST } from "@/lib/schemas/compared-count";
 import { ComparisonsList } from "../designs/comparisons-list";
 import { DesignsTable } from "../designs/designs-table";
 import { Notice } from "../ui/notice";
 import { PageHeading } from "../ui/page-heading";
 import { SheetSection } from "../ui/sheet-section";
-import { MOST } from "./design-limits";
 
 type ChooseDesignsProps = Readonly<{
   plant: { readonly id: string; readonly name: string };

@@ -1,5 +1,5 @@
 import { Id } from "@/lib/schemas/common";
-import { MOST } from "./design-limits";
+import { MOST } from "@/lib/schemas/compared-count";
 
 export type AskedDesigns = {
   /** Each once, in the order of the address, as many as fit. */

@@ -1,11 +1,12 @@
 import "server-only";
-import { and, desc, eq, lt } from "drizzle-orm";
+import { and, desc, eq, inArray, lt } from "drizzle-orm";
 import type { Recipe } from "@/control/design/recipe";
 import type { Db } from "../client";
 import { designRevisions, designs } from "../schema/designs";
 import { users } from "../schema/people";
 import { plantRevisions, plants } from "../schema/plants";
 import type { DesignKey } from "./designs";
+import type { PlantKey } from "./plants";
 
 const entry = {
   id: designRevisions.id,
@@ -35,8 +36,8 @@ export type DesignRevisionEntryRow = Awaited<ReturnType<typeof listDesignRevisio
 
 export type DesignRevisionKey = { readonly teamId: string; readonly revisionId: string };
 
-export async function findDesignRevision(db: Db, { teamId, revisionId }: DesignRevisionKey) {
-  const [found] = await db
+function selectDesignRevisions(db: Db) {
+  return db
     .select({
       ...entry,
       designName: designs.name,
@@ -56,11 +57,30 @@ export async function findDesignRevision(db: Db, { teamId, revisionId }: DesignR
       plantRevisions,
       and(eq(plantRevisions.teamId, designRevisions.teamId), eq(plantRevisions.id, designRevisions.plantRevisionId)),
     )
-    .leftJoin(users, eq(users.id, designRevisions.createdBy))
-    .where(and(eq(designRevisions.teamId, teamId), eq(designRevisions.id, revisionId)));
+    .leftJoin(users, eq(users.id, designRevisions.createdBy));
+}
+export type DesignRevisionRow = Awaited<ReturnType<typeof selectDesignRevisions>>[number];
+
+export async function findDesignRevision(
+  db: Db,
+  { teamId, revisionId }: DesignRevisionKey,
+): Promise<DesignRevisionRow | undefined> {
+  const [found] = await selectDesignRevisions(db).where(
+    and(eq(designRevisions.teamId, teamId), eq(designRevisions.id, revisionId)),
+  );
   return found;
 }
-export type DesignRevisionRow = NonNullable<Awaited<ReturnType<typeof findDesignRevision>>>;
+
+/** Those of these revisions that are this plant's, of this team, in no order. */
+export async function findDesignRevisions(
+  db: Db,
+  { teamId, plantId }: PlantKey,
+  revisionIds: readonly string[],
+): Promise<DesignRevisionRow[]> {
+  return selectDesignRevisions(db).where(
+    and(eq(designRevisions.teamId, teamId), eq(designRevisions.plantId, plantId), inArray(designRevisions.id, [...revisionIds])),
+  );
+}
 
 export async function insertDesignRevision(
   db: Db,

@@ -1,5 +1,5 @@
 import "server-only";
-import { and, asc, eq } from "drizzle-orm";
+import { and, asc, eq, inArray } from "drizzle-orm";
 import type { ResponseRecord } from "@/control/design/evidence";
 import type { Db } from "../client";
 import { evidence, responseRecords } from "../schema/evidence";
@@ -20,6 +20,15 @@ export async function findEvidence(db: Db, { teamId, revisionId }: DesignRevisio
     .select({ part: evidence.part, state: evidence.state, content: evidence.content })
     .from(evidence)
     .where(and(eq(evidence.teamId, teamId), eq(evidence.designRevisionId, revisionId)));
+}
+
+/** Of several revisions at once; each row names its own. */
+export async function findEvidenceOf(db: Db, { teamId, revisionIds }: { teamId: string; revisionIds: readonly string[] }) {
+  const { designRevisionId, part, state, content } = evidence;
+  return db
+    .select({ designRevisionId, part, state, content })
+    .from(evidence)
+    .where(and(eq(evidence.teamId, teamId), inArray(designRevisionId, [...revisionIds])));
 }
 
 // Float64Array keeps the order of the machine, and every machine we run on is little-endian.

@@ -1,11 +1,12 @@
 import { z } from "zod";
 import { Id, Name, Remark, Timestamp, Version } from "./common";
+import { FEWEST, MOST } from "./compared-count";
 
 /** Design revision ids, as in `designs=` of a side-by-side address. */
 export const ComparedRevisions = z
   .array(Id)
-  .min(2, "Choose at least two designs")
-  .max(6, "At most six designs stand side by side")
+  .min(FEWEST, "Choose at least two designs")
+  .max(MOST, "At most six designs stand side by side")
   .refine((ids) => new Set(ids).size === ids.length, "Each design revision can stand here once");
 
 export const SaveComparison = z.strictObject({

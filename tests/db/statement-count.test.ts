@@ -1,10 +1,16 @@
+import { randomUUID } from "node:crypto";
 import pg from "pg";
 import { afterAll, beforeAll, expect, test } from "vitest";
 import { closePool } from "@/db/client";
 import { closeNumericPool } from "@/lib/jobs/run-numeric";
-import type { DesignSummary } from "@/lib/schemas/design";
+import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
 import type { PlantSummary } from "@/lib/schemas/plant";
+import type { Context } from "@/lib/services/context";
+import { readDesignRevision } from "@/lib/services/designs/read-revision";
+import { readDesignRevisions } from "@/lib/services/designs/read-revisions";
+import { readPlant } from "@/lib/services/plants/read";
 import { type Api, member } from "../helpers/api";
+import { refusalOf } from "../helpers/people";
 import { twoCarriages } from "../helpers/plant-content";
 import { byWeights, observers } from "../helpers/recipes";
 import { testDatabase } from "../helpers/test-database";
@@ -36,22 +42,26 @@ async function statementsOf(act: () => Promise<unknown>): Promise<string[]> {
   }
 }
 
+let ctx: Context;
 let api: Api;
 let paths: string[];
+let plantId: string;
+let revisions: string[];
 beforeAll(async () => {
-  ({ api } = await member());
+  ({ ctx, api } = await member());
   const plants: PlantSummary[] = [];
   for (let index = 0; index < 12; index++) {
     plants.push(await api.post<PlantSummary>("/api/v1/plants", { name: `Plant ${index}`, content: twoCarriages() }));
   }
-  const [{ id: plantId, currentRevision }] = plants;
+  const [{ currentRevision }] = plants;
+  plantId = plants[0].id;
   const made: DesignSummary[] = [];
   for (let index = 0; index < 6; index++) {
     const recipe = byWeights({ observer: observers.noise });
     const body = { name: `Design ${index}`, plantRevisionId: currentRevision.id, recipe };
     made.push(await api.post<DesignSummary>(`/api/v1/plants/${plantId}/designs`, body));
   }
-  const revisions = made.map((one) => one.currentRevision.id);
+  revisions = made.map((one) => one.currentRevision.id);
   const compared = { plantId, title: "Both", designRevisionIds: revisions };
   const { id: comparisonId } = await api.post<{ id: string }>("/api/v1/comparisons", compared);
   const mass = { name: "m", unit: "kg", lowest: 5, highest: 40, suggested: 12, help: "" };
@@ -94,6 +104,27 @@ test("a read of a list or of one thing sends at most five statements, who asks a
     expect(sent.length, `${path}:\n${sent.join("\n")}`).toBeLessThanOrEqual(5);
     expect(sent.length, path).toBeGreaterThanOrEqual(3);
   }
+});
+
+test("six designs side by side are read with as few statements as one, as they are each for itself", async () => {
+  const asked = revisions.toReversed();
+  let read: DesignRevision[] = [];
+  const sent = await statementsOf(async () => {
+    await readPlant(ctx, plantId);
+    read = await readDesignRevisions(ctx, plantId, asked);
+  });
+  expect(sent.length, sent.join("\n")).toBe(3);
+  expect(read).toEqual(await Promise.all(asked.map((id) => readDesignRevision(ctx, id))));
+});
+
+test("designs side by side are all of the plant and the team that ask, at most six, or none are read", async () => {
+  const refused = (who: Context, of: string, ids: string[]) => refusalOf(readDesignRevisions(who, of, ids));
+  const [{ ctx: stranger }, other] = [await member(), await api.get<{ items: PlantSummary[] }>("/api/v1/plants?search=11")];
+  expect(await readDesignRevisions(ctx, plantId, [])).toEqual([]);
+  expect(await refused(stranger, plantId, revisions)).toMatchObject({ code: "not-found" });
+  expect(await refused(ctx, other.items[0].id, revisions)).toMatchObject({ code: "not-found" });
+  expect(await refused(ctx, plantId, [revisions[0], randomUUID()])).toMatchObject({ code: "not-found" });
+  expect(await refused(ctx, plantId, [...revisions, revisions[0]])).toMatchObject({ code: "invalid" });
 });
 
 test("a reply of a list or of one thing stays below one megabyte", async () => {

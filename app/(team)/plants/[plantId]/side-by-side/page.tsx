@@ -3,7 +3,6 @@ import { notFound } from "next/navigation";
 import { cache } from "react";
 import { ChooseDesigns } from "@/components/side-by-side/choose-designs";
 import { compareDesigns } from "@/components/side-by-side/compare-designs";
-import { FEWEST } from "@/components/side-by-side/design-limits";
 import { askedDesigns } from "@/components/side-by-side/side-by-side-ids";
 import { SideBySidePage } from "@/components/side-by-side/side-by-side-page";
 import { PageBody } from "@/components/ui/page-body";
@@ -11,7 +10,8 @@ import { pageContext } from "@/lib/auth/session";
 import { NotFound } from "@/lib/errors";
 import { isAllowed } from "@/lib/permissions/allow";
 import { PlantAddress } from "@/lib/schemas/addresses";
-import { readDesignRevision } from "@/lib/services/designs/read-revision";
+import { FEWEST } from "@/lib/schemas/compared-count";
+import { readDesignRevisions } from "@/lib/services/designs/read-revisions";
 import { readPlant } from "@/lib/services/plants/read";
 
 type PageProps = Readonly<{
@@ -26,8 +26,7 @@ const load = cache(async (plantId: string, designs: string) => {
   if (nonsense || !PlantAddress.safeParse({ plantId }).success) notFound();
   try {
     const { id, name } = await readPlant(ctx, plantId);
-    const revisions = await Promise.all(ids.map((revisionId) => readDesignRevision(ctx, revisionId)));
-    if (revisions.some((revision) => revision.plantId !== plantId)) notFound();
+    const revisions = await readDesignRevisions(ctx, plantId, ids);
     return { plant: { id, name }, ids, tooMany, revisions, maySave: isAllowed(ctx, "comparison:write") };
   } catch (error) {
     if (error instanceof NotFound) notFound();
