@@ -11,8 +11,8 @@ import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
 import { Select } from "../ui/select";
 import { SheetSection } from "../ui/sheet-section";
+import { whenText } from "../ui/when-text";
 import { DifferenceTable } from "./difference-table";
-import { whenText } from "./when-text";
 
 const columns: readonly Column<PlantRevisionEntry>[] = [
   { key: "number", header: "Revision", kind: "figure", cell: ({ number }) => number },

@@ -15,9 +15,9 @@ import { LoadingState } from "../ui/loading-state";
 import { ShowMore } from "../ui/show-more";
 import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { TextField } from "../ui/text-field";
+import { whenText } from "../ui/when-text";
 import { AxisTags } from "./axis-tags";
 import { timeBaseText } from "./time-base-text";
-import { whenText } from "./when-text";
 
 const SORTS = ["name", "-name", "updated", "-updated"] as const;
 const SEARCH_PAUSE_MS = 250;

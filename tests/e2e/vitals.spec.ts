@@ -1,6 +1,8 @@
 import type { Page } from "@playwright/test";
 import { untilSettled } from "../helpers/axe-page";
-import { cellOf, pasteAt, untilTakenOver } from "../helpers/matrix-page";
+import { designPath, figure, openDesign } from "../helpers/design-page";
+import { cellOf, openPlant, pasteAt, untilTakenOver } from "../helpers/matrix-page";
+import { changeEntry, untilKept } from "../helpers/plant-page";
 import { expect, storedDesign, storedPlant, test } from "../helpers/team-test";
 
 type Vitals = { readonly ttfb: number; readonly fcp: number; readonly lcp: number; readonly cls: number; readonly inp: number };
@@ -119,7 +121,7 @@ test("pages appear soon and stay in place on a slow machine and a slow line", as
 test("typing and pasting into a matrix answer at once on a slow machine", async ({ context, team }) => {
   test.setTimeout(200_000);
   await context.grantPermissions(["clipboard-read", "clipboard-write"]);
-  // A plant for each load: what was typed before would come back with a notice above the page.
+  // A plant for each load: what was typed before would come back.
   const path = async () => `/plants/${(await storedPlant(team.lead.request)).id}`;
   await measure(
     "plant, typing",
@@ -136,4 +138,21 @@ test("typing and pasting into a matrix answer at once on a slow machine", async 
       await expect(cellOf(page, "A", 4, 4)).toHaveText("7");
     },
   );
+});
+
+test("unsaved work comes back without moving the page", async ({ context, team }) => {
+  test.setTimeout(300_000);
+  const plant = await storedPlant(team.lead.request);
+  const design = await storedDesign(team.lead.request, plant);
+  const isBack = (page: Page) => expect(page.getByText("Your unsaved changes are back.")).toBeInViewport();
+  const [first, second] = [await context.newPage(), await context.newPage()];
+  await openPlant(first, `/plants/${plant.id}`);
+  await changeEntry(first, 3, 3, "-0.77");
+  await untilKept(first, "-0.77");
+  await openDesign(second, designPath(design));
+  await figure(second, "Largest deviation of x1, m").fill("0.00077");
+  await untilKept(second, "0.00077");
+  await Promise.all([first.close(), second.close()]);
+  await measure("plant, work back", () => context.newPage(), `/plants/${plant.id}`, isBack);
+  await measure("design, work back", () => context.newPage(), designPath(design), isBack);
 });

@@ -2,10 +2,10 @@
 
 import { useState } from "react";
 import { RequestProblem } from "@/lib/client/request";
-import { whenText } from "../../plants/when-text";
 import { Button } from "../../ui/button";
 import { LinkButton } from "../../ui/link-button";
 import { Notice } from "../../ui/notice";
+import { UnsavedBack } from "../../ui/unsaved-back";
 import type { BenchStart } from "./bench-types";
 import type { Bench } from "./use-bench";
 
@@ -14,11 +14,13 @@ type BenchNoticesProps = Readonly<{ bench: Bench; start: BenchStart; mayEdit: bo
 /** What somebody who opens the page has to know before reading on. */
 export function BenchNotices({ bench, start, mayEdit }: BenchNoticesProps) {
   return (
-    <div className="mb-6 flex flex-col gap-3 empty:hidden">
+    <>
       <RestoredNotice bench={bench} />
-      <OlderNotice bench={bench} plantId={start.plant.id} mayEdit={mayEdit} />
-      <OutdatedNotice bench={bench} newest={start.plant.newest} mayEdit={mayEdit} />
-    </div>
+      <div className="mb-6 flex flex-col gap-3 empty:hidden">
+        <OlderNotice bench={bench} plantId={start.plant.id} mayEdit={mayEdit} />
+        <OutdatedNotice bench={bench} newest={start.plant.newest} mayEdit={mayEdit} />
+      </div>
+    </>
   );
 }
 
@@ -27,24 +29,9 @@ function RestoredNotice({ bench: { found, base, discard, dismissFound, dirty } }
   const { design } = base;
   const overtaken = design !== null && found.base !== null && found.base.revisionId !== design.currentRevision.id;
   return (
-    <Notice
-      kind="caution"
-      role="status"
-      title="Your unsaved changes are back."
-      action={
-        <>
-          <Button size="small" onClick={dismissFound}>
-            Go on with them
-          </Button>
-          <Button size="small" tone="grave" onClick={discard}>
-            Discard them
-          </Button>
-        </>
-      }
-    >
-      They were kept in this browser on {whenText(found.at)}.
+    <UnsavedBack at={found.at} onKeep={dismissFound} onDiscard={discard}>
       {overtaken ? ` Since then revision ${design.currentRevision.number} was saved; saving yours will show what differs.` : ""}
-    </Notice>
+    </UnsavedBack>
   );
 }
 

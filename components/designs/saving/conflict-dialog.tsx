@@ -2,11 +2,11 @@
 
 import type { Recipe } from "@/control/design/recipe";
 import type { PlantModel } from "@/control/plant/model";
-import { whenText } from "../../plants/when-text";
 import { useToast } from "../../providers/toast-provider";
 import { Button } from "../../ui/button";
 import { Dialog } from "../../ui/dialog";
 import { useSubmit } from "../../ui/use-submit";
+import { whenText } from "../../ui/when-text";
 import type { Bench } from "../bench/use-bench";
 import { recipeDifferences } from "../recipe/recipe-lines";
 import { RecipeChanges } from "./recipe-changes";

@@ -92,6 +92,7 @@ export function usePlantDraft(key: string, start: Start) {
     version,
     dirty,
     restoredAt,
+    dismissRestored: () => setRestoredAt(null),
     /** The same content now starts from a newer version. */
     rebase: setVersion,
     settle,
