@@ -29,9 +29,17 @@ export type * from "./plant/report";
 export { type Placement, type PlacementProblem, placePoles } from "./poles/place-poles";
 export { resolvePoles } from "./poles/resolve-poles";
 export { type ClosedLoop, closeLoop, type LoopPlant, type ObserverInLoop } from "./response/close-loop";
+export {
+  type EnsembleLaw,
+  type EnsemblePlant,
+  type EnsembleRequest,
+  type EnsembleResponses,
+  respondEnsemble,
+} from "./response/ensemble";
 export { holdEquivalent } from "./response/hold-equivalent";
 export { matrixExponential } from "./response/matrix-exponential";
 export { type ResponseRequest, respond } from "./response/respond";
+export { respondToStep, type StepProblem } from "./response/respond-to-step";
 export { type RiccatiProblem, type RiccatiSolution, solveRiccati } from "./riccati/solve-riccati";
 
 // The same in words

@@ -4,13 +4,14 @@ import { accelerator } from "./accelerator";
 const WORTH_A_CALL = 400;
 const WORTH_A_WIDE_CALL = 60;
 
-/** As `flatProduct`, to the bit; null when the call is too small, too large or impossible here. */
+/** As `flatProduct`, to the bit, into `product` where it is given; null when the call is too small, too large or impossible here. */
 export function acceleratedProduct(
   a: Float64Array,
   b: Float64Array,
   rows: number,
   inner: number,
   columns: number,
+  product?: Float64Array,
 ): Float64Array | null {
   if (columns === 1 || rows * inner * columns < WORTH_A_CALL) return null;
   const c = 4 * inner;
@@ -23,7 +24,9 @@ export function acceleratedProduct(
   numbers.set(a, atA);
   numbers.set(b, atB);
   kernel.product(8 * atA, 8 * atB, 8 * c, rows, inner, columns, 0);
-  return numbers.slice(c, c + rows * columns);
+  if (!product) return numbers.slice(c, c + rows * columns);
+  product.set(numbers.subarray(c, c + rows * columns));
+  return product;
 }
 
 /** As `wideProduct`, to the bit; null as above. */

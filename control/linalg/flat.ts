@@ -32,6 +32,18 @@ export function flatProduct(a: Float64Array, b: Float64Array, rows: number, inne
   return acceleratedProduct(a, b, rows, inner, columns) ?? productByLoops(a, b, rows, inner, columns);
 }
 
+/** The same into an array that is used again and again; its old entries are overwritten. */
+export function flatProductInto(
+  product: Float64Array,
+  a: Float64Array,
+  b: Float64Array,
+  rows: number,
+  inner: number,
+  columns: number,
+): void {
+  if (!acceleratedProduct(a, b, rows, inner, columns, product)) productByLoops(a, b, rows, inner, columns, product);
+}
+
 /** a' (columnsA×rows) times b (rows×columnsB), both stored untransposed. */
 export function flatTransposedProduct(
   a: Float64Array,

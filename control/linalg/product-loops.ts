@@ -9,8 +9,14 @@ let panel = new Float64Array(256);
  * Accuracy  |error| ≤ γ_inner |a||b| per entry
  * Source    Golub & Van Loan, Matrix Computations, 4th ed. 2013, section 1.5
  */
-export function productByLoops(a: Float64Array, b: Float64Array, rows: number, inner: number, columns: number): Float64Array {
-  const product = new Float64Array(rows * columns);
+export function productByLoops(
+  a: Float64Array,
+  b: Float64Array,
+  rows: number,
+  inner: number,
+  columns: number,
+  product: Float64Array = new Float64Array(rows * columns),
+): Float64Array {
   if (panel.length < 4 * inner) panel = new Float64Array(4 * inner);
   for (let j = 0; j < columns; j += 4) {
     const width = columns - j;

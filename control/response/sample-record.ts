@@ -1,4 +1,5 @@
 import { NumericalError } from "../errors";
+import { flatProduct, flatTranspose } from "../linalg/flat";
 import { distinctRows } from "./distinct-rows";
 import type { Drive, LoopDynamics } from "./loop-dynamics";
 import { flatExponential } from "./matrix-exponential";
@@ -40,22 +41,26 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
       : transitionPower(a, order, Math.max(1, Math.round(step / period)));
   const everything = Array.from({ length: signals }, (_, i) => i);
   const { places, of, rows } = distinctRows(dynamics, everything);
-  const block = signalBlock(phi, order, rows);
+  const width = places.length * BLOCK;
+  const block = flatTranspose(signalBlock(phi, order, rows), width, order);
   const phiBlock = transitionPower(phi, order, BLOCK);
-  const departed = new Float64Array(places.length * BLOCK);
+  const blocks = Math.ceil(samples / BLOCK);
+  const starts = new Float64Array(blocks * order);
   return ({ departure, final }) => {
+    starts.set(departure);
+    for (let k = 1; k < blocks; k++) {
+      const here = starts.subarray(k * order, (k + 1) * order);
+      timesVector(phiBlock, starts.subarray((k - 1) * order, k * order), order, here);
+    }
+    const departed = flatProduct(starts, block, blocks, order, width);
     const values = new Float64Array(signals * samples);
-    let [state, after] = [departure.slice(), new Float64Array(order)];
-    for (let first = 0; first < samples; first += BLOCK) {
-      const here = Math.min(BLOCK, samples - first);
-      timesVector(block, state, order, departed);
-      for (let i = 0; i < places.length; i++) {
-        const rest = final[places[i]];
-        const to = places[i] * samples + first;
-        for (let k = 0; k < here; k++) values[to + k] = rest + departed[i * BLOCK + k] + 0;
+    for (let i = 0; i < places.length; i++) {
+      const rest = final[places[i]];
+      const to = places[i] * samples;
+      for (let first = 0, from = i * BLOCK; first < samples; first += BLOCK, from += width) {
+        const here = Math.min(BLOCK, samples - first);
+        for (let k = 0; k < here; k++) values[to + first + k] = rest + departed[from + k] + 0;
       }
-      timesVector(phiBlock, state, order, after);
-      [state, after] = [after, state];
     }
     requireFiniteValues(values);
     of.forEach((known, i) => {
