@@ -1,8 +1,31 @@
 import { sql } from "drizzle-orm";
-import { check, doublePrecision, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
+import {
+  type AnyPgColumn,
+  check,
+  doublePrecision,
+  foreignKey,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  text,
+  unique,
+  uuid,
+} from "drizzle-orm/pg-core";
 import type { ResponseEvidence, ResponseRecord } from "@/control/design/evidence";
 import { bytes, createdAt, id } from "./columns";
 import { designRevisions } from "./designs";
+
+type OfRevision = { readonly teamId: AnyPgColumn; readonly designRevisionId: AnyPgColumn };
+
+const revisionOf = (name: string, { teamId, designRevisionId }: OfRevision) => [
+  foreignKey({
+    name: `${name}_design_revision`,
+    columns: [teamId, designRevisionId],
+    foreignColumns: [designRevisions.teamId, designRevisions.id],
+  }),
+  index(`${name}_design_revision_index`).on(teamId, designRevisionId),
+];
 
 /** One row per part, so that later parts are added without touching earlier ones. Immutable. */
 export const evidence = pgTable(
@@ -21,12 +44,7 @@ export const evidence = pgTable(
   },
   (table) => [
     unique("evidence_part").on(table.designRevisionId, table.part),
-    foreignKey({
-      name: "evidence_design_revision",
-      columns: [table.teamId, table.designRevisionId],
-      foreignColumns: [designRevisions.teamId, designRevisions.id],
-    }),
-    index("evidence_design_revision_index").on(table.teamId, table.designRevisionId),
+    ...revisionOf("evidence", table),
     check("evidence_state", sql`${table.state} in ('computed', 'running', 'refused')`),
     check("evidence_part_name", sql`${table.part} ~ '^[a-z][a-z-]{0,39}$'`),
   ],
@@ -52,12 +70,7 @@ export const responseRecords = pgTable(
   },
   (table) => [
     unique("response_records_position").on(table.designRevisionId, table.position),
-    foreignKey({
-      name: "response_records_design_revision",
-      columns: [table.teamId, table.designRevisionId],
-      foreignColumns: [designRevisions.teamId, designRevisions.id],
-    }),
-    index("response_records_design_revision_index").on(table.teamId, table.designRevisionId),
+    ...revisionOf("response_records", table),
     check("response_records_kind", sql`${table.kind} in ('step', 'initial', 'disturbance')`),
     check("response_records_loop", sql`${table.loop} in ('full-state', 'observer')`),
     check("response_records_counts", sql`${table.position} >= 0 and ${table.source} >= 0 and ${table.samples} >= 1`),
