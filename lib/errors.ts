@@ -5,6 +5,7 @@ export type DomainErrorCode =
   | "forbidden" // 403: the right is missing on a thing the caller may see
   | "not-found" // 404: absent, or another team's
   | "conflict" // 409
+  | "gains-disagree" // 409: the sender's gains are not those of the service
   | "stale-version" // 412 { given, current }
   | "too-large" // 413 { limit }
   | "not-json" // 415

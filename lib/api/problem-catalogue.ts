@@ -45,6 +45,13 @@ const OWN_PROBLEMS: Readonly<Record<DomainErrorCode | ServiceCode, ProblemEntry>
     meaning: "Something of that name or state exists already, or an equal request is still being carried out.",
     nextStep: "Read the detail, look at what is stored now, then change the request or send it again later.",
   },
+  "gains-disagree": {
+    status: 409,
+    title: "The gains that were shown are not the service's own",
+    meaning: "The gains sent along differ from those that the service computed by more than both may be off. Nothing was stored.",
+    nextStep:
+      "Reload the page, or compute with the methods of the service's version, and look at the gains again before storing.",
+  },
   "stale-version": {
     status: 412,
     title: "Somebody saved a change after you opened this",

@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { Id, Name, PageQuery, Remark, Timestamp, Version } from "./common";
+import { Id, inUnit, Name, PageQuery, Remark, Rows, Timestamp, Version } from "./common";
 import { ChecksReply, EvidenceReply, ResponseCurves, SignalRole, Summary } from "./evidence";
 import { PlantContent, PlantModel } from "./plant";
 import { Recipe } from "./recipe";
@@ -49,10 +49,18 @@ export const DesignRevision = DesignRevisionEntry.extend({
 });
 export type DesignRevision = z.infer<typeof DesignRevision>;
 
-export const CreateDesign = z.strictObject({ name: Name, plantRevisionId: Id, recipe: Recipe, note: Remark.default("") });
+/** The gains that somebody looked at before storing: where the service's own differ, nothing is stored. */
+export const ShownGains = z.strictObject({
+  methodVersion: z.string().max(40),
+  K: inUnit(Rows, "unit of the row's input over unit of the column's state"),
+});
+export type ShownGains = z.infer<typeof ShownGains>;
+
+const Storing = { plantRevisionId: Id, recipe: Recipe, note: Remark.default(""), shown: ShownGains.optional() };
+export const CreateDesign = z.strictObject({ name: Name, ...Storing });
 export type CreateDesign = z.infer<typeof CreateDesign>;
 /** `plantRevisionId` newer than the stored one carries the recipe over to it. */
-export const AddDesignRevision = z.strictObject({ plantRevisionId: Id, recipe: Recipe, note: Remark.default("") });
+export const AddDesignRevision = z.strictObject(Storing);
 export type AddDesignRevision = z.infer<typeof AddDesignRevision>;
 export const RenameDesign = z.strictObject({ name: Name });
 export const DuplicateDesign = z.strictObject({ name: Name });

@@ -221,3 +221,37 @@ test("a design is renamed, duplicated with evidence of its own, archived and bro
   await api.post(`${path}/archive`, { archived: false }, 3);
   expect(await names("")).toEqual(["Stiff", "Copy"]);
 });
+
+describe("the gains that somebody looked at", () => {
+  test("are what is stored, and others are refused with nothing stored", async () => {
+    const { api } = await member();
+    const plant = await plantOf(api);
+    const recipe = byWeights();
+    const body = { name: "Looked at", plantRevisionId: plant.currentRevision.id, recipe };
+    const computed = await api.post<Computation>("/api/v1/computations", { plant: { revisionId: body.plantRevisionId }, recipe });
+    if (computed.evidence.gains.state !== "computed") throw new Error("no gains");
+    const { K } = computed.evidence.gains.value;
+    const { methodVersion } = computed.evidence;
+    const path = `/api/v1/plants/${plant.id}/designs`;
+    const made = await api.post<DesignSummary>(path, { ...body, shown: { methodVersion, K } });
+
+    const off = K.map((row, i) => row.map((entry, j) => (i === 0 && j === 1 ? entry * (1 + 1e-9) : entry)));
+    for (const shown of [
+      { methodVersion, K: off },
+      { methodVersion, K: K.slice(1) },
+      { methodVersion: "0.1", K },
+    ]) {
+      const created = await problemIn(await api.ask("POST", path, { body: { ...body, shown } }));
+      expect(created).toMatchObject({ status: 409, code: "gains-disagree" });
+      const added = await problemIn(
+        await api.ask("POST", `/api/v1/designs/${made.id}/revisions`, {
+          version: made.version,
+          body: { plantRevisionId: body.plantRevisionId, recipe, shown },
+        }),
+      );
+      expect(added).toMatchObject({ status: 409, code: "gains-disagree" });
+    }
+    const { items } = await api.get<{ items: DesignSummary[] }>(path);
+    expect(items.map(({ id, version }) => ({ id, version }))).toEqual([{ id: made.id, version: 1 }]);
+  });
+});

@@ -15,6 +15,7 @@ import {
   sendDesignRevision,
   shownMatrix,
   storedDesign,
+  untilSolved,
 } from "../helpers/design-page";
 import { twoCarriages } from "../helpers/plant-content";
 import { untilKept } from "../helpers/plant-page";
@@ -249,7 +250,7 @@ test("a newer plant revision outdates the design, whose recipe is carried over, 
   await openDesign(page, designPath(design));
   await expect(page.getByText("Outdated: this stands on plant revision 1, the newest is 2.")).toBeVisible();
   await press(page, "Carry the recipe over to plant revision 2");
-  await expect(page.getByText("Solved as it stands")).toBeVisible({ timeout: 20_000 });
+  await untilSolved(page);
   await expect(page.getByText(/^Outdated/)).toBeHidden();
   await expect(figure(page, "Largest deviation of v1, m/s")).toHaveValue("0.05");
   await expect(figure(page, DEVIATION)).toHaveValue("0.001");

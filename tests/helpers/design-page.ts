@@ -43,10 +43,16 @@ export const choose = (page: Page, name: string | RegExp): Promise<void> =>
 export const press = (page: Page | Locator, name: string): Promise<void> =>
   page.getByRole("button", { name, exact: true }).first().click();
 
+/** Until everything on the page belongs to the recipe as it stands. */
+export async function untilSolved(page: Page): Promise<void> {
+  await expect(page.getByText("Solved as it stands")).toBeVisible({ timeout: 20_000 });
+  await expect(page.locator("[aria-busy=true]")).toHaveCount(0);
+}
+
 /** Solves whatever stands on the page and waits for the answer. */
 export async function solve(page: Page): Promise<void> {
   await press(page, "Solve");
-  await expect(page.getByText("Solved as it stands")).toBeVisible({ timeout: 20_000 });
+  await untilSolved(page);
 }
 
 export const part = (page: Page, name: string): Locator => page.getByRole("region", { name, exact: true });

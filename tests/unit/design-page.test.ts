@@ -188,7 +188,9 @@ describe("what is unsaved and what is outdated", () => {
       [moved, reading],
     ] as const) {
       expect(isDirty(base, on, read)).toBe(true);
-      expect(isStale({ recipe, ground, evidence, source: { kind: "computed", responses: [] } }, on, read)).toBe(true);
+      expect(isStale({ recipe, ground, evidence, source: { kind: "computed", milliseconds: null, curves: [] } }, on, read)).toBe(
+        true,
+      );
     }
   });
 

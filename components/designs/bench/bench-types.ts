@@ -1,7 +1,8 @@
 import type { Recipe } from "@/control/design/recipe";
 import type { PlantModel } from "@/control/plant/model";
 import type { Computation, DesignRevision, DesignSummary } from "@/lib/schemas/design";
-import type { ResponseCurves } from "@/lib/schemas/evidence";
+import type { LiveSolution } from "../live/live-messages";
+import type { Curves } from "../responses/curves";
 
 /** The plant revision that a recipe is for. */
 export type Ground = { readonly plantRevision: { readonly id: string; readonly number: number }; readonly model: PlantModel };
@@ -29,14 +30,23 @@ export type Solved = {
   readonly evidence: DesignRevision["evidence"];
   readonly source:
     | { readonly kind: "stored"; readonly revisionId: string; readonly number: number }
-    | { readonly kind: "computed"; readonly responses: readonly ResponseCurves[] };
+    | { readonly kind: "computed"; readonly curves: readonly Curves[]; readonly milliseconds: number | null };
 };
 
-export const asSolved = (ground: Ground, recipe: Recipe, { evidence, responses }: Computation): Solved => ({
+/** Solved on the server. */
+export const asComputed = (ground: Ground, recipe: Recipe, { evidence, responses }: Computation): Solved => ({
   recipe,
   ground,
   evidence,
-  source: { kind: "computed", responses },
+  source: { kind: "computed", curves: responses, milliseconds: null },
+});
+
+/** Solved in the page. What the core returns is what the service sends, but for its arrays, which nobody here writes to. */
+export const asLive = (ground: Ground, recipe: Recipe, { evidence, curves, milliseconds }: LiveSolution): Solved => ({
+  recipe,
+  ground,
+  evidence: evidence as unknown as Solved["evidence"],
+  source: { kind: "computed", curves, milliseconds },
 });
 
 export const asStored = ({ id, number, recipe, evidence, plantRevision, model }: DesignRevision): Solved => ({

@@ -1,10 +1,11 @@
 "use client";
 
-import { useMemo, useState } from "react";
+import { useDeferredValue, useMemo, useState } from "react";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
 import { EmptyState } from "../../ui/empty-state";
 import { FormProblems } from "../../ui/form-problems";
+import { LoadingState } from "../../ui/loading-state";
 import { EvidencePanel } from "../evidence/evidence-panel";
 import { polesOfReport } from "../evidence/evidence-words";
 import { computed } from "../evidence/figures-reply";
@@ -133,6 +134,8 @@ type ColumnsProps = Readonly<{ bench: Bench; plantName: string; recipe: React.Re
 function Columns({ bench, plantName, recipe }: ColumnsProps) {
   const { base, stale } = bench;
   const { solved } = bench.solving;
+  // Curves follow the hand; figures and gains may come a frame later.
+  const settled = useDeferredValue(solved);
   const ghostOf = solved?.source.kind === "computed" ? (base.revision?.id ?? null) : null;
   return (
     <div className="mb-8 grid gap-x-6 gap-y-8 xl:grid-cols-[20rem_minmax(0,1fr)_22rem] xl:grid-rows-[auto_1fr]">
@@ -149,14 +152,14 @@ function Columns({ bench, plantName, recipe }: ColumnsProps) {
         ) : null}
         {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved bench={bench} />}
       </section>
-      <section aria-labelledby="evidence-heading" className="min-w-0 xl:row-span-2">
+      <section aria-labelledby="evidence-heading" aria-busy={settled !== solved} className="min-w-0 xl:row-span-2">
         <h2 id="evidence-heading" className="mb-3">
           Evidence
         </h2>
-        {solved ? <EvidencePanel solved={solved} /> : <p className="text-soft">It appears with the first solution.</p>}
+        {settled ? <EvidencePanel solved={settled} /> : <p className="text-soft">It appears with the first solution.</p>}
       </section>
-      <div className={MIDDLE}>
-        {solved ? <GainsSection solved={solved} plantName={plantName} designName={base.design?.name ?? null} /> : null}
+      <div aria-busy={settled !== solved} className={MIDDLE}>
+        {settled ? <GainsSection solved={settled} plantName={plantName} designName={base.design?.name ?? null} /> : null}
       </div>
     </div>
   );
@@ -164,7 +167,9 @@ function Columns({ bench, plantName, recipe }: ColumnsProps) {
 
 const MIDDLE = "min-w-0 xl:border-x xl:border-rule xl:px-6 xl:col-start-2 xl:-my-4 xl:py-4";
 
-function NothingSolved({ bench: { solving, solve } }: Readonly<{ bench: Bench }>) {
+function NothingSolved({ bench: { solving, solve, reading } }: Readonly<{ bench: Bench }>) {
+  if (solving.live && reading.recipe && !solving.refusal)
+    return <LoadingState label="Solving the recipe as it stands" lines={8} />;
   const action = (
     <Button tone="primary" busy={solving.busy} onClick={solve}>
       Solve
@@ -172,8 +177,7 @@ function NothingSolved({ bench: { solving, solve } }: Readonly<{ bench: Bench }>
   );
   return (
     <EmptyState title="Not solved yet" action={action}>
-      The recipe is ready as it stands: it starts from the plant's own largest acceptable deviations and limits. Solve it to see
-      what every axis does when one is commanded.
+      Once the recipe can be solved, this shows what every axis does when one is commanded.
     </EmptyState>
   );
 }

@@ -1,4 +1,5 @@
 import type { RecipeProblem } from "@/control/design/recipe-problems";
+import type { RefusedInWords } from "@/control/words/evidence-in-words";
 import { RequestProblem } from "@/lib/client/request";
 import { IN_BODY } from "../recipe/recipe-fields";
 
@@ -11,6 +12,16 @@ export function recipeRefusal(problems: readonly RecipeProblem[]): RequestProble
     detail: "Correct the places listed; everything else can stay.",
     errors: problems.map(({ pointer, message }) => ({ pointer: IN_BODY + pointer, detail: message })),
   });
+}
+
+/** A core that finds no gains is refused alike here and on the server. */
+export function refusedGains({ code, data, title, sentence, nextStep }: RefusedInWords): RequestProblem {
+  return new RequestProblem({ code, status: 422, title, detail: `${sentence} ${nextStep}`, data });
+}
+
+export function tookTooLong(): RequestProblem {
+  const detail = "The recipe was given up after half a minute. Try fewer states, or widen the weights.";
+  return new RequestProblem({ code: "time-limit", status: 422, title: "Took too long", detail });
 }
 
 /** The service's own refusals of a computation: it was understood, and an assumption does not hold. */

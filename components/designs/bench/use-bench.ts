@@ -6,9 +6,9 @@ import { fetchPlantRevision } from "@/lib/client/plants";
 import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
 import { useSession } from "../../providers/session-provider";
 import { carryRecipe } from "../recipe/carry-recipe";
-import { readForm } from "../recipe/read-form";
+import { type FormReading, readForm } from "../recipe/read-form";
 import { recipeFields } from "../recipe/recipe-fields";
-import { formOf } from "../recipe/recipe-form";
+import { formOf, type RecipeForm } from "../recipe/recipe-form";
 import { useRecipeForm } from "../recipe/use-recipe-form";
 import {
   type Base,
@@ -24,6 +24,7 @@ import {
 } from "./bench-base";
 import { asStored, type BenchStart, type Ground } from "./bench-types";
 import { draftKey, fitsPlant, type RecipeDraft } from "./draft-store";
+import { useFollowing } from "./use-following";
 import { useKeptDraft } from "./use-kept-draft";
 import { useSolving } from "./use-solving";
 import { useUnread, withUnread } from "./use-unread";
@@ -42,9 +43,8 @@ export function useBench(start: BenchStart, mayWrite: boolean) {
   const { unread, setUsable } = useUnread();
   const reading = useMemo(() => withUnread(readForm(form, ground.model), unread), [form, ground, unread]);
   const dirty = useMemo(() => isDirty(base, ground, reading), [base, ground, reading]);
-  const solving = useSolving(recipeFields(form, ground.model), start.revision && asStored(start.revision));
-  const { solved, setSolved, solve, clear } = solving;
-  const stale = useMemo(() => isStale(solved, ground, reading), [solved, ground, reading]);
+  const { solving, stale } = useFollowedSolving(start, form, ground, reading, mayWrite);
+  const { setSolved, solve, clear } = solving;
   const unsaved = useMemo(
     () => (dirty && mayWrite ? unsavedOf(form, ground, base) : null),
     [dirty, mayWrite, form, ground, base],
@@ -102,6 +102,16 @@ export function useBench(start: BenchStart, mayWrite: boolean) {
       await solve(readForm(carried, newest.model), newest);
     },
   };
+}
+
+/** What was solved last, and its following of what is written. */
+function useFollowedSolving(start: BenchStart, form: RecipeForm, ground: Ground, reading: FormReading, mayWrite: boolean) {
+  const solving = useSolving(recipeFields(form, ground.model), start.revision && asStored(start.revision));
+  const { solved, live, follow } = solving;
+  const stale = useMemo(() => isStale(solved, ground, reading), [solved, ground, reading]);
+  const behind = solved === null || stale;
+  useFollowing({ recipe: reading.recipe, ground, behind, active: mayWrite && live, follow });
+  return { solving, stale };
 }
 
 /** @throws RequestProblem */

@@ -1,35 +1,108 @@
 "use client";
 
-import { useRef, useState } from "react";
+import { useCallback, useRef, useState } from "react";
+import type { Recipe } from "@/control/design/recipe";
 import { compute } from "@/lib/client/designs";
+import { RequestProblem } from "@/lib/client/request";
 import { useSession } from "../../providers/session-provider";
 import { useSubmit } from "../../ui/use-submit";
+import { useLiveSolver } from "../live/use-live-solver";
 import type { FormReading } from "../recipe/read-form";
-import { asSolved, type Ground, type Solved } from "./bench-types";
-import { isAbort, recipeRefusal } from "./recipe-refusal";
+import { asComputed, asLive, type Ground, type Solved } from "./bench-types";
+import { isAbort, recipeRefusal, refusedGains, tookTooLong } from "./recipe-refusal";
 
-/** Solves a recipe on demand, without storing. The newest request wins; a running one can be stopped. */
+/** Work that is done sooner than this is not announced: words that flash by help nobody. */
+const ANNOUNCE_AFTER_MS = 150;
+
+/**
+ * Solves recipes without storing: in the page's own worker, by the same core as the server; on the server where the browser runs no
+ * worker. The newest request wins; a running one can be stopped.
+ */
 export function useSolving(fields: Readonly<Record<string, string>>, start: Solved | null) {
-  const { resume } = useSession();
   const submit = useSubmit(fields);
   const [solved, setSolved] = useState(start);
-  const running = useRef<AbortController | null>(null);
+  const [slow, setSlow] = useState(false);
+  const [live, setLive] = useState(true);
+  const solver = useLiveSolver();
+  const { solveThere, abort } = useServerSolving();
+  const { run, clear } = submit;
 
-  const solve = (reading: FormReading, ground: Ground) => {
-    running.current?.abort();
-    const stop = new AbortController();
-    running.current = stop;
-    return submit.run(async () => {
+  /** Null where something newer was asked for. @throws RequestProblem */
+  const solveHere = useCallback(
+    async (recipe: Recipe, ground: Ground): Promise<Solved | "broken" | null> => {
+      const announce = setTimeout(() => setSlow(true), ANNOUNCE_AFTER_MS);
+      const outcome = await solver.solve(ground.model, recipe);
+      clearTimeout(announce);
+      if (outcome.kind === "dropped") return null;
+      setSlow(false);
+      if (outcome.kind === "broken") return "broken";
+      if (outcome.kind === "too-long") throw tookTooLong();
+      const { gains } = outcome.solution.evidence;
+      if (gains.state === "refused") throw refusedGains(gains);
+      return asLive(ground, recipe, outcome.solution);
+    },
+    [solver],
+  );
+
+  const solve = (reading: FormReading, ground: Ground) =>
+    run(async () => {
       const { recipe, problems } = reading;
       if (!recipe) throw recipeRefusal(problems);
-      const body = { plant: { revisionId: ground.plantRevision.id }, recipe: recipe as Parameters<typeof compute>[0]["recipe"] };
-      try {
-        const reply = await resume(() => compute(body, stop.signal));
-        if (!stop.signal.aborted) setSolved(asSolved(ground, recipe, reply));
-      } catch (error) {
-        if (!isAbort(error)) throw error;
-      }
+      const here = await solveHere(recipe, ground);
+      if (here === "broken") setLive(false);
+      const found = here === "broken" ? await solveThere(recipe, ground) : here;
+      if (found) setSolved(found);
     });
+
+  /** Solves while the hand is still on the control: says nothing but the result, or why there is none. */
+  const follow = useCallback(
+    async (recipe: Recipe, ground: Ground) => {
+      try {
+        const here = await solveHere(recipe, ground);
+        if (here === "broken") setLive(false);
+        if (here === null || here === "broken") return;
+        setSolved(here);
+        clear();
+      } catch (error) {
+        if (!(error instanceof RequestProblem)) throw error;
+        void run(() => Promise.reject(error));
+      }
+    },
+    [solveHere, run, clear],
+  );
+
+  const stop = () => {
+    solver.stop();
+    abort();
+    setSlow(false);
   };
-  return { ...submit, solved, setSolved, solve, stop: () => running.current?.abort() };
+  return { ...submit, busy: submit.busy || slow, live, solved, setSolved, solve, follow, stop };
 }
+
+function useServerSolving() {
+  const { resume } = useSession();
+  const running = useRef<AbortController | null>(null);
+  const abort = () => running.current?.abort();
+
+  /** Null once it was given up. @throws RequestProblem */
+  const solveThere = async (recipe: Recipe, ground: Ground): Promise<Solved | null> => {
+    abort();
+    const stop = new AbortController();
+    running.current = stop;
+    try {
+      return asComputed(ground, recipe, await resume(() => compute(computeBody(recipe, ground), stop.signal)));
+    } catch (error) {
+      if (!isAbort(error)) throw error;
+      return null;
+    }
+  };
+  return { solveThere, abort };
+}
+
+const ALL_ROLES = ["commanded", "output", "state", "estimate", "input"] as const;
+
+const computeBody = (recipe: Recipe, { plantRevision }: Ground): Parameters<typeof compute>[0] => ({
+  plant: { revisionId: plantRevision.id },
+  recipe: recipe as Parameters<typeof compute>[0]["recipe"],
+  signals: [...ALL_ROLES],
+});

@@ -1,3 +1,4 @@
+import { memo } from "react";
 import { Notice } from "../../ui/notice";
 import { StateMark } from "../../ui/state-mark";
 import type { Solved } from "../bench/bench-types";
@@ -11,7 +12,7 @@ import { SolvedFacts, Verified } from "./solved-facts";
 import { StepFigures } from "./step-figures";
 
 /** The right column of the page: everything computed, each part by itself, refused parts with their reason. */
-export function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
+export const EvidencePanel = memo(function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
   const { evidence, ground } = solved;
   const { model } = ground;
   const poles = computed(evidence.poles);
@@ -37,7 +38,7 @@ export function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
       </EvidencePart>
     </div>
   );
-}
+});
 
 function StepPart({ solved: { evidence, ground } }: Readonly<{ solved: Solved }>) {
   const { responses } = evidence;

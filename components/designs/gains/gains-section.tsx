@@ -1,5 +1,6 @@
 "use client";
 
+import { memo } from "react";
 import { describeLaw, describeObserverLaw, describeTimeBase } from "@/control/words/describe-law";
 import { gainFileAddress } from "@/lib/client/designs";
 import { WovenMatrix } from "../../matrix/woven-matrix";
@@ -15,7 +16,7 @@ import { gainText } from "./gain-text";
 type GainsSectionProps = Readonly<{ solved: Solved; plantName: string; designName: string | null }>;
 
 /** The numbers that leave for the machine: matrices in the weave, sign equation, time base, ways out, cautions. */
-export function GainsSection({ solved, plantName, designName }: GainsSectionProps) {
+export const GainsSection = memo(function GainsSection({ solved, plantName, designName }: GainsSectionProps) {
   const { evidence, ground, source } = solved;
   const matrices = gainMatrices(evidence, ground.model);
   if (matrices.length === 0) return null;
@@ -53,7 +54,7 @@ export function GainsSection({ solved, plantName, designName }: GainsSectionProp
       </div>
     </SheetSection>
   );
-}
+});
 
 const MEANINGS: Readonly<Record<string, string>> = {
   K: "rows: what is driven · columns: because of",

@@ -1,23 +1,23 @@
 import type { StepFigures } from "@/control/design/evidence";
 import type { PlantModel } from "@/control/plant/model";
 import { formatNumber } from "@/control/words/format-number";
-import type { ResponseCurves } from "@/lib/schemas/evidence";
 import type { ResponseCell, ResponseColumn, ResponseRow, TimeGrid } from "../../plots/response-data";
+import type { Curves } from "./curves";
 
 export type RowRole = "commanded" | "output" | "state" | "input";
-export type LoopChoice = ResponseCurves["loop"] | "both";
+export type LoopChoice = Curves["loop"] | "both";
 
 export type GridWanted = {
-  readonly kind: ResponseCurves["kind"];
+  readonly kind: Curves["kind"];
   readonly loop: LoopChoice;
   readonly roles: readonly RowRole[];
 };
 
 export type ResponseData = {
   readonly model: PlantModel;
-  readonly curves: readonly ResponseCurves[];
+  readonly curves: readonly Curves[];
   /** Of the last saved revision, drawn thin and grey. */
-  readonly ghosts: readonly ResponseCurves[];
+  readonly ghosts: readonly Curves[];
   readonly figures: readonly StepFigures[];
 };
 
@@ -30,7 +30,7 @@ export type ResponsePicture = {
 const ROW_KIND = { commanded: "commanded", output: "output", state: "state", input: "effort" } as const;
 const SIGNALS = { commanded: "commanded", output: "outputs", state: "states", input: "inputs" } as const;
 
-function columnsOf(model: PlantModel, curves: readonly ResponseCurves[]): ResponseColumn[] {
+function columnsOf(model: PlantModel, curves: readonly Curves[]): ResponseColumn[] {
   return curves.map(({ kind, source, sourceName, amplitude, unit }) => {
     if (kind === "initial") return { key: "initial", label: "let go from the initial state", axis: null };
     const size = `${formatNumber(amplitude)} ${unit}`;
@@ -40,13 +40,13 @@ function columnsOf(model: PlantModel, curves: readonly ResponseCurves[]): Respon
   });
 }
 
-const lineOf = (curves: ResponseCurves | undefined, role: string, index: number) => {
+const lineOf = (curves: Curves | undefined, role: string, index: number) => {
   const at = curves?.signals.findIndex((signal) => signal.role === role && signal.index === index) ?? -1;
   return at < 0 ? undefined : curves?.values[at];
 };
 
 /** A curve at the instants of another grid, straight between its samples; for the eye only. */
-export function resample(values: readonly number[], from: number, to: TimeGrid): number[] {
+export function resample(values: ArrayLike<number>, from: number, to: TimeGrid): number[] {
   return Array.from({ length: to.samples }, (_, k) => {
     const place = (k * to.step) / from;
     const left = Math.min(Math.floor(place), values.length - 1);
@@ -56,8 +56,9 @@ export function resample(values: readonly number[], from: number, to: TimeGrid):
 }
 
 /** Sample furthest from zero, with its sign, and when. */
-function furthest(values: readonly number[], step: number): { peak: number; peakAt: number } {
-  const at = values.reduce((best, value, k) => (Math.abs(value) > Math.abs(values[best]) ? k : best), 0);
+function furthest(values: ArrayLike<number>, step: number): { peak: number; peakAt: number } {
+  let at = 0;
+  for (let k = 1; k < values.length; k++) if (Math.abs(values[k]) > Math.abs(values[at])) at = k;
   return { peak: values[at] ?? 0, peakAt: at * step };
 }
 
@@ -71,8 +72,8 @@ type Traced = Pick<ResponseCell, "final" | "peak" | "peakAt" | "settling">;
 function figuresOf(
   role: RowRole,
   index: number,
-  curve: ResponseCurves,
-  values: readonly number[],
+  curve: Curves,
+  values: ArrayLike<number>,
   figures: ResponseData["figures"],
 ): Traced {
   const seen = furthest(values, curve.step);
@@ -107,10 +108,10 @@ export function responsePicture(
   if (!first) return null;
   const time = { samples: first.samples, step: first.step };
   const sampled = model.timeBase.kind === "sampled";
-  const beside = (of: readonly ResponseCurves[], source: number, wantedLoop: string) =>
+  const beside = (of: readonly Curves[], source: number, wantedLoop: string) =>
     of.find((curve) => curve.kind === kind && curve.loop === wantedLoop && curve.source === source);
 
-  const cellOf = (role: RowRole, index: number, curve: ResponseCurves): ResponseCell | null => {
+  const cellOf = (role: RowRole, index: number, curve: Curves): ResponseCell | null => {
     const values = lineOf(curve, role, index);
     if (!values) return null;
     const ghostCurve = beside(ghosts, curve.source, main);

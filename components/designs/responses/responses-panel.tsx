@@ -1,5 +1,6 @@
 "use client";
 
+import { memo } from "react";
 import { ResponseGrid } from "../../plots/response-grid";
 import { Button } from "../../ui/button";
 import { ErrorState } from "../../ui/error-state";
@@ -20,7 +21,7 @@ type ResponsesPanelProps = Readonly<{
 }>;
 
 /** The middle column: coupled responses as a grid, whose cells off the diagonal are the cross-coupling. */
-export function ResponsesPanel({ solved, ghostOf }: ResponsesPanelProps) {
+export const ResponsesPanel = memo(function ResponsesPanel({ solved, ghostOf }: ResponsesPanelProps) {
   const { responses } = solved.evidence;
   const hasObserver = computed(solved.evidence.observer) !== null;
   const view = useResponseView(hasObserver);
@@ -31,7 +32,7 @@ export function ResponsesPanel({ solved, ghostOf }: ResponsesPanelProps) {
       <Picture solved={solved} ghostOf={ghostOf} wanted={view.wanted} figures={responses.value.figures} />
     </>
   );
-}
+});
 
 type PictureProps = ResponsesPanelProps & Readonly<{ wanted: GridWanted; figures: ResponsesReply["figures"] }>;
 

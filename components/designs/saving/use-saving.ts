@@ -9,6 +9,7 @@ import type { AddDesignRevision, DesignRevision, DesignSummary } from "@/lib/sch
 import { useSession } from "../../providers/session-provider";
 import { useCreateKey } from "../../ui/use-create-key";
 import type { Bench } from "../bench/use-bench";
+import { computed } from "../evidence/figures-reply";
 
 /** Somebody saved a revision after this edit began. */
 export type Conflict = { readonly design: DesignSummary; readonly theirs: DesignRevision; readonly note: string };
@@ -32,7 +33,12 @@ export function useSaving(bench: Bench, plantId: string) {
   async function saveRevision(note: string, version = base.from?.version): Promise<boolean> {
     const { design, from } = base;
     if (!design || version === undefined || !reading.recipe) return false;
-    const body: AddDesignRevision = { plantRevisionId: ground.plantRevision.id, recipe: asSent(reading.recipe), note };
+    const body: AddDesignRevision = {
+      plantRevisionId: ground.plantRevision.id,
+      recipe: asSent(reading.recipe),
+      note,
+      shown: shownGains(bench),
+    };
     const send = (at: number) => resume(() => addDesignRevision(design.id, at, body));
     let saved: DesignSummary;
     try {
@@ -56,7 +62,13 @@ export function useSaving(bench: Bench, plantId: string) {
   /** @throws RequestProblem */
   async function saveAsNew(name: string, note: string): Promise<DesignSummary | null> {
     if (!reading.recipe) return null;
-    const body = { name, plantRevisionId: ground.plantRevision.id, recipe: asSent(reading.recipe), note };
+    const body = {
+      name,
+      plantRevisionId: ground.plantRevision.id,
+      recipe: asSent(reading.recipe),
+      note,
+      shown: shownGains(bench),
+    };
     const made = await resume(() => createDesign(plantId, body, keyOf(body)));
     listsChanged(made.id);
     return made;
@@ -66,6 +78,12 @@ export function useSaving(bench: Bench, plantId: string) {
 }
 
 export type Saving = ReturnType<typeof useSaving>;
+
+/** The gains on the page, where they were solved from the recipe as it stands: the server stores no others. */
+function shownGains({ stale, solving: { solved } }: Bench): AddDesignRevision["shown"] {
+  const gains = solved && !stale ? computed(solved.evidence.gains) : null;
+  return solved && gains ? { methodVersion: solved.evidence.methodVersion, K: gains.K } : undefined;
+}
 
 /** The body's type allows changing; the recipe's does not. */
 const asSent = (recipe: Recipe) => recipe as AddDesignRevision["recipe"];

@@ -3,8 +3,8 @@ import type { PlantModel } from "@/control/plant/model";
 import type { PlantChecks } from "@/control/plant/report";
 import { describeChecks } from "@/control/words/describe-checks";
 import { describeMode } from "@/control/words/describe-mode";
+import { partInWords } from "@/control/words/evidence-in-words";
 import type { ChecksReply } from "@/lib/schemas/evidence";
-import { partInWords } from "../designs/evidence-reply";
 
 /** Checks as numbers and, beside them, in plain words. The reply schema checks every field on its way out. */
 export function checksReply(checks: PlantChecks, model: PlantModel): ChecksReply {

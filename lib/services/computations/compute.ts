@@ -1,13 +1,13 @@
 import "server-only";
 import type { PlantModel } from "@/control/plant/model";
 import { CAUTIONS } from "@/control/words/cautions";
+import { evidenceInWords } from "@/control/words/evidence-in-words";
 import { inTransaction } from "@/db/client";
 import { findPlantRevision } from "@/db/queries/plant-revisions";
 import { NotFound } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
 import type { Computation, Compute } from "@/lib/schemas/design";
 import type { Context } from "../context";
-import { evidenceReply, evidenceRows } from "../designs/evidence-reply";
 import { solveOrRefuse } from "../designs/solve-or-refuse";
 import { toCurves } from "../designs/to-curves";
 import { evaluateOrRefuse, issueBelow } from "../plants/evaluate-or-refuse";
@@ -33,7 +33,7 @@ export async function compute(
   return {
     model: model as Computation["model"],
     checks: await checkModel(ctx, model, signal),
-    evidence: evidenceReply(evidenceRows(evidence), evidence.methodVersion, model),
+    evidence: evidenceInWords(evidence, model) as Computation["evidence"],
     responses: records.map((record) => toCurves(record, model, signals)),
     cautions: [...CAUTIONS],
   };

@@ -8,6 +8,7 @@ import { changeDesignAt } from "./change-at-version";
 import { insertWithEvidence } from "./create";
 import { findSolvablePlant } from "./find-solvable-plant";
 import { readDesign } from "./read";
+import { requireAgreement } from "./require-agreement";
 import { solveOrRefuse } from "./solve-or-refuse";
 
 /** `version` is the design's version that the edit started from. */
@@ -15,7 +16,7 @@ export async function addDesignRevision(
   ctx: Context,
   designId: string,
   version: number,
-  { plantRevisionId, recipe, note }: AddDesignRevision,
+  { plantRevisionId, recipe, note, shown }: AddDesignRevision,
   signal?: AbortSignal,
 ): Promise<DesignSummary> {
   allow(ctx, "design:write");
@@ -24,6 +25,7 @@ export async function addDesignRevision(
   if (stored !== version) throw new StaleVersion(version, stored);
   const { model } = await findSolvablePlant(ctx, plantId, plantRevisionId);
   const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
+  requireAgreement(evidence, shown);
   return changeDesignAt(ctx, designId, version, "design.revised", async (tx, key) => {
     const saved = await advanceDesignAt(tx, key, version);
     if (saved) {

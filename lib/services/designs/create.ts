@@ -12,6 +12,7 @@ import { recordEvent } from "../audit";
 import type { Context } from "../context";
 import { evidenceRows } from "./evidence-reply";
 import { findSolvablePlant } from "./find-solvable-plant";
+import { requireAgreement } from "./require-agreement";
 import { requireFinite } from "./require-finite";
 import { solveOrRefuse } from "./solve-or-refuse";
 import { toDesignSummary } from "./to-design";
@@ -53,12 +54,13 @@ export async function insertWithFirstDesignRevision(
 export async function createDesign(
   ctx: Context,
   plantId: string,
-  { name, plantRevisionId, recipe, note }: CreateDesign,
+  { name, plantRevisionId, recipe, note, shown }: CreateDesign,
   signal?: AbortSignal,
 ): Promise<DesignSummary> {
   allow(ctx, "design:write");
   const { model } = await findSolvablePlant(ctx, plantId, plantRevisionId);
   const evidence = await solveOrRefuse(ctx, model, recipe, { signal });
+  requireAgreement(evidence, shown);
   return inTransaction(ctx, async (tx) => {
     const designId = await insertWithFirstDesignRevision(tx, ctx, { name, plantId, plantRevisionId, recipe, note }, evidence);
     const made = await findDesign(tx, { teamId: ctx.teamId, designId });

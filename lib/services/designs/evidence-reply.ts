@@ -1,16 +1,9 @@
 import "server-only";
 import type { Evidence, ResponseEvidence } from "@/control/design/evidence";
-import type { NumericalErrorCode } from "@/control/errors";
 import type { PlantModel } from "@/control/plant/model";
-import type { Part } from "@/control/plant/report";
-import { explainRefusal } from "@/control/words/explain-refusal";
+import { inWords, withoutCurves } from "@/control/words/evidence-in-words";
 import type { EvidenceRow } from "@/db/queries/evidence";
 import type { EvidenceReply, Refusal } from "@/lib/schemas/evidence";
-
-/** The figures of the responses without their curves, which are stored and fetched apart. */
-export function withoutCurves({ horizon, figures, summary }: ResponseEvidence) {
-  return { horizon, figures, summary };
-}
 
 const PARTS = ["gains", "poles", "reference", "observer", "responses"] as const;
 
@@ -23,16 +16,6 @@ export function evidenceRows(evidence: Evidence): EvidenceRow[] {
     const value = part === "responses" ? withoutCurves(found.value as ResponseEvidence) : found.value;
     return [{ part, state: "computed", content: value }];
   });
-}
-
-export function inWords(refused: { code: string; data: Readonly<Record<string, unknown>> }, model: PlantModel): Refusal {
-  const { code, data } = refused;
-  return { state: "refused", code, data: { ...data }, ...explainRefusal(code as NumericalErrorCode, data, model) };
-}
-
-/** Same part, a refusal put into the plant's own signal names. */
-export function partInWords<T>(part: Part<T>, model: PlantModel): { state: "computed"; value: T } | Refusal {
-  return part.state === "computed" ? part : inWords(part, model);
 }
 
 /** Stored rows as they are shown; the reply schema checks every field on its way out. */

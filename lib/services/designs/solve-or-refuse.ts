@@ -3,10 +3,10 @@ import type { Evidence } from "@/control/design/evidence";
 import type { Recipe } from "@/control/design/recipe";
 import { recipeProblems } from "@/control/design/recipe-problems";
 import type { PlantModel } from "@/control/plant/model";
+import { inWords } from "@/control/words/evidence-in-words";
 import { DomainError } from "@/lib/errors";
 import { runNumeric } from "@/lib/jobs/run-numeric";
 import type { Context } from "../context";
-import { inWords } from "./evidence-reply";
 
 export type Solve = {
   /** JSON pointer of the recipe in the body that was sent; without it `/recipe`. */

@@ -2,8 +2,8 @@ import "server-only";
 import { computeDesign } from "@/control/design/compute-design";
 import type { GainEvidence } from "@/control/design/evidence";
 import type { PlantModel } from "@/control/plant/model";
+import { withoutCurves } from "@/control/words/evidence-in-words";
 import { type ResponseCurves, ResponseFigures } from "@/lib/schemas/evidence";
-import { withoutCurves } from "../designs/evidence-reply";
 import { toCurves } from "../designs/to-curves";
 import { MIRROR_RECIPE, mirrorHead } from "./mirror-head";
 
