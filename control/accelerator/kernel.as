@@ -218,32 +218,35 @@ function turnRows(x: usize, end: usize, stride: usize, three: bool, u: f64, w: f
   const us = f64x2.splat(u);
   const ws = f64x2.splat(w);
   const taus = f64x2.splat(tau);
-  let y = x + stride;
-  let z = three ? y + stride : y;
-  for (; x + 8 < end; x += 16, y += 16, z += 16) {
+  const past = three ? 2 * stride : stride;
+  for (; x + 8 < end; x += 16) {
     const a = v128.load(x);
-    const b = v128.load(y);
-    const c = v128.load(z);
+    const b = v128.load(x + stride);
+    const c = v128.load(x + past);
     let sum = f64x2.add(a, f64x2.mul(us, b));
     if (three) sum = f64x2.add(sum, f64x2.mul(ws, c));
     sum = f64x2.mul(sum, taus);
     v128.store(x, f64x2.sub(a, sum));
-    v128.store(y, f64x2.sub(b, f64x2.mul(sum, us)));
-    if (three) v128.store(z, f64x2.sub(c, f64x2.mul(sum, ws)));
+    v128.store(x + stride, f64x2.sub(b, f64x2.mul(sum, us)));
+    if (three) v128.store(x + past, f64x2.sub(c, f64x2.mul(sum, ws)));
   }
-  if (x < end) turnEntry(x, y, z, three, u, w, tau);
+  if (x < end) turnEntries(x, x, stride, stride, three, u, w, tau);
 }
 
-/** One column of `turnRows`, or one row of a reflection of columns. */
-function turnEntry(x: usize, y: usize, z: usize, three: bool, u: f64, w: f64, tau: f64): void {
-  const a = load<f64>(x);
-  const b = load<f64>(y);
-  let sum = a + u * b;
-  if (three) sum += w * load<f64>(z);
-  sum *= tau;
-  store<f64>(x, a - sum);
-  store<f64>(y, b - sum * u);
-  if (three) store<f64>(z, load<f64>(z) - sum * w);
+/** Groups of three (else two) entries, `gap` apart, of which the first stand from x to last, `step` apart, times a reflection. */
+function turnEntries(x: usize, last: usize, step: usize, gap: usize, three: bool, u: f64, w: f64, tau: f64): void {
+  for (; x <= last; x += step) {
+    const a = load<f64>(x);
+    const b = load<f64>(x + gap);
+    let sum = a + u * b;
+    if (three) {
+      const c = load<f64>(x + 2 * gap);
+      sum = (sum + w * c) * tau;
+      store<f64>(x + 2 * gap, c - sum * w);
+    } else sum *= tau;
+    store<f64>(x, a - sum);
+    store<f64>(x + gap, b - sum * u);
+  }
 }
 
 /** As the sweep of `chaseByLoops`; q is the address of qt or 0. */
@@ -260,16 +263,20 @@ export function sweep(
     const rest = max(abs(b), abs(c));
     if (rest == 0) continue;
     const largest = max(abs(a), rest);
-    const x = a / largest;
-    const y = b / largest;
-    const z = c / largest;
+    const scale: f64 = largest < 1e-140 || largest > 1e140 ? largest : 1;
+    let x = a, y = b, z = c;
+    if (scale != 1) {
+      x /= scale;
+      y /= scale;
+      z /= scale;
+    }
     const length = sqrt(x * x + y * y + z * z);
     const beta = x >= 0 ? -length : length;
     const tau = (beta - x) / beta;
     const u = y / (x - beta);
     const w = z / (x - beta);
     if (k > m) {
-      store<f64>(at, beta * largest);
+      store<f64>(at, beta * scale);
       store<f64>(at + stride, 0);
       if (three) store<f64>(at + 2 * stride, 0);
     } else if (m > start) {
@@ -279,7 +286,7 @@ export function sweep(
     turnRows(row + (k << 3), row + ((full ? n : end + 1) << 3), stride, three, u, w, tau);
     const column = h + (k << 3);
     const last = column + min(k + 3, end) * stride;
-    for (let i = column + (full ? 0 : start) * stride; i <= last; i += stride) turnEntry(i, i + 8, i + 16, three, u, w, tau);
+    turnEntries(column + (full ? 0 : start) * stride, last, stride, 8, three, u, w, tau);
     if (q) turnRows(q + k * stride, q + (k + 1) * stride, stride, three, u, w, tau);
   }
 }

@@ -25,16 +25,17 @@ function sweep(this: Chase, m: number, start: number, end: number, v0: number, v
     const rest = Math.max(Math.abs(b), Math.abs(c));
     if (rest === 0) continue;
     const largest = Math.max(Math.abs(a), rest);
-    const x = a / largest;
-    const y = b / largest;
-    const z = c / largest;
+    const scale = largest < 1e-140 || largest > 1e140 ? largest : 1;
+    const x = a / scale;
+    const y = b / scale;
+    const z = c / scale;
     const length = Math.sqrt(x * x + y * y + z * z);
     const beta = x >= 0 ? -length : length;
     const tau = (beta - x) / beta;
     const u = y / (x - beta);
     const w = z / (x - beta);
     if (k > m) {
-      h[at] = beta * largest;
+      h[at] = beta * scale;
       h[at + n] = 0;
       if (three) h[at + 2 * n] = 0;
     } else if (m > start) {

@@ -1,5 +1,6 @@
 import type { Matrix } from "ml-matrix";
 import { largestEntry } from "./flat";
+import { exponentOf, powerOfTwo } from "./power-of-two";
 import { singularValues } from "./singular-values";
 
 /** Largest column sum of absolute values. */
@@ -38,10 +39,13 @@ export function twoNorm(M: Matrix): number {
 export function flatNorm(a: ArrayLike<number>): number {
   const largest = largestEntry(a);
   if (largest === 0) return 0;
+  // A power of two, so that scaling rounds nothing and powers of two in the units come out of every norm exactly.
+  const exponent = Math.max(-1022, Math.min(exponentOf(largest), 1022));
+  const factor = powerOfTwo(-exponent);
   let sum = 0;
   for (let i = 0; i < a.length; i++) {
-    const x = a[i] / largest;
+    const x = a[i] * factor;
     sum += x * x;
   }
-  return largest * Math.sqrt(sum);
+  return Math.sqrt(sum) * powerOfTwo(exponent);
 }

@@ -31,6 +31,7 @@ export function requireSymmetric(name: string, M: Matrix): void {
     for (let column = 0; column < row; column++) {
       const a = M.get(row, column);
       const b = M.get(column, row);
+      if (a === b) continue;
       const diagonal = Math.sqrt(Math.abs(M.get(row, row))) * Math.sqrt(Math.abs(M.get(column, column)));
       const size = Math.max(Math.abs(a), Math.abs(b), diagonal);
       if (Math.abs(a - b) > 8 * Number.EPSILON * size) throw new NumericalError("not-symmetric", { matrix: name, row, column });

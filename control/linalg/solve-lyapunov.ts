@@ -1,8 +1,8 @@
 import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { balance } from "./balance";
-import { addNarrow, addWide, split, type Wide, widen, wideProduct, wideTranspose } from "./double-double";
-import { flatProduct, flatTranspose, fromFlat, toFlat } from "./flat";
+import { type Split, split, type Wide, widen, wideProduct, wideTranspose } from "./double-double";
+import { flatProduct, flatTranspose, fromFlat, largestEntry, toFlat } from "./flat";
 import { flatNorm } from "./norms";
 import { powerOfTwo } from "./power-of-two";
 import { type FlatSchur, flatSchur } from "./real-schur";
@@ -12,7 +12,10 @@ import { solveTriangularLyapunov } from "./triangular-lyapunov";
 export type LyapunovProblem = { readonly A: Matrix; readonly Q: Matrix; readonly timeBase: "continuous" | "sampled" };
 export type LyapunovSolution = { readonly X: Matrix; readonly residual: number; readonly bound: number };
 
-const REFINEMENTS = 3;
+/** One or two are usual; more only where the Schur form alone gives few digits. */
+const REFINEMENTS = 6;
+/** What the next step may still change, beside the largest entry of its row. */
+const SETTLED = powerOfTwo(-62);
 
 /**
  * Solves A X + X A' + Q = 0, or A X A' - X + Q = 0 for a sampled plant: for stable A and positive semidefinite Q the
@@ -51,38 +54,91 @@ export function solveLyapunov({ A, Q, timeBase }: LyapunovProblem): LyapunovSolu
 function balancedWeight(q: Float64Array, n: number, order: Int32Array, scale: Float64Array): Float64Array {
   const balanced = new Float64Array(n * n);
   for (let i = 0; i < n; i++) {
-    for (let j = 0; j < n; j++) {
+    for (let j = 0; j <= i; j++) {
       const mean = 0.5 * q[order[i] * n + order[j]] + 0.5 * q[order[j] * n + order[i]];
-      balanced[i * n + j] = mean / scale[i] / scale[j];
+      balanced[i * n + j] = balanced[j * n + i] = mean / scale[i] / scale[j];
     }
   }
   return balanced;
 }
 
+/** X by the Schur form, then corrected from double-double residuals until what is left lies below the last digit of every row. */
 function refine(a: Float64Array, q: Float64Array, n: number, sampled: boolean): { x: Float64Array; residual: number } {
   const schur = flatSchur(a, n);
   const parts = split(a);
-  const x = widen(new Float64Array(n * n));
+  const x = widen(solveLyapunovBySchur(schur, n, q, sampled));
+  const moved = new Float64Array(n * n);
   let defect = q;
-  for (let round = 0; round <= REFINEMENTS; round++) {
-    addNarrow(x, solveLyapunovBySchur(schur, n, defect, sampled), 1);
-    defect = lyapunovDefect(parts, x, q, n, sampled).hi;
+  let before = largestEntry(x.hi);
+  for (let round = 0; round < REFINEMENTS; round++) {
+    defect = lyapunovDefect(parts, x, q, n, sampled);
+    const step = solveLyapunovBySchur(schur, n, defect, sampled);
+    const size = largestEntry(step);
+    takeStep(x, step, moved);
+    if (!(size > 0) || isSettled(x.hi, step, n, size / before)) break;
+    before = size;
   }
-  const rounded = widen(x.hi);
-  const left = flatNorm(lyapunovDefect(parts, rounded, q, n, sampled).hi);
   const size = flatNorm(x.hi) * (sampled ? 1 + flatNorm(a) * flatNorm(a) : 2 * flatNorm(a)) + flatNorm(q);
-  return { x: x.hi, residual: size === 0 ? 0 : left / size };
+  return { x: x.hi, residual: size === 0 ? 0 : flatNorm(movedDefect(a, defect, moved, n, sampled)) / size };
 }
 
-function lyapunovDefect(a: ReturnType<typeof split>, x: Wide, q: Float64Array, n: number, sampled: boolean): Wide {
+/** Adds the step to x; `moved` tells how far x.hi alone then lies from the old x. */
+function takeStep({ hi, lo }: Wide, step: Float64Array, moved: Float64Array): void {
+  for (let at = 0; at < hi.length; at++) {
+    const old = hi[at];
+    const total = old + step[at];
+    const part = total - old;
+    const below = lo[at] + (old - (total - part) + (step[at] - part));
+    hi[at] = total + below;
+    moved[at] = hi[at] - old - lo[at];
+    lo[at] = below - (hi[at] - total);
+  }
+}
+
+/** Whether the next step, smaller by the same ratio, stays below the rounding of each row's largest entry. */
+function isSettled(x: Float64Array, step: Float64Array, n: number, ratio: number): boolean {
+  for (let i = 0; i < n; i++) {
+    let largest = 0;
+    let next = 0;
+    for (let at = i * n; at < (i + 1) * n; at++) {
+      largest = Math.max(largest, Math.abs(x[at]));
+      next = Math.max(next, Math.abs(step[at]));
+    }
+    if (!(next * ratio <= SETTLED * largest)) return false;
+  }
+  return true;
+}
+
+/** The defect once x has moved: the way is short, so that working precision serves. */
+function movedDefect(a: Float64Array, defect: Float64Array, moved: Float64Array, n: number, sampled: boolean): Float64Array {
+  const product = flatProduct(a, moved, n, n, n);
+  const added = sampled ? flatProduct(product, flatTranspose(a, n, n), n, n, n) : product;
+  const left = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0, at = i * n; j < n; j++, at++) left[at] = defect[at] + added[at] + (sampled ? -moved[at] : added[j * n + i]);
+  }
+  return left;
+}
+
+/** A X + X A' + Q (sampled: A X A' - X + Q) for symmetric wide X, summed in double-double and rounded once; symmetric. */
+function lyapunovDefect(a: Split, x: Wide, q: Float64Array, n: number, sampled: boolean): Float64Array {
   const product = wideProduct(a, x, n, n, n);
-  const defect = widen(q);
-  if (sampled) {
-    addWide(defect, wideProduct(a, wideTranspose(product, n, n), n, n, n), 1);
-    addWide(defect, x, -1);
-  } else {
-    addWide(defect, product, 1);
-    addWide(defect, wideTranspose(product, n, n), 1);
+  const first = sampled ? wideProduct(a, wideTranspose(product, n, n), n, n, n) : product;
+  const defect = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j <= i; j++) {
+      const at = i * n + j;
+      const across = j * n + i;
+      const u = first.hi[at];
+      const v = sampled ? -x.hi[at] : product.hi[across];
+      const low = first.lo[at] + (sampled ? -x.lo[at] : product.lo[across]);
+      const sum = u + v;
+      const part = sum - u;
+      const total = sum + q[at];
+      const rest = total - sum;
+      const lost = u - (sum - part) + (v - part) + (sum - (total - rest) + (q[at] - rest));
+      defect[at] = defect[across] = total + (lost + low);
+    }
   }
   return defect;
 }

@@ -9,6 +9,7 @@ export type StrongComponents = { readonly order: Int32Array; readonly starts: re
  * Source    Tarjan, Depth-first search and linear graph algorithms, SIAM J. Comput. 1 (1972) 146-160
  */
 export function strongComponents(a: Float64Array, n: number): StrongComponents {
+  if (isRing(a, n)) return { order: Int32Array.from({ length: n }, (_, i) => i), starts: n === 0 ? [0] : [0, n] };
   const found = new Int32Array(n).fill(-1);
   const low = new Int32Array(n);
   const next = new Int32Array(n);
@@ -41,6 +42,12 @@ export function strongComponents(a: Float64Array, n: number): StrongComponents {
   const starts = [0];
   for (const component of components) starts.push(starts[starts.length - 1] + component.length);
   return { order: Int32Array.from(components.flat()), starts };
+}
+
+/** Whether every index reaches the next one and the last the first: the usual dense matrix is one component without a search. */
+function isRing(a: Float64Array, n: number): boolean {
+  for (let i = 0; i + 1 < n; i++) if (a[i * n + i + 1] === 0) return false;
+  return n < 2 || a[(n - 1) * n] !== 0;
 }
 
 /** Next index not seen yet that row i reaches, or -1; lowers i's mark by open ones on the way. */

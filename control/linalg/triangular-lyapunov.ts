@@ -1,6 +1,15 @@
-import { NumericalError } from "../errors";
+import { type BlockPair, solveBlockPair } from "./block-pair";
 import { largestEntry } from "./flat";
 import { blockSize } from "./schur-values";
+
+/** What the passes of one call share: T, the right side that turns into Y, and in the sampled case Y T' of the columns at hand. */
+type Work = {
+  readonly t: Float64Array;
+  readonly n: number;
+  readonly y: Float64Array;
+  readonly gathered: Float64Array;
+  readonly pair: BlockPair;
+};
 
 /**
  * Solves T Y + Y T' = C, or T Y T' - Y = C when sampled, for quasi-triangular T and symmetric C; C is overwritten by Y.
@@ -13,150 +22,103 @@ import { blockSize } from "./schur-values";
 export function solveTriangularLyapunov(t: Float64Array, n: number, c: Float64Array, sampled: boolean): void {
   const starts: number[] = [];
   for (let k = 0; k < n; k += blockSize(t, n, k)) starts.push(k);
-  const system = new Float64Array(16);
-  const right = new Float64Array(4);
   const size = largestEntry(t);
   const floor = Number.MIN_VALUE + Number.EPSILON * Number.EPSILON * (sampled ? 1 + size * size : size);
-  const gathered = sampled ? new Float64Array(2 * n) : null;
+  const pair = { system: new Float64Array(16), right: new Float64Array(4), floor };
+  const work = { t, n, y: c, gathered: new Float64Array(sampled ? 2 * n : 0), pair };
   for (let bj = starts.length - 1; bj >= 0; bj--) {
     const j = starts[bj];
     const q = (starts[bj + 1] ?? n) - j;
-    if (gathered) gatherColumns(t, n, c, j, q, gathered);
+    if (sampled) gatherColumns(work, j, q);
     for (let bi = bj; bi >= 0; bi--) {
       const i = starts[bi];
       const p = (starts[bi + 1] ?? n) - i;
-      if (gathered) sampledRight(t, n, c, i, p, j, q, gathered, right);
-      else continuousRight(t, n, c, i, p, j, q, right);
-      if (p === 1 && q === 1) {
-        const pivot = sampled ? t[i * n + i] * t[j * n + j] - 1 : t[i * n + i] + t[j * n + j];
-        if (!(Math.abs(pivot) > floor)) throw new NumericalError("singular", { matrix: "lyapunov", row: i });
-        right[0] /= pivot;
-      } else {
-        fillSystem(t, n, i, p, j, q, sampled, system);
-        solveTiny(system, right, p * q, floor, i);
-      }
-      for (let a = 0; a < p; a++) for (let b = 0; b < q; b++) c[(i + a) * n + j + b] = c[(j + b) * n + i + a] = right[a * q + b];
-      if (gathered) extendGathered(t, n, i, p, j, q, right, gathered);
+      if (sampled) sampledRight(work, i, p, j, q);
+      else continuousRight(work, i, p, j, q);
+      solveBlockPair(t, n, i, p, j, q, sampled, pair);
+      for (let a = 0; a < p; a++)
+        for (let b = 0; b < q; b++) c[(i + a) * n + j + b] = c[(j + b) * n + i + a] = pair.right[a * q + b];
+      if (sampled) extendGathered(work, i, p, j, q);
     }
   }
 }
 
 /** C_ij - Σ_{k after i} T_ik Y_kj - Σ_{k after j} Y_ik T_jk, both sums along rows thanks to symmetry. */
-function continuousRight(
-  t: Float64Array,
-  n: number,
-  c: Float64Array,
-  i: number,
-  p: number,
-  j: number,
-  q: number,
-  right: Float64Array,
-): void {
+function continuousRight({ t, n, y, pair: { right } }: Work, i: number, p: number, j: number, q: number): void {
   for (let a = 0; a < p; a++) {
-    for (let b = 0; b < q; b++) {
-      let sum = c[(i + a) * n + j + b];
-      for (let k = i + p; k < n; k++) sum -= t[(i + a) * n + k] * c[(j + b) * n + k];
-      for (let k = j + q; k < n; k++) sum -= t[(j + b) * n + k] * c[(i + a) * n + k];
-      right[a * q + b] = sum;
+    const row = (i + a) * n;
+    const at = a * q;
+    if (q === 1) right[at] = y[row + j] - dot(t, row, y, j * n, i + p, n) - dot(t, j * n, y, row, j + q, n);
+    else {
+      twoDots(t, row, y, j * n, n, i + p, right, at);
+      const [first, second] = [right[at], right[at + 1]];
+      twoDots(y, row, t, j * n, n, j + q, right, at);
+      right[at] = y[row + j] - first - right[at];
+      right[at + 1] = y[row + j + 1] - second - right[at + 1];
     }
   }
 }
 
-/** For every row k: Σ_{l after j} Y_kl T_jl, plus Y_kj T_jj' for the rows below block j. */
-function gatherColumns(t: Float64Array, n: number, y: Float64Array, j: number, q: number, gathered: Float64Array): void {
-  for (let k = 0; k < n; k++) {
-    for (let b = 0; b < q; b++) {
-      let sum = 0;
-      for (let l = k >= j + q ? j : j + q; l < n; l++) sum += y[k * n + l] * t[(j + b) * n + l];
-      gathered[k * q + b] = sum;
-    }
+/** Σ x_k y_k for from ≤ k < to, summed as the even and the odd ones. */
+function dot(x: Float64Array, atX: number, y: Float64Array, atY: number, from: number, to: number): number {
+  let even = 0;
+  let odd = 0;
+  let k = from;
+  for (; k + 1 < to; k += 2) {
+    even += x[atX + k] * y[atY + k];
+    odd += x[atX + k + 1] * y[atY + k + 1];
   }
+  if (k < to) even += x[atX + k] * y[atY + k];
+  return even + odd;
+}
+
+/** The dots of a row of x with two neighbouring rows of y, from place `from` to the end, into out. */
+function twoDots(
+  x: Float64Array,
+  atX: number,
+  y: Float64Array,
+  atY: number,
+  n: number,
+  from: number,
+  out: Float64Array,
+  at: number,
+): void {
+  let [a, b, c, d] = [0, 0, 0, 0];
+  let k = from;
+  for (; k + 1 < n; k += 2) {
+    const u = x[atX + k];
+    const v = x[atX + k + 1];
+    a += u * y[atY + k];
+    b += v * y[atY + k + 1];
+    c += u * y[atY + n + k];
+    d += v * y[atY + n + k + 1];
+  }
+  if (k < n) {
+    a += x[atX + k] * y[atY + k];
+    c += x[atX + k] * y[atY + n + k];
+  }
+  out[at] = a + b;
+  out[at + 1] = c + d;
+}
+
+/** For every row k: Σ_{l after j} Y_kl T_jl, plus Y_kj T_jj' for the rows below block j. Column b of it lies in row b. */
+function gatherColumns({ t, n, y, gathered }: Work, j: number, q: number): void {
+  for (let b = 0; b < q; b++)
+    for (let k = 0; k < n; k++) gathered[b * n + k] = dot(y, k * n, t, (j + b) * n, k >= j + q ? j : j + q, n);
 }
 
 /** Adds Y_ij T_jj' once block (i, j) is known. */
-function extendGathered(
-  t: Float64Array,
-  n: number,
-  i: number,
-  p: number,
-  j: number,
-  q: number,
-  known: Float64Array,
-  gathered: Float64Array,
-): void {
+function extendGathered({ t, n, gathered, pair: { right } }: Work, i: number, p: number, j: number, q: number): void {
   for (let a = 0; a < p; a++) {
     for (let b = 0; b < q; b++) {
-      for (let l = 0; l < q; l++) gathered[(i + a) * q + b] += known[a * q + l] * t[(j + b) * n + j + l];
+      for (let l = 0; l < q; l++) gathered[b * n + i + a] += right[a * q + l] * t[(j + b) * n + j + l];
     }
   }
 }
 
-function sampledRight(
-  t: Float64Array,
-  n: number,
-  c: Float64Array,
-  i: number,
-  p: number,
-  j: number,
-  q: number,
-  gathered: Float64Array,
-  right: Float64Array,
-): void {
+function sampledRight({ t, n, y, gathered, pair: { right } }: Work, i: number, p: number, j: number, q: number): void {
   for (let a = 0; a < p; a++) {
-    for (let b = 0; b < q; b++) {
-      let sum = c[(i + a) * n + j + b];
-      for (let k = i; k < n; k++) sum -= t[(i + a) * n + k] * gathered[k * q + b];
-      right[a * q + b] = sum;
-    }
-  }
-}
-
-/** T_ii Y + Y T_jj' or T_ii Y T_jj' - Y as a system for the p·q entries of Y, row by row. */
-function fillSystem(
-  t: Float64Array,
-  n: number,
-  i: number,
-  p: number,
-  j: number,
-  q: number,
-  sampled: boolean,
-  system: Float64Array,
-): void {
-  const unknowns = p * q;
-  system.fill(0);
-  for (let a = 0; a < p; a++) {
-    for (let b = 0; b < q; b++) {
-      const row = (a * q + b) * unknowns;
-      for (let k = 0; k < p; k++) {
-        for (let l = 0; l < q; l++) {
-          const left = t[(i + a) * n + i + k];
-          const other = t[(j + b) * n + j + l];
-          if (sampled) system[row + k * q + l] += left * other - (k === a && l === b ? 1 : 0);
-          else system[row + k * q + l] += (l === b ? left : 0) + (k === a ? other : 0);
-        }
-      }
-    }
-  }
-}
-
-/** Gaussian elimination with partial pivoting for at most four unknowns. */
-function solveTiny(a: Float64Array, b: Float64Array, n: number, floor: number, row: number): void {
-  for (let k = 0; k < n; k++) {
-    let best = k;
-    for (let i = k + 1; i < n; i++) if (Math.abs(a[i * n + k]) > Math.abs(a[best * n + k])) best = i;
-    if (!(Math.abs(a[best * n + k]) > floor)) throw new NumericalError("singular", { matrix: "lyapunov", row });
-    if (best !== k) {
-      for (let j = k; j < n; j++) [a[k * n + j], a[best * n + j]] = [a[best * n + j], a[k * n + j]];
-      [b[k], b[best]] = [b[best], b[k]];
-    }
-    for (let i = k + 1; i < n; i++) {
-      const factor = a[i * n + k] / a[k * n + k];
-      for (let j = k + 1; j < n; j++) a[i * n + j] -= factor * a[k * n + j];
-      b[i] -= factor * b[k];
-    }
-  }
-  for (let i = n - 1; i >= 0; i--) {
-    for (let j = i + 1; j < n; j++) b[i] -= a[i * n + j] * b[j];
-    b[i] /= a[i * n + i];
+    const row = (i + a) * n;
+    for (let b = 0; b < q; b++) right[a * q + b] = y[row + j + b] - dot(t, row, gathered, b * n, i, n);
   }
 }

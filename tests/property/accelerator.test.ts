@@ -3,6 +3,7 @@ import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
 import { acceleratedProduct, acceleratedWideProduct } from "../../control/accelerator/accelerated-product";
 import { acceleratedHessenberg } from "../../control/accelerator/accelerated-schur";
 import { useAccelerator } from "../../control/accelerator/accelerator";
+import { NumericalError } from "../../control/errors";
 import { split } from "../../control/linalg/double-double";
 import { flatIdentity, flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
 import { hessenbergByLoops } from "../../control/linalg/hessenberg";
@@ -49,6 +50,16 @@ const square = fc.integer({ min: 5, max: 14 }).chain((n) => {
   const sparse = fc.array(fc.constantFrom(0, 0, 1, -1), { minLength: n * n, maxLength: n * n });
   return fc.record({ n: fc.constant(n), a: fc.oneof(list, sparse).map((entries) => Float64Array.from(entries)) });
 });
+
+/** Without balancing, a nearly defective matrix of very unlike entries may fail to converge: then either way. */
+function schurOrCode(a: Float64Array, n: number) {
+  try {
+    return flatSchur(a, n);
+  } catch (error) {
+    if (error instanceof NumericalError) return error.code;
+    throw error;
+  }
+}
 
 /** Places where two arrays differ in a bit; all NaN count as one. */
 const different = (x: Float64Array | undefined, y: Float64Array) =>
@@ -101,12 +112,15 @@ describe("reductions of a square matrix have the same bits either way", () => {
   test("to real Schur form, with its basis", () => {
     fc.assert(
       fc.property(square, ({ n, a }) => {
-        useAccelerator(true);
-        const fast = flatSchur(a, n);
-        useAccelerator(false);
-        const loops = flatSchur(a, n);
-        expect(different(fast.t, loops.t)).toEqual([]);
-        expect(different(fast.qt, loops.qt)).toEqual([]);
+        const [fast, loops] = [true, false].map((on) => {
+          useAccelerator(on);
+          return schurOrCode(a, n);
+        });
+        if (typeof fast === "string" || typeof loops === "string") expect(fast).toBe(loops);
+        else {
+          expect(different(fast.t, loops.t)).toEqual([]);
+          expect(different(fast.qt, loops.qt)).toEqual([]);
+        }
       }),
       { numRuns: 300, seed: 75 },
     );
