@@ -91,6 +91,7 @@ function check({ A, B, Q, R, S, period }: Required<ContinuousCost>): void {
   requireShape("Q", Q, n, n);
   requireShape("R", R, m, m);
   requireShape("S", S, n, m);
+  if (n === 0 || m === 0) throw new NumericalError("shape-mismatch", { A: [n, n], B: [n, m] });
   for (const [name, M] of Object.entries({ A, B, Q, R, S })) requireFinite(name, M);
   requireSymmetric("Q", Q);
   requireSymmetric("R", R);

@@ -8,6 +8,7 @@ import { powerOfTwo } from "../linalg/power-of-two";
 import { requireFinite, requireShape } from "../linalg/require";
 import { schurValues } from "../linalg/schur-values";
 import { balanceDynamics } from "./balance-dynamics";
+import { MOST_VALUES } from "./respond-to-step";
 import { stepFiller } from "./step-filler";
 
 /** One plant of many: row-major entries, read when its turn comes and never kept. */
@@ -37,7 +38,7 @@ export type EnsembleRequest = {
   /** Seconds between moments; a sampled loop is shown at its own samples. */
   readonly step: number;
   readonly samples: number;
-  /** Is shown the samples of each loop, q×q×samples by reference, quantity and moment; the array is used again for the next. */
+  /** Is shown the samples of each stable loop, q×q×samples by reference, quantity and moment; the array is used again for the next. */
   readonly visit?: (values: Float64Array, index: number) => void;
 };
 
@@ -47,9 +48,8 @@ export type EnsembleResponses = {
   readonly im: Float64Array;
   /** Per plant: every pole inside the stability boundary. */
   readonly stable: readonly boolean[];
-  /** Least and largest value of each channel at each moment over the loops that are stable: q×q×samples. */
-  readonly lower: Float64Array;
-  readonly upper: Float64Array;
+  /** Least and largest value of each channel at each moment over the stable loops, q×q×samples; null when none is stable. */
+  readonly band: { readonly lower: Float64Array; readonly upper: Float64Array } | null;
 };
 
 /**
@@ -57,9 +57,10 @@ export type EnsembleResponses = {
  *
  * Shapes    n states, m inputs, p outputs, q commanded in all plants: K m×n, F m×q; observer L n×p, A n×n, B n×m, C p×n
  * Units     the plants'; poles in 1/s or per sample
- * Throws    shape-mismatch; not-finite; bad-option for a step that is not above zero or fewer than one sample;
- *           no-convergence of the eigenvalues
+ * Throws    shape-mismatch; not-finite; bad-option for a step that is not above zero or fewer than one sample; too-large for
+ *           more than 2^25 values or for poles and values beyond the largest double; no-convergence of the eigenvalues
  * Accuracy  poles as `eigenvalues`; samples about 1e-13 of the largest value for loops like the first, whose balancing all share
+ * Source    as `respondToStep`; no array is made per plant but what the eigenvalues need
  */
 export function respondEnsemble(request: EnsembleRequest): EnsembleResponses {
   const { law, plants, period, step, samples, visit } = request;
@@ -76,12 +77,21 @@ export function respondEnsemble(request: EnsembleRequest): EnsembleResponses {
   const stable = plants.map((plant, index) => {
     const { a, b, c } = close(plant, index);
     const inside = placePolesOf(a, order, period !== null, re, im, index * order);
+    if (!inside) return false;
     fill(a, b, c, d, values);
-    if (inside) widen(values, lower, upper);
+    widen(values, lower, upper);
     visit?.(values, index);
-    return inside;
+    return true;
   });
-  return { re, im, stable, lower, upper };
+  for (const entries of [re, im]) requireInRange(entries, "eigenvalue");
+  if (!stable.includes(true)) return { re, im, stable, band: null };
+  requireInRange(lower, "response");
+  requireInRange(upper, "response");
+  return { re, im, stable, band: { lower, upper } };
+}
+
+function requireInRange(values: Float64Array, what: string): void {
+  if (!values.every(Number.isFinite)) throw new NumericalError("too-large", { what, limit: Number.MAX_VALUE });
 }
 
 type Sizes = { readonly n: number; readonly m: number; readonly p: number; readonly q: number; readonly order: number };
@@ -100,6 +110,7 @@ function sizesOf({ law, plants, step, samples }: EnsembleRequest): Sizes {
   for (const [name, M] of Object.entries({ K, F, ...observer })) requireFinite(name, M);
   if (!(step > 0 && Number.isFinite(step))) throw new NumericalError("bad-option", { option: "step", given: step });
   if (!(Number.isInteger(samples) && samples > 0)) throw new NumericalError("bad-option", { option: "samples", given: samples });
+  if (q * q * samples > MOST_VALUES) throw new NumericalError("too-large", { what: "response", limit: MOST_VALUES });
   plants.forEach(({ a, b, c, h }, plant) => {
     const expected = [n * n, n * m, observer ? p * n : c.length, q * n];
     const given = [a.length, b.length, c.length, h.length];
@@ -187,7 +198,7 @@ function placePolesOf(a: Float64Array, n: number, sampled: boolean, re: Float64A
 function widen(values: Float64Array, lower: Float64Array, upper: Float64Array): void {
   for (let i = 0; i < values.length; i++) {
     const value = values[i];
-    if (value < lower[i]) lower[i] = value;
-    if (value > upper[i]) upper[i] = value;
+    if (!(value >= lower[i])) lower[i] = value; // also when it is not a number, which is then refused
+    if (!(value <= upper[i])) upper[i] = value;
   }
 }

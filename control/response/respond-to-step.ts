@@ -15,7 +15,8 @@ export type StepProblem = {
   readonly samples: number;
 };
 
-const MOST_VALUES = 2 ** 25;
+/** 256 MB */
+export const MOST_VALUES = 2 ** 25;
 
 /**
  * Samples, without figures, of the answers of x' = A x + B u, y = C x + D u (sampled: x(k+1) = ...) to a unit step of each

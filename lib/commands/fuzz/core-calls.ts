@@ -68,6 +68,25 @@ const dynamics: Record<string, CoreCall> = {
   },
   matrixExponential: ({ A }) => ({ value: core.matrixExponential(A) }),
   holdEquivalent: ({ A, B, period }) => ({ value: core.holdEquivalent({ A, B, period }) }),
+  discretiseCost: ({ A, B, Q, R, S, period, seed }) => ({
+    value: core.discretiseCost({ A, B, Q, R, period, ...(seed % 2 === 0 ? { S } : {}) }),
+  }),
+  respondToStep: ({ A, B, C, D, period, sampled }) => ({
+    value: core.respondToStep({ A, B, C, D, step: sampled ? null : period, samples: 40 }),
+  }),
+  respondEnsemble: ({ A, B, C, H, K, period, sampled, seed }) => {
+    const flat = (M: Matrix) => Float64Array.from(M.to1DArray());
+    const believed = { A, B, C, L: Matrix.zeros(A.rows, C.rows) };
+    return {
+      value: core.respondEnsemble({
+        law: { K, F: Matrix.ones(B.columns, H.rows), observer: seed % 3 === 0 ? believed : null },
+        plants: [{ a: flat(A), b: flat(B), c: flat(C), h: flat(H) }],
+        period: sampled ? period : null,
+        step: period,
+        samples: 40,
+      }),
+    };
+  },
   closeLoop: ({ A, B, C, D, H, J, K }) => ({ value: core.closeLoop({ A, B, C, D, H, J }, K, null, null) }),
   respond: ({ A, B, C, D, H, J, K, sampled, period, recipe, model, seed, p }) => {
     const full = seed % 3 === 0 && p > 0;
@@ -83,6 +102,35 @@ const dynamics: Record<string, CoreCall> = {
     };
     return { value: core.respond(request) };
   },
+};
+
+const bracketed = ({ lower, upper }: core.DistanceBracket) => lower <= upper;
+
+/** The same plant with every mode made to decay, so that it has gramians. */
+function decaying({ A, B, C, n, sampled }: HostileProblem): core.GramianProblem {
+  const size = 1 + A.to1DArray().reduce((sum, entry) => sum + Math.abs(entry), 0);
+  const settled = sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(n).mul(size));
+  return { A: settled, B, C, timeBase: sampled ? "sampled" : "continuous" };
+}
+
+const structure: Record<string, CoreCall> = {
+  controllabilityReport: ({ A, B }) => ({ value: core.controllabilityReport(A, B) }),
+  observabilityReport: ({ A, C }) => ({ value: core.observabilityReport(A, C) }),
+  modes: ({ A, B, C, timeBase }) => ({ value: core.modes({ A, B, C }, timeBase) }),
+  transmissionZeros: ({ A, B, C, D, n }) => {
+    const value = core.transmissionZeros({ A, B, C, D });
+    return { value, holds: value.length <= n };
+  },
+  distanceToUncontrollability: ({ A, B }) => {
+    const value = core.distanceToUncontrollability(A, B, 100);
+    return { value, holds: bracketed(value) };
+  },
+  distanceToUnobservability: ({ A, C }) => {
+    const value = core.distanceToUnobservability(A, C, 100);
+    return { value, holds: bracketed(value) };
+  },
+  gramians: (problem) => ({ value: core.gramians(decaying(problem)) }),
+  hankelValues: (problem) => ({ value: core.hankelValues(decaying(problem)) }),
 };
 
 const documents: Record<string, CoreCall> = {
@@ -104,7 +152,13 @@ const documents: Record<string, CoreCall> = {
 };
 
 /** By the name under which `control/index.ts` exports the function; words are checked beside what they speak of. */
-export const CORE_CALLS: Readonly<Record<string, CoreCall>> = { ...regulators, ...observers, ...dynamics, ...documents };
+export const CORE_CALLS: Readonly<Record<string, CoreCall>> = {
+  ...regulators,
+  ...observers,
+  ...dynamics,
+  ...structure,
+  ...documents,
+};
 
 /** Sentences of a refusal. */
 export function refusalWords(error: core.NumericalError, { model }: HostileProblem): unknown {
