@@ -4,7 +4,10 @@ import { flatNorm } from "../linalg/norms";
 import type { FlatProblem } from "./problem";
 import type { GainSystem } from "./residual";
 
-const CORRECTIONS = 8;
+/** The gain with the Cholesky factor of its weight, and the size of the last correction: what is left of its error at most. */
+export type Gain = { readonly k: Wide; readonly factor: Float64Array; readonly uncertainty: number };
+
+const CORRECTIONS = 12;
 
 /** R⁻¹ W in double; throws not-positive-definite, naming R, or R + B'XB when sampled. */
 export function roughGain({ n, m, sampled }: FlatProblem, { weight, right }: GainSystem): Float64Array {
@@ -12,29 +15,32 @@ export function roughGain({ n, m, sampled }: FlatProblem, { weight, right }: Gai
 }
 
 /**
- * K with (weight) K = right, corrected with double-double residuals until it stands still: every entry correctly rounded
- * in `hi` unless entries of one row differ by more than fifteen digits.
+ * K with (weight) K = right, corrected with double-double residuals until the next correction could not be seen below
+ * `enough` of its size.
  *
  * Throws    not-positive-definite as `roughGain`
+ * Accuracy  every entry of `hi` correctly rounded when enough is ε², unless entries of one row differ by fifteen digits
  * Source    Higham, Accuracy and Stability of Numerical Algorithms, 2nd ed. 2002, section 12 (iterative refinement)
  */
-export function accurateGain(problem: FlatProblem, { weight, right }: GainSystem): Wide {
+export function accurateGain(problem: FlatProblem, { weight, right }: GainSystem, enough: number): Gain {
   const { n, m, sampled } = problem;
-  const l = flatCholesky(weight.hi, m, sampled ? "R + B'XB" : "R");
-  const k = widen(solveCholesky(l, m, right.hi, n));
+  const factor = flatCholesky(weight.hi, m, sampled ? "R + B'XB" : "R");
+  const k = widen(solveCholesky(factor, m, right.hi, n));
   const high = split(weight.hi);
-  const low = split(weight.lo);
-  let last = Number.POSITIVE_INFINITY;
+  const low = sampled ? split(weight.lo) : null;
+  let last = flatNorm(k.hi);
+  let previous = last;
   for (let round = 0; round < CORRECTIONS; round++) {
     const rest = { hi: right.hi.slice(), lo: right.lo.slice() };
     addWide(rest, wideProduct(high, k, m, m, n), -1);
-    addWide(rest, wideProduct(low, k, m, m, n), -1);
-    const step = solveCholesky(l, m, rest.hi, n);
+    if (low) addWide(rest, wideProduct(low, k, m, m, n), -1);
+    const step = solveCholesky(factor, m, rest.hi, n);
     const size = flatNorm(step);
-    if (!(size < 0.5 * last)) break;
+    if (!(size < 0.5 * last)) return { k, factor, uncertainty: size };
     addNarrow(k, step, 1);
+    previous = last;
     last = size;
-    if (size === 0) break;
+    if (size * (size / previous) <= enough * flatNorm(k.hi)) break;
   }
-  return k;
+  return { k, factor, uncertainty: last * Math.min(1, last / previous) };
 }

@@ -1,93 +1,135 @@
 import { NumericalError } from "../errors";
 import { addNarrow, type Wide, widen } from "../linalg/double-double";
-import { flatProduct, flatTranspose } from "../linalg/flat";
-import { flatNorm } from "../linalg/norms";
-import { type FlatSchur, flatSchur } from "../linalg/real-schur";
-import { schurValues } from "../linalg/schur-values";
-import { solveLyapunovBySchur } from "../linalg/solve-lyapunov";
-import { roughGain } from "./gain";
+import { flatIdentity } from "../linalg/flat";
+import { type Loop, solveInLoop, stableLoop } from "./closed-loop";
+import { accurateGain, type Gain } from "./gain";
+import { bestStepLength } from "./line-search";
 import type { Start } from "./problem";
+import { errorMajorant, type SolutionError, solutionError, uniformMajorant } from "./refined-error";
 import { type GainSystem, gainSystem, riccatiResidual, type SplitProblem } from "./residual";
-import { diagonalMajorant, residualSizes } from "./residual-sizes";
 
 export type Refined = {
   readonly x: Wide;
   readonly system: GainSystem;
-  readonly steps: number;
-  /** Entry (i, j) of x, before rounding, is off by at most error[i] error[j], to first order; in scaled coordinates. */
-  readonly error: Float64Array;
+  readonly gain: Gain;
+  /** A - BK */
+  readonly loop: Float64Array;
+  /** Of the equation at x, in double. */
+  readonly residual: Float64Array;
+  readonly error: SolutionError;
+  /** H of (A - BK)'H + H(A - BK) + I = 0 (sampled: its like): how far the loop amplifies a change of the equation. */
+  readonly amplification: Float64Array;
 };
 
 const STEP_LIMIT = 60;
+const SETTLE_LIMIT = 12;
 const FREEZE_BELOW = 1e-7;
-/** Nothing below this shows in a double, even of an entry 1e-9 of the largest. */
-const ENOUGH = 1e-28;
-const STANDSTILL_BELOW = 1e-14;
+const SETTLE_ABOVE = 1e-6;
+const SEARCH_ABOVE = 1e-2;
+/** Relative error of the rows of X and K that shows in no double, even of an entry 1e-6 of its row. */
+const ENOUGH = 1e-22;
+const STANDSTILL_BELOW = 1e-12;
+/** The gain that a step holds as data must be right to rounding: its error enters squared. */
+const GAIN_DATA = 0.25 * Number.EPSILON;
 
 /**
  * Newton's method on the Riccati equation with double-double residuals and Lyapunov solves in double.
  *
+ * Shapes    units n: size of one caller's unit of each state, in which the rows of X and K are to be right
  * Throws    not-stabilising when the closed loop of a step has an eigenvalue on or outside the boundary; no-convergence
  *           when steps shrink only linearly (closed loop on the boundary) or 60 steps are not enough; singular
  * Accuracy  the error shrinks by the condition of the Lyapunov equation times ε per step, down to double-double rounding
- * Source    Kleinman, IEEE Trans. Autom. Control 13 (1968) 114-115; Hewer, ibid. 16 (1971) 382-384; refinement with
- *           doubled residuals after Higham 2002, section 12
+ * Source    Kleinman, IEEE Trans. Autom. Control 13 (1968) 114-115; Hewer, ibid. 16 (1971) 382-384; step length: Benner &
+ *           Byers, ibid. 43 (1998) 101-107; refinement with doubled residuals after Higham 2002, section 12
  */
-export function refine(problem: SplitProblem, start: Start): Refined {
+export function refine(problem: SplitProblem, start: Start, units: Float64Array): Refined {
   const { n } = problem;
   const x = widen("x" in start ? start.x : new Float64Array(n * n));
-  let given = "gain" in start ? start.gain : null;
-  let schur: FlatSchur | null = null;
+  let loop: Loop | null = null;
+  let amplification: Float64Array | null = null;
   let last = Number.POSITIVE_INFINITY;
   let slow = 0;
+  if ("gain" in start) settle(problem, x, start.gain, stableLoop(problem, start.gain));
   for (let step = 1; step <= STEP_LIMIT; step++) {
     const system = gainSystem(problem, x);
-    const k = given ?? roughGain(problem, system);
-    if (!schur || last > FREEZE_BELOW) schur = stableLoop(problem, k);
-    let size = correct(problem, x, k, system, schur);
-    // From a gain alone X is far off: its value for that gain is settled before the next one is taken.
-    if (given) for (let inner = 0; inner < 3; inner++) correct(problem, x, k, gainSystem(problem, x), schur);
-    if (given) size = 1;
-    given = null;
+    const gain = accurateGain(problem, system, GAIN_DATA);
+    if (!loop || last > FREEZE_BELOW) {
+      loop = stableLoop(problem, gain.k.hi);
+      amplification = null;
+    }
+    const residual = riccatiResidual(problem, x, gain.k.hi, system);
+    const now = { x, system, gain, loop: loop.matrix, residual };
+    if (last <= FREEZE_BELOW) {
+      amplification ??= solveInLoop(problem, loop, flatIdentity(n));
+      const error = solutionError(problem, now, uniformMajorant(problem, now, amplification), units);
+      if (error.rows <= ENOUGH) return { ...now, error, amplification };
+    }
+    const change = solveInLoop(problem, loop, residual);
+    const size = relativeSize(change, x.hi, n);
     if (!Number.isFinite(size)) break;
-    if (size <= ENOUGH || (size <= STANDSTILL_BELOW && size > 0.1 * last)) return finish(problem, x, schur, step);
+    // Rounding is reached: a further step would do no better than the last.
+    if (size <= STANDSTILL_BELOW && !(size < 0.25 * last)) {
+      amplification ??= solveInLoop(problem, loop, flatIdentity(n));
+      const majorant = solveInLoop(problem, loop, errorMajorant(problem, now));
+      return { ...now, error: solutionError(problem, now, majorant, units), amplification };
+    }
+    advance(problem, x, now, change, size, loop);
     // Halving steps are the sign of a closed loop on the stability boundary: they prove nothing.
-    if (size < 1e-2 && size > 0.1 * last) slow += 1;
+    if (size < SEARCH_ABOVE && size > 0.25 * last) slow += 1;
     if (slow > 4) break;
     last = size;
   }
   throw new NumericalError("no-convergence", { routine: "riccati-newton", limit: STEP_LIMIT });
 }
 
-/** One Lyapunov correction of x at the fixed gain k; returns its size relative to x. */
-function correct(problem: SplitProblem, x: Wide, k: Float64Array, system: GainSystem, schur: FlatSchur): number {
-  const residual = riccatiResidual(problem, x, k, system);
-  const step = solveLyapunovBySchur(schur, problem.n, residual, problem.sampled);
-  addNarrow(x, step, 1);
-  const change = flatNorm(step);
-  const size = flatNorm(x.hi);
-  return change === 0 ? 0 : change / size;
+/** The Newton step: solved to double-double accuracy and lengthened or shortened while it is large. */
+function advance(
+  problem: SplitProblem,
+  x: Wide,
+  { gain, residual }: { gain: Gain; residual: Float64Array },
+  change: Float64Array,
+  size: number,
+  loop: Loop,
+): void {
+  const before = x.hi.slice();
+  addNarrow(x, change, 1);
+  if (size <= SETTLE_ABOVE) return;
+  settle(problem, x, gain.k.hi, loop);
+  if (size <= SEARCH_ABOVE || problem.sampled) return;
+  const whole = x.hi.map((entry, at) => entry - before[at]);
+  const length = bestStepLength(problem, gain.factor, residual, whole);
+  addNarrow(
+    x,
+    whole.map((entry) => (length - 1) * entry),
+    1,
+  );
 }
 
-/** Schur form of (A - BK)', the matrix of the Lyapunov equation. */
-function stableLoop(problem: SplitProblem, k: Float64Array): FlatSchur {
-  const { n, m, a, b, sampled } = problem;
-  const pulled = flatProduct(b, k, n, m, n);
-  const loop = a.map((entry, i) => entry - pulled[i]);
-  if (!loop.every(Number.isFinite)) throw new NumericalError("no-convergence", { routine: "riccati-newton", limit: STEP_LIMIT });
-  const schur = flatSchur(flatTranspose(loop, n, n), n);
-  for (const pole of schurValues(schur.t, n)) {
-    const inside = sampled ? pole.re * pole.re + pole.im * pole.im < 1 : pole.re < 0;
-    if (!inside) throw new NumericalError("not-stabilising", { pole });
+/** X of the loop with the gain k held fixed, as far as repeated correction brings it. */
+function settle(problem: SplitProblem, x: Wide, k: Float64Array, loop: Loop): void {
+  let last = Number.POSITIVE_INFINITY;
+  for (let round = 0; round < SETTLE_LIMIT; round++) {
+    const change = solveInLoop(problem, loop, riccatiResidual(problem, x, k, gainSystem(problem, x)));
+    const size = relativeSize(change, x.hi, problem.n);
+    if (!(size < 0.5 * last)) return;
+    addNarrow(x, change, 1);
+    if (size <= FREEZE_BELOW * FREEZE_BELOW) return;
+    last = size;
   }
-  return schur;
 }
 
-function finish(problem: SplitProblem, x: Wide, schur: FlatSchur, steps: number): Refined {
-  const { n, sampled } = problem;
-  const system = gainSystem(problem, x);
-  const k = roughGain(problem, system);
-  const sizes = residualSizes(problem, x.hi, k, riccatiResidual(problem, x, k, system));
-  const y = solveLyapunovBySchur(schur, n, diagonalMajorant(sizes, n), sampled);
-  return { x, system, steps, error: Float64Array.from({ length: n }, (_, i) => Math.sqrt(Math.abs(y[i * n + i]))) };
+/** Largest |change of x_ij| / √(x_ii x_jj), x before or after, whichever is larger: the same in any units of the states. */
+function relativeSize(change: Float64Array, x: Float64Array, n: number): number {
+  const diagonal = Float64Array.from({ length: n }, (_, i) => Math.abs(x[i * n + i]) + Math.abs(change[i * n + i]));
+  const floor = diagonal.reduce((largest, entry) => Math.max(largest, entry), 0) * FREEZE_BELOW * Number.EPSILON;
+  if (floor === 0) return change.every((entry) => entry === 0) ? 0 : Number.POSITIVE_INFINITY;
+  const roots = diagonal.map((entry) => Math.sqrt(entry + floor));
+  let size = 0;
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j <= i; j++) {
+      const part = Math.abs(change[i * n + j]) / roots[i] / roots[j];
+      if (!(part <= size)) size = part;
+    }
+  }
+  return size;
 }

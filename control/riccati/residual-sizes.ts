@@ -2,18 +2,19 @@ import { flatProduct, flatTransposedProduct } from "../linalg/flat";
 import type { FlatProblem } from "./problem";
 
 /**
- * Size of each entry of a residual plus what rounding in double-double may hide in it: 4 (n + m) ε² of the sizes of the terms
- * that were summed.
+ * What rounding in double-double may hide in each entry of a residual: 4 (n + m) ε² of the sizes of the terms that were
+ * summed. The gain that was held as data is off by ε / 2, which enters squared.
  *
- * Shapes    x n×n, k m×n, residual n×n → n×n, not negative
+ * Shapes    x n×n, k m×n → n×n, not negative
  */
-export function residualSizes(problem: FlatProblem, x: Float64Array, k: Float64Array, residual: Float64Array): Float64Array {
+export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64Array): Float64Array {
   const { n, m, s, q, sampled } = problem;
   const a = problem.a.map(Math.abs);
   const b = problem.b.map(Math.abs);
   const gain = k.map(Math.abs);
-  const states = flatTransposedProduct(a, x.map(Math.abs), n, n, n);
-  const inputs = flatTransposedProduct(b, x.map(Math.abs), n, m, n);
+  const size = x.map(Math.abs);
+  const states = flatTransposedProduct(a, size, n, n, n);
+  const inputs = flatTransposedProduct(b, size, n, m, n);
   const right = sampled ? flatProduct(inputs, a, m, n, n) : inputs.slice();
   for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) right[j * n + i] += Math.abs(s[i * m + j]);
   const weight = problem.r.map(Math.abs);
@@ -22,15 +23,15 @@ export function residualSizes(problem: FlatProblem, x: Float64Array, k: Float64A
   const costs = flatTransposedProduct(gain, flatProduct(weight, gain, m, m, n), m, n, n);
   const own = sampled ? flatProduct(states, a, n, n, n) : states;
   const unit = 4 * (n + m) * Number.EPSILON * Number.EPSILON;
-  const sizes = new Float64Array(n * n);
+  const floor = new Float64Array(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) {
       const [at, mirror] = [i * n + j, j * n + i];
-      const state = sampled ? own[at] + Math.abs(x[at]) : own[at] + own[mirror];
-      sizes[at] = Math.abs(residual[at]) + unit * (state + Math.abs(q[at]) + pulled[at] + pulled[mirror] + costs[at]);
+      const state = sampled ? own[at] + size[at] : own[at] + own[mirror];
+      floor[at] = unit * (state + Math.abs(q[at]) + pulled[at] + pulled[mirror] + costs[at]);
     }
   }
-  return sizes;
+  return floor;
 }
 
 /** Diagonal matrix D with -D ≤ M ≤ D for every symmetric M whose entries are at most the given sizes. */

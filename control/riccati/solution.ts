@@ -7,6 +7,8 @@ export type RiccatiSolution = {
   /** Of the equation at the returned X, relative to its terms, in scaled coordinates; never above `bound`. */
   readonly residual: number;
   readonly bound: number;
+  /** By how much a relative change of the problem can grow in X, to first order, in scaled coordinates. */
+  readonly condition: number;
   /** Bound on the relative error of K in the 2-norm. */
   readonly errorBound: number;
   /** Eigenvalues of A - BK with the returned K. */

@@ -4,7 +4,7 @@ import { widen } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { flatProduct, flatTransposedProduct, fromFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
-import { checkModes, leastReachable } from "./check-modes";
+import { checkReach, checkSight, leastReachable } from "./check-modes";
 import { checkProblem, type RiccatiProblem } from "./check-problem";
 import { roughGain } from "./gain";
 import type { FlatProblem, Start } from "./problem";
@@ -17,13 +17,14 @@ import { startByDoubling } from "./start-by-doubling";
 import { startByGain } from "./start-by-gain";
 import { hamiltonianMatrix, startBySchur } from "./start-by-schur";
 import { verifiedSolution } from "./verified-solution";
+import { wellInSight, wellWithinReach } from "./well-within-reach";
 
 export type { RiccatiProblem } from "./check-problem";
 export type { RiccatiMethod, RiccatiSolution } from "./solution";
 
 /** Once every start has failed, a mode this near to being unreachable is named as the cause. */
 const NEARLY_UNREACHABLE = 1e-6;
-const GAIN_SHIFTS = [0.3, 1, 0.1, 3];
+const GAIN_SHIFTS = [0.3, 1, 0.1];
 
 /**
  * Stabilising solution of A'X + XA - (XB + S) R⁻¹ (B'X + S') + Q = 0 and K = R⁻¹ (B'X + S'); sampled:
@@ -41,19 +42,41 @@ const GAIN_SHIFTS = [0.3, 1, 0.1, 3];
  */
 export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
   const { problem: original, indefinite } = checkProblem(given);
-  checkModes(original);
   const scaled = scaleProblem(original, scalingWeight);
   const problem = splitProblem(scaled.problem);
+  const units = unitsOf(scaled.state);
   const reasons: NumericalError[] = [];
   for (const { method, start } of starts(problem)) {
-    try {
-      return verifiedSolution(original, scaled, refine(problem, start()), method);
-    } catch (error) {
-      if (!(error instanceof NumericalError)) throw error;
-      reasons.push(error);
+    const found = attempt(() => {
+      const refined = refine(problem, start(), units);
+      return { refined, solution: verifiedSolution(original, scaled, refined, method) };
+    });
+    if (found instanceof NumericalError) {
+      reasons.push(found);
+      continue;
     }
+    if (!wellWithinReach(problem, found.refined)) checkReach(original);
+    if (!wellInSight(problem, found.refined)) checkSight(original);
+    return found.solution;
   }
+  checkReach(original);
+  checkSight(original);
   throw indefinite ?? refusal(original, scaled.problem, reasons);
+}
+
+function attempt<T>(work: () => T): T | NumericalError {
+  try {
+    return work();
+  } catch (error) {
+    if (error instanceof NumericalError) return error;
+    throw error;
+  }
+}
+
+/** Size of one unit of the caller's in each scaled state, the largest put to one. */
+function unitsOf(state: Float64Array): Float64Array {
+  const least = state.reduce((size, entry) => Math.min(size, entry), Number.POSITIVE_INFINITY);
+  return state.map((entry) => least / entry);
 }
 
 /** The starts in order of cost. */
@@ -103,7 +126,7 @@ function scalingWeight(problem: FlatProblem): Float64Array {
 function refusal(original: FlatProblem, problem: FlatProblem, reasons: readonly NumericalError[]): NumericalError {
   const singularWeight = startable(problem).auxiliary ? reasons.find(({ code }) => code === "not-positive-definite") : undefined;
   if (singularWeight) return singularWeight;
-  const nearest = leastReachable(original);
+  const nearest = leastReachable(original, NEARLY_UNREACHABLE);
   if (nearest && nearest.distance < NEARLY_UNREACHABLE) return new NumericalError("not-stabilizable", nearest);
   const distance = axisDistance(problem);
   if (distance !== null) return new NumericalError("on-stability-boundary", { distance });

@@ -6,6 +6,7 @@ import { flatOneNorm } from "../linalg/solve-linear";
 import type { PlainProblem } from "./remove-cross-term";
 
 const STEP_LIMIT = 40;
+const SETTLED = 1e-6;
 const CAYLEY_FACTORS = [1, 2, 0.5, 4, 0.25, 8, 0.125];
 
 type Triple = { e: Float64Array; g: Float64Array; h: Float64Array };
@@ -27,7 +28,8 @@ export function startByDoubling(problem: PlainProblem): Float64Array {
     const size = flatNorm(triple.h);
     const change = flatNorm(triple.h.map((x, i) => x - before[i]));
     if (!Number.isFinite(size) || !Number.isFinite(change)) break;
-    if (change <= n * Number.EPSILON * size) return triple.h;
+    // Changes fall quadratically: the next one would not show, or is left to the refinement.
+    if (change <= SETTLED * size) return triple.h;
   }
   throw new NumericalError("no-convergence", { routine: "doubling", limit: STEP_LIMIT });
 }

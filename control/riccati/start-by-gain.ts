@@ -9,12 +9,13 @@ import { solveLyapunovBySchur } from "../linalg/solve-lyapunov";
 import type { FlatProblem } from "./problem";
 
 /**
- * Stabilising gain for the unstable part of A alone, with its mirrored modes moved to at least `shift` inside the boundary.
+ * Stabilising gain for the unstable part of A alone, found mode by mode (a real one or a pair at a time), each moved to at
+ * least `shift` of its size inside the boundary: modes that are hard to reach do not spoil the gain for the others.
  *
  * Shapes    → gain m×n (zero when A is stable)
  * Throws    singular or no-convergence when the unstable part cannot be reached
- * Source    Armstrong, An extension of Bass' algorithm, IEEE Trans. Autom. Control 20 (1975) 153-154;
- *           Kleinman, ibid. 19 (1974) 252-254 (sampled)
+ * Source    Varga, A Schur method for pole assignment, IEEE Trans. Autom. Control 26 (1981) 517-519, with the gain of each
+ *           block after Armstrong, ibid. 20 (1975) 153-154; Kleinman, ibid. 19 (1974) 252-254 (sampled)
  */
 export function startByGain({ n, m, a, b, sampled }: FlatProblem, shift: number): Float64Array {
   const { t, qt } = flatSchur(a, n);
@@ -25,9 +26,28 @@ export function startByGain({ n, m, a, b, sampled }: FlatProblem, shift: number)
   const rows = qt.subarray(stable * n);
   const au = new Float64Array(k * k);
   for (let i = 0; i < k; i++) for (let j = 0; j < k; j++) au[i * k + j] = t[(stable + i) * n + stable + j];
-  const bu = flatProduct(rows, b, k, n, m);
-  const gain = sampled ? sampledGain(au, bu, k, m, shift) : continuousGain(au, bu, k, m, shift);
+  const gain = modeByMode(au, flatProduct(rows, b, k, n, m), k, m, sampled, shift);
   return flatProduct(gain, rows, m, k, n);
+}
+
+function modeByMode(a: Float64Array, b: Float64Array, k: number, m: number, sampled: boolean, shift: number): Float64Array {
+  const gain = new Float64Array(m * k);
+  for (let round = 0; round <= k; round++) {
+    const pulled = flatProduct(b, gain, k, m, k);
+    const loop = a.map((entry, at) => entry - pulled[at]);
+    if (!loop.every(Number.isFinite)) break;
+    const { t, qt } = flatSchur(loop, k);
+    if (reorderFlat(t, qt, k, ({ re, im }) => (sampled ? re * re + im * im < 0.99 : re < 0)) === k) return gain;
+    const size = k > 1 && t[k * k - 2] !== 0 ? 2 : 1;
+    const rows = qt.subarray((k - size) * k);
+    const block = new Float64Array(size * size);
+    for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) block[i * size + j] = t[(k - size + i) * k + k - size + j];
+    const reached = flatProduct(rows, b, size, k, m);
+    const part = sampled ? sampledGain(block, reached, size, m, shift) : continuousGain(block, reached, size, m, shift);
+    const more = flatProduct(part, rows, m, size, k);
+    for (let i = 0; i < gain.length; i++) gain[i] += more[i];
+  }
+  throw new NumericalError("no-convergence", { routine: "start-by-gain", limit: k });
 }
 
 /** (A + βI) Z + Z (A + βI)' = 2 B B', K = B' Z⁻¹: all poles of A - BK lie at real part -β or on the mirror of it. */

@@ -20,7 +20,7 @@ const STARTS: Record<string, (problem: FlatProblem) => Start> = {
 
 function refinedFrom(given: RiccatiProblem, start: (problem: FlatProblem) => Start): number[] {
   const { problem } = scaleProblem(checkProblem(given).problem, (scaled) => removeCrossTerm(scaled, "R").g);
-  return [...refine(splitProblem(problem), start(problem)).x.hi];
+  return [...refine(splitProblem(problem), start(problem), new Float64Array(problem.n).fill(1)).x.hi];
 }
 
 function randomProblem(random: () => number, trial: number): RiccatiProblem {

@@ -1,0 +1,38 @@
+import { flatNorm } from "../linalg/norms";
+import type { FlatProblem } from "./problem";
+import type { Refined } from "./refine";
+
+/** Distances beyond this multiple of n ε are told apart from zero in any coordinates of an ordinary plant. */
+const CLEAR = 1e6;
+
+/**
+ * Whether the solution itself proves that no mode on or outside the boundary is near to being out of reach: then these modes
+ * need no test of their own. A left vector w with w'(A - λ) = e₁ and w'B = e₂ gives w'(A - BK - λ) = e₁ - e₂K, which is no
+ * shorter than the distance of the loop from instability; and that is at least 1 / (2 |H|), sampled 1 / (3 |H|).
+ *
+ * Source    Lyapunov bound: Hinrichsen & Pritchard, Systems Control Lett. 7 (1986) 1-10 (from memory)
+ */
+export function wellWithinReach(problem: FlatProblem, refined: Refined): boolean {
+  const { n, a, b } = problem;
+  const plant = flatNorm(a) + flatNorm(b);
+  return everywhere(problem, refined) > CLEAR * n * Number.EPSILON * plant * (1 + flatNorm(refined.gain.k.hi));
+}
+
+/**
+ * Whether the solution proves that the weights see every mode on the boundary: a right vector v with (A - λ)v = e₁ and weight
+ * e₂ has |R^½ K v|² ≤ e₂ + 2 |e₁| |X| by the equation, while BKv moves λ as far as the loop is from instability.
+ */
+export function wellInSight(problem: FlatProblem, refined: Refined): boolean {
+  const { n, m, a, b, r, q } = problem;
+  let least = Number.POSITIVE_INFINITY;
+  for (let j = 0; j < m; j++) least = Math.min(least, r[j * m + j]);
+  const sizeB = flatNorm(b);
+  const moved = everywhere(problem, refined) / sizeB;
+  const seen = flatNorm(q) + 2 * (flatNorm(a) + sizeB) * flatNorm(refined.x.hi);
+  return least * moved * moved > CLEAR * n * Number.EPSILON * seen;
+}
+
+/** The loop is at least this far from having an eigenvalue on or outside the boundary. */
+function everywhere({ sampled }: FlatProblem, { amplification }: Refined): number {
+  return 1 / ((sampled ? 3 : 2) * flatNorm(amplification));
+}
