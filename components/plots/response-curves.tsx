@@ -9,7 +9,7 @@ type ResponseCurvesProps = Readonly<{ row: ResponseRow; cell: ResponseCell; rang
 /** The drawing of one cell; said in words by the grid, so hidden from screen readers. */
 export const ResponseCurves = memo(function ResponseCurves({ row, cell, range }: ResponseCurvesProps) {
   const { hue, dash } = axisStyle(row.axis);
-  const level = (value: number) => `M0 ${yOf(value, range).toFixed(1)}H${CELL.width}`;
+  const level = (value: number) => `M0 ${Math.round(yOf(value, range))}H${CELL.width}`;
   const held = row.held === true;
   return (
     <svg

@@ -1,24 +1,25 @@
 import type { Range } from "./response-data";
 
-/** Drawing units of a cell; the picture is stretched to whatever room there is. */
-export const CELL = { width: 1000, height: 400 } as const;
+/** Drawing units of a cell, fine enough for whole numbers; the picture is stretched to whatever room there is. */
+export const CELL = { width: 2000, height: 800 } as const;
 
 export const yOf = (value: number, { low, high }: Range) => ((high - value) / (high - low)) * CELL.height;
 
-const MOST_POINTS = 480;
+const MOST_POINTS = 360;
 
 /** An SVG path through the samples. Of many, each stretch keeps its lowest and highest, so that no peak is lost. */
 export function responsePath(values: ArrayLike<number>, range: Range, held = false): string {
   const count = values.length;
   const kept = count <= MOST_POINTS ? Array.from({ length: count }, (_, k) => k) : thin(values, count);
-  const x = (k: number) => ((k / Math.max(1, count - 1)) * CELL.width).toFixed(1);
+  const across = CELL.width / Math.max(1, count - 1);
   let path = "";
   for (const k of kept) {
     const value = values[k];
     if (!Number.isFinite(value)) continue;
-    const y = yOf(value, range).toFixed(1);
-    if (path === "") path = `M${x(k)} ${y}`;
-    else path += held ? `H${x(k)}V${y}` : `L${x(k)} ${y}`;
+    const x = Math.round(k * across);
+    const y = Math.round(yOf(value, range));
+    if (path === "") path = `M${x} ${y}`;
+    else path += held ? `H${x}V${y}` : `L${x} ${y}`;
   }
   return path;
 }

@@ -4,7 +4,18 @@ const MARGIN = 0.08;
 /** A limit further away than this many times what the curves reach is named, not drawn: it would flatten them. */
 const LIMIT_REACH = 4;
 
+const extents = new WeakMap<ResponseRow, Range>();
+
+/** Asked for by scale, limits and words alike, so it is found once for each row. */
 function extent(row: ResponseRow): Range {
+  const known = extents.get(row);
+  if (known) return known;
+  const found = measuredExtent(row);
+  extents.set(row, found);
+  return found;
+}
+
+function measuredExtent(row: ResponseRow): Range {
   let low = 0;
   let high = 0;
   const take = (value: number | null | undefined) => {

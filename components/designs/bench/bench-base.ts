@@ -1,6 +1,7 @@
+import { defaultRecipe } from "@/control/design/default-recipe";
 import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
 import { type FormReading, recipeKey } from "../recipe/read-form";
-import type { RecipeForm } from "../recipe/recipe-form";
+import { formOf, type RecipeForm } from "../recipe/recipe-form";
 import type { BenchStart, Ground, Solved } from "./bench-types";
 import type { Unsaved } from "./use-kept-draft";
 
@@ -27,6 +28,10 @@ export const storedBase = (design: DesignSummary, revision: DesignRevision): Bas
 export const groundOf = ({ plantRevision, model }: DesignRevision): Ground => ({ plantRevision, model });
 
 const samePlant = (a: Ground, b: Ground) => a.plantRevision.id === b.plantRevision.id;
+
+/** What the sliders start from: the stored recipe, or the plant's own on a revision that it was not made for. */
+export const startOf = (base: Base, ground: Ground): RecipeForm =>
+  formOf(samePlant(ground, base.ground) ? base.recipe : defaultRecipe(ground.model), ground.model);
 
 /** Whether the page holds something that is not saved. */
 export function isDirty(base: Base, ground: Ground, { recipe }: FormReading): boolean {

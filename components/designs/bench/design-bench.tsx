@@ -21,6 +21,7 @@ import { ConflictDialog } from "../saving/conflict-dialog";
 import { SaveNewDialog } from "../saving/save-new-dialog";
 import { SaveRevisionDialog } from "../saving/save-revision-dialog";
 import { useSaving } from "../saving/use-saving";
+import { startOf } from "./bench-base";
 import { BenchHeading } from "./bench-heading";
 import { BenchNotices } from "./bench-notices";
 import type { BenchStart } from "./bench-types";
@@ -70,17 +71,18 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
 
 /** Everything that is typed into stands below one context, anew for another plant revision. */
 function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: string }>) {
-  const { form, ground, change, undo, redo, setUsable, solving, reading } = bench;
+  const { base, form, ground, change, undo, redo, setUsable, solving, reading } = bench;
   const { refusal } = solving;
   const problems = useMemo(() => shownProblems(refusal, reading), [refusal, reading]);
+  const start = useMemo(() => startOf(base, ground), [base, ground]);
   const editing = useMemo(
     (): RecipeEditing => ({
-      ...{ form, change, undo, redo, setUsable },
+      ...{ form, start, change, undo, redo, setUsable },
       model: ground.model,
       problemAt: (pointer) => problemAt(problems, pointer),
       cellProblems: (pointer) => cellProblems(problems, pointer),
     }),
-    [form, change, undo, redo, setUsable, ground, problems],
+    [form, start, change, undo, redo, setUsable, ground, problems],
   );
   const poles = solving.solved && computed(solving.solved.evidence.poles);
   const loopPoles = useMemo(() => (poles ? polesOfReport(poles) : null), [poles]);

@@ -7,6 +7,8 @@ import type { ChangeRecipe } from "./use-recipe-form";
 
 export type RecipeEditing = {
   readonly form: RecipeForm;
+  /** What the page started from: the stored recipe, or the one proposed for a new design. */
+  readonly start: RecipeForm;
   readonly model: PlantModel;
   readonly change: ChangeRecipe;
   readonly undo: () => void;

@@ -3,12 +3,13 @@
 import { useState } from "react";
 import { AxisBar } from "../../plots/axis-bar";
 import { Button } from "../../ui/button";
+import { FigureSlider } from "./figure-slider";
 import { ReasonField } from "./reason-field";
 import { useRecipe } from "./recipe-context";
 import type { RecipeForm } from "./recipe-form";
 import { RecipeNumber } from "./recipe-number";
 
-type Signal = { readonly name: string; readonly unit: string; readonly axis: number | null };
+type Signal = { readonly name: string; readonly unit: string; readonly axis: number | null; readonly scale?: number | null };
 
 type SignalFiguresProps = Readonly<{
   legend: string;
@@ -23,6 +24,8 @@ type SignalFiguresProps = Readonly<{
   unit?: (signal: Signal) => string;
   /** Key of the reason beside a signal, without its place; none where a reason per signal makes no sense. */
   reasonOf?: "state" | "input";
+  /** What the page started from: with it every figure has a slider beneath. */
+  starts?: readonly (number | null)[];
   /** Where a signal's own figure lies deeper than its place: the diagonal of a matrix. */
   place?: (index: number) => string;
 }>;
@@ -38,6 +41,7 @@ export function SignalFigures({
   write,
   unit,
   reasonOf,
+  starts,
   place = String,
 }: SignalFiguresProps) {
   return (
@@ -50,6 +54,7 @@ export function SignalFigures({
             <SignalFigure
               {...{ signal, index, what, reasonOf }}
               value={values[index] ?? null}
+              start={starts && (starts[index] ?? null)}
               pointer={`${pointer}/${place(index)}`}
               unit={unit ? unit(signal) : signal.unit}
               write={(form, value) => write(form, index, value)}
@@ -66,14 +71,15 @@ type SignalFigureProps = Readonly<{
   index: number;
   what: string;
   value: number | null;
+  start: number | null | undefined;
   pointer: string;
   unit: string;
   reasonOf: "state" | "input" | undefined;
   write: (form: RecipeForm, value: number | null) => RecipeForm;
 }>;
 
-function SignalFigure({ signal, index, what, value, pointer, unit, reasonOf, write }: SignalFigureProps) {
-  const { form } = useRecipe();
+function SignalFigure({ signal, index, what, value, start, pointer, unit, reasonOf, write }: SignalFigureProps) {
+  const { form, change } = useRecipe();
   const reason = reasonOf && `${reasonOf}:${index}`;
   const [asked, setAsked] = useState(false);
   const open = reason !== undefined && (asked || Boolean(form.reasons[reason]));
@@ -100,6 +106,14 @@ function SignalFigure({ signal, index, what, value, pointer, unit, reasonOf, wri
             why
           </Button>
         ) : null}
+        {start === undefined ? null : (
+          <FigureSlider
+            label={`${what} ${signal.name}`}
+            {...{ unit, value, start }}
+            middle={start ?? signal.scale ?? 1}
+            onChange={(next) => change(pointer, (now) => write(now, next))}
+          />
+        )}
       </div>
       {open && reason ? (
         <div className="pb-1">

@@ -71,7 +71,7 @@ export function WeightsFields() {
 }
 
 function Deviations() {
-  const { form, model } = useRecipe();
+  const { form, model, start } = useRecipe();
   const { states, inputs } = form.weights;
   return (
     <>
@@ -81,6 +81,7 @@ function Deviations() {
         hint="Left empty, a state is not weighted."
         signals={model.states}
         values={states}
+        starts={start.weights.states}
         pointer="/weights/states"
         reasonOf="state"
         write={(now, index, value) => ({ ...now, weights: { ...now.weights, states: withAt(now.weights.states, index, value) } })}
@@ -90,6 +91,7 @@ function Deviations() {
         what="Accepted effort of"
         signals={model.inputs}
         values={inputs}
+        starts={start.weights.inputs}
         pointer="/weights/inputs"
         reasonOf="input"
         write={(now, index, value) => ({ ...now, weights: { ...now.weights, inputs: withAt(now.weights.inputs, index, value) } })}
