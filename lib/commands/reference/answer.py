@@ -78,5 +78,6 @@ def answer(ask, **arguments):
     return ROUTINES[ask](**matrices)
 
 
-answers = [answer(**question) for question in json.load(sys.stdin)]
-json.dump({"version": scipy.__version__, "answers": answers}, sys.stdout)
+if __name__ == "__main__":
+    answers = [answer(**question) for question in json.load(sys.stdin)]
+    json.dump({"version": scipy.__version__, "answers": answers}, sys.stdout)

@@ -14,6 +14,9 @@ export function findScipy() {
   return usable() || (canInstall() && install(["python3-scipy"]) && usable()) ? python : undefined;
 }
 
+/** One thread, and no remarks about style. */
+export const oneThread = () => ({ ...process.env, OPENBLAS_NUM_THREADS: "1", OMP_NUM_THREADS: "1", PYTHONWARNINGS: "ignore" });
+
 /**
  * Runs a script of this folder on one thread: a JSON document in, a JSON document out.
  * @param {string} script
@@ -21,9 +24,8 @@ export function findScipy() {
  * @returns {Promise<any>}
  */
 export async function askPython(script, question) {
-  const env = { ...process.env, OPENBLAS_NUM_THREADS: "1", OMP_NUM_THREADS: "1", PYTHONWARNINGS: "ignore" };
   const child = spawn(python, [join(root, "lib/commands", script)], {
-    env,
+    env: oneThread(),
     stdio: ["pipe", "pipe", "inherit"],
     timeout: PATIENCE_MS,
   });
