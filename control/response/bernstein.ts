@@ -91,18 +91,23 @@ function valueAt(b: Float64Array, t: number): number {
 
 function derivatives(b: Float64Array, t: number): { slope: number; bend: number } {
   const degree = b.length - 1;
-  const [p0, p1, p2] = casteljau(b, t, 3);
+  const points = casteljau(b, t, 3);
+  const [p0, p1, p2] = [points[0], points[1], points[2]];
   const s0 = p1 - p0;
   const s1 = p2 - p1;
   // of the last three points, s0 and s1 span the first derivative's control points
   return { slope: degree * (s0 + t * (s1 - s0)), bend: degree * (degree - 1) * (s1 - s0) };
 }
 
-/** The last `keep` points of de Casteljau's scheme at t. */
+let scheme = new Float64Array(16);
+
+/** The last `keep` points of de Casteljau's scheme at t, good until the next call. */
 function casteljau(b: Float64Array, t: number, keep: number): Float64Array {
-  const points = b.slice();
+  if (scheme.length < b.length) scheme = new Float64Array(b.length);
+  const points = scheme;
+  points.set(b);
   for (let k = b.length - 1; k >= keep; k--) for (let i = 0; i < k; i++) points[i] += t * (points[i + 1] - points[i]);
-  return points.subarray(0, keep);
+  return points;
 }
 
 /** Smallest t with p(t) ≥ level, or null. */
@@ -159,7 +164,8 @@ function crossing(b: Float64Array, level: number): number {
   let high = 1;
   let at = (level - b[0]) / (b[degree] - b[0]);
   for (let round = 0; round < 60 && high - low > SMALLEST_PIECE; round++) {
-    const [p0, p1] = casteljau(b, at, 2);
+    const points = casteljau(b, at, 2);
+    const [p0, p1] = [points[0], points[1]];
     const beyond = p0 + at * (p1 - p0) - level;
     if (beyond < 0) low = at;
     else high = at;

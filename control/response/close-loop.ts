@@ -4,6 +4,7 @@ import { frobeniusNorm } from "../linalg/norms";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import { solveLinear } from "../linalg/solve-linear";
+import { lostInDifference } from "./lost-digits";
 
 export type LoopPlant = {
   readonly A: Matrix;
@@ -40,6 +41,8 @@ export type SignalCounts = {
  */
 export type ClosedLoop = {
   readonly A: Matrix;
+  /** What A lost in rounding: A + lost is the loop of the plant and the gains as given, to twice the digits. */
+  readonly lost: Matrix;
   readonly B: Matrix;
   readonly C: Matrix;
   readonly D: Matrix;
@@ -108,11 +111,26 @@ export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observe
   for (const M of Object.values(system)) requireRepresentable("closed loop", M.to1DArray());
   return {
     ...system,
+    lost: lostDigits(plant, K, observer, system.A),
     references,
     disturbances: m,
     counts: { commanded: H.rows, outputs: C.rows, states: n, estimates, inputs: m },
     startFrom: (x0) => Float64Array.from([...x0, ...error.start.mmul(Matrix.columnVector([...x0])).to1DArray()]),
   };
+}
+
+/** Digits lost in A - BK, A - LC and BK; a reduced-order observer brings its own matrices. */
+function lostDigits({ A, B, C }: LoopPlant, K: Matrix, observer: ObserverInLoop | null, closed: Matrix): Matrix {
+  const n = A.rows;
+  const lost = Matrix.zeros(closed.rows, closed.rows);
+  if (n === 0) return lost;
+  lost.setSubMatrix(lostInDifference(A, B, K, closed.subMatrix(0, n - 1, 0, n - 1)), 0, 0);
+  if (observer?.kind !== "full") return lost;
+  const last = 2 * n - 1;
+  const fed = closed.subMatrix(0, n - 1, n, last);
+  lost.setSubMatrix(lostInDifference(Matrix.zeros(n, n), B, Matrix.mul(K, -1), fed), 0, n);
+  lost.setSubMatrix(lostInDifference(A, observer.L, C, closed.subMatrix(n, last, n, last)), n, n);
+  return lost;
 }
 
 function requireLoop({ A, B, C, D, H, J }: LoopPlant, K: Matrix, F: Matrix, references: number): void {

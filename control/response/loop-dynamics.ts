@@ -1,10 +1,11 @@
 import { NumericalError } from "../errors";
+import { addNarrow, split, widen, wideProduct } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
-import { largestEntry, toFlat } from "../linalg/flat";
+import { flatProduct, largestEntry, toFlat } from "../linalg/flat";
 import { factorLu, type Lu, solveLu } from "../linalg/lu";
 import type { Complex } from "../plant/model";
 import { isStablePole } from "../poles/require-stable-poles";
-import { balanceDynamics } from "./balance-dynamics";
+import { balanceDynamics, rescaled } from "./balance-dynamics";
 import type { ClosedLoop } from "./close-loop";
 
 /** A closed loop in balanced coordinates, flat and row-major, with what every response of it needs. */
@@ -14,6 +15,8 @@ export type LoopDynamics = {
   readonly order: number;
   readonly signals: number;
   readonly a: Float64Array;
+  /** What `a` lost in rounding when the loop was closed. */
+  readonly lost: Float64Array;
   readonly b: Float64Array;
   readonly c: Float64Array;
   readonly d: Float64Array;
@@ -46,11 +49,14 @@ export function prepareLoop(loop: ClosedLoop, period: number | null): LoopDynami
   for (let k = 0; k < order; k++) for (let j = 0; j < columns; j++) b[k * columns + j] = loop.B.get(places[k], j) / scale[k];
   const c = new Float64Array(signals * order);
   for (let i = 0; i < signals; i++) for (let k = 0; k < order; k++) c[i * order + k] = loop.C.get(i, places[k]) * scale[k];
+  const lost = new Float64Array(order * order);
+  for (let i = 0; i < order; i++)
+    for (let j = 0; j < order; j++) lost[i * order + j] = rescaled(loop.lost.get(places[i], places[j]), scale[j], scale[i]);
   const shifted = matrix.slice();
   if (period !== null) for (let k = 0; k < order; k++) shifted[k * order + k] -= 1;
   const rest = factorLu(shifted, order);
   if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance({ poles, period }) });
-  return { loop, period, order, signals, a: matrix, b, c, d: toFlat(loop.D), places, scale, poles, rest };
+  return { loop, period, order, signals, a: matrix, lost, b, c, d: toFlat(loop.D), places, scale, poles, rest };
 }
 
 /** Least distance of a pole from the stability boundary: -Re s, or 1 - |z|. */
@@ -82,17 +88,24 @@ export function startDrive(dynamics: LoopDynamics, x0: readonly number[]): Drive
   return { departure, final: new Float64Array(dynamics.signals) };
 }
 
-/** Solves A s = push (sampled: (A - I) s = push) with one step of refinement. */
+/** Rounds of refinement, which bring a solution of half the digits to all of them. */
+const REFINEMENTS = 2;
+
+/** Solves A s = push (sampled: (A - I) s = push) with the residual summed in twice the digits. */
 function restOf(dynamics: LoopDynamics, push: Float64Array): Float64Array {
-  const { a, order, rest, period } = dynamics;
+  const { a, lost, order, rest, period } = dynamics;
   if (largestEntry(push) === 0) return new Float64Array(order);
   const s = solveLu(rest, push, 1);
-  const residual = push.slice();
-  for (let i = 0; i < order; i++) {
-    for (let k = 0; k < order; k++) residual[i] -= (period !== null && i === k ? a[i * order + k] - 1 : a[i * order + k]) * s[k];
+  const left = split(a);
+  for (let round = 0; round < REFINEMENTS; round++) {
+    const product = wideProduct(left, widen(s), order, order, 1);
+    addNarrow(product, flatProduct(lost, s, order, order, 1), 1);
+    if (period !== null) addNarrow(product, s, -1);
+    addNarrow(product, push, -1);
+    if (!product.hi.every(Number.isFinite)) break; // beyond what can be split: the first solution stands
+    const correction = solveLu(rest, product.hi, 1);
+    for (let k = 0; k < order; k++) s[k] -= correction[k];
   }
-  const correction = solveLu(rest, residual, 1);
-  for (let k = 0; k < order; k++) s[k] += correction[k];
   if (!s.every(Number.isFinite)) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance(dynamics) });
   return s;
 }

@@ -1,10 +1,13 @@
 import { NumericalError } from "../errors";
+import { addNarrow, type Wide } from "../linalg/double-double";
 import { flatProduct, flatTranspose } from "../linalg/flat";
 import { distinctRows } from "./distinct-rows";
 import type { Drive, LoopDynamics } from "./loop-dynamics";
 import { flatExponential } from "./matrix-exponential";
 import { timesVector } from "./times-vector";
 import { BLOCK, signalBlock, transitionPower } from "./walk-sampled";
+import { wideExponential, widePower } from "./wide-exponential";
+import { exactlyScaled } from "./wide-scalar";
 
 /** `samples` moments, `step` seconds apart, from 0 on. */
 export type TimeGrid = { readonly step: number; readonly samples: number };
@@ -28,22 +31,15 @@ export function timeGrid(horizon: number, period: number | null, most: number): 
  * transition over one step, 16 moments to a block.
  *
  * Throws    too-large when a value leaves the range of doubles
- * Accuracy  as the quick exponential; about ε per block beyond that
+ * Accuracy  transitions are correctly rounded, of the loop with the digits that closing it lost; about ε per block beyond that
  */
 export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid): (drive: Drive) => Float64Array {
-  const { a, order, signals, period } = dynamics;
-  const phi =
-    period === null
-      ? flatExponential(
-          a.map((entry) => entry * step),
-          order,
-        )
-      : transitionPower(a, order, Math.max(1, Math.round(step / period)));
+  const { order, signals } = dynamics;
+  const { phi, phiBlock } = transitions(dynamics, step);
   const everything = Array.from({ length: signals }, (_, i) => i);
   const { places, of, rows } = distinctRows(dynamics, everything);
   const width = places.length * BLOCK;
   const block = flatTranspose(signalBlock(phi, order, rows), width, order);
-  const phiBlock = transitionPower(phi, order, BLOCK);
   const blocks = Math.ceil(samples / BLOCK);
   const starts = new Float64Array(blocks * order);
   return ({ departure, final }) => {
@@ -69,6 +65,26 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
     });
     return values;
   };
+}
+
+/** Transitions over one step and over sixteen, rounded once each. */
+function transitions({ a, lost, order, period }: LoopDynamics, step: number): { phi: Float64Array; phiBlock: Float64Array } {
+  const stride = period === null ? 1 : Math.max(1, Math.round(step / period));
+  let one: Wide;
+  if (period === null) {
+    const scaled = exactlyScaled(a, step);
+    addNarrow(
+      scaled,
+      lost.map((entry) => entry * step),
+      1,
+    );
+    one = wideExponential(scaled, order);
+  } else one = widePower({ hi: a.slice(), lo: lost.slice() }, order, stride);
+  const block = widePower(one, order, BLOCK);
+  if (one.hi.every(Number.isFinite) && block.hi.every(Number.isFinite)) return { phi: one.hi, phiBlock: block.hi };
+  // Entries that cannot be split are left to plain arithmetic.
+  const phi = period === null ? flatExponential(exactlyScaled(a, step).hi, order) : transitionPower(a, order, stride);
+  return { phi, phiBlock: transitionPower(phi, order, BLOCK) };
 }
 
 function requireFiniteValues(values: Float64Array): void {

@@ -7,7 +7,7 @@ import type { TailBound } from "./tail-bound";
 import { timesVector } from "./times-vector";
 
 /** Last coefficients of a cell's polynomials, in parts of the signal, up to which the cell counts as resolved. */
-const RESOLVED = 1e-10;
+const RESOLVED = 1e-11;
 /** Ample where only the settling time is sought, and that for no more than the time axis. */
 export const ROUGHLY_RESOLVED = 1e-6;
 /** A cell as many times better resolved than it has to be is followed by one twice as long, which costs 2^11 to 2^12. */

@@ -64,6 +64,17 @@ export function wideTimesWide(a: Wide, b: Wide, n: number): Wide {
   return product;
 }
 
+/** a^k for k ≥ 1 by squaring. */
+export function widePower(a: Wide, n: number, k: number): Wide {
+  let square = a;
+  let power: Wide | null = null;
+  for (let rest = k; rest > 0; rest = Math.floor(rest / 2)) {
+    if (rest % 2 === 1) power = power ? wideTimesWide(power, square, n) : square;
+    if (rest > 1) square = wideTimesWide(square, square, n);
+  }
+  return power ?? a;
+}
+
 function inverseFactorials(): WideScalar[] {
   const list: WideScalar[] = [{ hi: 1, lo: 0 }];
   for (let k = 1; k < TERMS; k++) list.push(wideOver(list[k - 1], k));
