@@ -18,6 +18,8 @@ type Kernel = {
     panel: number,
     parts: number,
   ): void;
+  factor(a: number, n: number, rows: number): number;
+  solve(lu: number, n: number, x: number, columns: number): void;
   hessenberg(h: number, q: number, n: number, v: number, sums: number): void;
   sweep(
     h: number,

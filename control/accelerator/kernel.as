@@ -290,3 +290,61 @@ export function sweep(
     if (q) turnRows(q + k * stride, q + (k + 1) * stride, stride, three, u, w, tau);
   }
 }
+
+/** As `factorByLoops`: L U over a, the order of its rows in `rows` (32-bit numbers); the first row without a pivot, or -1. */
+export function factor(a: usize, n: usize, rows: usize): i32 {
+  const stride = n << 3;
+  let zeroPivot: i32 = -1;
+  for (let k: usize = 0; k < n; k++) {
+    const top = a + k * stride;
+    const column = top + (k << 3);
+    const end = a + n * stride;
+    let best = column;
+    for (let at = column + stride; at < end; at += stride) if (abs(load<f64>(at)) > abs(load<f64>(best))) best = at;
+    const pivot = load<f64>(best);
+    if (pivot == 0) {
+      if (zeroPivot < 0) zeroPivot = <i32>k;
+      continue;
+    }
+    if (best != column) {
+      const other = best - (k << 3);
+      for (let j: usize = 0; j < stride; j += 8) {
+        const x = load<f64>(top + j);
+        store<f64>(top + j, load<f64>(other + j));
+        store<f64>(other + j, x);
+      }
+      const at = rows + ((other - a) / stride << 2);
+      const row = load<i32>(at);
+      store<i32>(at, load<i32>(rows + (k << 2)));
+      store<i32>(rows + (k << 2), row);
+    }
+    for (let at = column + stride; at < end; at += stride) {
+      const x = load<f64>(at);
+      if (x == 0) continue;
+      store<f64>(at, x / pivot);
+      addMultiple(at + 8, column + 8, n - k - 1, -(x / pivot));
+    }
+  }
+  return zeroPivot;
+}
+
+/** As `solveByLoops`: x, rows in order of the factors, is overwritten by the solution. */
+export function solve(lu: usize, n: usize, x: usize, columns: usize): void {
+  const stride = columns << 3;
+  for (let i: usize = 0; i < n; i++) subtractRows(lu + ((i * n) << 3), 0, i, x, x + i * stride, columns);
+  for (let i = n; i-- > 0; ) {
+    const row = lu + ((i * n) << 3);
+    const to = x + i * stride;
+    subtractRows(row, i + 1, n, x, to, columns);
+    const pivot = load<f64>(row + (i << 3));
+    for (let at = to; at < to + stride; at += 8) store<f64>(at, load<f64>(at) / pivot);
+  }
+}
+
+/** Row at `to` minus factors from..end of `row` times the rows of x. */
+function subtractRows(row: usize, from: usize, end: usize, x: usize, to: usize, columns: usize): void {
+  for (let k = from; k < end; k++) {
+    const factor = load<f64>(row + (k << 3));
+    if (factor != 0) addMultiple(to, x + ((k * columns) << 3), columns, -factor);
+  }
+}

@@ -1,3 +1,5 @@
+import { acceleratedFactor, acceleratedSolve } from "../accelerator/accelerated-lu";
+
 /** P A = L U in one array (unit lower triangle below the diagonal); `zeroPivot` is the first row without a pivot, or -1. */
 export type Lu = { readonly lu: Float64Array; readonly rows: Int32Array; readonly n: number; readonly zeroPivot: number };
 
@@ -11,19 +13,22 @@ export type Lu = { readonly lu: Float64Array; readonly rows: Int32Array; readonl
 export function factorLu(a: Float64Array, n: number): Lu {
   const lu = a.slice();
   const rows = Int32Array.from({ length: n }, (_, i) => i);
+  const zeroPivot = acceleratedFactor(lu, rows, n) ?? factorByLoops(lu, rows, n);
+  return { lu, rows, n, zeroPivot };
+}
+
+/** The reference for the accelerator: overwrites lu and rows and returns the first row without a pivot, or -1. */
+export function factorByLoops(lu: Float64Array, rows: Int32Array, n: number): number {
   let zeroPivot = -1;
   for (let k = 0; k < n; k++) {
     let best = k;
     for (let i = k + 1; i < n; i++) if (Math.abs(lu[i * n + k]) > Math.abs(lu[best * n + k])) best = i;
-    if (lu[best * n + k] === 0) {
+    const pivot = lu[best * n + k];
+    if (pivot === 0) {
       if (zeroPivot < 0) zeroPivot = k;
       continue;
     }
-    if (best !== k) {
-      for (let j = 0; j < n; j++) [lu[k * n + j], lu[best * n + j]] = [lu[best * n + j], lu[k * n + j]];
-      [rows[k], rows[best]] = [rows[best], rows[k]];
-    }
-    const pivot = lu[k * n + k];
+    if (best !== k) exchangeRows(lu, rows, n, k, best);
     for (let i = k + 1; i < n; i++) {
       if (lu[i * n + k] === 0) continue;
       const factor = lu[i * n + k] / pivot;
@@ -31,26 +36,56 @@ export function factorLu(a: Float64Array, n: number): Lu {
       for (let j = k + 1; j < n; j++) lu[i * n + j] -= factor * lu[k * n + j];
     }
   }
-  return { lu, rows, n, zeroPivot };
+  return zeroPivot;
+}
+
+function exchangeRows(lu: Float64Array, rows: Int32Array, n: number, i: number, j: number): void {
+  for (let c = 0; c < n; c++) {
+    const x = lu[i * n + c];
+    lu[i * n + c] = lu[j * n + c];
+    lu[j * n + c] = x;
+  }
+  const row = rows[i];
+  rows[i] = rows[j];
+  rows[j] = row;
 }
 
 /** A⁻¹ B for B n×columns; only after a factorisation without zero pivot. */
 export function solveLu({ lu, rows, n }: Lu, b: Float64Array, columns: number): Float64Array {
   const x = new Float64Array(n * columns);
-  for (let i = 0; i < n; i++) {
-    for (let j = 0; j < columns; j++) x[i * columns + j] = b[rows[i] * columns + j];
-    for (let k = 0; k < i; k++) subtractRow(x, columns, i, k, lu[i * n + k]);
-  }
+  for (let i = 0; i < n; i++) for (let j = 0; j < columns; j++) x[i * columns + j] = b[rows[i] * columns + j];
+  if (columns === 1) solveOneColumn(lu, n, x);
+  else if (!acceleratedSolve(lu, n, x, columns)) solveByLoops(lu, n, x, columns);
+  return x;
+}
+
+/** The reference for the accelerator: overwrites x, whose rows stand in the order of the factors. */
+export function solveByLoops(lu: Float64Array, n: number, x: Float64Array, columns: number): void {
+  for (let i = 0; i < n; i++) for (let k = 0; k < i; k++) subtractRow(x, columns, i, k, lu[i * n + k]);
   for (let i = n - 1; i >= 0; i--) {
     for (let k = i + 1; k < n; k++) subtractRow(x, columns, i, k, lu[i * n + k]);
     for (let j = 0; j < columns; j++) x[i * columns + j] /= lu[i * n + i];
   }
-  return x;
+}
+
+function solveOneColumn(lu: Float64Array, n: number, x: Float64Array): void {
+  for (let i = 0; i < n; i++) {
+    let sum = x[i];
+    for (let k = 0, at = i * n; k < i; k++, at++) if (lu[at] !== 0) sum -= lu[at] * x[k];
+    x[i] = sum;
+  }
+  for (let i = n - 1; i >= 0; i--) {
+    let sum = x[i];
+    for (let k = i + 1, at = i * n + i + 1; k < n; k++, at++) if (lu[at] !== 0) sum -= lu[at] * x[k];
+    x[i] = sum / lu[i * n + i];
+  }
 }
 
 function subtractRow(x: Float64Array, columns: number, i: number, k: number, factor: number): void {
   if (factor === 0) return;
-  for (let j = 0; j < columns; j++) x[i * columns + j] -= factor * x[k * columns + j];
+  const from = k * columns;
+  const to = i * columns;
+  for (let j = 0; j < columns; j++) x[to + j] -= factor * x[from + j];
 }
 
 /** A'⁻¹ b for one right side. */

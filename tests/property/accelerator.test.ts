@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
+import { acceleratedFactor, acceleratedSolve } from "../../control/accelerator/accelerated-lu";
 import { acceleratedProduct, acceleratedWideProduct } from "../../control/accelerator/accelerated-product";
 import { acceleratedHessenberg } from "../../control/accelerator/accelerated-schur";
 import { useAccelerator } from "../../control/accelerator/accelerator";
@@ -7,6 +8,7 @@ import { NumericalError } from "../../control/errors";
 import { split } from "../../control/linalg/double-double";
 import { flatIdentity, flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
 import { hessenbergByLoops } from "../../control/linalg/hessenberg";
+import { factorByLoops, solveByLoops } from "../../control/linalg/lu";
 import { productByLoops } from "../../control/linalg/product-loops";
 import { flatSchur } from "../../control/linalg/real-schur";
 import { wideProductByLoops } from "../../control/linalg/wide-product-loops";
@@ -95,6 +97,26 @@ describe("with the accelerator and without it every bit agrees", () => {
 });
 
 describe("reductions of a square matrix have the same bits either way", () => {
+  test("to LU factors with rows exchanged, and solving with them", () => {
+    const larger = fc
+      .integer({ min: 15, max: 22 })
+      .chain((n) => fc.record({ n: fc.constant(n), a: flat(n * n), b: flat(n * 7) }));
+    fc.assert(
+      fc.property(larger, ({ n, a, b }) => {
+        const [fast, loops] = [a.slice(), a.slice()];
+        const [fastRows, rows] = [Int32Array.from({ length: n }, (_, i) => i), Int32Array.from({ length: n }, (_, i) => i)];
+        expect(acceleratedFactor(fast, fastRows, n)).toBe(factorByLoops(loops, rows, n));
+        expect(fastRows).toEqual(rows);
+        expect(different(fast, loops)).toEqual([]);
+        const [fastX, x] = [b.slice(), b.slice()];
+        expect(acceleratedSolve(loops, n, fastX, 7)).toBe(true);
+        solveByLoops(loops, n, x, 7);
+        expect(different(fastX, x)).toEqual([]);
+      }),
+      { numRuns: 200, seed: 76 },
+    );
+  });
+
   test("to Hessenberg form, with its basis", () => {
     fc.assert(
       fc.property(square, ({ n, a }) => {
