@@ -3,6 +3,7 @@
 import type { Complex } from "@/control/plant/model";
 import { Button } from "../../ui/button";
 import { PoleList } from "./pole-list";
+import { PrototypeFields } from "./prototype-fields";
 import { ReasonField } from "./reason-field";
 import { useRecipe } from "./recipe-context";
 import { draftsOf } from "./recipe-form";
@@ -37,6 +38,7 @@ export function PolesFields({ loopPoles }: Readonly<{ loopPoles: readonly Comple
           ) : null
         }
       />
+      <PrototypeFields />
       <ReasonField of="poles" about="the poles" />
     </div>
   );
