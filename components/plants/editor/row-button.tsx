@@ -13,7 +13,7 @@ type RowButtonProps = Readonly<{ act: keyof typeof ACTS; name: string; disabled?
 export function RowButton({ act, name, disabled, onClick }: RowButtonProps) {
   const { icon: Icon, says } = ACTS[act];
   return (
-    <Button size="small" tone="quiet" aria-label={says(name)} disabled={disabled} onClick={onClick}>
+    <Button size="small" tone="quiet" className="h-9" aria-label={says(name)} disabled={disabled} onClick={onClick}>
       <Icon aria-hidden size={16} />
     </Button>
   );
