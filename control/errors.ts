@@ -15,6 +15,7 @@ export type NumericalErrorCode =
   | "not-detectable" // { pole: Complex, state: number, distance }
   | "not-controllable" // { pole: Complex, state: number, distance }
   | "not-observable" // { pole: Complex, state: number, distance }
+  | "not-stable" // { pole: Complex, state: number }: a mode that does not decay, where a stable plant is asked for
   | "unweighted-boundary-mode" // { pole: Complex, state: number }: the weights do not see a mode on the stability boundary
   | "on-stability-boundary" // { distance }: no stabilising solution within working accuracy
   | "not-stabilising" // { pole: Complex }: a computed gain failed its own verification

@@ -18,6 +18,14 @@ export { weightsFromDeviations } from "./lqr/accepted-deviations";
 // The solvers behind it
 export { designLqr, type LqrProblem } from "./lqr/design-lqr";
 export { type ReferenceGain, type ReferenceProblem, referenceGain } from "./lqr/reference-gain";
+// What a loop bears, and its frequency response
+export type { DiskMargin } from "./margins/disk-margin";
+export { frequencyGrid } from "./margins/frequency-grid";
+export { type FrequencyResponse, frequencyResponse, responseSingularValues } from "./margins/frequency-response";
+export type { ClassicalMargins, Crossover, Margin, NoMargin } from "./margins/loop-margins";
+export { type ChannelRobustness, type LoopRobustness, loopRobustness } from "./margins/loop-robustness";
+export { type LoopCut, openLoop } from "./margins/open-loop";
+export { type PeakValue, peakGain } from "./margins/peak-gain";
 export { type ObserverProblem, observerByPoles, type PlacedObserver } from "./observer/observer-by-poles";
 export { type NoiseObserver, type NoiseProblem, observerFromNoise } from "./observer/observer-from-noise";
 export { type ReducedObserver, type ReducedProblem, reducedObserver } from "./observer/reduced-observer";
@@ -41,6 +49,17 @@ export { matrixExponential } from "./response/matrix-exponential";
 export { type ResponseRequest, respond } from "./response/respond";
 export { respondToStep, type StepProblem } from "./response/respond-to-step";
 export { type RiccatiProblem, type RiccatiSolution, solveRiccati } from "./riccati/solve-riccati";
+export { controllabilityReport, observabilityReport } from "./structure/controllability-report";
+export {
+  type DistanceBracket,
+  distanceToUncontrollability,
+  distanceToUnobservability,
+} from "./structure/distance-to-uncontrollability";
+export { type GramianProblem, type Gramians, gramians } from "./structure/gramians";
+export { type HankelValues, hankelValues } from "./structure/hankel-values";
+export { modes } from "./structure/modes";
+export { transmissionZeros } from "./structure/transmission-zeros";
+export type { TransmissionZero } from "./structure/zero-directions";
 
 // The same in words
 export { CAUTIONS } from "./words/cautions";

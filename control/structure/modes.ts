@@ -1,6 +1,7 @@
 import type { Matrix } from "ml-matrix";
 import { type Eigensystem, eigensystem } from "../linalg/eigensystem";
 import { toFlat } from "../linalg/flat";
+import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import type { TimeBase } from "../plant/model";
 import type { ModeReport } from "../plant/report";
 import type { System } from "../plant/scale-plant";
@@ -20,7 +21,12 @@ import type { ReachAnalysis } from "./reach-analysis";
  *           IEEE Trans. Power Apparatus and Systems 101 (1982) 3117-3125, for participation
  */
 export function modes(plant: Omit<System, "D">, timeBase: TimeBase): ModeReport[] {
-  const spectrum = eigensystem(plant.A);
+  const { A, B, C } = plant;
+  requireSquare("A", A);
+  requireShape("B", B, A.rows, B.columns);
+  requireShape("C", C, C.rows, A.rows);
+  for (const [name, M] of Object.entries({ A, B, C })) requireFinite(name, M);
+  const spectrum = eigensystem(A);
   const reach = reachOfInputs(plant, spectrum.values);
   const sight = sightOfOutputs(plant, timeBase, spectrum.values);
   return describeModes(plant, timeBase, spectrum, reach, sight);

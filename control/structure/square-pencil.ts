@@ -1,5 +1,6 @@
 import { addWide, split, type Wide, widen, wideProduct, wideTranspose } from "../linalg/double-double";
 import type { FlatSystem } from "./reduce-system";
+import { wideByWide } from "./wide-by-wide";
 
 /** [A - s I, B; C, D] with as many inputs as outputs: `matrix` at s = 0, size×size, of which the first n rows and columns hold A. */
 export type SquarePencil = { readonly n: number; readonly size: number; readonly matrix: Wide };
@@ -64,18 +65,6 @@ export function pencilResidual({ n, size, matrix }: SquarePencil, v: Wide, s: Wi
   const upper = wideByWide({ hi: v.hi.subarray(0, n * k), lo: v.lo.subarray(0, n * k) }, s, n, k, k);
   addWide({ hi: residual.hi.subarray(0, n * k), lo: residual.lo.subarray(0, n * k) }, upper, -1);
   return residual;
-}
-
-function wideByWide(x: Wide, y: Wide, rows: number, inner: number, columns: number): Wide {
-  const product = wideProduct(split(x.hi), y, rows, inner, columns);
-  for (let i = 0; i < rows; i++) {
-    for (let l = 0; l < inner; l++) {
-      const low = x.lo[i * inner + l];
-      if (low === 0) continue;
-      for (let j = 0; j < columns; j++) product.lo[i * columns + j] += low * y.hi[l * columns + j];
-    }
-  }
-  return product;
 }
 
 export function transposedPencil({ n, size, matrix }: SquarePencil): SquarePencil {

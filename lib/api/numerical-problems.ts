@@ -64,6 +64,11 @@ export const NUMERICAL_PROBLEMS: Readonly<Record<Exclude<NumericalErrorCode, Dom
     "An observer pole was asked for where no output shows the mode.",
     "Keep the named pole where it is, or add an output that shows the named state.",
   ),
+  "not-stable": refused(
+    "Defined for a stable plant only",
+    "A sum over all time was asked for, and the named mode does not decay.",
+    "Close a stabilising loop first and ask this of the closed loop.",
+  ),
   "unweighted-boundary-mode": refused(
     "A mode on the stability boundary carries no weight",
     "The cost does not see a mode on the stability boundary, so that the best gain would leave it there.",

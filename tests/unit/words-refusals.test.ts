@@ -38,6 +38,7 @@ const CASES: Record<NumericalErrorCode, { data: Record<string, unknown>; names: 
   "not-detectable": { data: { pole, state: 0, distance: 0 }, names: ["15.8 Hz", "th", "enc1"] },
   "not-controllable": { data: { pole, state: 1, distance: 1e-17 }, names: ["15.8 Hz", "om", "1e−17"] },
   "not-observable": { data: { pole, state: 1, distance: 1e-17 }, names: ["15.8 Hz", "om"] },
+  "not-stable": { data: { pole: { re: 0.5, im: 0 }, state: 1 }, names: ["growth with time constant 2 s", "om"] },
   "unweighted-boundary-mode": { data: { pole: { re: 0, im: 2 }, state: 0 }, names: ["undamped oscillation", "th"] },
   "on-stability-boundary": { data: { distance: 2e-9 }, names: ["2e−9"] },
   "not-stabilising": { data: { pole: { re: 3, im: 0 } }, names: ["growth with time constant 0.333 s"] },

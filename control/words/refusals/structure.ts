@@ -52,7 +52,7 @@ function unweightedBoundaryMode(data: Facts, model: PlantModel): RefusalWords {
 /** Refusals about what inputs reach and outputs see. */
 export const explainStructure: Pick<
   Explainers,
-  "not-stabilizable" | "not-detectable" | "not-controllable" | "not-observable" | "unweighted-boundary-mode"
+  "not-stabilizable" | "not-detectable" | "not-controllable" | "not-observable" | "not-stable" | "unweighted-boundary-mode"
 > = {
   "not-stabilizable": notStabilizable,
   "not-detectable": (data, model) => ({
@@ -73,6 +73,11 @@ export const explainStructure: Pick<
     nextStep: decays(data, model)
       ? "Choose the observer by noise instead, which leaves this mode as it is, or add a sensor that sees the state."
       : "Add a sensor that sees this state, or check its column in A and C for a missing entry.",
+  }),
+  "not-stable": (data, model) => ({
+    title: "Defined for a stable plant only",
+    sentence: `What inputs put into the states and outputs draw from them is summed over all time, and ${modeOf(data, model)} does not decay: the sum has no end.`,
+    nextStep: "Close a stabilising loop first and ask this of the closed loop.",
   }),
   "unweighted-boundary-mode": unweightedBoundaryMode,
 };
