@@ -5,6 +5,8 @@ export const PLANE = { width: 280, height: 220, margin: 20 } as const;
 export type PlaneScale = {
   readonly x: (re: number) => number;
   readonly y: (im: number) => number;
+  /** Back from a place in the drawing. */
+  readonly poleAt: (x: number, y: number) => Complex;
   readonly left: number;
   readonly top: number;
 };
@@ -22,14 +24,19 @@ export function planeScale(poles: readonly Complex[], sampled: boolean): PlaneSc
     const unit = Math.min(inner.width, inner.height) / (2 * radius);
     const x = (re: number) => PLANE.width / 2 + re * unit;
     const y = (im: number) => PLANE.height / 2 - im * unit;
-    return { x, y, left: -PLANE.width / (2 * unit), top: PLANE.height / (2 * unit) };
+    const poleAt = (px: number, py: number) => ({ re: (px - PLANE.width / 2) / unit, im: (PLANE.height / 2 - py) / unit });
+    return { x, y, poleAt, left: -PLANE.width / (2 * unit), top: PLANE.height / (2 * unit) };
   }
   const left = 1.05 * reach(({ re }) => -re, 0) || 1;
   const right = Math.max(0.12 * left, 1.1 * reach(({ re }) => re, 0));
   const top = 1.1 * reach(({ im }) => Math.abs(im), 0.4 * left);
   const x = (re: number) => PLANE.margin + ((re + left) / (left + right)) * inner.width;
   const y = (im: number) => PLANE.height / 2 - (im / top) * (inner.height / 2);
-  return { x, y, left: -left, top };
+  const poleAt = (px: number, py: number) => ({
+    re: ((px - PLANE.margin) / inner.width) * (left + right) - left,
+    im: ((PLANE.height / 2 - py) / (inner.height / 2)) * top,
+  });
+  return { x, y, poleAt, left: -left, top };
 }
 
 /** Damping ratio along a ray from the origin: continuous poles on it have re = -ζ |s|. */

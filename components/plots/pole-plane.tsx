@@ -1,7 +1,11 @@
+"use client";
+
+import { useState } from "react";
 import type { Complex } from "@/control/plant/model";
 import { formatNumber } from "@/control/words/format-number";
 import { ComplexNum } from "../ui/num";
 import { axisStyle } from "./axis-style";
+import { type MovePole, PoleHandles } from "./pole-handles";
 import { DAMPING_RAYS, PLANE, type PlaneScale, planeScale, rayEnd } from "./pole-plane-scale";
 
 /** `closed` is a cross, `observer` an upright cross, `open` a square. The axis's hue is never alone: `tag` stands beside. */
@@ -22,6 +26,8 @@ type PolePlaneProps = Readonly<{
   sampled: boolean;
   /** Off where a table of the same poles stands beside. */
   table?: boolean;
+  /** Makes the marks movable, by pointer and by arrow keys. */
+  onMove?: MovePole;
 }>;
 
 const KIND_WORD: Readonly<Record<PoleMark["kind"], string>> = {
@@ -30,33 +36,41 @@ const KIND_WORD: Readonly<Record<PoleMark["kind"], string>> = {
   open: "without control",
 };
 
-export function PolePlane({ title, poles, sampled, table = true }: PolePlaneProps) {
-  const scale = planeScale(
+export function PolePlane({ title, poles, sampled, table = true, onMove }: PolePlaneProps) {
+  const [held, setHeld] = useState<PlaneScale | null>(null);
+  const fitting = planeScale(
     poles.map(({ pole }) => pole),
     sampled,
   );
+  // While a mark is held, the plane stands still under it.
+  const scale = held ?? fitting;
   return (
     <figure className="max-w-96 min-w-[17.5rem]">
       <figcaption className="mb-1 text-table font-semibold">{title}</figcaption>
-      <svg
-        role="img"
-        aria-label={`${title}: ${poles.length === 0 ? "none" : poles.map(inWords).join("; ")}`}
-        viewBox={`0 0 ${PLANE.width} ${PLANE.height}`}
-        className="w-full border border-rule bg-sheet font-mono text-[12px]"
-      >
-        <Ruling scale={scale} sampled={sampled} />
-        {poles.flatMap((mark) =>
-          (mark.pole.im === 0 ? [mark.pole] : [mark.pole, { re: mark.pole.re, im: -mark.pole.im }]).map((place) => (
-            <Mark
-              key={`${mark.key} ${Math.sign(place.im)}`}
-              mark={mark}
-              x={scale.x(place.re)}
-              y={scale.y(place.im)}
-              upper={place.im >= 0}
-            />
-          )),
-        )}
-      </svg>
+      <div className="relative">
+        <svg
+          role="img"
+          aria-label={`${title}: ${poles.length === 0 ? "none" : poles.map(inWords).join("; ")}`}
+          viewBox={`0 0 ${PLANE.width} ${PLANE.height}`}
+          className="w-full border border-rule bg-sheet font-mono text-[12px]"
+        >
+          <Ruling scale={scale} sampled={sampled} />
+          {poles.flatMap((mark) =>
+            (mark.pole.im === 0 ? [mark.pole] : [mark.pole, { re: mark.pole.re, im: -mark.pole.im }]).map((place) => (
+              <Mark
+                key={`${mark.key} ${Math.sign(place.im)}`}
+                mark={mark}
+                x={scale.x(place.re)}
+                y={scale.y(place.im)}
+                upper={place.im >= 0}
+              />
+            )),
+          )}
+        </svg>
+        {onMove ? (
+          <PoleHandles {...{ poles, sampled, scale, onMove }} onHold={(holding) => setHeld(holding ? fitting : null)} />
+        ) : null}
+      </div>
       {table ? <PoleTable title={title} poles={poles} unit={sampled ? undefined : "1/s"} /> : null}
     </figure>
   );

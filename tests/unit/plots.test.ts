@@ -97,6 +97,13 @@ describe("a response path", () => {
 });
 
 describe("the pole plane", () => {
+  test.each([true, false])("leads from a pole to its place and back, sampled: %s", (sampled) => {
+    const pole = { re: -0.3, im: 0.6 };
+    const { x, y, poleAt } = planeScale([pole], sampled);
+    expect(poleAt(x(pole.re), y(pole.im)).re).toBeCloseTo(pole.re, 12);
+    expect(poleAt(x(pole.re), y(pole.im)).im).toBeCloseTo(pole.im, 12);
+  });
+
   const inside = (poles: { re: number; im: number }[], sampled: boolean) => {
     const { x, y } = planeScale(poles, sampled);
     return poles.every(({ re, im }) => x(re) >= 0 && x(re) <= PLANE.width && y(im) >= 0 && y(im) <= PLANE.height);

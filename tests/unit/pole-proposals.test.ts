@@ -1,7 +1,7 @@
 import { Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
 import { plantFacts } from "@/components/designs/recipe/plant-facts";
-import { asKind, draftOf, entryOf, POLE_KINDS } from "@/components/designs/recipe/pole-drafts";
+import { asKind, draftOf, entryOf, movedTo, POLE_KINDS } from "@/components/designs/recipe/pole-drafts";
 import { proposeFromPlant, proposeObserver } from "@/components/designs/recipe/propose-poles";
 import { computeDesign } from "@/control/design/compute-design";
 import { defaultRecipe } from "@/control/design/default-recipe";
@@ -24,6 +24,24 @@ function sampledModel() {
   const { A, B } = holdEquivalent({ A: rows(plant.A), B: rows(plant.B), period: PERIOD });
   return coupledModel({ timeBase: sampled, A: A.to2DArray(), B: B.to2DArray() });
 }
+
+describe("a pole that is moved", () => {
+  test("is still said in its own way, and is where it was put to the digits that are written", () => {
+    const moved = (entry: PoleEntry, to: Complex) => entryOf(movedTo(draftOf(entry, 1), to, continuous));
+    const pair = { re: -3, im: 4 };
+    expect(moved({ kind: "damping", frequency: 9, damping: 0.9 }, pair)).toEqual({ kind: "damping", frequency: 5, damping: 0.6 });
+    expect(moved({ kind: "pair", re: -1, im: 1 }, pair)).toEqual({ kind: "pair", ...pair });
+    expect(moved({ kind: "time-constant", seconds: 1 }, { re: -4, im: 0 })).toEqual({ kind: "time-constant", seconds: 0.25 });
+    expect(moved({ kind: "real", value: -1 }, { re: -4.00004, im: 0 })).toEqual({ kind: "real", value: -4 });
+  });
+
+  test("of a sampled plant that no time constant can say becomes a plain pole", () => {
+    expect(entryOf(movedTo(draftOf({ kind: "time-constant", seconds: 1 }, 1), { re: -0.2, im: 0 }, sampled))).toEqual({
+      kind: "real",
+      value: -0.2,
+    });
+  });
+});
 
 describe("a pole said in another way", () => {
   const entries: readonly PoleEntry[] = [

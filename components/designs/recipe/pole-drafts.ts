@@ -67,10 +67,12 @@ export function entryOf({ kind, first, second }: PoleDraft): PoleEntry | null {
 }
 
 const DIGITS = 6;
+const MOVED_DIGITS = 4;
 /** Proposals are there to be read and changed, so they carry no more digits than a person would write. */
 export const rounded = (value: number, digits = DIGITS) => Number(value.toPrecision(digits));
 
-function poleOf(draft: PoleDraft, timeBase: TimeBase): Complex | null {
+/** The pole that a draft stands for; null while it cannot be read. */
+export function poleOf(draft: PoleDraft, timeBase: TimeBase): Complex | null {
   const entry = entryOf(draft);
   if (!entry) return null;
   try {
@@ -78,6 +80,16 @@ function poleOf(draft: PoleDraft, timeBase: TimeBase): Complex | null {
   } catch {
     return null; // out of range while it is being typed
   }
+}
+
+/** A draft whose pole was moved, still said in its own way where that can say it. */
+export function movedTo(draft: PoleDraft, { re, im }: Complex, timeBase: TimeBase): PoleDraft {
+  const plain: PoleDraft =
+    im === 0
+      ? { key: draft.key, kind: "real", first: rounded(re, MOVED_DIGITS), second: null }
+      : { key: draft.key, kind: "pair", first: rounded(re, MOVED_DIGITS), second: rounded(im, MOVED_DIGITS) };
+  const said = asKind(plain, draft.kind, timeBase);
+  return said.first === null ? plain : said;
 }
 
 /** The same pole said in another way, as far as it can be: what cannot be said is left to be typed. */
@@ -89,7 +101,8 @@ export function asKind(draft: PoleDraft, kind: PoleEntry["kind"], timeBase: Time
   // A real pole has no imaginary part to offer: as much as makes its damping 0.7.
   if (kind === "pair") return { ...blank, first: rounded(pole.re), second: rounded(Math.abs(pole.im || pole.re)) };
   const s = continuousPole(pole, timeBase);
-  if (!s) return blank;
+  // A sampled pole left of zero has no continuous counterpart that these figures could name.
+  if (!s || (pole.im === 0 && s.im !== 0)) return blank;
   if (kind === "time-constant") return s.re < 0 ? { ...blank, first: rounded(-1 / s.re) } : blank;
   const frequency = Math.sqrt(s.re * s.re + s.im * s.im);
   return frequency > 0 ? { ...blank, first: rounded(frequency), second: rounded(-s.re / frequency) } : blank;

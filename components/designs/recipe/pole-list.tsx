@@ -1,11 +1,13 @@
 "use client";
 
 import { X } from "lucide-react";
+import type { MovePole } from "../../plots/pole-handles";
+import { PolePlane } from "../../plots/pole-plane";
 import { Button } from "../../ui/button";
 import { FieldNotes } from "../../ui/field";
 import { Select } from "../../ui/select";
 import { StateMark } from "../../ui/state-mark";
-import { asKind, POLE_FIGURES, POLE_KINDS, type PoleDraft, poleTotal } from "./pole-drafts";
+import { asKind, movedTo, POLE_FIGURES, POLE_KINDS, type PoleDraft, poleOf, poleTotal } from "./pole-drafts";
 import { useRecipe } from "./recipe-context";
 import { fieldId } from "./recipe-fields";
 import { blankDraft, type RecipeForm } from "./recipe-form";
@@ -57,6 +59,17 @@ export function PoleList({ legend, pointer, drafts, wanted, per, write, proposal
         ))}
       </ol>
       <FieldNotes id={id} problem={listProblem} />
+      <DraftPlane
+        {...{ legend, drafts }}
+        onMove={(key, pole) =>
+          change(`${pointer}/moved/${key}`, (form) =>
+            write(
+              form,
+              listIn(form, pointer).map((old) => (String(old.key) === key ? movedTo(old, pole, model.timeBase) : old)),
+            ),
+          )
+        }
+      />
       <div className="mt-2 flex flex-wrap gap-2">
         <Button size="small" onClick={() => replace([...drafts, blankDraft()])}>
           Add a pole
@@ -64,6 +77,25 @@ export function PoleList({ legend, pointer, drafts, wanted, per, write, proposal
         {proposals}
       </div>
     </fieldset>
+  );
+}
+
+type DraftPlaneProps = Readonly<{ legend: string; drafts: readonly PoleDraft[]; onMove: MovePole }>;
+
+/** The poles that can be read, in their plane, to be moved by hand. */
+function DraftPlane({ legend, drafts, onMove }: DraftPlaneProps) {
+  const { model } = useRecipe();
+  const marks = drafts.flatMap((draft, k) => {
+    const pole = poleOf(draft, model.timeBase);
+    if (!pole) return [];
+    return { key: String(draft.key), pole, kind: "closed" as const, axis: null, tag: `entry ${k + 1}` };
+  });
+  if (marks.length === 0) return null;
+  const sampled = model.timeBase.kind === "sampled";
+  return (
+    <div className="mt-2">
+      <PolePlane title={`${legend}, to be moved`} poles={marks} sampled={sampled} table={false} onMove={onMove} />
+    </div>
   );
 }
 
