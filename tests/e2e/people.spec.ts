@@ -20,6 +20,10 @@ test("signing up keeps what was typed until it is right, and starts a team", asy
   await expect(password).toHaveAccessibleDescription(/At least 8 characters/);
   await expect(email).toHaveValue(address);
   await expect(email).not.toHaveAttribute("aria-invalid");
+  await password.fill("password1");
+  await send.click();
+  await expectRefused(team, /Write a name here/);
+  await expect(password).toHaveAccessibleDescription(/list that attackers try first/);
   await team.fill("Weir Works");
   await name.fill("Ada Kessler");
   for (const [typed, words] of [
@@ -30,6 +34,7 @@ test("signing up keeps what was typed until it is right, and starts a team", asy
     await password.fill(typed);
     await send.click();
     await expectRefused(password, words);
+    await expect(page.getByRole("alert").getByRole("link")).toHaveText(/^Password: /);
     await expect(team).toHaveValue("Weir Works");
     await expect(email).toHaveValue(address);
   }
