@@ -18,7 +18,7 @@ import {
   untilSolved,
 } from "../helpers/design-page";
 import { twoCarriages } from "../helpers/plant-content";
-import { untilKept } from "../helpers/plant-page";
+import { reloadUnsaved, untilKept } from "../helpers/plant-page";
 import { byWeights } from "../helpers/recipes";
 import { expect, storedPlant, test } from "../helpers/team-test";
 
@@ -111,14 +111,7 @@ test("an unsaved recipe is back after a reload, which asks first, and can be let
   await openDesign(page, designPath(design));
   await figure(page, DEVIATION).fill("0.00077");
   await untilKept(page, "0.00077");
-  const asked: string[] = [];
-  page.on("dialog", (dialog) => {
-    asked.push(dialog.type());
-    void dialog.accept();
-  });
-  await page.reload();
-  expect(asked).toEqual(["beforeunload"]);
-  await expect(page.getByText("Your unsaved changes are back.")).toBeVisible();
+  await reloadUnsaved(page);
   await expect(figure(page, DEVIATION)).toHaveValue("0.00077");
   await press(page, "Discard them");
   await expect(figure(page, DEVIATION)).toHaveValue("0.001");

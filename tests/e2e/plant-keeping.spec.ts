@@ -1,7 +1,7 @@
 import type { PlantRevision, PlantSummary } from "@/lib/schemas/plant";
 import { PASSWORD, signInAs, signUpAs, told } from "../helpers/browser-requests";
 import { cellOf, openPlant } from "../helpers/matrix-page";
-import { changeEntry, saveRevision, sendRevision, untilKept } from "../helpers/plant-page";
+import { changeEntry, reloadUnsaved, saveRevision, sendRevision, untilKept } from "../helpers/plant-page";
 import { expect, storedPlant, test } from "../helpers/team-test";
 
 test.describe("what was typed and not yet saved", () => {
@@ -9,14 +9,7 @@ test.describe("what was typed and not yet saved", () => {
     const plant = await storedPlant(team.lead.request);
     await openPlant(page, `/plants/${plant.id}`);
     await changeEntry(page, 3, 3, "-0.77");
-    const asked: string[] = [];
-    page.on("dialog", (dialog) => {
-      asked.push(dialog.type());
-      void dialog.accept();
-    });
-    await page.reload();
-    expect(asked).toEqual(["beforeunload"]);
-    await expect(page.getByText("Your unsaved changes are back.")).toBeVisible();
+    await reloadUnsaved(page);
     await expect(cellOf(page, "A", 3, 3)).toHaveText("−0.77");
     await page.getByRole("button", { name: "Discard them" }).click();
     await expect(cellOf(page, "A", 3, 3)).toHaveText("−0.4");
@@ -36,6 +29,8 @@ test.describe("what was typed and not yet saved", () => {
     await openPlant(again, "/plants/new");
     await expect(again.getByText("Your unsaved changes are back.")).toBeVisible();
     await expect(again.getByLabel("Name of the plant")).toHaveValue("Interrupted");
+    await again.getByRole("button", { name: "Go on with them" }).click();
+    await expect(again.getByText("Your unsaved changes are back.")).toBeHidden();
     await expect(cellOf(again, "A", 3, 1)).toHaveText("−40.25");
     await again.getByRole("button", { name: "Save plant" }).click();
     await expect(again.getByRole("heading", { level: 1, name: "Interrupted" })).toBeVisible();

@@ -33,3 +33,15 @@ export async function untilKept(page: Page, text: string): Promise<void> {
   const kept = () => page.evaluate((wanted) => Object.values(localStorage).some((value) => String(value).includes(wanted)), text);
   await expect.poll(kept, { timeout: 2_000, intervals: [100] }).toBe(true);
 }
+
+/** Leaves with unsaved work: the browser asks first, and the work is back afterwards. */
+export async function reloadUnsaved(page: Page): Promise<void> {
+  const asked: string[] = [];
+  page.once("dialog", (dialog) => {
+    asked.push(dialog.type());
+    void dialog.accept();
+  });
+  await page.reload();
+  expect(asked).toEqual(["beforeunload"]);
+  await expect(page.getByText("Your unsaved changes are back.")).toBeVisible();
+}
