@@ -4,9 +4,13 @@ import { describe, expect, test } from "vitest";
 import { discretiseCost } from "@/control/discrete/discretise-cost";
 import { eigenvalues } from "@/control/linalg/eigenvalues";
 import { symmetricEigenvalues } from "@/control/linalg/symmetric-eigenvalues";
+import { balanceDynamics } from "@/control/response/balance-dynamics";
 import { holdEquivalent } from "@/control/response/hold-equivalent";
-import { matrixExponential } from "@/control/response/matrix-exponential";
+import { flatExponential, matrixExponential } from "@/control/response/matrix-exponential";
 import { type ResponseRequest, respond } from "@/control/response/respond";
+import { tailBound } from "@/control/response/tail-bound";
+import { timesVector } from "@/control/response/times-vector";
+import { transitionPower } from "@/control/response/walk-sampled";
 import { seededMatrix, seededUniform } from "../helpers/seeded";
 
 const seeds = fc.integer({ min: 1, max: 2 ** 31 - 1 });
@@ -258,6 +262,43 @@ describe("discretiseCost", () => {
         expect(symmetricEigenvalues(found)[0]).toBeGreaterThanOrEqual(-4 * (n + m) * Number.EPSILON * found.norm());
       }),
       { numRuns: 60 },
+    );
+  });
+});
+
+describe("tailBound", () => {
+  test("no motion of a stable loop ever leaves it, with rates, couplings and units spread widely", () => {
+    fc.assert(
+      fc.property(seeds, fc.boolean(), (seed, sampled) => {
+        const random = seededUniform(seed);
+        const n = 1 + Math.floor(6 * random());
+        const raw = Array.from({ length: n }, (_, i) =>
+          Array.from({ length: n }, (__, j) => (j < i ? 0 : i === j ? -(10 ** (6 * random() - 3)) : 10 ** (4 * random() - 2))),
+        );
+        const a = sampled ? matrixExponential(Matrix.mul(new Matrix(raw), 0.01)) : new Matrix(raw);
+        const { matrix } = balanceDynamics(Float64Array.from(a.to1DArray()), n);
+        const rows = Float64Array.from({ length: 2 * n }, () => 10 ** (4 * random() - 2) * (random() < 0.5 ? -1 : 1));
+        const bound = tailBound(matrix, n, rows, sampled);
+        if (!bound) throw new Error("no bound");
+        const start = Float64Array.from({ length: n }, () => 2 * random() - 1);
+        const limits = bound.gains.map((gain) => gain * bound.size(start));
+        for (let k = 0; k < 24; k++) {
+          const time = 2 ** (k - 8);
+          const phi = sampled
+            ? transitionPower(matrix, n, 1 + 3 * k * k)
+            : flatExponential(
+                matrix.map((x) => x * time),
+                n,
+              );
+          const state = new Float64Array(n);
+          timesVector(phi, start, n, state);
+          for (const [i, limit] of limits.entries()) {
+            const value = state.reduce((sum, entry, j) => sum + entry * rows[i * n + j], 0);
+            expect(Math.abs(value)).toBeLessThanOrEqual(limit);
+          }
+        }
+      }),
+      { numRuns: 200 },
     );
   });
 });

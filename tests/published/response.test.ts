@@ -280,4 +280,102 @@ describe("figures of closed forms", () => {
     expect(settling).toBeCloseTo(Math.log(1 / 0.04), 12);
     expect(peakAt).toBeNull();
   });
+
+  /** w² / (s² + 2 ζ w s + w²) */
+  const secondOrder = (damping: number, w = 1) =>
+    stepOf(
+      [
+        [0, 1],
+        [-w * w, -2 * damping * w],
+      ],
+      [[0], [w * w]],
+      [[1, 0]],
+    );
+
+  // Overshoot by damping: Ogata, Modern Control Engineering, 5th ed. 2010, figure 5-11; Dorf & Bishop, Modern Control Systems,
+  // table of percent overshoot (both from memory).
+  test.each([
+    [0.1, 72.9],
+    [0.2, 52.7],
+    [0.3, 37.2],
+    [0.4, 25.4],
+    [0.6, 9.5],
+    [0.7, 4.6],
+    [0.8, 1.5],
+  ])("damping %d overshoots by %d %% in the tables", (damping, percent) => {
+    expect(secondOrder(damping).overshoot).toBeCloseTo(percent, 1);
+  });
+
+  // Rise time from 10 to 90 % in units of 1/w: Nise, Control Systems Engineering, figure 4.16 (from memory).
+  test.each([
+    [0.1, 1.104],
+    [0.2, 1.203],
+    [0.3, 1.321],
+    [0.4, 1.463],
+    [0.5, 1.638],
+    [0.6, 1.854],
+    [0.7, 2.126],
+    [0.8, 2.467],
+    [0.9, 2.883],
+  ])("damping %d rises in %d / w in the table", (damping, rise) => {
+    expect(Math.abs((secondOrder(damping).rise ?? 0) - rise)).toBeLessThanOrEqual(1.5e-3);
+    expect((secondOrder(damping, 250).rise ?? 0) * 250).toBeCloseTo(secondOrder(damping).rise ?? 0, 12);
+  });
+
+  // Nise, Control Systems Engineering, example 4.5 (from memory): 100/(s² + 15 s + 100).
+  test("Nise's example peaks after 0.475 s, 2.838 % beyond, and rises in 0.23 s", () => {
+    const { overshoot, peakAt, rise } = secondOrder(0.75, 10);
+    expect(overshoot).toBeCloseTo(2.838, 3);
+    expect(peakAt).toBeCloseTo(0.475, 3);
+    expect(rise).toBeCloseTo(0.23, 2);
+  });
+
+  // Step overshoot of Butterworth's low-pass filters: Zverev, Handbook of Filter Synthesis, Wiley 1967 (from memory).
+  test.each([
+    [[1, Math.SQRT2, 1], 4.32],
+    [[1, 2, 2, 1], 8.15],
+    [[1, 2.613125929752753, 3.414213562373095, 2.613125929752753, 1], 10.83],
+  ])("the Butterworth polynomial %j overshoots by %d %%", (polynomial, percent) => {
+    const n = polynomial.length - 1;
+    const A: number[][] = Array.from({ length: n }, (_, i) => Array.from({ length: n }, (__, j) => (j === i + 1 ? 1 : 0)));
+    for (let j = 0; j < n; j++) A[n - 1][j] = -polynomial[n - j];
+    const B = A.map((_, i) => [i === n - 1 ? 1 : 0]);
+    expect(stepOf(A, B, [A.map((_, j) => (j === 0 ? 1 : 0))]).overshoot).toBeCloseTo(percent, 2);
+  });
+
+  // The spike 4 (e^-1000t - e^-2000t) on a slow rise has its top near ln 2 / 1000.
+  test("a spike a thousand times shorter than the rest is not missed", () => {
+    const spike = stepOf(
+      [
+        [-1, 0, 0],
+        [0, -1000, 0],
+        [0, 0, -2000],
+      ],
+      [[1], [1000], [2000]],
+      [[0.5, -4, 4]],
+    );
+    const value = (t: number) => 0.5 * (1 - Math.exp(-t)) + 4 * (Math.exp(-1000 * t) - Math.exp(-2000 * t));
+    const slope = (t: number) => 0.5 * Math.exp(-t) - 4000 * Math.exp(-1000 * t) + 8000 * Math.exp(-2000 * t);
+    const at = rootOf(slope, 1e-4, 2e-3);
+    expect(spike.peakAt).toBeCloseTo(at, 9);
+    expect(spike.overshoot).toBeCloseTo(200 * value(at) - 100, 8);
+  });
+
+  // Two slow, nearly equal lags lift the response by 1e-5 long after it has risen.
+  test("a peak of 0.001 % a hundred time constants later is not missed", () => {
+    const late = stepOf(
+      [
+        [-1, 0, 0],
+        [0, -0.01, 0],
+        [0, 0, -0.0101],
+      ],
+      [[1], [0.01], [0.0101]],
+      [[1, -0.003, 0.003]],
+    );
+    const value = (t: number) => 1 - Math.exp(-t) + 0.003 * (Math.exp(-0.01 * t) - Math.exp(-0.0101 * t));
+    const slope = (t: number) => Math.exp(-t) - 0.00003 * Math.exp(-0.01 * t) + 0.0000303 * Math.exp(-0.0101 * t);
+    const at = rootOf(slope, 50, 300);
+    expect(late.peakAt).toBeCloseTo(at, 3);
+    expect(late.overshoot).toBeCloseTo(100 * (value(at) - 1), 9);
+  });
 });
