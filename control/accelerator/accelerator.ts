@@ -50,7 +50,7 @@ let wanted = true;
  * Switches the kernel on or off for all work from now on, and says whether it is in use. Results have the same bits either
  * way; off is for comparing, and for pages whose policy forbids compiling, where even trying would be reported.
  */
-export function useAccelerator(on: boolean): boolean {
+export function switchAccelerator(on: boolean): boolean {
   wanted = on;
   return accelerator(0) !== null;
 }

@@ -1,4 +1,5 @@
 import { modulus } from "../linalg/complex";
+import { complexLogarithm } from "../linalg/complex-logarithm";
 import type { Complex, TimeBase } from "../plant/model";
 
 /** What the trade reads off a pole; all null for a sampled pole at zero, which has no continuous counterpart. */
@@ -11,9 +12,9 @@ export type PoleFigures = {
 /** The pole of the continuous motion that a sampled pole shows: s = ln z / h, null at z = 0. */
 export function continuousPole(pole: Complex, timeBase: TimeBase): Complex | null {
   if (timeBase.kind === "continuous") return pole;
-  const size = modulus(pole);
-  if (size === 0) return null;
-  return { re: Math.log(size) / timeBase.period, im: Math.atan2(pole.im, pole.re) / timeBase.period };
+  if (pole.re === 0 && pole.im === 0) return null;
+  const { re, im } = complexLogarithm(pole);
+  return { re: re / timeBase.period, im: im / timeBase.period };
 }
 
 /** Distance of a pole from the stability boundary, positive inside: -Re s, or 1 - |z| when sampled. */

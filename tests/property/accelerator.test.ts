@@ -3,7 +3,7 @@ import { afterEach, beforeEach, describe, expect, test, vi } from "vitest";
 import { acceleratedFactor, acceleratedSolve } from "../../control/accelerator/accelerated-lu";
 import { acceleratedProduct, acceleratedWideProduct } from "../../control/accelerator/accelerated-product";
 import { acceleratedHessenberg } from "../../control/accelerator/accelerated-schur";
-import { useAccelerator } from "../../control/accelerator/accelerator";
+import { switchAccelerator } from "../../control/accelerator/accelerator";
 import { NumericalError } from "../../control/errors";
 import { split } from "../../control/linalg/double-double";
 import { flatIdentity, flatProduct, flatTranspose, flatTransposedProduct } from "../../control/linalg/flat";
@@ -14,7 +14,7 @@ import { flatSchur } from "../../control/linalg/real-schur";
 import { wideProductByLoops } from "../../control/linalg/wide-product-loops";
 
 afterEach(() => {
-  useAccelerator(true);
+  switchAccelerator(true);
 });
 
 /** Ordinary numbers, halves of the smallest, the largest, and zeros of both signs. */
@@ -69,7 +69,7 @@ const different = (x: Float64Array | undefined, y: Float64Array) =>
 
 describe("with the accelerator and without it every bit agrees", () => {
   beforeEach(() => {
-    expect(useAccelerator(true)).toBe(true);
+    expect(switchAccelerator(true)).toBe(true);
   });
 
   test("in products of any shape, with subnormals, zeros of both signs and overflow", () => {
@@ -135,7 +135,7 @@ describe("reductions of a square matrix have the same bits either way", () => {
     fc.assert(
       fc.property(square, ({ n, a }) => {
         const [fast, loops] = [true, false].map((on) => {
-          useAccelerator(on);
+          switchAccelerator(on);
           return schurOrCode(a, n);
         });
         if (typeof fast === "string" || typeof loops === "string") expect(fast).toBe(loops);
@@ -175,7 +175,7 @@ test("memory grows with the matrices, and beyond its limit the loops take over",
 
 test("switched off, it is not called", () => {
   const a = new Float64Array(400).fill(1);
-  expect(useAccelerator(false)).toBe(false);
+  expect(switchAccelerator(false)).toBe(false);
   expect(acceleratedProduct(a, a, 20, 20, 20)).toBeNull();
   expect(acceleratedWideProduct(a, { hi: a, lo: a }, 20, 20, 20)).toBeNull();
   expect(flatProduct(a, a, 20, 20, 20)).toEqual(new Float64Array(400).fill(20));
@@ -197,7 +197,7 @@ describe("where the engine cannot compile it, the loops serve", () => {
     const fresh = await import("../../control/accelerator/accelerator");
     const { flatProduct: product } = await import("../../control/linalg/flat");
     const a = new Float64Array(400).fill(0.5);
-    expect(fresh.useAccelerator(true)).toBe(false);
+    expect(fresh.switchAccelerator(true)).toBe(false);
     expect(product(a, a, 20, 20, 20)).toEqual(new Float64Array(400).fill(5));
     vi.unstubAllGlobals();
     vi.resetModules();
