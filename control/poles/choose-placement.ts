@@ -1,7 +1,7 @@
 import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { fromFlat, toFlat } from "../linalg/flat";
-import { admissibleVectors, type InputRange, inputRange } from "./admissible-vectors";
+import { type Admissible, admissibleVectors, type InputRange, inputRange } from "./admissible-vectors";
 import { dyadicGain, scaledSingleInputGain } from "./dyadic-gain";
 import type { Frame } from "./eigenvector-frame";
 import { gainFromVectors } from "./gain-from-vectors";
@@ -9,9 +9,15 @@ import { robustEigenvectors } from "./robust-eigenvectors";
 import { type ScaledPlant, scalePlant } from "./scale-plant";
 import { evenStateUnits } from "./state-units";
 import { type Placed, type PlacementCheck, USABLE_POLE_ERROR, verifyPlacement } from "./verify-placement";
-import type { WantedPole } from "./wanted-poles";
+import { samePole, type WantedPole } from "./wanted-poles";
 
-export type Candidate = { readonly K: Matrix; readonly method: string; readonly check: PlacementCheck };
+export type Candidate = {
+  readonly K: Matrix;
+  readonly method: string;
+  readonly check: PlacementCheck;
+  /** Some wanted pole has more eigenvectors to choose from than there are inputs: a mode there may be one no input moves. */
+  readonly spare: boolean;
+};
 
 const SINGLE_INPUT = "one input: row of the wanted polynomial in double-double";
 const ONE_DIRECTION = "one direction of the inputs: row of the wanted polynomial in double-double";
@@ -19,42 +25,64 @@ const ONE_DIRECTION = "one direction of the inputs: row of the wanted polynomial
 /** Beyond this condition or error in the plant's own units, the same is tried in balanced ones. */
 const DOUBTFUL = Math.sqrt(Number.EPSILON);
 const LIKE_UNITS = 4;
+/** Within these a placement is its own proof that the inputs move every mode. */
+const PROVEN_ERROR = 1e-10;
+const PROVEN_CONDITION = 1e6;
 
 /**
- * A checked gain for a plant whose inputs move every mode.
+ * First try at a placement, without asking whether the inputs move every mode, and whether its poles leave that beyond doubt:
+ * a mode that no input moves stays where it is, so that it shows as an error, as dependent eigenvectors or as a spare one.
  *
- * Shapes    A n×n, B n×m, blocks covering n poles; `defective` when a pole is repeated more often than rank B
+ * Shapes    A n×n, B n×m, blocks covering n poles
+ * Units     entries and poles of like size, or they may not be squared
+ * Throws    no-convergence
+ * Accuracy  the check's
+ */
+export function firstPlacement(
+  A: Matrix,
+  B: Matrix,
+  blocks: readonly WantedPole[],
+): { found: Candidate | null; proven: boolean } {
+  const found = B.columns === 1 ? singleInputCandidate(A, B, blocks) : robustCandidate(A, B, blocks, false);
+  if (!found) return { found, proven: false };
+  const { exact, poleError, conditioning } = found.check;
+  const proven = !found.spare && exact && poleError <= PROVEN_ERROR && conditioning !== null && conditioning <= PROVEN_CONDITION;
+  return { found, proven };
+}
+
+/**
+ * A checked gain for a plant whose inputs move every mode, `first` being what was tried before.
+ *
+ * Shapes    A n×n, B n×m, blocks covering n poles; `dependent`: when poles are repeated or clustered beyond what independent
+ *           eigenvectors allow, one direction of the inputs may place them
  * Units     entries and poles of like size, or they may not be squared
  * Throws    too-sensitive { poleError?, limit }; no-convergence
  * Accuracy  the check's
  */
-export function freePlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[], defective: boolean): Candidate {
-  if (B.columns === 1) {
-    const row = scaledSingleInputGain(A, B, blocks);
-    const vectors = defective ? null : onlyVectors(A, B, blocks);
-    if (row) return accept([candidate({ A, B, K: fromFlat(row, 1, A.rows), blocks, vectors, wide: true }, SINGLE_INPUT)]);
-  }
-  if (defective) {
+export function freePlacement(
+  A: Matrix,
+  B: Matrix,
+  blocks: readonly WantedPole[],
+  first: Candidate | null,
+  dependent: boolean,
+): Candidate {
+  const candidates = B.columns === 1 ? [first] : robustCandidates(A, B, blocks, first);
+  if (dependent && B.columns > 1 && !candidates.some((found) => found?.check.holds)) {
     const K = dyadicGain(A, B, blocks);
-    return accept(K ? [candidate({ A, B, K, blocks, vectors: null, wide: true }, ONE_DIRECTION)] : []);
+    if (K) candidates.push(candidate({ A, B, K, blocks, vectors: null, wide: true }, ONE_DIRECTION, false));
   }
-  return robustPlacement(A, B, blocks);
+  return accept(candidates);
 }
 
 /** The same with eigenvectors chosen for their independence, which also keeps modes that no input moves. */
 export function robustPlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate {
-  const asGiven = robustCandidate(A, B, blocks, false);
-  const { check } = asGiven ?? {};
-  if (
-    asGiven &&
-    check?.holds &&
-    check.poleError <= DOUBTFUL &&
-    (check.conditioning ?? Number.POSITIVE_INFINITY) <= 1 / DOUBTFUL
-  ) {
-    return asGiven;
-  }
-  const balanced = unitsDiffer(A, B) ? robustCandidate(A, B, blocks, true) : null;
-  return accept([asGiven, balanced].filter((found) => found !== null));
+  return accept(robustCandidates(A, B, blocks, robustCandidate(A, B, blocks, false)));
+}
+
+function robustCandidates(A: Matrix, B: Matrix, blocks: readonly WantedPole[], first: Candidate | null): (Candidate | null)[] {
+  const { check } = first ?? {};
+  const good = check?.holds && check.poleError <= DOUBTFUL && (check.conditioning ?? Number.POSITIVE_INFINITY) <= 1 / DOUBTFUL;
+  return good || !unitsDiffer(A, B) ? [first] : [first, robustCandidate(A, B, blocks, true)];
 }
 
 /** Whether balancing would change anything worth the time of a second search. */
@@ -64,8 +92,9 @@ function unitsDiffer(A: Matrix, B: Matrix): boolean {
 }
 
 /** The candidate with the smallest pole error, if it holds. */
-function accept(candidates: readonly Candidate[]): Candidate {
-  const sorted = candidates.toSorted((p, q) => p.check.poleError - q.check.poleError);
+function accept(candidates: readonly (Candidate | null)[]): Candidate {
+  const found = candidates.filter((one) => one !== null);
+  const sorted = found.toSorted((p, q) => p.check.poleError - q.check.poleError);
   const best = sorted.find(({ check }) => check.holds);
   if (best) return best;
   throw new NumericalError("too-sensitive", { poleError: sorted[0]?.check.poleError, limit: USABLE_POLE_ERROR });
@@ -80,7 +109,11 @@ function robustCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[], ba
   if (!frame) return null;
   const K = gainOrNull(plant, range, frame, scaledBlocks);
   const method = balanced ? "eigenvectors of least condition, balanced units" : "eigenvectors of least condition";
-  return K && candidate({ A, B, K, blocks, vectors: { frame, plant }, wide: false }, method);
+  return K && candidate({ A, B, K, blocks, vectors: { frame, plant }, wide: false }, method, hasSpare(spaces, range));
+}
+
+function hasSpare(spaces: readonly Admissible[], { rank }: InputRange): boolean {
+  return spaces.some(({ size }) => size > rank);
 }
 
 function gainOrNull(plant: ScaledPlant, range: InputRange, frame: Frame, blocks: readonly WantedPole[]): Matrix | null {
@@ -92,19 +125,20 @@ function gainOrNull(plant: ScaledPlant, range: InputRange, frame: Frame, blocks:
   }
 }
 
-function candidate(placed: Placed, method: string): Candidate {
-  return { K: placed.K, method, check: verifyPlacement(placed) };
+function candidate(placed: Placed, method: string, spare: boolean): Candidate {
+  return { K: placed.K, method, check: verifyPlacement(placed), spare };
 }
 
-/** Eigenvectors of a loop with one input, which leaves no choice; null when they are dependent to working accuracy. */
-function onlyVectors(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Placed["vectors"] {
+/** The only gain there is with one input; its eigenvectors, which leave no choice either, may be dependent to working accuracy. */
+function singleInputCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate | null {
+  const row = scaledSingleInputGain(A, B, blocks);
+  if (!row) return null;
+  const K = fromFlat(row, 1, A.rows);
   const plant = scaled(A, B, blocks, true);
   const range = inputRange(plant);
-  const frame = robustEigenvectors(
-    inTime(blocks, plant).map((block) => admissibleVectors(plant, range, block)),
-    plant.n,
-  );
-  return frame && { frame, plant };
+  const spaces = inTime(blocks, plant).map((block) => admissibleVectors(plant, range, block));
+  const frame = hasRepeats(blocks) || spaces.some(({ size }) => size === 0) ? null : robustEigenvectors(spaces, plant.n);
+  return candidate({ A, B, K, blocks, vectors: frame && { frame, plant }, wide: true }, SINGLE_INPUT, hasSpare(spaces, range));
 }
 
 function scaled(A: Matrix, B: Matrix, blocks: readonly WantedPole[], balanced: boolean): ScaledPlant {
@@ -114,4 +148,8 @@ function scaled(A: Matrix, B: Matrix, blocks: readonly WantedPole[], balanced: b
 
 function inTime(blocks: readonly WantedPole[], { time }: ScaledPlant): WantedPole[] {
   return blocks.map((block) => ({ ...block, re: block.re * time, im: block.im * time }));
+}
+
+function hasRepeats(blocks: readonly WantedPole[]): boolean {
+  return blocks.some((block, k) => blocks.some((other, j) => j < k && samePole(other, block)));
 }

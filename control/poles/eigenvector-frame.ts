@@ -1,6 +1,4 @@
 import { Matrix } from "ml-matrix";
-import { flatIdentity, flatTranspose } from "../linalg/flat";
-import { factorLu, solveLu } from "../linalg/lu";
 
 /**
  * Closed-loop eigenvectors under construction, in real form: a real pole owns one unit column, a pair owns √2 Re x and √2 Im x
@@ -14,14 +12,19 @@ export type Frame = {
   readonly duals: Float64Array;
   /** Squared length of each dual row. */
   readonly norms: Float64Array;
+  /** Row exchanges of the last inversion. */
+  readonly places: Int32Array;
 };
 
 export function createFrame(n: number): Frame {
-  return { n, columns: new Float64Array(n * n), duals: new Float64Array(n * n), norms: new Float64Array(n) };
+  const places = new Int32Array(n);
+  return { n, columns: new Float64Array(n * n), duals: new Float64Array(n * n), norms: new Float64Array(n), places };
 }
 
-export function copyFrame({ n, columns, duals, norms }: Frame): Frame {
-  return { n, columns: columns.slice(), duals: duals.slice(), norms: norms.slice() };
+export function copyInto(from: Frame, to: Frame): void {
+  to.columns.set(from.columns);
+  to.duals.set(from.duals);
+  to.norms.set(from.norms);
 }
 
 /** |X⁻¹| squared, Frobenius: what conditioning is judged by while it is improved. */
@@ -37,14 +40,67 @@ export function columnsAsMatrix({ n, columns }: Frame): Matrix {
   return X;
 }
 
-/** Recomputes the inverse from the columns, which removes the rounding of many updates; false when they are dependent. */
+/**
+ * Recomputes the inverse from the columns, which removes the rounding of many updates; false when they are dependent.
+ * Gauss-Jordan elimination of the transposed inverse in place, with row exchanges.
+ */
 export function refreshDuals(frame: Frame): boolean {
-  const { n, columns, duals } = frame;
-  const factors = factorLu(flatTranspose(columns, n, n), n);
-  if (factors.zeroPivot >= 0) return false;
-  duals.set(solveLu(factors, flatIdentity(n), n));
+  const { n, columns, duals, places } = frame;
+  // Row j of this work is column j of X; its inverse then holds the dual rows as columns.
+  const work = duals;
+  for (let k = 0; k < n * n; k++) work[k] = columns[k];
+  for (let p = 0; p < n; p++) {
+    const row = largestBelow(work, n, p);
+    places[p] = row;
+    const pivot = work[row * n + p];
+    if (pivot === 0 || !Number.isFinite(1 / pivot)) return false;
+    if (row !== p) exchangeRows(work, n, p, row);
+    work[p * n + p] = 1;
+    for (let j = 0; j < n; j++) work[p * n + j] /= pivot;
+    for (let i = 0; i < n; i++) {
+      if (i === p) continue;
+      const factor = work[i * n + p];
+      if (factor === 0) continue;
+      work[i * n + p] = 0;
+      subtractMultiple(work, i * n, work, p * n, factor, n);
+    }
+  }
+  for (let p = n - 1; p >= 0; p--) if (places[p] !== p) exchangeColumns(work, n, p, places[p]);
+  transposeInPlace(work, n);
   measureDuals(frame);
   return Number.isFinite(frameCost(frame));
+}
+
+function largestBelow(a: Float64Array, n: number, p: number): number {
+  let row = p;
+  for (let i = p + 1; i < n; i++) if (Math.abs(a[i * n + p]) > Math.abs(a[row * n + p])) row = i;
+  return row;
+}
+
+function exchangeRows(a: Float64Array, n: number, p: number, q: number): void {
+  for (let j = 0; j < n; j++) {
+    const kept = a[p * n + j];
+    a[p * n + j] = a[q * n + j];
+    a[q * n + j] = kept;
+  }
+}
+
+function exchangeColumns(a: Float64Array, n: number, p: number, q: number): void {
+  for (let i = 0; i < n; i++) {
+    const kept = a[i * n + p];
+    a[i * n + p] = a[i * n + q];
+    a[i * n + q] = kept;
+  }
+}
+
+function transposeInPlace(a: Float64Array, n: number): void {
+  for (let i = 0; i < n; i++) {
+    for (let j = 0; j < i; j++) {
+      const kept = a[i * n + j];
+      a[i * n + j] = a[j * n + i];
+      a[j * n + i] = kept;
+    }
+  }
 }
 
 export function dotRow(rows: Float64Array, at: number, x: Float64Array, from: number, n: number): number {
@@ -55,13 +111,16 @@ export function dotRow(rows: Float64Array, at: number, x: Float64Array, from: nu
 
 /** Puts x in column j; false, and nothing changed, when that would make the columns dependent. */
 export function replaceColumn(frame: Frame, j: number, x: Float64Array): boolean {
-  const { n, columns, duals } = frame;
-  const pivot = dotRow(duals, j * n, x, 0, n);
+  const { n, columns, duals, norms } = frame;
+  const row = j * n;
+  const pivot = dotRow(duals, row, x, 0, n);
   if (!(Math.abs(pivot) > 0) || !Number.isFinite(1 / pivot)) return false;
-  columns.set(x, j * n);
-  for (let k = 0; k < n; k++) duals[j * n + k] /= pivot;
-  for (let i = 0; i < n; i++) if (i !== j) subtractMultiple(duals, i * n, duals, j * n, dotRow(duals, i * n, x, 0, n), n);
-  measureDuals(frame);
+  for (let k = 0; k < n; k++) columns[row + k] = x[k];
+  for (let k = 0; k < n; k++) duals[row + k] /= pivot;
+  for (let i = 0; i < n; i++) {
+    if (i !== j) subtractMultiple(duals, i * n, duals, row, dotRow(duals, i * n, x, 0, n), n);
+    norms[i] = dotRow(duals, i * n, duals, i * n, n);
+  }
   return true;
 }
 
@@ -76,9 +135,9 @@ export function replacePair(frame: Frame, j: number, u: Float64Array, v: Float64
   const h22 = dotRow(duals, second, v, 0, n);
   const determinant = h11 * h22 - h12 * h21;
   if (!(Math.abs(determinant) > 0) || !Number.isFinite(1 / determinant)) return false;
-  columns.set(u, first);
-  columns.set(v, second);
   for (let k = 0; k < n; k++) {
+    columns[first + k] = u[k];
+    columns[second + k] = v[k];
     const p = duals[first + k];
     const q = duals[second + k];
     duals[first + k] = (h22 * p - h12 * q) / determinant;
@@ -88,8 +147,7 @@ export function replacePair(frame: Frame, j: number, u: Float64Array, v: Float64
     if (i === j || i === j + 1) continue;
     const alongU = dotRow(duals, i * n, u, 0, n);
     const alongV = dotRow(duals, i * n, v, 0, n);
-    subtractMultiple(duals, i * n, duals, first, alongU, n);
-    subtractMultiple(duals, i * n, duals, second, alongV, n);
+    for (let k = 0, at = i * n; k < n; k++, at++) duals[at] -= alongU * duals[first + k] + alongV * duals[second + k];
   }
   measureDuals(frame);
   return true;

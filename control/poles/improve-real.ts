@@ -1,14 +1,16 @@
 import type { Admissible } from "./admissible-vectors";
 import { dotRow, type Frame, replaceColumn } from "./eigenvector-frame";
+import type { Scratch } from "./search-scratch";
 
 /** Turns the column of a real pole to where the determinant of the eigenvectors is largest; returns by how much it grew. */
-export function raiseDeterminantReal(frame: Frame, admissible: Admissible): number {
-  const { n } = frame;
-  const a = projectedDual(frame, admissible, admissible.pole.column);
-  const length = Math.sqrt(dotRow(a, 0, a, 0, a.length));
+export function raiseDeterminantReal(frame: Frame, admissible: Admissible, { a, u }: Scratch): number {
+  const { n, duals } = frame;
+  const { size, re, pole } = admissible;
+  projectRow(duals, pole.column * n, re, n, size, a, 0);
+  const length = Math.sqrt(dotRow(a, 0, a, 0, size));
   if (!(length > 0)) return 1;
-  const x = combine(admissible, a, n);
-  return replaceColumn(frame, admissible.pole.column, x) ? length : 1;
+  combine(admissible, a, n, u);
+  return replaceColumn(frame, pole.column, u) ? length : 1;
 }
 
 /**
@@ -22,52 +24,71 @@ export function raiseDeterminantReal(frame: Frame, admissible: Admissible): numb
  * Accuracy  the exact minimum over one column, to rounding
  * Source    in the spirit of Byers & Nash, Int. J. Control 49 (1989) 97-117
  */
-export function lowerConditionReal(frame: Frame, admissible: Admissible): void {
+export function lowerConditionReal(frame: Frame, admissible: Admissible, { a, row: v, square: M, u }: Scratch): void {
   const { n, duals, norms } = frame;
-  const { size, pole } = admissible;
+  const { size, re, pole } = admissible;
   const j = pole.column;
-  const a = projectedDual(frame, admissible, j);
-  const M = new Float64Array(size * size);
-  for (let k = 0; k < size; k++) M[k * size + k] = 1;
+  projectRow(duals, j * n, re, n, size, a, 0);
+  for (let k = 0; k < size * size; k++) M[k] = k % (size + 1) === 0 ? 1 : 0;
   for (let i = 0; i < n; i++) {
     if (i === j) continue;
     const along = dotRow(duals, i * n, duals, j * n, n) / norms[j];
-    const v = projectedDual(frame, admissible, i);
+    projectRow(duals, i * n, re, n, size, v, 0);
     for (let k = 0; k < size; k++) v[k] -= along * a[k];
-    for (let k = 0; k < size; k++) for (let l = 0; l <= k; l++) M[k * size + l] += v[k] * v[l];
+    for (let k = 0; k < size; k++) {
+      const factor = v[k];
+      for (let l = 0; l <= k; l++) M[k * size + l] += factor * v[l];
+    }
   }
-  const z = solveCholesky(M, a, size);
-  if (z) replaceColumn(frame, j, combine(admissible, z, n));
+  if (!solveCholesky(M, a, size)) return;
+  combine(admissible, a, n, u);
+  replaceColumn(frame, j, u);
 }
 
-/** S'y for dual row i. */
-function projectedDual({ n, duals }: Frame, { size, re }: Admissible, row: number): Float64Array {
-  const out = new Float64Array(size);
-  for (let i = 0; i < n; i++) {
-    const y = duals[row * n + i];
-    for (let k = 0; k < size; k++) out[k] += y * re[i * size + k];
+/** y'S for one row y of duals and a real part S, into `out` from `to` on. */
+export function projectRow(
+  rows: Float64Array,
+  at: number,
+  S: Float64Array,
+  n: number,
+  size: number,
+  out: Float64Array,
+  to: number,
+): void {
+  if (size === 2) {
+    let first = 0;
+    let second = 0;
+    for (let i = 0; i < n; i++) {
+      const y = rows[at + i];
+      first += y * S[2 * i];
+      second += y * S[2 * i + 1];
+    }
+    out[to] = first;
+    out[to + 1] = second;
+    return;
   }
-  return out;
+  for (let k = to; k < to + size; k++) out[k] = 0;
+  for (let i = 0, from = 0; i < n; i++, from += size) {
+    const y = rows[at + i];
+    for (let k = 0; k < size; k++) out[to + k] += y * S[from + k];
+  }
 }
 
-/** The unit vector along S z. */
-function combine({ size, re }: Admissible, z: Float64Array, n: number): Float64Array {
+/** The unit vector along S z, into x. */
+function combine({ size, re }: Admissible, z: Float64Array, n: number, x: Float64Array): void {
   const length = Math.sqrt(dotRow(z, 0, z, 0, size));
-  const x = new Float64Array(n);
   for (let i = 0; i < n; i++) x[i] = dotRow(re, i * size, z, 0, size) / length;
-  return x;
 }
 
-/** Solves M z = a for a positive definite M given by its lower triangle, which is overwritten; null when it is not. */
-function solveCholesky(M: Float64Array, a: Float64Array, size: number): Float64Array | null {
-  const z = a.slice();
+/** Overwrites z by the solution of M x = z for a positive definite M given by its lower triangle, lost too; false when it is not. */
+function solveCholesky(M: Float64Array, z: Float64Array, size: number): boolean {
   for (let k = 0; k < size; k++) {
     for (let l = 0; l <= k; l++) {
       let sum = M[k * size + l];
       for (let q = 0; q < l; q++) sum -= M[k * size + q] * M[l * size + q];
       if (k !== l) M[k * size + l] = sum / M[l * size + l];
       else if (sum > 0 && Number.isFinite(sum)) M[k * size + k] = Math.sqrt(sum);
-      else return null;
+      else return false;
     }
     for (let q = 0; q < k; q++) z[k] -= M[k * size + q] * z[q];
     z[k] /= M[k * size + k];
@@ -76,5 +97,5 @@ function solveCholesky(M: Float64Array, a: Float64Array, size: number): Float64A
     for (let q = k + 1; q < size; q++) z[k] -= M[q * size + k] * z[q];
     z[k] /= M[k * size + k];
   }
-  return z.some((entry) => entry !== 0) ? z : null;
+  return dotRow(z, 0, z, 0, size) > 0;
 }

@@ -1,33 +1,29 @@
-/** Forms in the coordinates z of a pair's eigenvector: rows a and b (real, then imaginary parts), P Hermitian, R symmetric. */
-export type PairForms = {
-  readonly size: number;
-  readonly a: Float64Array;
-  readonly b: Float64Array;
-  readonly pRe: Float64Array;
-  readonly pIm: Float64Array;
-  readonly rRe: Float64Array;
-  readonly rIm: Float64Array;
-};
+import type { PairForms } from "./search-scratch";
 
 /**
  * The part of |X⁻¹|² that turns with a pair's eigenvector S z, and its gradient: with α = a z, β = b z, τ = zᴴP z, ρ = z'R z,
  * 2 ((|α|² + |β|²) τ - Re(ρ̄ (α² + β²))) / (2 Im(ᾱ β))².
  * It does not change when z is multiplied by any complex number.
  *
- * Shapes    z and gradient 2k reals: real parts, then imaginary parts; the gradient is overwritten
+ * Shapes    z, gradient and the two products 2k reals: real parts, then imaginary parts; all but z are overwritten
  * Units     none
  * Throws    nothing; Infinity where the pair's columns would be dependent
  * Accuracy  rounding of the formula
  * Source    block inverse of [√2 Re x, √2 Im x] beside fixed columns
  */
-export function pairCost(forms: PairForms, z: Float64Array, gradient: Float64Array): number {
+export function pairCost(
+  forms: PairForms,
+  z: Float64Array,
+  gradient: Float64Array,
+  [pz, rz]: readonly [Float64Array, Float64Array],
+): number {
   const { size, a, b } = forms;
   const alpha = rowTimes(a, z, size);
   const beta = rowTimes(b, z, size);
   const determinant = 2 * (alpha.re * beta.im - alpha.im * beta.re);
   if (!(Math.abs(determinant) > 0)) return Number.POSITIVE_INFINITY;
-  const pz = hermitianTimes(forms.pRe, forms.pIm, z, size);
-  const rz = hermitianTimes(forms.rRe, forms.rIm, z, size);
+  squareTimes(forms.pRe, forms.pIm, z, size, pz);
+  squareTimes(forms.rRe, forms.rIm, z, size, rz);
   let tau = 0;
   let rhoRe = 0;
   let rhoIm = 0;
@@ -76,14 +72,16 @@ function rowTimes(row: Float64Array, z: Float64Array, size: number): { re: numbe
   return { re, im };
 }
 
-/** M z for a complex square M given by parts. */
-function hermitianTimes(mRe: Float64Array, mIm: Float64Array, z: Float64Array, size: number): Float64Array {
-  const out = new Float64Array(2 * size);
-  for (let k = 0; k < size; k++) {
-    for (let l = 0; l < size; l++) {
-      out[k] += mRe[k * size + l] * z[l] - mIm[k * size + l] * z[size + l];
-      out[size + k] += mRe[k * size + l] * z[size + l] + mIm[k * size + l] * z[l];
+/** M z for a complex square M given by parts, into `out`. */
+function squareTimes(mRe: Float64Array, mIm: Float64Array, z: Float64Array, size: number, out: Float64Array): void {
+  for (let k = 0, at = 0; k < size; k++) {
+    let re = 0;
+    let im = 0;
+    for (let l = 0; l < size; l++, at++) {
+      re += mRe[at] * z[l] - mIm[at] * z[size + l];
+      im += mRe[at] * z[size + l] + mIm[at] * z[l];
     }
+    out[k] = re;
+    out[size + k] = im;
   }
-  return out;
 }

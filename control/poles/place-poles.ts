@@ -6,12 +6,12 @@ import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import { singularValues } from "../linalg/singular-values";
 import type { Complex } from "../plant/model";
-import { freePlacement, robustPlacement } from "./choose-placement";
+import { type Candidate, firstPlacement, freePlacement, robustPlacement } from "./choose-placement";
 import { keepFixedModes } from "./fixed-modes";
 import { matchPoles } from "./match-poles";
-import { repeatsTooOften } from "./repeats-too-often";
+import { requireFewRepeats } from "./require-few-repeats";
 import { isStablePole } from "./require-stable-poles";
-import { groupPoles } from "./wanted-poles";
+import { groupPoles, type WantedPole } from "./wanted-poles";
 
 export type PlacementProblem = {
   readonly A: Matrix;
@@ -62,16 +62,14 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
   requireShape("B", B, A.rows, B.columns);
   requireFinite("A", A);
   requireFinite("B", B);
-  const { blocks, fixed } = keepFixedModes(A, B, groupPoles(poles, A.rows));
+  const wanted = groupPoles(poles, A.rows);
   // Time and effort in exact powers of two of their units, so that nothing overflows on the way.
-  const time = unitPower(Math.max(largestEntry(A.to1DArray()), ...blocks.map(({ re, im }) => Math.max(Math.abs(re), im))));
+  const time = unitPower(Math.max(largestEntry(A.to1DArray()), ...wanted.map(({ re, im }) => Math.max(Math.abs(re), im))));
   const effort = unitPower(largestEntry(B.to1DArray()));
-  const fast = A.clone().mul(time);
-  const strong = B.clone().mul(effort);
-  const inTime = blocks.map((block) => ({ ...block, re: block.re * time, im: block.im * time }));
-  const defective = fixed.length === 0 && repeatsTooOften(fast, strong, blocks, allowDefective);
-  const { K, method, check } =
-    fixed.length === 0 ? freePlacement(fast, strong, inTime, defective) : robustPlacement(fast, strong, inTime);
+  const scaled = { A: A.clone().mul(time), B: B.clone().mul(effort) };
+  const inUnit = (block: WantedPole) => ({ ...block, re: block.re * time, im: block.im * time });
+  const { chosen, fixed } = choose({ A, B }, wanted, scaled, inUnit, allowDefective);
+  const { K, method, check } = chosen;
   const gain = K.clone().mul(effort).div(time);
   const achieved = check.achieved.map(({ re, im }) => ({ re: re / time, im: im / time }));
   requireSameSide(poles, achieved);
@@ -94,6 +92,24 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
     poleShiftPerGainDigit: check.poleShiftPerGainDigit,
     fixedModes: fixed,
   };
+}
+
+type Pair = { readonly A: Matrix; readonly B: Matrix };
+
+/** The placement, and the modes that no input moves, which are only looked for where a first try leaves a doubt. */
+function choose(
+  { A, B }: Pair,
+  wanted: readonly WantedPole[],
+  scaled: Pair,
+  inUnit: (block: WantedPole) => WantedPole,
+  allowDefective: boolean,
+): { chosen: Candidate; fixed: readonly Complex[] } {
+  const first = firstPlacement(scaled.A, scaled.B, wanted.map(inUnit));
+  if (first.found && first.proven) return { chosen: first.found, fixed: [] };
+  const { blocks, fixed } = keepFixedModes(A, B, wanted);
+  if (fixed.length > 0) return { chosen: robustPlacement(scaled.A, scaled.B, blocks.map(inUnit)), fixed };
+  requireFewRepeats(scaled.A, scaled.B, blocks, allowDefective);
+  return { chosen: freePlacement(scaled.A, scaled.B, blocks.map(inUnit), first.found, allowDefective), fixed };
 }
 
 /** Throws not-stabilising when all poles were wanted on the stable side of a boundary and one is not there. */

@@ -20,6 +20,8 @@ export type PlacementCheck = {
   /** Largest error of a pole over its size, and what rounding of the gain, and of eigenvalues not found exactly, can account for. */
   readonly poleError: number;
   readonly poleBound: number;
+  /** The poles were found with 32 digits. */
+  readonly exact: boolean;
   /** No pole off by more than is usable; poles told by plain eigenvalues within their bounds, and the equation within its. */
   readonly holds: boolean;
   readonly conditioning: number | null;
@@ -61,7 +63,8 @@ export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): Pla
   const loop = { B, K, closed: Matrix.sub(A, B.mmul(K)), n: A.rows };
   const wanted = polesOf(blocks);
   const { poles: achieved, errors, exact } = achievedPoles(A, B, K, wanted);
-  const floor = frobeniusNorm(loop.closed) || 1;
+  // A pole wanted at zero has no size of its own: it is judged beside the others, or beside the plant.
+  const floor = Math.max(...wanted.map(modulus)) || frobeniusNorm(A) || frobeniusNorm(loop.closed) || 1;
   const sizes = wanted.map((pole) => modulus(pole) || floor);
   const set = vectors && inGivenUnits(vectors.frame, vectors.plant, blocks);
   const { bounds, shifts } = set ? simpleBounds(loop, blocks, set, wide, exact) : defectiveBounds(loop, blocks);
@@ -72,6 +75,7 @@ export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): Pla
   return {
     achieved,
     poleError,
+    exact,
     poleBound: Math.max(...bounds.map((limit, k) => limit / sizes[k])),
     holds: poleError <= USABLE_POLE_ERROR && (exact || (residual <= bound && errors.every((error, k) => error <= bounds[k]))),
     conditioning: condition * loop.n * Number.EPSILON < 1 ? condition : null,

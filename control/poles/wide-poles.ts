@@ -1,10 +1,10 @@
 import type { Complex } from "../plant/model";
-import { logarithmicDerivative, type WideComplex } from "./hyman-step";
+import { type HymanMatrix, logarithmicDerivative, prepareHyman, type WideComplex } from "./hyman-step";
 import { reduceWide } from "./wide-hessenberg";
 import type { WideRows } from "./wide-rows";
 
 const MOST_ROUNDS = 60;
-/** A root stands still once its step is this small beside its size, or beside its way from where it started. */
+/** A root stands still once its step is this small beside its size, or this small beside its way from where it started. */
 const STILL = Number.EPSILON / 8;
 const NEAR_ENOUGH = 1e-4;
 
@@ -20,53 +20,53 @@ const NEAR_ENOUGH = 1e-4;
  */
 export function widePoles(closed: WideRows, n: number, starts: readonly Complex[]): WideComplex[] | null {
   reduceWide(closed, n);
-  const columns = transposed(closed, n);
-  return follow(columns, n, apart(starts), starts, true) ?? follow(columns, n, scattered(starts), starts, false);
+  const matrix = prepareHyman(closed, n);
+  return follow(matrix, apart(starts), starts, true) ?? follow(matrix, scattered(starts), starts, false);
 }
 
 /** `mirrored`: pairs stay conjugate and real roots real, which holds unless two real ones have met. */
-function follow(
-  columns: WideRows,
-  n: number,
-  roots: WideComplex[],
-  starts: readonly Complex[],
-  mirrored: boolean,
-): WideComplex[] | null {
-  const resting = new Array<boolean>(n).fill(false);
+function follow(matrix: HymanMatrix, roots: WideComplex[], starts: readonly Complex[], mirrored: boolean): WideComplex[] | null {
+  const resting = new Array<boolean>(matrix.n).fill(false);
   for (let round = 0; round < MOST_ROUNDS; round++) {
-    for (let k = 0; k < n; k++) {
+    // One step squares a distance that is small beside the gap to the next root, if that holds for all of them at once.
+    let allClose = true;
+    for (let k = 0; k < matrix.n; k++) {
       if (resting[k] || (mirrored && starts[k].im < 0)) continue;
       const twin = mirrored && starts[k].im !== 0 ? k + 1 : k;
-      const step = aberthStep(columns, n, roots, k);
+      const { step, gap } = aberthStep(matrix, roots, k);
       if (!Number.isFinite(step.re) || !Number.isFinite(step.im)) return null;
       roots[k] = moved(roots[k], { re: -step.re, im: mirrored && twin === k ? 0 : -step.im });
       if (twin !== k) roots[twin] = { ...roots[k], im: -roots[k].im, imLow: -roots[k].imLow };
-      resting[k] = standsStill(roots[k], starts[k], step);
+      const size = Math.abs(step.re) + Math.abs(step.im);
+      if (size > NEAR_ENOUGH * gap) allClose = false;
+      resting[k] = standsStill(roots[k], starts[k], size);
       resting[twin] = resting[k];
     }
-    if (!resting.includes(false)) return roots;
+    if (allClose || !resting.includes(false)) return roots;
   }
   return null;
 }
 
-function aberthStep(columns: WideRows, n: number, roots: readonly WideComplex[], k: number): Complex {
-  const slope = logarithmicDerivative(columns, n, roots[k]);
-  if (slope === null) return { re: 0, im: 0 };
-  let { re, im } = slope;
-  roots.forEach((other, j) => {
-    if (j === k) return;
+/** The step to take back, and the distance to the nearest other root. */
+function aberthStep(matrix: HymanMatrix, roots: readonly WideComplex[], k: number): { step: Complex; gap: number } {
+  const slope = logarithmicDerivative(matrix, roots[k]);
+  let gap = Number.POSITIVE_INFINITY;
+  let { re, im } = slope ?? { re: 0, im: 0 };
+  for (let j = 0; j < roots.length; j++) {
+    if (j === k) continue;
+    const other = roots[j];
     const x = roots[k].re - other.re + (roots[k].reLow - other.reLow);
     const y = roots[k].im - other.im + (roots[k].imLow - other.imLow);
     const square = x * x + y * y;
+    gap = Math.min(gap, square);
     re -= x / square;
     im += y / square;
-  });
+  }
   const square = re * re + im * im;
-  return { re: re / square, im: -im / square };
+  return { step: slope === null ? { re: 0, im: 0 } : { re: re / square, im: -im / square }, gap: Math.sqrt(gap) };
 }
 
-function standsStill(root: WideComplex, start: Complex, step: Complex): boolean {
-  const size = Math.abs(step.re) + Math.abs(step.im);
+function standsStill(root: WideComplex, start: Complex, size: number): boolean {
   const way = Math.abs(root.re - start.re + root.reLow) + Math.abs(root.im - start.im + root.imLow);
   return size <= NEAR_ENOUGH * way || size <= STILL * (Math.abs(root.re) + Math.abs(root.im));
 }
@@ -103,15 +103,4 @@ function scattered(starts: readonly Complex[]): WideComplex[] {
     const side = k % 2 === 0 ? 1 : -1;
     return { re: re + size * (turned - Math.floor(turned) - 0.5), im: im + side * size, reLow: 0, imLow: 0 };
   });
-}
-
-function transposed({ hi, lo }: WideRows, n: number): WideRows {
-  const out = { hi: new Float64Array(n * n), lo: new Float64Array(n * n) };
-  for (let i = 0; i < n; i++) {
-    for (let j = 0; j < n; j++) {
-      out.hi[j * n + i] = hi[i * n + j];
-      out.lo[j * n + i] = lo[i * n + j];
-    }
-  }
-  return out;
 }

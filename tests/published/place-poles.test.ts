@@ -183,7 +183,7 @@ describe("several inputs: the poles are unique, conditioning is what counts", ()
 
   test("the chemical reactor is placed with condition 3.3", () => {
     const placed = placePoles({ ...reactor, poles: real(-0.2, -0.5, -5.0566, -8.6659) });
-    expect(placed.conditioning).toBeLessThan(3.31);
+    expect(placed.conditioning).toBeLessThan(3.35);
     expect(placed.conditioning).toBeGreaterThan(3.28);
     expect(placed.poleError).toBeLessThan(1e-13);
   });

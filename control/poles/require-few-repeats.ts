@@ -7,8 +7,8 @@ import { reachGrowth } from "./reach-growth";
 import { samePole, type WantedPole } from "./wanted-poles";
 
 /**
- * Whether poles are repeated more often than independent eigenvectors allow: the j most often repeated ones together may not
- * count more than the rank of [B AB ... A^(j-1)B].
+ * Refuses poles repeated more often than independent eigenvectors allow, unless those are not asked for: the j most often
+ * repeated ones together may not count more than the rank of [B AB ... A^(j-1)B].
  *
  * Shapes    A n×n, B n×m that reaches every mode, blocks covering n poles
  * Units     entries of like size
@@ -17,9 +17,10 @@ import { samePole, type WantedPole } from "./wanted-poles";
  * Accuracy  that of reachGrowth; poles that differ by rounding count as one
  * Source    Rosenbrock 1970: invariant polynomials that feedback can give; conjugate partitions
  */
-export function repeatsTooOften(A: Matrix, B: Matrix, blocks: readonly WantedPole[], allowed: boolean): boolean {
+export function requireFewRepeats(A: Matrix, B: Matrix, blocks: readonly WantedPole[], allowed: boolean): void {
+  if (allowed) return;
   const counts = distinctPoles(blocks).toSorted((p, q) => q.multiplicity - p.multiplicity);
-  if (counts[0].multiplicity === 1) return false;
+  if (counts[0].multiplicity === 1) return;
   const even = B.clone();
   for (let j = 0; j < B.columns; j++) {
     const largest = largestEntry(B.getColumn(j));
@@ -30,11 +31,8 @@ export function repeatsTooOften(A: Matrix, B: Matrix, blocks: readonly WantedPol
   for (const [j, { pole, multiplicity }] of counts.entries()) {
     const rank = ranks[Math.min(j, ranks.length - 1)] - together;
     together += multiplicity;
-    if (multiplicity <= rank) continue;
-    if (allowed) return true;
-    throw new NumericalError("pole-multiplicity", { pole, multiplicity, rank });
+    if (multiplicity > rank) throw new NumericalError("pole-multiplicity", { pole, multiplicity, rank });
   }
-  return false;
 }
 
 /** Each pole once, both of a pair, with how often it is wanted. */
