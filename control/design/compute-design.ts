@@ -4,11 +4,11 @@ import type { PlantModel } from "../plant/model";
 import type { Part } from "../plant/report";
 import { scalePlant } from "../plant/scale-plant";
 import { toRows } from "../plant/to-matrix";
-import type { InputRoom } from "../response/loop-figures";
 import { respond } from "../response/respond";
 import type { Evidence, ReferenceEvidence } from "./evidence";
 import { findGain } from "./find-gain";
 import { findObserver } from "./find-observer";
+import { inputRoom } from "./input-room";
 import { plantMatrices } from "./plant-matrices";
 import type { Recipe } from "./recipe";
 import { reportPoles } from "./report-poles";
@@ -75,12 +75,4 @@ function refusedThroughout(reason: Part<never>, recipe: Recipe): Evidence {
 
 function referenceEvidence({ F, steadyState, reached, obstacle }: ReferenceGain): ReferenceEvidence {
   return { F: toRows(F), steadyState: toRows(steadyState), reached, obstacle };
-}
-
-/** Way from the operating point to each limit of each input. */
-function inputRoom({ inputs, operatingPoint }: PlantModel): InputRoom[] {
-  return inputs.map(({ lower, upper }, j) => {
-    const held = operatingPoint.inputs[j] ?? 0;
-    return { up: upper === null ? null : upper - held, down: lower === null ? null : held - lower };
-  });
 }
