@@ -71,6 +71,8 @@ function placeOf(frequency: number, period: number | null): Complex {
  * Singular values at every point, largest first, of the response or of the identity plus it: row k holds min(p, m) of them.
  * Points where the response is unbounded have zeros, as in the response.
  *
+ * Shapes    k points of p×m → k × min(p, m), row-major
+ * Units     those of the response
  * Throws    shape-mismatch when the identity is to be added to a response that is not square; no-convergence; too-large
  * Accuracy  c ε of the largest at each point
  * Source    as `complexSingularValues`

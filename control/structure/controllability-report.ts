@@ -26,7 +26,9 @@ export function controllabilityReport(A: Matrix, B: Matrix): RankReport {
  * The same for what outputs see: the controllability of the dual pair (A', C').
  *
  * Shapes    A n×n, C p×n → as `controllabilityReport`; the direction is a vector of states that the outputs see least
+ * Units     as `controllabilityReport`
  * Throws    shape-mismatch; not-finite; no-convergence
+ * Accuracy  as `controllabilityReport` of the dual pair
  * Source    Kalman, Contributions to the Theory of Optimal Control, 1960, for the duality
  */
 export function observabilityReport(A: Matrix, C: Matrix): RankReport {

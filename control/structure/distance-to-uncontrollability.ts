@@ -71,6 +71,7 @@ export function distanceToUncontrollability(A: Matrix, B: Matrix, evaluations = 
  * Shapes    A n×n, C p×n
  * Units     as A and C
  * Throws    as `distanceToUncontrollability`
+ * Accuracy  as `distanceToUncontrollability`
  * Source    Kalman, Contributions to the Theory of Optimal Control, 1960, for the duality
  */
 export function distanceToUnobservability(A: Matrix, C: Matrix, evaluations = mostEvaluations(A.rows)): DistanceBracket {
