@@ -2,6 +2,7 @@ import { Matrix } from "ml-matrix";
 import * as core from "@/control/index";
 import { isExactlyStable } from "./exact-stability";
 import type { HostileProblem } from "./hostile-problem";
+import { marginCalls } from "./margin-calls";
 
 /** What a call gave back, the fact that it claims about it, and the loop that it claims to be stable. */
 export type Answer = {
@@ -133,6 +134,19 @@ const structure: Record<string, CoreCall> = {
   hankelValues: (problem) => ({ value: core.hankelValues(decaying(problem)) }),
 };
 
+const pairing: Record<string, CoreCall> = {
+  relativeGainArray: ({ A }) => ({ value: core.relativeGainArray(A) }),
+  relativeGainAtRest: ({ A, C, D, timeBase, p }) => ({
+    value: core.relativeGainAtRest(
+      A,
+      C.transpose(),
+      C,
+      Matrix.add(Matrix.eye(p), Matrix.mul(D.mmul(D.transpose()), 0.5)),
+      timeBase,
+    ),
+  }),
+};
+
 const documents: Record<string, CoreCall> = {
   checkPlant: ({ model }) => {
     const checks = core.checkPlant(model);
@@ -157,6 +171,8 @@ export const CORE_CALLS: Readonly<Record<string, CoreCall>> = {
   ...observers,
   ...dynamics,
   ...structure,
+  ...pairing,
+  ...marginCalls,
   ...documents,
 };
 
