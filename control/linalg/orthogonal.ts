@@ -2,6 +2,7 @@ import { Matrix } from "ml-matrix";
 import { largestEntry } from "./flat";
 import { orthogonaliseRows } from "./orthogonalise-rows";
 import { requireFinite } from "./require";
+import { requireRepresentable } from "./require-representable";
 
 /** Orthonormal columns: `range` spans the columns of M as far as they stand above the tolerance, `complement` what is left. */
 export type OrthonormalBasis = {
@@ -16,7 +17,7 @@ export type OrthonormalBasis = {
  *
  * Shapes    M r×c → range r×rank, complement r×(r - rank), singularValues min(r, c), largest first
  * Units     tolerance and singularValues as M (default tolerance max(r, c) ε times the largest singular value)
- * Throws    not-finite; no-convergence
+ * Throws    not-finite; no-convergence; too-large when a singular value is beyond the largest double
  * Accuracy  bases orthonormal to c r ε; the rank is that of a matrix within the tolerance of M
  * Source    Golub & Van Loan, Matrix Computations, 4th ed. 2013, section 5.4.1; completed by Householder reflections, 5.2
  */
@@ -29,6 +30,7 @@ export function orthonormalBasis(M: Matrix, tolerance?: number): OrthonormalBasi
     re: Array.from({ length: source.rows }, (_, i) => Float64Array.from(source.getRow(i))),
     im: null,
   });
+  requireRepresentable("singular value", values);
   const limit = tolerance ?? Math.max(M.rows, M.columns) * Number.EPSILON * (values[0] ?? 0);
   const rank = values.filter((value) => value > limit).length;
   const vectors = wide ? turn.re.slice(0, rank) : rows.re.slice(0, rank).map(unit);

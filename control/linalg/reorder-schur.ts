@@ -1,7 +1,10 @@
 import type { Matrix } from "ml-matrix";
 import type { Complex } from "../plant/model";
+import { safeShift } from "./balance";
 import { flatTranspose, fromFlat, toFlat } from "./flat";
+import { timesPowerOfTwo } from "./power-of-two";
 import type { RealSchur } from "./real-schur";
+import { requireRepresentable } from "./require-representable";
 import { blockSize, schurValues } from "./schur-values";
 import { swapBlocks } from "./swap-blocks";
 
@@ -12,7 +15,8 @@ export type ReorderedSchur = { readonly Q: Matrix; readonly T: Matrix; readonly 
  *
  * Shapes    schur of an n×n matrix → Q n×n, T n×n, n values
  * Units     those of the given form
- * Throws    no-convergence when two blocks are too close to be told apart, so that their swap is not backward stable
+ * Throws    no-convergence when two blocks are too close to be told apart, so that their swap is not backward stable;
+ *           too-large when an entry of T is beyond the largest double
  * Accuracy  Q T Q' moves by at most c n ε |T|; at most n² swaps; a pair goes as a whole when either of it is selected
  * Source    Bai & Demmel, On swapping diagonal blocks in real Schur form, Linear Algebra Appl. 186 (1993) 73-95
  */
@@ -20,7 +24,16 @@ export function reorderSchur(schur: RealSchur, select: (value: Complex) => boole
   const n = schur.T.rows;
   const t = toFlat(schur.T);
   const qt = flatTranspose(toFlat(schur.Q), n, n);
-  const selected = reorderFlat(t, qt, n, select);
+  const shift = safeShift(t);
+  const scale = (by: number) => {
+    for (let at = 0; at < t.length; at++) t[at] = timesPowerOfTwo(t[at], by);
+  };
+  if (shift !== 0) scale(shift);
+  const selected = reorderFlat(t, qt, n, ({ re, im }) =>
+    select({ re: timesPowerOfTwo(re, -shift), im: timesPowerOfTwo(im, -shift) }),
+  );
+  if (shift !== 0) scale(-shift);
+  requireRepresentable("schur-form", t);
   return { Q: fromFlat(flatTranspose(qt, n, n), n, n), T: fromFlat(t, n, n), values: schurValues(t, n), selected };
 }
 

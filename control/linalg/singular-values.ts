@@ -4,20 +4,23 @@ import type { ComplexMatrix, ComplexVector } from "./complex";
 import { largestEntry } from "./flat";
 import { orthogonaliseRows, type Rows } from "./orthogonalise-rows";
 import { requireFinite, requireShape } from "./require";
+import { requireRepresentable } from "./require-representable";
 
 /**
  * Singular values, largest first.
  *
  * Shapes    M r×c → min(r, c) values
  * Units     those of M
- * Throws    not-finite; no-convergence
+ * Throws    not-finite; no-convergence; too-large when a value is beyond the largest double
  * Accuracy  c ε of the largest; better where rows (of a wide M) or columns (of a tall one) differ in size
  * Source    Demmel & Veselic, SIAM J. Matrix Anal. Appl. 13 (1992) 1204-1245
  */
 export function singularValues(M: Matrix): number[] {
   requireFinite("M", M);
   const wide = M.rows <= M.columns ? M : M.transpose();
-  return orthogonaliseRows({ re: rowsOf(wide), im: null }).values;
+  const { values } = orthogonaliseRows({ re: rowsOf(wide), im: null });
+  requireRepresentable("singular value", values);
+  return values;
 }
 
 /** M right = value left and left* M = value right*, both vectors of unit length. */
@@ -48,6 +51,7 @@ function smallestOfWide(M: ComplexMatrix): SingularTriple {
   const real = M.im.to1DArray().every((entry) => entry === 0);
   const { values, rows, turn } = orthogonaliseRows({ re: rowsOf(M.re), im: real ? null : rowsOf(M.im) });
   const last = values.length - 1;
+  requireRepresentable("singular value", values.slice(last));
   if (last < 0) throw new NumericalError("shape-mismatch", { matrix: "re", given: [M.re.rows, M.re.columns] });
   const left = conjugate(rowOf(turn, last));
   const row = rowOf(rows, last);

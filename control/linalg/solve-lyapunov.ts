@@ -1,10 +1,10 @@
 import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
-import { balance } from "./balance";
+import { balance, safeShift } from "./balance";
 import { type Split, split, type Wide, widen, wideProduct, wideTranspose } from "./double-double";
 import { flatProduct, flatTranspose, fromFlat, largestEntry, toFlat } from "./flat";
 import { flatNorm } from "./norms";
-import { powerOfTwo } from "./power-of-two";
+import { powerOfTwo, timesPowerOfTwo } from "./power-of-two";
 import { type FlatSchur, flatSchur } from "./real-schur";
 import { requireFinite, requireShape, requireSquare, requireSymmetric } from "./require";
 import { solveTriangularLyapunov } from "./triangular-lyapunov";
@@ -36,16 +36,23 @@ export function solveLyapunov({ A, Q, timeBase }: LyapunovProblem): LyapunovSolu
   requireSymmetric("Q", Q);
   const n = A.rows;
   const sampled = timeBase === "sampled";
-  const { matrix: a, order, scale, shift } = balance(toFlat(A), n);
-  if (sampled && shift !== 0) throw new NumericalError("too-large", { what: "A", limit: powerOfTwo(300) });
-  const q = balancedWeight(toFlat(Q), n, order, scale);
+  const balanced = balance(toFlat(A), n);
+  const { order, scale } = balanced;
+  if (sampled && balanced.shift < 0) throw new NumericalError("too-large", { what: "A", limit: powerOfTwo(300) });
+  // A sampled equation is not homogeneous in A: of a tiny A it is solved as it stands.
+  const shift = sampled ? 0 : balanced.shift;
+  const a = sampled ? balanced.matrix.map((entry) => timesPowerOfTwo(entry, -balanced.shift)) : balanced.matrix;
+  const weight = balancedWeight(toFlat(Q), n, order, scale);
+  // X is proportional to Q, which is brought to ordinary size.
+  const lift = safeShift(weight);
+  const q = lift === 0 ? weight : weight.map((entry) => timesPowerOfTwo(entry, lift));
   const { x, residual } = refine(a, q, n, sampled);
   const bound = 4 * n * Number.EPSILON;
   if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
   const whole = new Float64Array(n * n);
-  const factor = powerOfTwo(shift);
   for (let i = 0; i < n; i++)
-    for (let j = 0; j < n; j++) whole[order[i] * n + order[j]] = x[i * n + j] * scale[i] * scale[j] * factor;
+    for (let j = 0; j < n; j++)
+      whole[order[i] * n + order[j]] = timesPowerOfTwo(x[i * n + j] * scale[i] * scale[j], shift - lift);
   if (!whole.every(Number.isFinite)) throw new NumericalError("too-large", { what: "solution", limit: Number.MAX_VALUE });
   return { X: fromFlat(whole, n, n), residual, bound };
 }
