@@ -58,6 +58,8 @@ export {
 export { type GramianProblem, type Gramians, gramians } from "./structure/gramians";
 export { type HankelValues, hankelValues } from "./structure/hankel-values";
 export { modes } from "./structure/modes";
+export { relativeGainArray } from "./structure/relative-gain-array";
+export { type RelativeGainAtRest, relativeGainAtRest } from "./structure/relative-gain-at-rest";
 export { transmissionZeros } from "./structure/transmission-zeros";
 export type { TransmissionZero } from "./structure/zero-directions";
 

@@ -54,8 +54,10 @@ export type ZeroReport = {
 export type CouplingReport = {
   /** axes × axes: share of the Frobenius norm of scaled A that stands in each block, row axis acted on by column axis. Last row and column: signals of no axis. */
   readonly blocks: Rows;
-  /** Relative gain array at zero frequency from inputs to commanded quantities, where square and invertible; else null. */
+  /** Relative gain array at zero frequency from inputs to commanded quantities, or its limit there; null where neither exists. */
   readonly relativeGain: Rows | null;
+  /** What the array is: of the gains at rest, the limit of a plant that integrates or blocks at rest, or why there is none. */
+  readonly relativeGainBasis?: "at-rest" | "limit" | "not-square" | "no-limit";
 };
 
 export type ScalingReport = {

@@ -1,12 +1,10 @@
-import { NumericalError } from "../errors";
 import { largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import type { PlantModel, Rows } from "../plant/model";
 import type { CouplingReport } from "../plant/report";
 import type { ScaledPlant } from "../plant/scale-plant";
 import { toMatrix, toRows } from "../plant/to-matrix";
-import { gainAtRest } from "./gain-at-rest";
-import { relativeGainArray } from "./relative-gain-array";
+import { relativeGainAtRest } from "./relative-gain-at-rest";
 
 /**
  * How strongly the axes act on each other: share of the Frobenius norm of the scaled A in each block, and the relative
@@ -15,10 +13,10 @@ import { relativeGainArray } from "./relative-gain-array";
  * Shapes    r axes → blocks (r + 1)×(r + 1), row axis acted on by column axis, the last for signals of no axis; array q×q or null
  * Units     none
  * Throws    shape-mismatch; not-finite
- * Accuracy  blocks within a few ε; the array is null where the plant has an integrator, is not square or has no inverse
+ * Accuracy  blocks within a few ε; the array as `relativeGainAtRest`, null where that has none or the plant is not square
  */
 export function couplingReport(model: PlantModel, scaled: ScaledPlant): CouplingReport {
-  return { blocks: blockShares(model, scaled), relativeGain: gainArray(model, scaled) };
+  return { blocks: blockShares(model, scaled), ...relativeGains(model, scaled) };
 }
 
 function blockShares(model: PlantModel, { A }: ScaledPlant): Rows {
@@ -37,9 +35,11 @@ function blockShares(model: PlantModel, { A }: ScaledPlant): Rows {
   );
 }
 
-function gainArray(model: PlantModel, { A, B, stateScale, inputScale }: ScaledPlant): Rows | null {
+type RelativeGains = Pick<CouplingReport, "relativeGain" | "relativeGainBasis">;
+
+function relativeGains(model: PlantModel, { A, B, stateScale, inputScale }: ScaledPlant): RelativeGains {
   const [n, m, q] = [model.states.length, model.inputs.length, model.commanded.length];
-  if (q !== m) return null;
+  if (q !== m) return { relativeGain: null, relativeGainBasis: "not-square" };
   const H = toMatrix("H", model.H, q, n);
   const J = toMatrix("J", model.J, q, m);
   // Rows of z keep their units: the array does not depend on them.
@@ -47,10 +47,7 @@ function gainArray(model: PlantModel, { A, B, stateScale, inputScale }: ScaledPl
     for (let j = 0; j < n; j++) H.set(k, j, H.get(k, j) * stateScale[j]);
     for (let j = 0; j < m; j++) J.set(k, j, J.get(k, j) * inputScale[j]);
   }
-  try {
-    return toRows(relativeGainArray(gainAtRest(A, B, H, J, model.timeBase)));
-  } catch (error) {
-    if (error instanceof NumericalError && (error.code === "singular" || error.code === "too-large")) return null;
-    throw error;
-  }
+  const { array, limit } = relativeGainAtRest(A, B, H, J, model.timeBase);
+  if (array === null) return { relativeGain: null, relativeGainBasis: "no-limit" };
+  return { relativeGain: toRows(array), relativeGainBasis: limit ? "limit" : "at-rest" };
 }

@@ -51,6 +51,8 @@ export const GainEvidence = z.strictObject({
   P: inUnit(Rows.nullable(), "unit of the cost over the units of both states"),
   eigenvectorCondition: MaybePlain,
   poleError: MaybePlain,
+  poleShiftPerGainDigit: MaybePlain.optional(),
+  gainNorm: Plain.optional(),
 });
 
 export const ReferenceEvidence = z.strictObject({
@@ -201,7 +203,13 @@ export const ChecksReply = z.strictObject({
   stabilizable: part(z.boolean()),
   detectable: part(z.boolean()),
   zeros: part(z.array(ZeroReport)),
-  coupling: part(z.strictObject({ blocks: PlainRows, relativeGain: PlainRows.nullable() })),
+  coupling: part(
+    z.strictObject({
+      blocks: PlainRows,
+      relativeGain: PlainRows.nullable(),
+      relativeGainBasis: z.enum(["at-rest", "limit", "not-square", "no-limit"]).optional(),
+    }),
+  ),
   scaling: z.strictObject({
     spreadAsGiven: Plain,
     spreadScaled: Plain,

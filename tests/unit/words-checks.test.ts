@@ -224,6 +224,77 @@ describe("findings", () => {
     expect(sentence).toContain("y1 with u2 (1.05) and y2 with u1 (1.05) pair best");
   });
 
+  test("a zero in the way names the joint motion of the inputs that it blocks and the outputs that feel it", () => {
+    // [1/(s+1), 2/(s+3); 1/(s+1), 1/(s+1)] has a zero at 1 that no element shows.
+    const hidden = smallPlant({
+      A: [
+        [-1, 0, 0],
+        [0, -1, 0],
+        [0, 0, -3],
+      ],
+      B: [
+        [1, 0],
+        [0, 1],
+        [0, 1],
+      ],
+      C: [
+        [1, 0, 2],
+        [1, 1, 0],
+      ],
+    });
+    expect(finding(hidden, "zeros").sentence).toContain(
+      "At 1 u1 and u2 moving as 1 : −1 of their largest acceptable deviations are blocked, and y1 and y2 feel it most.",
+    );
+    const single = smallPlant({
+      A: [
+        [0, 1],
+        [0, 0],
+      ],
+      B: [[0], [1]],
+      C: [[-3, 1]],
+    });
+    expect(finding(single, "zeros").sentence).not.toContain("blocked");
+  });
+
+  test("an integrating plant is paired by its limit, and one whose relative gains have none says why", () => {
+    const tables = smallPlant({
+      A: [
+        [0, 0],
+        [0, 0],
+      ],
+      B: [
+        [2, 1],
+        [1, 3],
+      ],
+      C: [
+        [1, 0],
+        [0, 1],
+      ],
+    });
+    expect(finding(tables, "coupling").sentence).toContain(
+      "By relative gain towards low frequencies, y1 with u1 (1.2) and y2 with u2 (1.2) pair best",
+    );
+    const masses = smallPlant({
+      A: [
+        [0, 0, 1, 0],
+        [0, 0, 0, 1],
+        [-1, 1, 0, 0],
+        [1, -1, 0, 0],
+      ],
+      B: [
+        [0, 0],
+        [0, 0],
+        [1, 0],
+        [0, 1],
+      ],
+      C: [
+        [1, 0, 0, 0],
+        [0, 1, 0, 0],
+      ],
+    });
+    expect(finding(masses, "coupling").sentence).toContain("Relative gains have no value at rest");
+  });
+
   test("a suspicious time base is asked about first", () => {
     const sampled = smallPlant({
       A: [

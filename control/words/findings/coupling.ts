@@ -6,11 +6,15 @@ import { type Finding, findingOf } from "./finding";
 
 /** Which axis acts most on which other, and how inputs and commanded quantities pair up at rest. */
 export function couplingFinding({ coupling }: PlantChecks, model: PlantModel): Finding {
-  return findingOf("coupling", model, coupling, ({ blocks, relativeGain }) => {
+  return findingOf("coupling", model, coupling, ({ blocks, relativeGain, relativeGainBasis }) => {
     const { headline, sentence } = betweenAxes(blocks, model);
-    return { tone: "met", headline, sentence: `${sentence}${relativeGain === null ? "" : pairing(relativeGain, model)}` };
+    const pairs = relativeGain === null ? "" : pairing(relativeGain, model, relativeGainBasis === "limit");
+    return { tone: "met", headline, sentence: `${sentence}${relativeGainBasis === "no-limit" ? UNPAIRED : pairs}` };
   });
 }
+
+const UNPAIRED =
+  " Relative gains have no value at rest: towards low frequencies the inputs act on the commanded quantities alike, and no pairing of single loops stands out.";
 
 function betweenAxes(blocks: Rows, model: PlantModel): { headline: string; sentence: string } {
   const names = [...model.axes.map(({ name }) => name), "signals of no axis"];
@@ -35,7 +39,7 @@ function betweenAxes(blocks: Rows, model: PlantModel): { headline: string; sente
 }
 
 /** Input and commanded quantity whose relative gain is nearest 1 first, then the best of what is left. */
-function pairing(gain: Rows, model: PlantModel): string {
+function pairing(gain: Rows, model: PlantModel, limit: boolean): string {
   const size = gain.length;
   if (size < 2) return "";
   const candidates = gain.flatMap((row, quantity) => row.map((value, input) => ({ quantity, input, value })));
@@ -50,5 +54,5 @@ function pairing(gain: Rows, model: PlantModel): string {
       const commanded = model.commanded[quantity]?.name ?? `quantity ${quantity + 1}`;
       return `${commanded} with ${model.inputs[input]?.name ?? `input ${input + 1}`} (${formatNumber(value, 3)})`;
     });
-  return ` By relative gain at rest, ${joinNames(words)} pair best; the farther from 1, the more single loops would disturb each other.`;
+  return ` By relative gain ${limit ? "towards low frequencies" : "at rest"}, ${joinNames(words)} pair best; the farther from 1, the more single loops would disturb each other.`;
 }

@@ -5,6 +5,7 @@ import { continuousPole, stabilityMargin } from "../../structure/continuous-pole
 import { formatComplex } from "../format-complex";
 import { formatFrequency } from "../format-number";
 import { joinNames } from "../join-names";
+import { blockedMotion } from "./blocked-motion";
 import { type Finding, findingOf, plural } from "./finding";
 
 /** Zeros from all inputs to all measured outputs, and what they forbid. */
@@ -17,13 +18,15 @@ export function zerosFinding({ zeros }: PlantChecks, model: PlantModel): Finding
           : "Between all inputs and all outputs nothing is blocked at any frequency.";
       return { tone: "met", headline: "No zeros", sentence };
     }
-    const outside = all.filter(({ minimumPhase }) => !minimumPhase).map(({ value }) => value);
-    if (outside.length > 0)
+    const outside = all.filter(({ minimumPhase }) => !minimumPhase);
+    if (outside.length > 0) {
+      const values = outside.map(({ value }) => value);
       return {
         tone: "caution",
         headline: `${plural(outside.length, "zero")} in the way`,
-        sentence: consequences(outside, model),
+        sentence: `${consequences(values, model)}${blockedMotion(outside, model)}`,
       };
+    }
     const place = all.length === 1 ? "It lies" : "All lie";
     return {
       tone: "met",

@@ -136,14 +136,8 @@ const structure: Record<string, CoreCall> = {
 
 const pairing: Record<string, CoreCall> = {
   relativeGainArray: ({ A }) => ({ value: core.relativeGainArray(A) }),
-  relativeGainAtRest: ({ A, C, D, timeBase, p }) => ({
-    value: core.relativeGainAtRest(
-      A,
-      C.transpose(),
-      C,
-      Matrix.add(Matrix.eye(p), Matrix.mul(D.mmul(D.transpose()), 0.5)),
-      timeBase,
-    ),
+  relativeGainAtRest: ({ A, C, timeBase }) => ({
+    value: core.relativeGainAtRest(A, C.transpose(), C, Matrix.eye(C.rows), timeBase),
   }),
 };
 
