@@ -1,4 +1,5 @@
-import { useAccelerator as switchAccelerator } from "@/control/accelerator/accelerator";
+import { switchAccelerator } from "@/control/accelerator/accelerator";
+import { frequencyCases } from "./frequency-cases";
 import { placementCases } from "./placement-cases";
 import { responseCases } from "./response-cases";
 import { riccatiCases } from "./riccati-cases";
@@ -45,6 +46,13 @@ export async function compareSpeed(other: OtherClock): Promise<void> {
   const heads = other ? ["ours", "SciPy", "ratio", "target"] : ["ours"];
   const widths = [10, 10, 8, 6];
   console.log(`\n${"processor milliseconds".padEnd(64)} ${heads.map((head, k) => head.padStart(widths[k])).join(" ")}`);
-  const groups = [() => riccatiCases(false), () => riccatiCases(true), placementCases, spectrumCases, responseCases];
+  const groups = [
+    () => riccatiCases(false),
+    () => riccatiCases(true),
+    placementCases,
+    spectrumCases,
+    frequencyCases,
+    responseCases,
+  ];
   for (const cases of groups) for (const each of cases()) console.log(await timedLine(each, other));
 }

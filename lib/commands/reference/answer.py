@@ -53,9 +53,13 @@ def step_response(A, B, C, horizon, moments, stride):
 
 
 def frequency_response(A, B, C, frequencies):
-    identity = numpy.eye(A.shape[0])
-    values = [C @ linalg.solve(1j * w * identity - A, B) for w in frequencies]
-    return [[[[x.real, x.imag] for x in row] for row in value] for value in values]
+    values, scales = [], []
+    for w in frequencies:
+        shifted = 1j * w * numpy.eye(A.shape[0]) - A
+        values.append(C @ linalg.solve(shifted, B))
+        reach = linalg.norm(linalg.inv(shifted))
+        scales.append(float(reach * reach * linalg.norm(shifted) * linalg.norm(B) * linalg.norm(C)))
+    return {"values": [[[[x.real, x.imag] for x in row] for row in value] for value in values], "scales": scales}
 
 
 ROUTINES = {

@@ -2,6 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { seededUniform } from "@/tests/helpers/seeded";
 import type { Kind, Question } from "./kind";
 import { exponential, hold } from "./kinds/exponential";
+import { response } from "./kinds/frequency-response";
 import { lyapunov } from "./kinds/lyapunov";
 import { placement } from "./kinds/placement";
 import { riccati } from "./kinds/riccati";
@@ -78,6 +79,7 @@ export async function compareAll(ask: Ask): Promise<Row[]> {
     prepared(stepResponse, 7),
     prepared(spectrum, 8),
     prepared(singular, 9),
+    prepared(response, 10),
   ];
   const { answers } = await ask(kinds.flatMap(({ questions }) => questions));
   let from = 0;

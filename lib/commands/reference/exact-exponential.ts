@@ -2,7 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { type Exact, exactly } from "./exact-matrix";
 
 /** Bits behind the point: far beyond what squaring can lose here. */
-const FRACTION = 400;
+export const FRACTION = 400;
 const TERMS = 60;
 /** Scaled below 2^-8, sixty terms of the series leave less than the last bit. */
 const SQUARINGS = 8;
@@ -16,12 +16,12 @@ export function fixedProduct(a: Fixed, b: Fixed): Fixed {
 }
 
 /** Whole numbers in units of 2^-FRACTION. */
-export function toFixed({ rows, exponent }: Exact): Fixed {
+function toFixed({ rows, exponent }: Exact): Fixed {
   const shift = exponent + FRACTION;
   return rows.map((row) => row.map((x) => (shift >= 0 ? x << BigInt(shift) : x >> BigInt(-shift))));
 }
 
-export const fixed = (M: Matrix): Fixed => toFixed(exactly(M));
+export const fixed = (M: Parameters<typeof exactly>[0]): Fixed => toFixed(exactly(M));
 
 export function fixedDifference(a: Fixed, b: Matrix): number[] {
   const other = fixed(b);
