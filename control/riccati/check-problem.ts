@@ -1,7 +1,7 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { flatCholesky } from "../linalg/cholesky";
-import { toFlat } from "../linalg/flat";
+import { largestEntry, toFlat } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { requireFinite, requireShape, requireSymmetric } from "../linalg/require";
 import { symmetricEigenvalues } from "../linalg/symmetric-eigenvalues";
@@ -69,8 +69,9 @@ export function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | 
     return diagonal === 0 ? 1 : powerOfTwo(-Math.round(exponentOf(diagonal) / 2));
   });
   const block = new Float64Array(size * size);
-  for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) block[i * size + j] = entry(i, j) * scale[i] * scale[j];
-  if (!block.every(Number.isFinite)) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
+  for (let i = 0; i < size; i++)
+    for (let j = 0; j <= i; j++) block[i * size + j] = block[j * size + i] = entry(i, j) * scale[i] * scale[j];
+  if (!Number.isFinite(largestEntry(block))) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
   // Rounding of entries typed in decimal, or of a product C'C, is a few n ε of the unit diagonal.
   const tolerance = 16 * size * Number.EPSILON;
   if (plainlySemidefinite(block.slice(), size)) return null;

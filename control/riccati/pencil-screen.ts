@@ -31,12 +31,18 @@ export function pencilEstimate({ t }: FlatSchur, n: number, reached: Float64Arra
 
 /** A reflection of columns i - 1 (below which T may have an entry), i and those of B puts all of row i into column i. */
 function clearRow(re: Float64Array, im: Float64Array, n: number, width: number, i: number): void {
-  const places = [i, ...(i > 0 ? [i - 1] : [])];
-  for (let j = n; j < width; j++) places.push(j);
-  const vr = Float64Array.from(places, (j) => re[i * width + j]);
-  const vi = Float64Array.from(places, (j) => -im[i * width + j]);
+  const length = width - n + 2;
+  const vr = new Float64Array(length);
+  const vi = new Float64Array(length);
+  const at = i * width;
+  for (let k = 0; k < length; k++) {
+    const place = at + (k < 2 ? i - k : n + k - 2);
+    if (i === 0 && k === 1) continue;
+    vr[k] = re[place];
+    vi[k] = -im[place];
+  }
   let square = 0;
-  for (let k = 0; k < vr.length; k++) square += vr[k] * vr[k] + vi[k] * vi[k];
+  for (let k = 0; k < length; k++) square += vr[k] * vr[k] + vi[k] * vi[k];
   if (square === 0) return;
   const norm = Math.sqrt(square);
   const first = Math.sqrt(vr[0] * vr[0] + vi[0] * vi[0]);
@@ -44,20 +50,33 @@ function clearRow(re: Float64Array, im: Float64Array, n: number, width: number, 
   vr[0] += cr * norm;
   vi[0] += ci * norm;
   const scale = 1 / (square + norm * first);
-  for (let row = 0; row <= i; row++) {
-    const at = row * width;
-    let [sr, si] = [0, 0];
-    for (let k = 0; k < places.length; k++) {
-      const [x, y] = [re[at + places[k]], im[at + places[k]]];
-      sr += x * vr[k] - y * vi[k];
-      si += x * vi[k] + y * vr[k];
-    }
-    sr *= scale;
-    si *= scale;
-    for (let k = 0; k < places.length; k++) {
-      re[at + places[k]] -= sr * vr[k] + si * vi[k];
-      im[at + places[k]] -= si * vr[k] - sr * vi[k];
-    }
+  for (let row = 0; row <= i; row++) reflectRow(re, im, row * width, i, n, vr, vi, scale);
+}
+
+function reflectRow(
+  re: Float64Array,
+  im: Float64Array,
+  at: number,
+  i: number,
+  n: number,
+  vr: Float64Array,
+  vi: Float64Array,
+  scale: number,
+): void {
+  const own = at + i;
+  const before = i > 0 ? own - 1 : own;
+  const inputs = at + n - 2;
+  let sr = re[own] * vr[0] - im[own] * vi[0] + re[before] * vr[1] - im[before] * vi[1];
+  let si = re[own] * vi[0] + im[own] * vr[0] + re[before] * vi[1] + im[before] * vr[1];
+  for (let k = 2, from = inputs + 2; k < vr.length; k++, from++) {
+    sr += re[from] * vr[k] - im[from] * vi[k];
+    si += re[from] * vi[k] + im[from] * vr[k];
+  }
+  sr *= scale;
+  si *= scale;
+  for (let k = 0, from = own; k < vr.length; k++, from = k === 1 ? before : inputs + k) {
+    re[from] -= sr * vr[k] + si * vi[k];
+    im[from] -= si * vr[k] - sr * vi[k];
   }
 }
 

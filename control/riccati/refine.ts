@@ -5,7 +5,14 @@ import { type Loop, solveInLoop, stableLoop } from "./closed-loop";
 import { accurateGain, type Gain } from "./gain";
 import { bestStepLength } from "./line-search";
 import type { Start } from "./problem";
-import { errorMajorant, type SolutionError, solutionError, uniformMajorant } from "./refined-error";
+import {
+  type Approximation,
+  errorMajorant,
+  isRounding,
+  type SolutionError,
+  solutionError,
+  uniformMajorant,
+} from "./refined-error";
 import { type GainSystem, gainSystem, riccatiResidual, type SplitProblem } from "./residual";
 
 export type Refined = {
@@ -22,8 +29,12 @@ export type Refined = {
 };
 
 const STEP_LIMIT = 60;
+const SLOW_LIMIT = 25;
 const SETTLE_LIMIT = 12;
+const HALVINGS = 12;
 const FREEZE_BELOW = 1e-7;
+/** A fall of the steps that no closed loop on the boundary has. */
+const CONTRACTING = 1e-3;
 const SETTLE_ABOVE = 1e-6;
 const SEARCH_ABOVE = 1e-2;
 /** Relative error of the rows of X and K that shows in no double, even of an entry 1e-6 of its row. */
@@ -31,6 +42,7 @@ const ENOUGH = 1e-22;
 const STANDSTILL_BELOW = 1e-12;
 /** The gain that a step holds as data must be right to rounding: its error enters squared. */
 const GAIN_DATA = 0.25 * Number.EPSILON;
+const GAIN_RESULT = Number.EPSILON * Number.EPSILON;
 
 /**
  * Newton's method on the Riccati equation with double-double residuals and Lyapunov solves in double.
@@ -45,41 +57,80 @@ const GAIN_DATA = 0.25 * Number.EPSILON;
 export function refine(problem: SplitProblem, start: Start, units: Float64Array): Refined {
   const { n } = problem;
   const x = widen("x" in start ? start.x : new Float64Array(n * n));
-  let loop: Loop | null = null;
+  let held: HeldLoop | null = null;
   let amplification: Float64Array | null = null;
   let last = Number.POSITIVE_INFINITY;
   let slow = 0;
-  if ("gain" in start) settle(problem, x, start.gain, stableLoop(problem, start.gain));
+  if ("gain" in start) {
+    held = { k: start.gain, loop: stableLoop(problem, start.gain) };
+    settle(problem, x, held);
+  }
   for (let step = 1; step <= STEP_LIMIT; step++) {
     const system = gainSystem(problem, x);
     const gain = accurateGain(problem, system, GAIN_DATA);
-    if (!loop || last > FREEZE_BELOW) {
-      loop = stableLoop(problem, gain.k.hi);
+    if (!held || last > FREEZE_BELOW) {
+      held = loopTowards(problem, held, gain.k.hi);
       amplification = null;
+      if (held.k !== gain.k.hi) {
+        settle(problem, x, held);
+        continue;
+      }
     }
+    const { loop } = held;
     const residual = riccatiResidual(problem, x, gain.k.hi, system);
     const now = { x, system, gain, loop: loop.matrix, residual };
-    if (last <= FREEZE_BELOW) {
-      amplification ??= solveInLoop(problem, loop, flatIdentity(n));
-      const error = solutionError(problem, now, uniformMajorant(problem, now, amplification), units);
-      if (error.rows <= ENOUGH) return { ...now, error, amplification };
-    }
     const change = solveInLoop(problem, loop, residual);
     const size = relativeSize(change, x.hi, n);
     if (!Number.isFinite(size)) break;
-    // Rounding is reached: a further step would do no better than the last.
-    if (size <= STANDSTILL_BELOW && !(size < 0.25 * last)) {
+    // A further step would do no better than the last: because rounding is reached, or because steps only halve.
+    if (size <= STANDSTILL_BELOW && !(size < 0.25 * last) && isRounding(problem, now)) {
       amplification ??= solveInLoop(problem, loop, flatIdentity(n));
       const majorant = solveInLoop(problem, loop, errorMajorant(problem, now));
-      return { ...now, error: solutionError(problem, now, majorant, units), amplification };
+      const last = { ...now, gain: accurateGain(problem, system, GAIN_RESULT) };
+      return { ...last, error: solutionError(problem, last, majorant, units), amplification };
     }
-    advance(problem, x, now, change, size, loop);
-    // Halving steps are the sign of a closed loop on the stability boundary: they prove nothing.
+    if (last <= FREEZE_BELOW && size <= CONTRACTING * last) {
+      // A correction leaves of the error what it left of the correction before it.
+      amplification ??= solveInLoop(problem, loop, flatIdentity(n));
+      const left = { ...now, residual: times(residual, (2 * size) / (last || 1)) };
+      const error = solutionError(problem, left, uniformMajorant(problem, left, amplification), units);
+      if (error.rows <= ENOUGH) return { ...corrected(problem, left, change), error, amplification };
+    }
+    advance(problem, x, now, change, size, { k: gain.k.hi, loop });
+    // Many halving steps are the sign of a closed loop on the stability boundary: they prove nothing.
     if (size < SEARCH_ABOVE && size > 0.25 * last) slow += 1;
-    if (slow > 4) break;
+    if (slow > SLOW_LIMIT) break;
     last = size;
   }
   throw new NumericalError("no-convergence", { routine: "riccati-newton", limit: STEP_LIMIT });
+}
+
+function times(a: Float64Array, factor: number): Float64Array {
+  const b = new Float64Array(a.length);
+  for (let i = 0; i < a.length; i++) b[i] = factor * a[i];
+  return b;
+}
+
+/** The approximation with its last correction applied and the gain that goes with it. */
+function corrected<T extends Approximation>(problem: SplitProblem, now: T, change: Float64Array): T & { system: GainSystem } {
+  addNarrow(now.x, change, 1);
+  const system = gainSystem(problem, now.x);
+  return { ...now, system, gain: accurateGain(problem, system, GAIN_RESULT) };
+}
+
+type HeldLoop = { readonly loop: Loop; readonly k: Float64Array };
+
+/** With the gain `to`, or as far from the last one towards it as the loop is stable in double: any part of the way lowers the cost. */
+function loopTowards(problem: SplitProblem, from: HeldLoop | null, to: Float64Array): HeldLoop {
+  let k = to;
+  for (let halving = 0; ; halving++) {
+    try {
+      return { loop: stableLoop(problem, k), k };
+    } catch (error) {
+      if (!(error instanceof NumericalError) || !from || halving === HALVINGS) throw error;
+      k = k.map((entry, at) => 0.5 * (from.k[at] + entry));
+    }
+  }
 }
 
 /** The Newton step: solved to double-double accuracy and lengthened or shortened while it is large. */
@@ -89,12 +140,12 @@ function advance(
   { gain, residual }: { gain: Gain; residual: Float64Array },
   change: Float64Array,
   size: number,
-  loop: Loop,
+  held: HeldLoop,
 ): void {
   const before = x.hi.slice();
   addNarrow(x, change, 1);
   if (size <= SETTLE_ABOVE) return;
-  settle(problem, x, gain.k.hi, loop);
+  settle(problem, x, held);
   if (size <= SEARCH_ABOVE || problem.sampled) return;
   const whole = x.hi.map((entry, at) => entry - before[at]);
   const length = bestStepLength(problem, gain.factor, residual, whole);
@@ -105,8 +156,8 @@ function advance(
   );
 }
 
-/** X of the loop with the gain k held fixed, as far as repeated correction brings it. */
-function settle(problem: SplitProblem, x: Wide, k: Float64Array, loop: Loop): void {
+/** X of the loop with its gain held fixed, as far as repeated correction brings it. */
+function settle(problem: SplitProblem, x: Wide, { k, loop }: HeldLoop): void {
   let last = Number.POSITIVE_INFINITY;
   for (let round = 0; round < SETTLE_LIMIT; round++) {
     const change = solveInLoop(problem, loop, riccatiResidual(problem, x, k, gainSystem(problem, x)));

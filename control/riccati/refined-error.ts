@@ -33,6 +33,11 @@ export function errorMajorant(problem: FlatProblem, { x, gain, residual }: Appro
   return diagonalMajorant(sizes, problem.n);
 }
 
+/** Whether the residual has come down to within 1e4 of what rounding in double-double leaves: beyond that nothing converges. */
+export function isRounding(problem: FlatProblem, { x, gain, residual }: Approximation): boolean {
+  return flatNorm(residual) <= 1e4 * flatNorm(residualFloor(problem, x.hi, gain.k.hi));
+}
+
 /** Y ≥ ± the error of X from that of the unit residual: quicker than a solve of its own, and less sharp. */
 export function uniformMajorant(problem: FlatProblem, now: Approximation, amplification: Float64Array): Float64Array {
   const { n } = problem;

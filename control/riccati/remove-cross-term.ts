@@ -22,7 +22,13 @@ export function removeCrossTerm(problem: FlatProblem, name: string): PlainProble
   const shift = flatProduct(b, gain, n, m, n);
   const halfS = solveLower(l, m, flatTranspose(s, n, m), n);
   const less = flatTransposedProduct(halfS, halfS, m, n, n);
-  return { n, sampled, a: problem.a.map((x, i) => x - shift[i]), g, q: problem.q.map((x, i) => x - less[i]) };
+  return { n, sampled, a: difference(problem.a, shift), g, q: difference(problem.q, less) };
+}
+
+function difference(a: Float64Array, b: Float64Array): Float64Array {
+  const c = new Float64Array(a.length);
+  for (let i = 0; i < a.length; i++) c[i] = a[i] - b[i];
+  return c;
 }
 
 function solveLower(l: Float64Array, m: number, b: Float64Array, columns: number): Float64Array {

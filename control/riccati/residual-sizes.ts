@@ -1,4 +1,4 @@
-import { flatProduct, flatTransposedProduct } from "../linalg/flat";
+import { flatProduct, flatTransposedProduct, largestEntry } from "../linalg/flat";
 import type { FlatProblem } from "./problem";
 
 /**
@@ -9,16 +9,17 @@ import type { FlatProblem } from "./problem";
  */
 export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64Array): Float64Array {
   const { n, m, s, q, sampled } = problem;
-  const a = problem.a.map(Math.abs);
-  const b = problem.b.map(Math.abs);
-  const gain = k.map(Math.abs);
-  const size = x.map(Math.abs);
+  const a = sizesOf(problem.a);
+  const b = sizesOf(problem.b);
+  const gain = sizesOf(k);
+  const size = sizesOf(x);
   const states = flatTransposedProduct(a, size, n, n, n);
   const inputs = flatTransposedProduct(b, size, n, m, n);
   const right = sampled ? flatProduct(inputs, a, m, n, n) : inputs.slice();
   for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) right[j * n + i] += Math.abs(s[i * m + j]);
-  const weight = problem.r.map(Math.abs);
-  if (sampled) for (const [at, entry] of flatProduct(inputs, b, m, n, m).entries()) weight[at] += entry;
+  const weight = sizesOf(problem.r);
+  const more = sampled ? flatProduct(inputs, b, m, n, m) : null;
+  if (more) for (let at = 0; at < more.length; at++) weight[at] += more[at];
   const pulled = flatTransposedProduct(gain, right, m, n, n);
   const costs = flatTransposedProduct(gain, flatProduct(weight, gain, m, m, n), m, n, n);
   const own = sampled ? flatProduct(states, a, n, n, n) : states;
@@ -34,10 +35,16 @@ export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64A
   return floor;
 }
 
+function sizesOf(a: Float64Array): Float64Array {
+  const sizes = new Float64Array(a.length);
+  for (let i = 0; i < a.length; i++) sizes[i] = Math.abs(a[i]);
+  return sizes;
+}
+
 /** Diagonal matrix D with -D ≤ M ≤ D for every symmetric M whose entries are at most the given sizes. */
 export function diagonalMajorant(sizes: Float64Array, n: number): Float64Array {
   const majorant = new Float64Array(n * n);
-  const largest = sizes.reduce((size, entry) => Math.max(size, entry), 0);
+  const largest = largestEntry(sizes);
   if (largest === 0) return majorant;
   // Weights near the square roots of the diagonal make the majorant of a rank-one pattern no larger than n times it.
   const w = Float64Array.from({ length: n }, (_, i) => Math.sqrt(sizes[i * n + i] + largest * Number.EPSILON * Number.EPSILON));

@@ -17,6 +17,8 @@ export type ScaledProblem = {
 
 const LARGEST_SHIFT = 500;
 const ROUNDS = 200;
+const ORDINARY = powerOfTwo(400);
+const SMALL_SHIFT = 500;
 
 /**
  * Scales time, cost, inputs and states by powers of two so that A, B R⁻¹ B' and Q are of like size.
@@ -36,7 +38,7 @@ export function scaleProblem(given: FlatProblem, g: (scaled: FlatProblem) => Flo
   balanceStates(first, g(first), state);
   const problem = apply(given, state, input, cost, time);
   const parts = [problem.a, problem.b, problem.q, problem.r, problem.s];
-  if (!parts.every((part) => part.every(Number.isFinite)))
+  if (!parts.every((part) => Number.isFinite(largestEntry(part))))
     throw new NumericalError("too-large", { what: "scaled-problem", limit: Number.MAX_VALUE });
   return { problem, state, input, cost, time };
 }
@@ -76,18 +78,42 @@ function apply(given: FlatProblem, state: Float64Array, input: Float64Array, cos
   const { n, m, sampled } = given;
   const d = Array.from(state, exponentOf);
   const e = Array.from(input, exponentOf);
-  const scaled = (from: Float64Array, columns: number, shift: (i: number, j: number) => number) =>
-    from.map((entry, at) => (entry === 0 ? 0 : timesPowerOfTwo(entry, shift(Math.floor(at / columns), at % columns))));
   return {
     n,
     m,
     sampled,
-    a: scaled(given.a, n, (i, j) => d[j] - d[i] - time),
-    b: scaled(given.b, m, (i, j) => e[j] - d[i] - time),
-    q: scaled(given.q, n, (i, j) => d[i] + d[j] - cost),
-    r: scaled(given.r, m, (i, j) => e[i] + e[j] - cost),
-    s: scaled(given.s, m, (i, j) => d[i] + e[j] - cost),
+    a: scaled(given.a, n, n, d, -1, time, d, 1),
+    b: scaled(given.b, n, m, d, -1, time, e, 1),
+    q: scaled(given.q, n, n, d, 1, cost, d, 1),
+    r: scaled(given.r, m, m, e, 1, cost, e, 1),
+    s: scaled(given.s, n, m, d, 1, cost, e, 1),
   };
+}
+
+/** Entry (i, j) times 2^(± left_i - less ± right_j). */
+function scaled(
+  from: Float64Array,
+  rows: number,
+  columns: number,
+  left: readonly number[],
+  leftSign: number,
+  less: number,
+  right: readonly number[],
+  rightSign: number,
+): Float64Array {
+  const to = new Float64Array(from.length);
+  const factors = Float64Array.from(right, (e) => powerOfTwo(rightSign * e));
+  for (let at = 0, i = 0; i < rows; i++) {
+    const own = leftSign * left[i] - less;
+    const factor = powerOfTwo(own);
+    for (let j = 0; j < columns; j++, at++) {
+      const size = Math.abs(from[at]);
+      // Two exact products, unless the first might leave the range.
+      if (size < ORDINARY && size > 1 / ORDINARY && Math.abs(own) < SMALL_SHIFT) to[at] = from[at] * factor * factors[j];
+      else if (size > 0) to[at] = timesPowerOfTwo(from[at], own + rightSign * right[j]);
+    }
+  }
+  return to;
 }
 
 /** Coordinate descent over powers of two on the sum of sizes of all entries of [A G; Q A']. */

@@ -24,7 +24,7 @@ export type { RiccatiMethod, RiccatiSolution } from "./solution";
 
 /** Once every start has failed, a mode this near to being unreachable is named as the cause. */
 const NEARLY_UNREACHABLE = 1e-6;
-const GAIN_SHIFTS = [0.3, 1, 0.1];
+const GAIN_SHIFTS = [0.3, 3, 0.03];
 
 /**
  * Stabilising solution of A'X + XA - (XB + S) R⁻¹ (B'X + S') + Q = 0 and K = R⁻¹ (B'X + S'); sampled:

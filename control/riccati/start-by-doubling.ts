@@ -6,7 +6,8 @@ import { flatOneNorm } from "../linalg/solve-linear";
 import type { PlainProblem } from "./remove-cross-term";
 
 const STEP_LIMIT = 40;
-const SETTLED = 1e-6;
+/** Changes fall quadratically: after one this small the next step leaves 1e-12, enough for the refinement. */
+const NEARLY_SETTLED = 1e-3;
 const CAYLEY_FACTORS = [1, 2, 0.5, 4, 0.25, 8, 0.125];
 
 type Triple = { e: Float64Array; g: Float64Array; h: Float64Array };
@@ -21,32 +22,44 @@ type Triple = { e: Float64Array; g: Float64Array; h: Float64Array };
  */
 export function startByDoubling(problem: PlainProblem): Float64Array {
   const { n } = problem;
-  const triple = problem.sampled ? { e: problem.a.slice(), g: problem.g.slice(), h: problem.q.slice() } : cayleyTriple(problem);
+  const triple = problem.sampled ? { e: problem.a, g: problem.g, h: problem.q.slice() } : cayleyTriple(problem);
   for (let step = 0; step < STEP_LIMIT; step++) {
     const before = triple.h;
     double(triple, n);
     const size = flatNorm(triple.h);
-    const change = flatNorm(triple.h.map((x, i) => x - before[i]));
+    for (let i = 0; i < before.length; i++) before[i] -= triple.h[i];
+    const change = flatNorm(before);
     if (!Number.isFinite(size) || !Number.isFinite(change)) break;
-    // Changes fall quadratically: the next one would not show, or is left to the refinement.
-    if (change <= SETTLED * size) return triple.h;
+    if (change <= NEARLY_SETTLED * size) return lastStep(triple, n);
   }
   throw new NumericalError("no-convergence", { routine: "doubling", limit: STEP_LIMIT });
+}
+
+/** The same for H alone. */
+function lastStep({ e, g, h }: Triple, n: number): Float64Array {
+  const we = solveLu(innerFactors(g, h, n), e, n);
+  return symmetric(flatProduct(flatTranspose(e, n, n), flatProduct(h, we, n, n, n), n, n, n), h, n);
 }
 
 /** E ← E W E, G ← G + E W G E', H ← H + E' H W E with W = (I + G H)⁻¹. */
 function double(triple: Triple, n: number): void {
   const { e, g, h } = triple;
-  const whole = flatProduct(g, h, n, n, n);
-  for (let i = 0; i < n; i++) whole[i * n + i] += 1;
-  const factors = factorLu(whole, n);
-  if (factors.zeroPivot >= 0) throw new NumericalError("no-convergence", { routine: "doubling", limit: STEP_LIMIT });
+  const factors = innerFactors(g, h, n);
   const et = flatTranspose(e, n, n);
   const we = solveLu(factors, e, n);
   const wg = solveLu(factors, g, n);
   triple.g = symmetric(flatProduct(flatProduct(e, wg, n, n, n), et, n, n, n), g, n);
   triple.h = symmetric(flatProduct(et, flatProduct(h, we, n, n, n), n, n, n), h, n);
   triple.e = flatProduct(e, we, n, n, n);
+}
+
+/** Of I + G H */
+function innerFactors(g: Float64Array, h: Float64Array, n: number): Lu {
+  const whole = flatProduct(g, h, n, n, n);
+  for (let i = 0; i < n; i++) whole[i * n + i] += 1;
+  const factors = factorLu(whole, n);
+  if (factors.zeroPivot >= 0) throw new NumericalError("no-convergence", { routine: "doubling", limit: STEP_LIMIT });
+  return factors;
 }
 
 /** Symmetric part of the increment, plus the symmetric matrix it is added to. */
@@ -90,24 +103,17 @@ function tryCayley(
   for (let i = 0; i < outer.length; i++) outer[i] += product[i];
   const factors = factorLu(outer, n);
   if (factors.zeroPivot >= 0) return null;
-  // W = (A_γ' + H A_γ⁻¹ G)⁻¹; E = I + 2γ W', G = 2γ A_γ⁻¹ G W, H = 2γ W H A_γ⁻¹.
+  // W = 2γ (A_γ' + H A_γ⁻¹ G)⁻¹; E = I + W', G = A_γ⁻¹ G W, H = W H A_γ⁻¹.
   const w = solveLu(factors, flatIdentity(n), n);
-  const e = flatTranspose(w, n, n).map((x) => 2 * gamma * x);
+  for (let i = 0; i < w.length; i++) w[i] *= 2 * gamma;
+  const e = flatTranspose(w, n, n);
   for (let i = 0; i < n; i++) e[i * n + i] += 1;
   const hInverse = flatProduct(q, solveLu(inner, flatIdentity(n), n), n, n, n);
   const zero = new Float64Array(n * n);
   const triple = {
     e,
-    g: symmetric(
-      flatProduct(solvedG, w, n, n, n).map((x) => 2 * gamma * x),
-      zero,
-      n,
-    ),
-    h: symmetric(
-      flatProduct(w, hInverse, n, n, n).map((x) => 2 * gamma * x),
-      zero,
-      n,
-    ),
+    g: symmetric(flatProduct(solvedG, w, n, n, n), zero, n),
+    h: symmetric(flatProduct(w, hInverse, n, n, n), zero, n),
   };
   return { triple, condition: Math.min(reciprocalCondition(shifted, n, inner), reciprocalCondition(outer, n, factors)) };
 }

@@ -63,7 +63,7 @@ function continuousGain(a: Float64Array, b: Float64Array, k: number, m: number, 
 /** A Z A' - Z = B B' for A / α, K = (I + B' P B)⁻¹ B' P A with P = Z⁻¹: z goes to α² / z. */
 function sampledGain(a: Float64Array, b: Float64Array, k: number, m: number, shift: number): Float64Array {
   const smallest = Math.min(...schurValues(a, k).map(({ re, im }) => Math.sqrt(re * re + im * im)));
-  const alpha = smallest / (1 + shift);
+  const alpha = Math.min(smallest, 1) / (1 + shift);
   const grown = a.map((x) => x / alpha);
   const inputs = b.map((x) => x / alpha);
   const right = flatProduct(inputs, flatTranspose(inputs, k, m), k, m, k).map((x) => -x);
