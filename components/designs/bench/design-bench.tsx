@@ -15,6 +15,7 @@ import { recipeFields } from "../recipe/recipe-fields";
 import { RecipeMatrices } from "../recipe/recipe-matrices";
 import { RecipePanel } from "../recipe/recipe-panel";
 import { RecipeReading } from "../recipe/recipe-reading";
+import { useWeightLines } from "../recipe/use-weight-lines";
 import { ResponsesPanel } from "../responses/responses-panel";
 import { RevisionsList } from "../revisions-list";
 import { ConflictDialog } from "../saving/conflict-dialog";
@@ -74,15 +75,16 @@ function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: strin
   const { base, form, ground, change, undo, redo, setUsable, solving, reading } = bench;
   const { refusal } = solving;
   const problems = useMemo(() => shownProblems(refusal, reading), [refusal, reading]);
+  const weightLines = useWeightLines(reading.recipe, ground.model);
   const start = useMemo(() => startOf(base, ground), [base, ground]);
   const editing = useMemo(
     (): RecipeEditing => ({
-      ...{ form, start, change, undo, redo, setUsable },
+      ...{ form, start, weightLines, change, undo, redo, setUsable },
       model: ground.model,
       problemAt: (pointer) => problemAt(problems, pointer),
       cellProblems: (pointer) => cellProblems(problems, pointer),
     }),
-    [form, start, change, undo, redo, setUsable, ground, problems],
+    [form, start, weightLines, change, undo, redo, setUsable, ground, problems],
   );
   const poles = solving.solved && computed(solving.solved.evidence.poles);
   const loopPoles = useMemo(() => (poles ? polesOfReport(poles) : null), [poles]);

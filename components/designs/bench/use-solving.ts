@@ -6,7 +6,7 @@ import { compute } from "@/lib/client/designs";
 import { RequestProblem } from "@/lib/client/request";
 import { useSession } from "../../providers/session-provider";
 import { useSubmit } from "../../ui/use-submit";
-import { useLiveSolver } from "../live/use-live-solver";
+import { useLiveWorker } from "../live/use-live-worker";
 import type { FormReading } from "../recipe/read-form";
 import { asComputed, asLive, type Ground, type Solved } from "./bench-types";
 import { isAbort, recipeRefusal, refusedGains, tookTooLong } from "./recipe-refusal";
@@ -23,7 +23,7 @@ export function useSolving(fields: Readonly<Record<string, string>>, start: Solv
   const [solved, setSolved] = useState(start);
   const [slow, setSlow] = useState(false);
   const [live, setLive] = useState(true);
-  const solver = useLiveSolver();
+  const worker = useLiveWorker();
   const { solveThere, abort } = useServerSolving();
   const { run, clear } = submit;
 
@@ -31,17 +31,17 @@ export function useSolving(fields: Readonly<Record<string, string>>, start: Solv
   const solveHere = useCallback(
     async (recipe: Recipe, ground: Ground): Promise<Solved | "broken" | null> => {
       const announce = setTimeout(() => setSlow(true), ANNOUNCE_AFTER_MS);
-      const outcome = await solver.solve(ground.model, recipe);
+      const outcome = await worker.run({ kind: "design", model: ground.model, recipe });
       clearTimeout(announce);
       if (outcome.kind === "dropped") return null;
       setSlow(false);
       if (outcome.kind === "broken") return "broken";
       if (outcome.kind === "too-long") throw tookTooLong();
-      const { gains } = outcome.solution.evidence;
+      const { gains } = outcome.value.evidence;
       if (gains.state === "refused") throw refusedGains(gains);
-      return asLive(ground, recipe, outcome.solution);
+      return asLive(ground, recipe, outcome.value);
     },
-    [solver],
+    [worker],
   );
 
   const solve = (reading: FormReading, ground: Ground) =>
@@ -72,7 +72,7 @@ export function useSolving(fields: Readonly<Record<string, string>>, start: Solv
   );
 
   const stop = () => {
-    solver.stop();
+    worker.stop();
     abort();
     setSlow(false);
   };

@@ -10,6 +10,8 @@ export type RecipeEditing = {
   /** What the page started from: the stored recipe, or the one proposed for a new design. */
   readonly start: RecipeForm;
   readonly model: PlantModel;
+  /** What doubling a weight is predicted to change, by `state:2` or `input:0`. */
+  readonly weightLines: ReadonlyMap<string, string>;
   readonly change: ChangeRecipe;
   readonly undo: () => void;
   readonly redo: () => void;

@@ -79,9 +79,10 @@ type SignalFigureProps = Readonly<{
 }>;
 
 function SignalFigure({ signal, index, what, value, start, pointer, unit, reasonOf, write }: SignalFigureProps) {
-  const { form, change } = useRecipe();
+  const { form, change, weightLines } = useRecipe();
   const reason = reasonOf && `${reasonOf}:${index}`;
   const [asked, setAsked] = useState(false);
+  const line = reason && weightLines.get(reason);
   const open = reason !== undefined && (asked || Boolean(form.reasons[reason]));
   return (
     <>
@@ -114,6 +115,7 @@ function SignalFigure({ signal, index, what, value, start, pointer, unit, reason
             onChange={(next) => change(pointer, (now) => write(now, next))}
           />
         )}
+        {line ? <p className="col-span-full text-xs text-soft">{line}</p> : null}
       </div>
       {open && reason ? (
         <div className="pb-1">

@@ -78,7 +78,7 @@ function Deviations() {
       <SignalFigures
         legend="Largest deviation you would accept"
         what="Largest deviation of"
-        hint="Left empty, a state is not weighted."
+        hint="Left empty, a state is not weighted. Beneath each: what twice its weight, its figure divided by 1.41, is predicted to change."
         signals={model.states}
         values={states}
         starts={start.weights.states}

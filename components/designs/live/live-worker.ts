@@ -1,13 +1,11 @@
-import type { Recipe } from "@/control/design/recipe";
-import type { PlantModel } from "@/control/plant/model";
-import type { LiveAnswer, LiveJob, LiveSolution } from "./live-messages";
+import type { LiveAnswer, LiveJob, LiveTask, LiveValues } from "./live-messages";
 
 /** A worker that is at it for longer than this is ended when something newer is asked for: it cannot be interrupted otherwise. */
 const PATIENCE_MS = 400;
 const LONGEST_MS = 30_000;
 
-export type LiveOutcome =
-  | { readonly kind: "solved"; readonly solution: LiveSolution }
+export type LiveOutcome<Value> =
+  | { readonly kind: "done"; readonly value: Value }
   /** Something newer was asked for, or somebody pressed Stop. */
   | { readonly kind: "dropped" }
   | { readonly kind: "too-long" }
@@ -16,12 +14,13 @@ export type LiveOutcome =
 
 type Asked = {
   readonly job: LiveJob;
-  readonly answer: (outcome: LiveOutcome) => void;
+  readonly answer: (outcome: LiveOutcome<LiveValues[LiveTask["kind"]]>) => void;
+  readonly progress: ((done: number) => void) | undefined;
 };
 type Running = Asked & { readonly since: number; readonly limit: ReturnType<typeof setTimeout> };
 
-/** One worker, one recipe at a time: the newest request wins, those in between are dropped unsolved. */
-export class LiveSolver {
+/** One worker, one job at a time: the newest request wins, those in between are dropped unsolved. */
+export class LiveWorker {
   readonly #makeWorker: () => Worker;
   #worker: Worker | null = null;
   #running: Running | null = null;
@@ -32,10 +31,13 @@ export class LiveSolver {
     this.#makeWorker = makeWorker;
   }
 
-  solve(model: PlantModel, recipe: Recipe): Promise<LiveOutcome> {
-    return new Promise((answer) => {
+  /** `progress` is told how many parts of the work are done. */
+  run<Task extends LiveTask>(task: Task, progress?: (done: number) => void): Promise<LiveOutcome<LiveValues[Task["kind"]]>> {
+    return new Promise((resolve) => {
       this.#waiting?.answer({ kind: "dropped" });
-      this.#waiting = { job: { id: ++this.#lastId, model, recipe }, answer };
+      // The worker answers a job of a kind with a value of that kind.
+      const answer = resolve as Asked["answer"];
+      this.#waiting = { job: { ...task, id: ++this.#lastId }, answer, progress };
       if (this.#running && performance.now() - this.#running.since > PATIENCE_MS) this.#endRunning({ kind: "dropped" });
       this.#startNext();
     });
@@ -77,18 +79,19 @@ export class LiveSolver {
 
   #told(answer: LiveAnswer): void {
     if (answer.id !== this.#running?.job.id) return;
-    if (answer.outcome === "failed") this.#endRunning({ kind: "broken" });
-    else this.#settle({ kind: "solved", solution: answer.solution });
+    if (answer.outcome === "progress") this.#running.progress?.(answer.done);
+    else if (answer.outcome === "failed") this.#endRunning({ kind: "broken" });
+    else this.#settle({ kind: "done", value: answer.value });
   }
 
   /** Ends the worker with what it is doing. */
-  #endRunning(outcome: LiveOutcome): void {
+  #endRunning(outcome: LiveOutcome<never>): void {
     this.#worker?.terminate();
     this.#worker = null;
     this.#settle(outcome);
   }
 
-  #settle(outcome: LiveOutcome): void {
+  #settle(outcome: LiveOutcome<LiveValues[LiveTask["kind"]]>): void {
     const done = this.#running;
     this.#running = null;
     if (done) clearTimeout(done.limit);
