@@ -27,6 +27,13 @@ export type GainEvidence = {
   readonly eigenvectorCondition: number | null;
   /** Largest relative error of the placed poles; null for `weights`. */
   readonly poleError: number | null;
+  /**
+   * For `poles`: times 10⁻ᵈ, the largest relative first-order shift of a pole when every entry of K is kept to d digits; null
+   * when the eigenvectors are dependent.
+   */
+  readonly poleShiftPerGainDigit?: number | null;
+  /** For `poles`: largest singular value of K, in its units. */
+  readonly gainNorm?: number;
 };
 
 export type ReferenceEvidence = {

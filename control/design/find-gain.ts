@@ -76,9 +76,25 @@ function requireCounts(states: number, n: number, inputs: number, m: number): vo
 function byPoles({ A, B }: PlantMatrices, recipe: PolesRecipe, timeBase: TimeBase): Omit<FoundGain, "closed"> {
   const poles = resolvePoles(recipe.poles, timeBase);
   requireStablePoles(poles, timeBase);
-  const { K, method, residual, bound, conditioning, poleError } = placePoles({ A, B, poles });
+  const { K, method, residual, bound, conditioning, poleError, poleShiftPerGainDigit, gainNorm } = placePoles({
+    A,
+    B,
+    poles,
+    allowDefective: recipe.allowDefective,
+  });
   return {
     K,
-    evidence: { K: toRows(K), method, residual, bound, errorBound: null, P: null, eigenvectorCondition: conditioning, poleError },
+    evidence: {
+      K: toRows(K),
+      method,
+      residual,
+      bound,
+      errorBound: null,
+      P: null,
+      eigenvectorCondition: conditioning,
+      poleError,
+      poleShiftPerGainDigit,
+      gainNorm,
+    },
   };
 }

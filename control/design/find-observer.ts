@@ -11,7 +11,7 @@ import type { ObserverInLoop } from "../response/close-loop";
 import type { ObserverEvidence } from "./evidence";
 import { requireStable } from "./find-gain";
 import type { PlantMatrices } from "./plant-matrices";
-import type { ObserverRecipe, PoleEntry } from "./recipe";
+import type { ObserverRecipe, PoleEntry, WantedPoles } from "./recipe";
 import { reportPlainPoles, reportPoles } from "./report-poles";
 
 export type FoundObserver = { readonly inLoop: ObserverInLoop; readonly evidence: ObserverEvidence };
@@ -34,11 +34,11 @@ export function findObserver(plant: PlantMatrices, wanted: Wanted, timeBase: Tim
 }
 
 function find(plant: PlantMatrices, wanted: Wanted, timeBase: TimeBase, scale: Float64Array): FoundObserver {
-  if (wanted.kind === "reduced") return reduced(plant, stablePoles(wanted.poles, timeBase), timeBase);
+  if (wanted.kind === "reduced") return reduced(plant, wanted, timeBase);
   const { A, C } = plant;
   const { L, residual, bound, method } =
     wanted.kind === "poles"
-      ? observerByPoles({ A, C, poles: stablePoles(wanted.poles, timeBase) })
+      ? observerByPoles({ A, C, poles: stablePoles(wanted.poles, timeBase), allowDefective: wanted.allowDefective })
       : observerFromNoise({
           A,
           C,
@@ -58,8 +58,10 @@ function stablePoles(entries: readonly PoleEntry[], timeBase: TimeBase) {
   return poles;
 }
 
-function reduced({ A, B, C, D }: PlantMatrices, poles: ReturnType<typeof stablePoles>, timeBase: TimeBase): FoundObserver {
-  const { order, Fw, Fy, Fu, Gw, Gy, residual, bound, method } = reducedObserver({ A, B, C, D, poles });
+function reduced({ A, B, C, D }: PlantMatrices, wanted: WantedPoles, timeBase: TimeBase): FoundObserver {
+  const poles = stablePoles(wanted.poles, timeBase);
+  const { allowDefective } = wanted;
+  const { order, Fw, Fy, Fu, Gw, Gy, residual, bound, method } = reducedObserver({ A, B, C, D, poles, allowDefective });
   requireStable(Fw, timeBase);
   const rows = { Fw: toRows(Fw), Fy: toRows(Fy), Fu: toRows(Fu), Gw: toRows(Gw), Gy: toRows(Gy) };
   return {

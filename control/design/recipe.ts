@@ -26,13 +26,22 @@ export type Weights =
       readonly input: Rows;
     };
 
+export type WantedPoles = {
+  readonly poles: readonly PoleEntry[];
+  /**
+   * Place poles repeated, or lying together, more often than there are independent inputs (outputs, of an observer). Their
+   * eigenvectors are then dependent and small errors move them far; without this such poles are refused.
+   */
+  readonly allowDefective?: true;
+};
+
 export type ObserverRecipe =
   | { readonly kind: "none" }
-  | { readonly kind: "poles"; readonly poles: readonly PoleEntry[] }
+  | ({ readonly kind: "poles" } & WantedPoles)
   /** Steady-state Kalman: spectral densities for a continuous plant, variances per sample for a sampled one. */
   | { readonly kind: "noise"; readonly process: Rows; readonly measurement: Rows }
   /** Reduced order (Luenberger): n minus rank C poles. */
-  | { readonly kind: "reduced"; readonly poles: readonly PoleEntry[] };
+  | ({ readonly kind: "reduced" } & WantedPoles);
 
 /** What the stored responses show. `horizon` null: chosen from the slowest settling. All in the signals' units, as deviations. */
 export type ResponseTest = {
@@ -59,7 +68,7 @@ export type WeightsRecipe = RecipeBase & {
   readonly degreeOfStability: number | null;
 };
 
-export type PolesRecipe = RecipeBase & { readonly method: "poles"; readonly poles: readonly PoleEntry[] };
+export type PolesRecipe = RecipeBase & { readonly method: "poles" } & WantedPoles;
 
 /** How a design is made. A versioned document that never holds results. */
 export type Recipe = WeightsRecipe | PolesRecipe;

@@ -4,7 +4,7 @@ import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
 import { describeFixedMode, keepFixedModes } from "../poles/fixed-modes";
-import { type Placement, placePoles } from "../poles/place-poles";
+import { type Placement, type PlacementProblem, placePoles } from "../poles/place-poles";
 import { groupPoles } from "../poles/wanted-poles";
 import { outputCoordinates } from "./output-coordinates";
 
@@ -14,6 +14,7 @@ export type ReducedProblem = {
   readonly C: Matrix;
   readonly D?: Matrix;
   readonly poles: readonly Complex[];
+  readonly allowDefective?: boolean;
 };
 
 export type ReducedObserver = {
@@ -44,7 +45,7 @@ export type ReducedObserver = {
  * Accuracy  that of placePoles on A₂₂', A₁₂'; outputs that repeat others are averaged
  * Source    Luenberger, IEEE Trans. Autom. Control 16 (1971) 596-602; Gopinath 1971
  */
-export function reducedObserver({ A, B, C, D, poles }: ReducedProblem): ReducedObserver {
+export function reducedObserver({ A, B, C, D, poles, allowDefective }: ReducedProblem): ReducedObserver {
   const through = D ?? Matrix.zeros(C.rows, B.columns);
   requireSquare("A", A);
   requireShape("B", B, A.rows, B.columns);
@@ -63,7 +64,7 @@ export function reducedObserver({ A, B, C, D, poles }: ReducedProblem): ReducedO
   if (order === 0) return readDirectly(representable("observer", Seen.mmul(Read)), B.columns);
   const A12 = representable("plant", SeenRows.mmul(A).mmul(Hidden));
   const A22 = representable("plant", Rest.mmul(A).mmul(Hidden));
-  const placed = placeHidden(A, C, A22, A12, poles);
+  const placed = placeHidden(A, C, { A: A22.transpose(), B: A12.transpose(), poles, allowDefective });
   const L = placed.K.transpose();
   const Fw = Matrix.sub(A22, L.mmul(A12));
   const rows = Matrix.sub(Rest, L.mmul(SeenRows));
@@ -82,12 +83,12 @@ function representable(what: string, M: Matrix): Matrix {
 }
 
 /** Gain for the part the outputs do not show; a mode that stays hidden is named in the states of the whole plant. */
-function placeHidden(A: Matrix, C: Matrix, A22: Matrix, A12: Matrix, poles: readonly Complex[]): Placement {
+function placeHidden(A: Matrix, C: Matrix, hidden: PlacementProblem): Placement {
   try {
-    return placePoles({ A: A22.transpose(), B: A12.transpose(), poles });
+    return placePoles(hidden);
   } catch (error) {
     if (!(error instanceof NumericalError)) throw error;
-    const pole = error.code === "not-controllable" ? (error.data.pole as Complex) : unseenMode(A, C, poles);
+    const pole = error.code === "not-controllable" ? (error.data.pole as Complex) : unseenMode(A, C, hidden.poles);
     if (!pole) throw error;
     throw new NumericalError("not-observable", describeFixedMode(A.transpose(), C.transpose(), pole));
   }

@@ -17,7 +17,8 @@ export const PoleEntry = z.discriminatedUnion("kind", [
 ]);
 export type PoleEntry = z.infer<typeof PoleEntry>;
 
-const Poles = z.array(PoleEntry).max(60);
+/** `allowDefective` places poles that are repeated more often than inputs, or outputs, are independent. */
+const wantedPoles = { poles: z.array(PoleEntry).max(60), allowDefective: z.literal(true).optional() };
 
 export const Weights = z.discriminatedUnion("form", [
   z.strictObject({
@@ -34,13 +35,13 @@ export const Weights = z.discriminatedUnion("form", [
 
 export const ObserverRecipe = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("none") }),
-  z.strictObject({ kind: z.literal("poles"), poles: Poles }),
+  z.strictObject({ kind: z.literal("poles"), ...wantedPoles }),
   z.strictObject({
     kind: z.literal("noise"),
     process: inUnit(Rows, "units of both states, per second; of a sampled plant per step"),
     measurement: inUnit(Rows, "units of both outputs, times seconds; of a sampled plant per sample"),
   }),
-  z.strictObject({ kind: z.literal("reduced"), poles: Poles }),
+  z.strictObject({ kind: z.literal("reduced"), ...wantedPoles }),
 ]);
 
 const base = {
@@ -67,6 +68,6 @@ export const Recipe = z.discriminatedUnion("method", [
     crossWeight: inUnit(Rows.nullable(), "unit of the cost over the units of state and input"),
     degreeOfStability: inUnit(NotNegative.nullable(), "per second"),
   }),
-  z.strictObject({ ...base, method: z.literal("poles"), poles: Poles }),
+  z.strictObject({ ...base, method: z.literal("poles"), ...wantedPoles }),
 ]) satisfies z.ZodType<RecipeDocument>;
 export type Recipe = z.infer<typeof Recipe>;
