@@ -22,6 +22,7 @@ import { ConflictDialog } from "../saving/conflict-dialog";
 import { SaveNewDialog } from "../saving/save-new-dialog";
 import { SaveRevisionDialog } from "../saving/save-revision-dialog";
 import { useSaving } from "../saving/use-saving";
+import { TradeSection } from "../trade/trade-section";
 import { startOf } from "./bench-base";
 import { BenchHeading } from "./bench-heading";
 import { BenchNotices } from "./bench-notices";
@@ -93,6 +94,7 @@ function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: strin
       <div key={ground.plantRevision.id}>
         <Columns
           {...{ bench, plantName }}
+          trade={form.method === "weights" ? <TradeSection /> : null}
           recipe={
             <>
               <SolveBar bench={bench} />
@@ -132,10 +134,10 @@ function Read({ bench: { base } }: Readonly<{ bench: Bench }>) {
   );
 }
 
-type ColumnsProps = Readonly<{ bench: Bench; plantName: string; recipe: React.ReactNode }>;
+type ColumnsProps = Readonly<{ bench: Bench; plantName: string; recipe: React.ReactNode; trade?: React.ReactNode }>;
 
 /** Three columns where there is room, one part below the other on a tablet and on paper. */
-function Columns({ bench, plantName, recipe }: ColumnsProps) {
+function Columns({ bench, plantName, recipe, trade }: ColumnsProps) {
   const { base, stale } = bench;
   const { solved } = bench.solving;
   // Curves follow the hand; figures and gains may come a frame later.
@@ -155,6 +157,7 @@ function Columns({ bench, plantName, recipe }: ColumnsProps) {
           </p>
         ) : null}
         {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved bench={bench} />}
+        {trade}
       </section>
       <section aria-labelledby="evidence-heading" aria-busy={settled !== solved} className="min-w-0 xl:row-span-2">
         <h2 id="evidence-heading" className="mb-3">
