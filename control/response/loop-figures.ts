@@ -2,8 +2,10 @@ import type { StepFigures } from "../design/evidence";
 import { NumericalError } from "../errors";
 import { POINTS } from "./cell-basis";
 import { type DistinctRows, distinctRows } from "./distinct-rows";
+import { finishFar } from "./far-exit";
 import { boundaryDistance, type Drive, type LoopDynamics } from "./loop-dynamics";
 import type { Experiment } from "./loop-experiments";
+import { type ModalBound, modalBound } from "./modal-bound";
 import { largestDeparture, NO_BAND, type SignalTrack, settledAt, startTrack } from "./signal-track";
 import { peakOf, SETTLING_BAND, signalFigures } from "./step-figures";
 import { tailBound } from "./tail-bound";
@@ -24,6 +26,9 @@ const WORK = 1e9;
 const CELLS = { least: 300, most: 60_000 };
 const SAMPLES = { least: 2_000, most: 400_000 };
 
+/** Cells after which a motion that fades slowly is finished by its envelope, where that can be done. */
+const PATIENCE = 1500;
+
 type Walk = (drive: Drive, tracks: readonly SignalTrack[]) => void;
 
 /** Walks for the figures of steps, which watch everything, and for settling times, which watch the shown signals alone. */
@@ -34,7 +39,8 @@ type Walks = { readonly step: Walk; readonly settling: Walk };
  *
  * Units     signals' units, seconds, percent
  * Throws    on-stability-boundary
- * Limits    about 10⁹ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is null
+ * Limits    about 10⁹ multiplications and at most 60 000 cells (400 000 samples) per experiment; what is not proved by then is
+ *           null. A slow swing that is left alone after 1500 cells is finished by its envelope, whatever its damping
  * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves. The settling of
  *           starts and disturbances, which only the time axis needs, is known to about 1e-6
  */
@@ -109,10 +115,17 @@ function walksOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number
   }
   const limit = allowed(signals * POINTS * (order + POINTS) + order * order, CELLS);
   const walker = continuousWalker(dynamics, rows, tail);
-  return {
-    step: (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit),
-    settling: (drive, tracks) => walkContinuous(walker, drive.departure, tracks, limit, ROUGHLY_RESOLVED),
-  };
+  let bound: ModalBound | null | undefined; // made only for a loop that fades too slowly to be followed
+  const walk =
+    (resolved?: number): Walk =>
+    ({ departure }, tracks) => {
+      const halt = walkContinuous(walker, { time: 0, state: departure }, tracks, Math.min(limit, PATIENCE), resolved);
+      if (halt === null) return;
+      if (bound === undefined) bound = modalBound(a, order, rows);
+      if (bound) finishFar({ dynamics, bound, cell: walker.ladder(walker.firstLevel) }, departure, halt, tracks);
+      if (tracks.some(({ finished }) => !finished)) walkContinuous(walker, halt, tracks, limit, resolved);
+    };
+  return { step: walk(), settling: walk(ROUGHLY_RESOLVED) };
 }
 
 /** Value of a signal at t = 0. */

@@ -42,7 +42,7 @@ const MOST_VALUES = 2 ** 21;
  * Units     the signals' units, seconds, percent
  * Throws    shape-mismatch; not-stabilising { pole }; on-stability-boundary; not-finite; too-large
  * Limits    401 moments per record (fewer, down to 101, beyond two million numbers); figures as in `loopFigures`
- * Accuracy  samples about 1e-14 of the largest value, times the norm of A over its slowest rate where that is large
+ * Accuracy  samples about 1e-14 of the largest value, from transitions that are correctly rounded of the loop as given
  * Source    the matrix exponential at the samples (see `matrixExponential`); figures: IEC 60050-351
  */
 export function respond(request: ResponseRequest): ResponseEvidence {

@@ -68,16 +68,17 @@ export function hasSetPoint(track: SignalTrack): boolean {
   return Math.abs(track.final) > NEGLIGIBLE_FINAL * sizeOf(track);
 }
 
-function bandOf(track: SignalTrack): number {
+/** Half the width of the band; infinite where there is nothing to settle to. */
+export function bandOf(track: SignalTrack): number {
   if ("share" in track.band) return track.band.share * largestDeparture(track);
-  return hasSetPoint(track) ? track.band.width : Number.POSITIVE_INFINITY;
+  return track.sought === "settling" || hasSetPoint(track) ? track.band.width : Number.POSITIVE_INFINITY;
 }
 
 function marginOf(track: SignalTrack): number {
   return Math.max(track.noise, 1e-14 * sizeOf(track));
 }
 
-function seeksRise(track: SignalTrack): boolean {
+export function seeksRise(track: SignalTrack): boolean {
   return track.sought === "figures" && track.reached90 === null && hasSetPoint(track);
 }
 
@@ -155,7 +156,7 @@ export function finishTracks(tracks: readonly SignalTrack[], gains: Float64Array
   let next: number | null = null;
   for (let i = 0; i < tracks.length; i++) {
     const track = tracks[i];
-    const wanted = Math.max(NEGLIGIBLE * sizeOf(track), 4 * track.noise, harmlessDeparture(track));
+    const wanted = Math.max(NEGLIGIBLE * sizeOf(track), 4 * track.noise, harmlessDeparture(track, bandOf(track)));
     const bound = gains[i] * size;
     track.finished = bound <= wanted;
     if (track.finished) continue;
@@ -165,11 +166,10 @@ export function finishTracks(tracks: readonly SignalTrack[], gains: Float64Array
   return next;
 }
 
-/** Largest later departure from the final value, to either side, that leaves what is sought as it stands. */
-function harmlessDeparture(track: SignalTrack): number {
+/** Largest later departure from the final value, to either side, within the band, that leaves what is sought as it stands. */
+export function harmlessDeparture(track: SignalTrack, band: number): number {
   const { high, low, final, sought } = track;
-  const band = bandOf(track);
-  if (sought === "settling") return band;
+  if (sought === "settling") return Math.min(largestDeparture(track), band);
   // Without a set point the peak is all there is to tell, on whichever side it stands.
   if (sought === "figures" && !hasSetPoint(track)) return sizeOf(track) - Math.abs(final);
   const above = Math.max(high.value, final, 0) - final;

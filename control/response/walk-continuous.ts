@@ -1,6 +1,7 @@
 import { exponentOf } from "../linalg/power-of-two";
 import { bernsteinCoefficients, interpolationError, LEBESGUE, POINTS } from "./cell-basis";
 import { type Cell, cellLadder } from "./cell-ladder";
+import type { Halt } from "./far-exit";
 import type { LoopDynamics } from "./loop-dynamics";
 import { finishTracks, followPiece, isHopeless, isUneventful, type SignalTrack, sizeOf } from "./signal-track";
 import type { TailBound } from "./tail-bound";
@@ -48,36 +49,37 @@ export function continuousWalker(
 }
 
 /**
- * Follows the watched signals of a free motion until everything sought about them is proved, in cells whose length adapts
+ * Follows the watched signals of a free motion from a place on it until everything sought about them is proved, in cells whose length adapts
  * so that in each a polynomial of degree 12 through exact values stands for the signal.
  *
  * Accuracy  `resolved` in parts of the signal's size, times likewise over its slope; where rounding in a stiff loop is larger,
  *           down to 1e-8, it is learnt and kept in the tracks as their noise
- * Limits    at most `limit` cells, tried or taken, fewer where these cannot suffice; what is not finished stays unfinished
+ * Limits    at most `limit` cells, tried or taken, fewer where these cannot suffice; what is not finished stays unfinished, and
+ *           the place where the walk stopped is returned
  */
 export function walkContinuous(
   walker: Walker,
-  departure: Float64Array,
+  from: Halt,
   tracks: readonly SignalTrack[],
   limit: number,
   resolved = RESOLVED,
-): void {
+): Halt | null {
   const { order, ladder, tail, firstLevel } = walker;
-  const pace = { size: tail.size(departure), count: 0 };
+  const pace = { size: tail.size(from.state), count: 0 };
   const values = new Float64Array(tracks.length * POINTS);
   let [here, other] = [newMisses(tracks.length), newMisses(tracks.length)];
-  let [state, after] = [departure.slice(), new Float64Array(order)];
+  let [state, after] = [from.state.slice(), new Float64Array(order)];
   let level = firstLevel;
-  let time = 0;
+  let time = from.time;
   let before: Misses | null = null; // of the shorter cell before, when this one is tried because that one was easy
   let raiseFrom = 0;
   let failures = 0;
   for (let count = 0; count < limit; count++) {
     const size = tail.size(state);
     const factor = finishTracks(tracks, tail.gains, size);
-    if (factor === null) return;
+    if (factor === null) return null;
     const doubtful = limit < walker.swings || failures >= MANY_FAILURES || !(factor < Number.POSITIVE_INFINITY);
-    if (doubtful && isHopeless(pace, size, factor, count, limit)) return;
+    if (doubtful && isHopeless(pace, size, factor, count, limit)) break;
     const cell = ladder(level);
     raiseNoise(walker.rows, order, state, tracks);
     timesVector(cell.nodes, state, order, values);
@@ -101,6 +103,7 @@ export function walkContinuous(
     [here, other] = [other, here];
     level++;
   }
+  return { time, state };
 }
 
 const coefficients = new Float64Array(POINTS);

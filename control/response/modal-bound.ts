@@ -1,0 +1,61 @@
+import { eigensystem } from "../linalg/eigensystem";
+import { fromFlat } from "../linalg/flat";
+import { flatNorm } from "../linalg/norms";
+
+/** A free motion as the sum of its modes: |signal i's departure| ≤ Σ sizes[i · order + k] e^(-rates[k] t) for t ≥ 0. */
+export type ModalBound = { readonly rates: Float64Array; readonly sizesOf: (state: Float64Array) => Float64Array };
+
+/** Least cosine between left and right vectors, and least rate in parts of the norm, for which rounding cannot matter. */
+const LEAST_COSINE = 1e-5;
+const LEAST_RATE = 1e-11;
+/** Room for the rounding of vectors and rates. */
+const SPARE = 1 + 1e-7;
+
+/**
+ * Bound on a free motion by the sizes of its modes. Where one slow pair is left it is as tight as an envelope can be, which the
+ * bound by a quadratic form is not.
+ *
+ * Shapes    a n×n, rows of signals (signals×n)
+ * Throws    no-convergence
+ * Accuracy  null where eigenvectors are nearly parallel or a mode fades too slowly for its rate to be known to 1e-5
+ */
+export function modalBound(a: Float64Array, n: number, rows: Float64Array): ModalBound | null {
+  const { values, right, left } = eigensystem(fromFlat(a, n, n));
+  const rates = Float64Array.from(values, ({ re }) => -re);
+  const signals = rows.length / n;
+  const weights = new Float64Array(rows.length);
+  if (!rates.every((rate) => rate > LEAST_RATE * flatNorm(a))) return null;
+  for (let k = 0; k < n; k++) {
+    let [re, im] = [0, 0];
+    for (let j = 0; j < n; j++) {
+      re += left.re.get(j, k) * right.re.get(j, k) + left.im.get(j, k) * right.im.get(j, k);
+      im += left.re.get(j, k) * right.im.get(j, k) - left.im.get(j, k) * right.re.get(j, k);
+    }
+    const cosine = Math.sqrt(re * re + im * im);
+    if (!(cosine > LEAST_COSINE)) return null;
+    for (let i = 0; i < signals; i++) {
+      const [x, y] = project(rows.subarray(i * n, (i + 1) * n), right, k);
+      weights[i * n + k] = (Math.sqrt(x * x + y * y) / cosine) * SPARE;
+    }
+  }
+  const sizesOf = (state: Float64Array) => {
+    const sizes = weights.slice();
+    for (let k = 0; k < n; k++) {
+      const [x, y] = project(state, left, k);
+      const amplitude = Math.sqrt(x * x + y * y);
+      for (let i = 0; i < signals; i++) sizes[i * n + k] *= amplitude;
+    }
+    return sizes;
+  };
+  return { rates, sizesOf };
+}
+
+/** A real row times column k. */
+function project(row: Float64Array, { re, im }: ReturnType<typeof eigensystem>["right"], k: number): readonly [number, number] {
+  let [x, y] = [0, 0];
+  for (let j = 0; j < row.length; j++) {
+    x += row[j] * re.get(j, k);
+    y += row[j] * im.get(j, k);
+  }
+  return [x, y];
+}
