@@ -3,6 +3,9 @@ import { Matrix } from "ml-matrix";
 import { expect, test } from "vitest";
 import type { Complex } from "@/control/plant/model";
 import { controllabilityReport, observabilityReport } from "@/control/structure/controllability-report";
+import { distanceToUncontrollability } from "@/control/structure/distance-to-uncontrollability";
+import { gramians } from "@/control/structure/gramians";
+import { hankelValues } from "@/control/structure/hankel-values";
 import { relativeGainArray } from "@/control/structure/relative-gain-array";
 import { transmissionZeros } from "@/control/structure/transmission-zeros";
 
@@ -204,3 +207,88 @@ function expectSameZeros(found: readonly Complex[], expected: readonly Complex[]
 function times(x: Complex, y: Complex): Complex {
   return { re: x.re * y.re - x.im * y.im, im: x.re * y.im + x.im * y.re };
 }
+
+const zerosOf = (system: { A: Matrix; B: Matrix; C: Matrix; D: Matrix }) =>
+  transmissionZeros(system).map(({ re, im }): Complex => ({ re, im }));
+
+test("a plant and its dual have the same zeros", () => {
+  fc.assert(
+    fc.property(square, ({ A, B, C, D }) => {
+      const zeros = zerosOf({ A, B, C, D });
+      const dual = zerosOf({ A: A.transpose(), B: C.transpose(), C: B.transpose(), D: D.transpose() });
+      expect(dual).toHaveLength(zeros.length);
+      const open = [...dual];
+      for (const { re, im } of zeros) {
+        const distances = open.map((other) => Math.hypot(other.re - re, other.im - im));
+        const nearest = Math.min(...distances);
+        expect(nearest).toBeLessThan(1e-9 * (1 + Math.hypot(re, im)));
+        open.splice(distances.indexOf(nearest), 1);
+      }
+    }),
+    RUNS,
+  );
+});
+
+test("turning the states neither moves the distance to uncontrollability nor the Hankel values", () => {
+  const turned = pair.chain(({ A, B }) => fc.record({ A: fc.constant(A), B: fc.constant(B), Q: orthogonal(A.rows) }));
+  fc.assert(
+    fc.property(turned, ({ A, B, Q }) => {
+      const inside = { A: Q.transpose().mmul(A).mmul(Q), B: Q.transpose().mmul(B) };
+      const given = distanceToUncontrollability(A, B, 600);
+      const other = distanceToUncontrollability(inside.A, inside.B, 600);
+      const rounding = 1e-13 * (1 + A.norm("frobenius") + B.norm("frobenius"));
+      expect(other.lower).toBeLessThanOrEqual(given.upper + rounding);
+      expect(given.lower).toBeLessThanOrEqual(other.upper + rounding);
+      const settled = (M: Matrix) => Matrix.sub(M, Matrix.eye(A.rows).mul(24));
+      const C = B.transpose();
+      const plain = hankelValues({ A: settled(A), B, C, timeBase: "continuous" });
+      const moved = hankelValues({ A: settled(inside.A), B: inside.B, C: C.mmul(Q), timeBase: "continuous" });
+      const limit = 1e-13 * (1 + (plain.values[0] ?? 0));
+      for (const [k, value] of plain.values.entries()) expect(Math.abs(moved.values[k] - value)).toBeLessThan(limit);
+    }),
+    { ...RUNS, numRuns: 60 },
+  );
+});
+
+test("the observability gramian is the controllability gramian of the dual plant", () => {
+  fc.assert(
+    fc.property(pair, fc.constantFrom("continuous" as const, "sampled" as const), ({ A, B }, timeBase) => {
+      const settled = timeBase === "continuous" ? Matrix.sub(A, Matrix.eye(A.rows).mul(24)) : Matrix.mul(A, 1 / 32);
+      const C = B.transpose();
+      const plain = gramians({ A: settled, B, C, timeBase });
+      const dual = gramians({ A: settled.transpose(), B: C.transpose(), C: B.transpose(), timeBase });
+      const limit = 2 ** -50 * (1 + plain.controllability.norm("frobenius"));
+      for (let i = 0; i < A.rows; i++) {
+        for (let j = 0; j < A.rows; j++) {
+          expect(Math.abs(dual.observability.get(i, j) - plain.controllability.get(i, j))).toBeLessThan(limit);
+          expect(plain.controllability.get(i, j)).toBe(plain.controllability.get(j, i));
+        }
+      }
+    }),
+    { ...RUNS, numRuns: 80 },
+  );
+});
+
+test("powers of two in the units of the states change the gramians by those powers", () => {
+  fc.assert(
+    fc.property(pair, fc.array(fc.integer({ min: -20, max: 20 }), { minLength: 8, maxLength: 8 }), ({ A, B }, exponents) => {
+      const n = A.rows;
+      const units = exponents.slice(0, n).map((e) => 2 ** e);
+      const D = Matrix.diag(units);
+      const inverse = Matrix.diag(units.map((unit) => 1 / unit));
+      const settled = Matrix.sub(A, Matrix.eye(n).mul(24));
+      const C = B.transpose();
+      const plain = gramians({ A: settled, B, C, timeBase: "continuous" }).controllability;
+      const scaled = { A: inverse.mmul(settled).mmul(D), B: inverse.mmul(B), C: C.mmul(D), timeBase: "continuous" } as const;
+      const other = gramians(scaled).controllability;
+      for (let i = 0; i < n; i++) {
+        for (let j = 0; j < n; j++) {
+          const back = other.get(i, j) * units[i] * units[j];
+          const size = Math.sqrt(plain.get(i, i) * plain.get(j, j));
+          expect(Math.abs(back - plain.get(i, j))).toBeLessThanOrEqual(2 ** -50 * size);
+        }
+      }
+    }),
+    { ...RUNS, numRuns: 80 },
+  );
+});
