@@ -6,8 +6,10 @@ import { eigenvalues } from "../../control/linalg/eigenvalues";
 import { orthonormalBasis } from "../../control/linalg/orthogonal";
 import { observerByPoles } from "../../control/observer/observer-by-poles";
 import type { Complex } from "../../control/plant/model";
+import { achievedPoles } from "../../control/poles/achieved-poles";
 import { matchPoles } from "../../control/poles/match-poles";
 import { type Placement, placePoles } from "../../control/poles/place-poles";
+import { groupPoles, polesOf } from "../../control/poles/wanted-poles";
 
 const entry = fc.integer({ min: -40, max: 40 }).map((k) => k / 8);
 const matrix = (rows: number, columns: number) =>
@@ -29,7 +31,7 @@ const problem = fc
     fc.record({ A: matrix(n, n), B: matrix(n, m), poles: fc.constant(polesFor(n, Math.min(pairs, Math.floor(n / 2)))) }),
   );
 
-const REFUSALS = ["not-controllable", "inaccurate"];
+const REFUSALS = ["not-controllable", "too-sensitive"];
 
 /** The placement, or null for a plant that may be refused; anything else thrown fails the property. */
 function placed(run: () => Placement): Placement | null {
@@ -149,6 +151,44 @@ describe("placePoles on plants with coarse entries", () => {
         expect(observer.achieved).toEqual(regulator.achieved);
       }),
       { ...runs, seed: 25 },
+    );
+  });
+
+  test("turning the states by an orthogonal matrix turns a single-input gain with them", () => {
+    const single = problem.filter(({ B }) => B.columns === 1);
+    const direction = fc.array(fc.integer({ min: -9, max: 9 }), { minLength: 7, maxLength: 7 });
+    fc.assert(
+      fc.property(single, direction, ({ A, B, poles }, drawn) => {
+        const here = placed(() => placePoles({ A, B, poles }));
+        const v = drawn.slice(0, A.rows).map((x, i) => x + (i + 1) / 16);
+        const length = v.reduce((sum, x) => sum + x * x, 0);
+        // A Householder reflection, its own inverse.
+        const T = new Matrix(v.map((x, i) => v.map((y, j) => (i === j ? 1 : 0) - (2 * x * y) / length)));
+        const there = placed(() => placePoles({ A: T.mmul(A).mmul(T), B: T.mmul(B), poles }));
+        if (!here || !there || here.fixedModes.length + there.fixedModes.length > 0) return;
+        // The turned plant is rounded, and its gain moves by that times what the poles of the plant make of it.
+        const allowed = 1e-13 * (here.conditioning ?? 1e9) * (1 + here.gainNorm) * A.rows * 100;
+        const back = there.K.mmul(T);
+        expect(Matrix.sub(back, here.K).norm()).toBeLessThanOrEqual(allowed);
+      }),
+      { ...runs, seed: 26 },
+    );
+  });
+
+  test("tells its pole error as the loop has it, whatever the condition", () => {
+    fc.assert(
+      fc.property(problem, ({ A, B, poles }) => {
+        const found = placed(() => placePoles({ A, B, poles }));
+        if (!found) return;
+        expect(found.poleError).toBeLessThanOrEqual(1e-12 * Math.max(1, found.conditioning ?? Number.POSITIVE_INFINITY));
+        const again = achievedPoles(A, B, found.K, polesOf(groupPoles(poles, A.rows)));
+        expect(again.exact).toBe(true);
+        if (found.fixedModes.length > 0) return;
+        const sizes = polesOf(groupPoles(poles, A.rows)).map(({ re, im }) => Math.hypot(re, im));
+        const largest = Math.max(...again.errors.map((error, k) => error / sizes[k]));
+        expect(Math.abs(largest - found.poleError)).toBeLessThanOrEqual(1e-3 * largest + 1e-24);
+      }),
+      { ...runs, seed: 27 },
     );
   });
 });
