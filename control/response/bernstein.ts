@@ -1,7 +1,7 @@
 /** Searches on a polynomial over [0, 1] given by its Bernstein coefficients, the smallest and largest of which enclose its values. */
 export type Extreme = { readonly value: number; readonly at: number };
 
-const SMALLEST_PIECE = 2 ** -46;
+const SMALLEST_PIECE = 1 / 70_368_744_177_664; // 2^-46
 const MOST_PIECES = 400;
 
 type Piece = { readonly b: Float64Array; readonly from: number; readonly size: number };

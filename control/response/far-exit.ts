@@ -1,4 +1,5 @@
 import { addNarrow } from "../linalg/double-double";
+import { powerOfTwo } from "../linalg/power-of-two";
 import { bernsteinCoefficients, POINTS } from "./cell-basis";
 import type { Cell } from "./cell-ladder";
 import type { LoopDynamics } from "./loop-dynamics";
@@ -60,7 +61,7 @@ function cellsUntilInside(sizes: Float64Array, rates: Float64Array, h: number, b
     if (there.reduce((sum, size) => sum + size, 0) <= band) continue;
     if (level === MOST_DOUBLINGS) return null;
     here = there;
-    cells += 2 ** level;
+    cells += powerOfTwo(level);
   }
   return cells + 1;
 }

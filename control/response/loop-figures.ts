@@ -17,7 +17,7 @@ export type InputRoom = { readonly up: number | null; readonly down: number | nu
 
 export type LoopFigures = {
   readonly steps: readonly Omit<StepFigures, "loop">[];
-  /** Longest settling found in any experiment, seconds; 0 when there is none. */
+  /** Longest settling found in any experiment, seconds; 0 when there is none; that of steps alone when no more was sought. */
   readonly longest: number;
 };
 
@@ -35,7 +35,7 @@ type Walk = (drive: Drive, tracks: readonly SignalTrack[]) => void;
 type Walks = { readonly step: Walk; readonly settling: Walk };
 
 /**
- * Figures of every step and the longest settling time of one loop, over all t ≥ 0.
+ * Figures of every step and, where it is sought, the longest settling time of one loop, over all t ≥ 0.
  *
  * Units     signals' units, seconds, percent
  * Throws    on-stability-boundary
@@ -44,7 +44,12 @@ type Walks = { readonly step: Walk; readonly settling: Walk };
  * Accuracy  continuous: values 1e-11, times 1e-11 of the cell over the slope; sampled: the samples themselves. The settling of
  *           starts and disturbances, which only the time axis needs, is known to about 1e-6
  */
-export function loopFigures(dynamics: LoopDynamics, experiments: readonly Experiment[], room: readonly InputRoom[]): LoopFigures {
+export function loopFigures(
+  dynamics: LoopDynamics,
+  experiments: readonly Experiment[],
+  room: readonly InputRoom[],
+  seeksLongest: boolean,
+): LoopFigures {
   const { counts } = dynamics.loop;
   const shown = counts.commanded + counts.outputs;
   const watched = Array.from({ length: shown }, (_, i) => i);
@@ -57,7 +62,7 @@ export function loopFigures(dynamics: LoopDynamics, experiments: readonly Experi
   let longest = 0;
   for (const { kind, source, drive } of experiments) {
     if (kind !== "step") {
-      longest = Math.max(longest, longestSettling(walks.settling, drive, distinct, shownRows));
+      if (seeksLongest) longest = Math.max(longest, longestSettling(walks.settling, drive, distinct, shownRows));
       continue;
     }
     const tracks = distinct.places.map((row, i) => {

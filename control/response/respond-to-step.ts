@@ -16,7 +16,7 @@ export type StepProblem = {
 };
 
 /** 256 MB */
-export const MOST_VALUES = 2 ** 25;
+export const MOST_VALUES = 33_554_432;
 
 /**
  * Samples, without figures, of the answers of x' = A x + B u, y = C x + D u (sampled: x(k+1) = ...) to a unit step of each

@@ -80,11 +80,12 @@ export function respond(request: ResponseRequest): ResponseEvidence {
 }
 
 /** A loop with its experiments; a set point does not disturb the estimate, so steps are those of the full state. */
-function analyse({ plant, period, K, F, experiments, room }: ResponseRequest, observer: ObserverInLoop | null): Analysed {
+function analyse(request: ResponseRequest, observer: ObserverInLoop | null): Analysed {
+  const { plant, period, K, F, experiments, room, horizon } = request;
   const dynamics = prepareLoop(closeLoop(plant, K, F, observer), period);
   const amplitudes = experiments.amplitudes.map((amplitude) => (observer ? 0 : amplitude));
   const list = loopExperiments(dynamics, { ...experiments, amplitudes });
-  return { dynamics, experiments: list, figures: loopFigures(dynamics, list, room) };
+  return { dynamics, experiments: list, figures: loopFigures(dynamics, list, room, horizon === null) };
 }
 
 function recordsOf(loop: ResponseRecord["loop"], { dynamics, experiments }: Analysed, grid: TimeGrid): ResponseRecord[] {
