@@ -3,9 +3,16 @@ import { NumericalError } from "../errors";
 /** Room for the system of one pair of diagonal blocks; `right` holds its right side, then its solution, row by row. */
 export type BlockPair = { readonly system: Float64Array; readonly right: Float64Array; readonly floor: number };
 
+/** A determinant beyond these has lost digits to the ends of the number range, or tells of eigenvalues that cancel. */
+const SMALL = 1e-250;
+const LARGE = 1e250;
+
 /**
- * Solves T_ii Y + Y T_jj' = R, or T_ii Y T_jj' - Y = R when sampled, for diagonal blocks of one or two rows, by elimination
- * with partial pivoting. R in `right` is overwritten by Y, p×q row-major.
+ * Solves T_ii Y + Y T_jj' = R, or T_ii Y T_jj' - Y = R when sampled, for diagonal blocks of one row or two in standard form.
+ * R in `right` is overwritten by Y, p×q row-major.
+ *
+ * The blocks are a I + N and d I + P with N² = bc I and P² = ef I, so that the system is [U bV; cV U] with U and V in I and P:
+ * it is solved by U² - bc V² = g I + h P, whose determinant g² - h² ef has no cancellation.
  *
  * Throws    singular with the row of block i when a pivot is not above the floor: two eigenvalues cancel
  */
@@ -17,19 +24,47 @@ export function solveBlockPair(
   j: number,
   q: number,
   sampled: boolean,
-  { system, right, floor }: BlockPair,
+  pair: BlockPair,
 ): void {
-  const a = i * n + i;
-  const b = j * n + j;
+  const { right, floor } = pair;
+  const ti = i * n + i;
+  const tj = j * n + j;
+  const a = t[ti];
+  const d = t[tj];
+  const u = sampled ? a * d - 1 : a + d;
   if (p === 1 && q === 1) {
-    const pivot = sampled ? t[a] * t[b] - 1 : t[a] + t[b];
-    if (!(Math.abs(pivot) > floor)) throw new NumericalError("singular", { matrix: "lyapunov", row: i });
-    right[0] /= pivot;
+    if (!(Math.abs(u) > floor)) throw new NumericalError("singular", { matrix: "lyapunov", row: i });
+    right[0] /= u;
     return;
   }
-  if (p === 2 && q === 2) fillFour(t, n, a, b, sampled, system);
-  else fillTwo(t, n, p === 2 ? a : b, p === 2 ? t[b] : t[a], sampled, system);
-  eliminate(system, right, p * q, floor, i);
+  const b = p === 2 ? t[ti + 1] : 0;
+  const c = p === 2 ? t[ti + n] : 0;
+  const e = q === 2 ? t[tj + 1] : 0;
+  const f = q === 2 ? t[tj + n] : 0;
+  const uP = sampled ? a : 1;
+  const v = sampled ? d : 1;
+  const vP = sampled ? 1 : 0;
+  const ef = e * f;
+  const bc = b * c;
+  const g = u * u + uP * uP * ef - bc * (v * v + vP * vP * ef);
+  const h = 2 * (u * uP - bc * v * vP);
+  const determinant = g * g - h * h * ef;
+  if (!(determinant > SMALL && determinant < LARGE)) {
+    if (p === 2 && q === 2) fillFour(t, n, ti, tj, sampled, pair.system);
+    else fillTwo(t, n, p === 2 ? ti : tj, p === 2 ? d : a, sampled, pair.system);
+    eliminate(pair.system, right, p * q, floor, i);
+    return;
+  }
+  const [x1, y1, x2, y2] = [right[0], q === 2 ? right[1] : 0, p === 2 ? right[q] : 0, p * q === 4 ? right[3] : 0];
+  // First U r - (b or c) V r of the other row, then times g I - h P over the determinant.
+  const r1 = u * x1 + uP * e * y1 - b * (v * x2 + vP * e * y2);
+  const s1 = u * y1 + uP * f * x1 - b * (v * y2 + vP * f * x2);
+  const r2 = u * x2 + uP * e * y2 - c * (v * x1 + vP * e * y1);
+  const s2 = u * y2 + uP * f * x2 - c * (v * y1 + vP * f * x1);
+  right[0] = (g * r1 - h * e * s1) / determinant;
+  if (q === 2) right[1] = (g * s1 - h * f * r1) / determinant;
+  if (p === 2) right[q] = (g * r2 - h * e * s2) / determinant;
+  if (p * q === 4) right[3] = (g * s2 - h * f * r2) / determinant;
 }
 
 /** One block of two rows at k beside a single eigenvalue. */
@@ -64,6 +99,7 @@ function fillFour(t: Float64Array, n: number, a: number, b: number, sampled: boo
   }
 }
 
+/** Partial pivoting. */
 function eliminate(a: Float64Array, b: Float64Array, n: number, floor: number, row: number): void {
   for (let k = 0; k < n; k++) {
     let best = k;

@@ -7,8 +7,25 @@ export type Wide = { readonly hi: Float64Array; readonly lo: Float64Array };
 /** A matrix of doubles with each entry split into two halves of at most 26 bits, once, for exact products. */
 export type Split = { readonly value: Float64Array; readonly head: Float64Array; readonly tail: Float64Array };
 
-/** Entries must be below 2^990, or the split overflows. */
+/** Entries must be below 2^990, or the split overflows. The halves are made when first asked for: the accelerator makes its own. */
 export function split(value: Float64Array): Split {
+  let made: { readonly head: Float64Array; readonly tail: Float64Array } | undefined;
+  const halves = () => {
+    made ??= halve(value);
+    return made;
+  };
+  return {
+    value,
+    get head() {
+      return halves().head;
+    },
+    get tail() {
+      return halves().tail;
+    },
+  };
+}
+
+function halve(value: Float64Array): { head: Float64Array; tail: Float64Array } {
   const head = new Float64Array(value.length);
   const tail = new Float64Array(value.length);
   for (let i = 0; i < value.length; i++) {
@@ -16,7 +33,7 @@ export function split(value: Float64Array): Split {
     head[i] = c - (c - value[i]);
     tail[i] = value[i] - head[i];
   }
-  return { value, head, tail };
+  return { head, tail };
 }
 
 export function widen(value: Float64Array): Wide {

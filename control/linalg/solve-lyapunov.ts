@@ -1,12 +1,13 @@
 import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { balance, safeShift } from "./balance";
-import { type Split, split, type Wide, widen, wideProduct, wideTranspose } from "./double-double";
-import { flatProduct, flatTranspose, fromFlat, largestEntry, toFlat } from "./flat";
+import { type Split, split, type Wide, wideProduct, wideTranspose } from "./double-double";
+import { flatProduct, flatProductInto, flatTranspose, fromFlat, largestEntry, toFlat } from "./flat";
 import { flatNorm } from "./norms";
 import { powerOfTwo, timesPowerOfTwo } from "./power-of-two";
 import { type FlatSchur, flatSchur } from "./real-schur";
 import { requireFinite, requireShape, requireSquare, requireSymmetric } from "./require";
+import { requireRepresentable } from "./require-representable";
 import { solveTriangularLyapunov } from "./triangular-lyapunov";
 
 export type LyapunovProblem = { readonly A: Matrix; readonly Q: Matrix; readonly timeBase: "continuous" | "sampled" };
@@ -41,20 +42,22 @@ export function solveLyapunov({ A, Q, timeBase }: LyapunovProblem): LyapunovSolu
   if (sampled && balanced.shift < 0) throw new NumericalError("too-large", { what: "A", limit: powerOfTwo(300) });
   // A sampled equation is not homogeneous in A: of a tiny A it is solved as it stands.
   const shift = sampled ? 0 : balanced.shift;
-  const a = sampled ? balanced.matrix.map((entry) => timesPowerOfTwo(entry, -balanced.shift)) : balanced.matrix;
+  const a = sampled ? timesPower(balanced.matrix, -balanced.shift) : balanced.matrix;
   const weight = balancedWeight(toFlat(Q), n, order, scale);
   // X is proportional to Q, which is brought to ordinary size.
   const lift = safeShift(weight);
-  const q = lift === 0 ? weight : weight.map((entry) => timesPowerOfTwo(entry, lift));
-  const { x, residual } = refine(a, q, n, sampled);
+  const { x, residual } = refine(a, timesPower(weight, lift), n, sampled);
   const bound = 4 * n * Number.EPSILON;
   if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
   const whole = new Float64Array(n * n);
-  for (let i = 0; i < n; i++)
-    for (let j = 0; j < n; j++)
-      whole[order[i] * n + order[j]] = timesPowerOfTwo(x[i * n + j] * scale[i] * scale[j], shift - lift);
-  if (!whole.every(Number.isFinite)) throw new NumericalError("too-large", { what: "solution", limit: Number.MAX_VALUE });
-  return { X: fromFlat(whole, n, n), residual, bound };
+  for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) whole[order[i] * n + order[j]] = x[i * n + j] * scale[i] * scale[j];
+  const solution = timesPower(whole, shift - lift);
+  requireRepresentable("solution", solution);
+  return { X: fromFlat(solution, n, n), residual, bound };
+}
+
+function timesPower(a: Float64Array, exponent: number): Float64Array {
+  return exponent === 0 ? a : a.map((entry) => timesPowerOfTwo(entry, exponent));
 }
 
 /** Q in the balanced coordinates, made exactly symmetric. */
@@ -73,7 +76,7 @@ function balancedWeight(q: Float64Array, n: number, order: Int32Array, scale: Fl
 function refine(a: Float64Array, q: Float64Array, n: number, sampled: boolean): { x: Float64Array; residual: number } {
   const schur = flatSchur(a, n);
   const parts = split(a);
-  const x = widen(solveLyapunovBySchur(schur, n, q, sampled));
+  const x = { hi: solveLyapunovBySchur(schur, n, q, sampled), lo: new Float64Array(n * n) };
   const moved = new Float64Array(n * n);
   let defect = q;
   let before = largestEntry(x.hi);
@@ -86,7 +89,8 @@ function refine(a: Float64Array, q: Float64Array, n: number, sampled: boolean): 
     before = size;
   }
   const size = flatNorm(x.hi) * (sampled ? 1 + flatNorm(a) * flatNorm(a) : 2 * flatNorm(a)) + flatNorm(q);
-  return { x: x.hi, residual: size === 0 ? 0 : flatNorm(movedDefect(a, defect, moved, n, sampled)) / size };
+  moveDefect(a, defect, moved, n, sampled);
+  return { x: x.hi, residual: size === 0 ? 0 : flatNorm(defect) / size };
 }
 
 /** Adds the step to x; `moved` tells how far x.hi alone then lies from the old x. */
@@ -116,15 +120,13 @@ function isSettled(x: Float64Array, step: Float64Array, n: number, ratio: number
   return true;
 }
 
-/** The defect once x has moved: the way is short, so that working precision serves. */
-function movedDefect(a: Float64Array, defect: Float64Array, moved: Float64Array, n: number, sampled: boolean): Float64Array {
+/** Overwrites the defect by what it is once x has moved: the way is short, so that working precision serves. */
+function moveDefect(a: Float64Array, defect: Float64Array, moved: Float64Array, n: number, sampled: boolean): void {
   const product = flatProduct(a, moved, n, n, n);
   const added = sampled ? flatProduct(product, flatTranspose(a, n, n), n, n, n) : product;
-  const left = new Float64Array(n * n);
   for (let i = 0; i < n; i++) {
-    for (let j = 0, at = i * n; j < n; j++, at++) left[at] = defect[at] + added[at] + (sampled ? -moved[at] : added[j * n + i]);
+    for (let j = 0; j < n; j++) defect[i * n + j] += added[i * n + j] + (sampled ? -moved[i * n + j] : added[j * n + i]);
   }
-  return left;
 }
 
 /** A X + X A' + Q (sampled: A X A' - X + Q) for symmetric wide X, summed in double-double and rounded once; symmetric. */
@@ -156,12 +158,14 @@ function lyapunovDefect(a: Split, x: Wide, q: Float64Array, n: number, sampled: 
  */
 export function solveLyapunovBySchur({ t, qt }: FlatSchur, n: number, c: Float64Array, sampled: boolean): Float64Array {
   const q = flatTranspose(qt, n, n);
-  const inside = flatProduct(flatProduct(qt, c, n, n, n), q, n, n, n);
+  const turned = flatProduct(qt, c, n, n, n);
+  const inside = flatProduct(turned, q, n, n, n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) inside[i * n + j] = inside[j * n + i] = -0.5 * (inside[i * n + j] + inside[j * n + i]);
   }
   solveTriangularLyapunov(t, n, inside, sampled);
-  const y = flatProduct(flatProduct(q, inside, n, n, n), qt, n, n, n);
+  flatProductInto(turned, q, inside, n, n, n);
+  const y = flatProduct(turned, qt, n, n, n);
   for (let i = 0; i < n; i++) for (let j = 0; j < i; j++) y[i * n + j] = y[j * n + i] = 0.5 * (y[i * n + j] + y[j * n + i]);
   return y;
 }

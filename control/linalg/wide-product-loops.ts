@@ -11,6 +11,9 @@ let panel = new Float64Array(256);
  * from +0 and adds its products in order of the inner index.
  */
 export function wideProductByLoops(a: Split, b: Wide, rows: number, inner: number, columns: number): Wide {
+  // Read once: the halves may be made on being asked for.
+  const { value, head, tail } = a;
+  const left = { value, head, tail };
   const product = { hi: new Float64Array(rows * columns), lo: new Float64Array(rows * columns) };
   if (panel.length < 8 * inner) panel = new Float64Array(8 * inner);
   for (let j = 0; j < columns; j += 2) {
@@ -21,8 +24,8 @@ export function wideProductByLoops(a: Split, b: Wide, rows: number, inner: numbe
     }
     for (let i = 0; i < rows; i++) {
       const out = i * columns + j;
-      if (both) twoColumns(a, i * inner, inner, product, out);
-      else oneColumn(a, i * inner, inner, product, out);
+      if (both) twoColumns(left, i * inner, inner, product, out);
+      else oneColumn(left, i * inner, inner, product, out);
     }
   }
   return product;
