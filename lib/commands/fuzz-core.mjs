@@ -14,8 +14,9 @@ await runCommand(
       from,
       cases,
       threads,
-      onStretch: (done) => {
-        if (done % 5_000 === 0) console.log(`  ${done} plants`);
+      onStretch: (done, found) => {
+        for (const { seed, call, problem } of found) console.log(`seed ${seed}, ${call}: ${problem}`);
+        if (done % 1_000 === 0) console.log(`  ${done} plants`);
       },
     });
     const time = (/** @type {{ ms: number, seed: number }} */ { ms, seed }) => `${ms.toFixed(1)} (${seed})`.padStart(18);
@@ -24,7 +25,6 @@ await runCommand(
       const counts = [answered, refused].map((count) => String(count[name] ?? 0).padStart(9));
       console.log(`${name.padEnd(24)} ${counts.join(" ")}   ${sizes.map(time).join("")}`);
     }
-    for (const { seed, call, problem } of findings) console.log(`seed ${seed}, ${call}: ${problem}`);
     console.log(findings.length === 0 ? "Nothing found." : `${findings.length} findings.`);
     return findings.length === 0 ? 0 : 1;
   },

@@ -1,5 +1,6 @@
 import { Matrix } from "ml-matrix";
 import * as core from "@/control/index";
+import { USABLE_POLE_ERROR } from "@/control/poles/verify-placement";
 import { isExactlyStable } from "./exact-stability";
 import type { HostileProblem } from "./hostile-problem";
 import { marginCalls } from "./margin-calls";
@@ -15,6 +16,10 @@ export type Answer = {
 export type CoreCall = (problem: HostileProblem) => Answer;
 
 const within = (value: { readonly residual: number; readonly bound: number }) => value.residual <= value.bound;
+
+/** A gain for poles inside the boundary is promised to stabilise. */
+const allInside = ({ poles, sampled }: HostileProblem) =>
+  poles.every(({ re, im }) => (sampled ? Math.hypot(re, im) < 1 : re < 0));
 
 const regulators: Record<string, CoreCall> = {
   solveRiccati: ({ A, B, Q, R, S, sampled, seed }) => {
@@ -32,9 +37,14 @@ const regulators: Record<string, CoreCall> = {
       B.to1DArray().map(Math.abs),
     ),
   }),
-  placePoles: ({ A, B, poles, seed }) => {
+  placePoles: (problem) => {
+    const { A, B, poles, seed } = problem;
     const value = core.placePoles({ A, B, poles, allowDefective: seed % 3 === 0 });
-    return { value, holds: within(value) && value.poleError <= value.poleBound };
+    return {
+      value,
+      holds: value.poleError <= USABLE_POLE_ERROR,
+      ...(allInside(problem) ? { closed: { A, B, K: value.K } } : {}),
+    };
   },
   referenceGain: ({ A, B, H, J, K, sampled }) => ({ value: core.referenceGain({ A, B, H, J, K, sampled }) }),
   resolvePoles: ({ recipe, timeBase }) => ({
@@ -43,9 +53,11 @@ const regulators: Record<string, CoreCall> = {
 };
 
 const observers: Record<string, CoreCall> = {
-  observerByPoles: ({ A, C, poles }) => {
+  observerByPoles: (problem) => {
+    const { A, C, poles } = problem;
     const value = core.observerByPoles({ A, C, poles });
-    return { value, holds: within(value) && value.poleError <= value.poleBound };
+    const dual = { A: A.transpose(), B: C.transpose(), K: value.L.transpose() };
+    return { value, holds: value.poleError <= USABLE_POLE_ERROR, ...(allInside(problem) ? { closed: dual } : {}) };
   },
   observerFromNoise: ({ A, C, Q, V, sampled }) => {
     const value = core.observerFromNoise({ A, C, processNoise: Q, measurementNoise: V, sampled });

@@ -15,7 +15,8 @@ const nothing = () => ({ answered: {}, refused: {}, findings: [], slowest: {}, s
 /**
  * Tries `cases` random plants from the seed `from` on, in threads, each plant with every function of the core. A call that does not return is a
  * finding like any other: its thread is ended and the next plant tried in a new one.
- * @param {{ from: number, cases: number, threads: number, onStretch?: (done: number) => void }} options
+ * @param {{ from: number, cases: number, threads: number,
+ *   onStretch?: (done: number, findings: FuzzReport["findings"]) => void }} options
  */
 export async function watchFuzz({ from, cases, threads, onStretch }) {
   await bundle(["fuzz-worker"]);
@@ -29,13 +30,16 @@ export async function watchFuzz({ from, cases, threads, onStretch }) {
   };
   const thread = async () => {
     for (let stretch = take(); stretch.cases > 0; stretch = take()) {
+      /** @type {FuzzReport["findings"]} */
+      const findings = [];
       for (let left = /** @type {Stretch | null} */ (stretch); left; ) {
         const { report, rest } = await tryStretch(left);
         merge(whole, report);
+        findings.push(...report.findings);
         left = rest;
       }
       done += stretch.cases;
-      onStretch?.(done);
+      onStretch?.(done, findings);
     }
   };
   await Promise.all(Array.from({ length: threads }, thread));
