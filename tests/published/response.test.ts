@@ -378,4 +378,16 @@ describe("figures of closed forms", () => {
     expect(late.peakAt).toBeCloseTo(at, 3);
     expect(late.overshoot).toBeCloseTo(100 * (value(at) - 1), 9);
   });
+
+  // 1/(s + 1)^8, one eigenvector for eight eigenvalues: 1 - e^-t (1 + t + ... + t^7/7!).
+  test("eight equal lags rise and settle where the incomplete gamma function says", () => {
+    const A = Array.from({ length: 8 }, (_, i) => Array.from({ length: 8 }, (__, j) => (i === j ? -1 : i === j + 1 ? 1 : 0)));
+    const B = A.map((_, i) => [i === 0 ? 1 : 0]);
+    const { rise, settling, overshoot } = stepOf(A, B, [A.map((_, j) => (j === 7 ? 1 : 0))]);
+    const missing = (t: number) => Math.exp(-t) * [7, 6, 5, 4, 3, 2, 1].reduce((sum, k) => 1 + (t / k) * sum, 1);
+    const reached = (part: number) => rootOf((t) => missing(t) - (1 - part), 1, 40);
+    expect(overshoot).toBe(0);
+    expect(rise).toBeCloseTo(reached(0.9) - reached(0.1), 11);
+    expect(settling).toBeCloseTo(reached(0.98), 11);
+  });
 });
