@@ -7,6 +7,9 @@ import { prepareFrequency } from "./prepare-frequency";
 import { frequencyOf } from "./response-at";
 
 const MOST_DECADES = 40;
+const WIDEST_RATIO = 1e40;
+/** Poles and zeros beyond this are not drawn. */
+const EXTREME = 1e290;
 /** Points a decade are 2 to this power: with more decades fewer, so that there are about 200 to 500 in all. */
 const DENSITIES = [
   { decades: 4, halvings: 6 },
@@ -32,16 +35,16 @@ export function frequencyGrid(system: System, period: number | null = null): Flo
   const { poles } = prepareFrequency(system, period);
   const features = [...poles, ...transmissionZeros(system)].flatMap((place) => featureOf(place, period));
   const last = period === null ? Number.POSITIVE_INFINITY : Math.PI / period;
-  const sizes = features.map(({ frequency }) => frequency).filter((w) => w > 0 && Number.isFinite(w) && w <= last);
+  const sizes = features.map(({ frequency }) => frequency).filter((w) => w >= 1 / EXTREME && w <= Math.min(last, EXTREME));
   const centre = period === null ? 1 : last / 10;
   const low = decadeBelow(Math.min(...(sizes.length > 0 ? sizes : [centre]))) / 10;
-  const high = Math.min(decadeBelow(Math.max(...(sizes.length > 0 ? sizes : [centre]))) * 100, last);
-  const grid = equalRatios(Math.max(low, high / 10 ** MOST_DECADES), high);
+  const top = decadeBelow(Math.max(...(sizes.length > 0 ? sizes : [centre]))) * 100;
+  const high = period === null ? top : last;
+  const grid = equalRatios(Math.max(low, high / WIDEST_RATIO), high);
   for (const { frequency, width } of features) {
     if (!(width < LIGHT * frequency)) continue;
     grid.push(...AROUND.map((share) => frequency + share * width));
   }
-  if (period !== null) grid.push(last);
   return Float64Array.from(rising(grid.filter((w) => w >= low && w <= high)));
 }
 
@@ -73,7 +76,7 @@ function equalRatios(low: number, high: number): number[] {
   const grid: number[] = [];
   for (let start = low; start < high; start *= 10) {
     let w = start;
-    for (let k = 0; k < 2 ** halvings; k++, w *= ratio) grid.push(w);
+    for (let k = 0; k < 1 << halvings; k++, w *= ratio) grid.push(w);
   }
   grid.push(high);
   return grid;

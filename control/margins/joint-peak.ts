@@ -1,5 +1,6 @@
 import { NumericalError } from "../errors";
 import { complexSingularValues, singularRoom } from "../linalg/complex-singular-values";
+import { powerOfTwo } from "../linalg/power-of-two";
 import { type BoundaryForm, boundaryForm } from "./boundary-form";
 import { levelFrequencies } from "./level-frequencies";
 import { innerPlaces } from "./partition";
@@ -12,9 +13,11 @@ import { type ScaledBound, scaledBound } from "./scaled-bound";
 /** In units of 2^size: the bound is `value` at the coordinate `at`, below `upper` everywhere, and its dual there is `lower`. */
 export type JointPeak = Peak & { readonly lower: number; readonly upper: number };
 
-/** The level, above the largest bound found, below which every frequency must be shown to stay. */
-const LEVEL = 1 + 2 ** -24;
-const MOST_ROUNDS = 200;
+/** How far above the largest bound found the level starts below which every frequency must be shown to stay; */
+const SLACK = 2 ** -24;
+/** where two singular values meet, scales clear little: then the level rises fourfold after so many rounds. */
+const PATIENCE = 32;
+const MOST_ROUNDS = 10 * PATIENCE;
 /** Bounds of neighbouring frequencies are told apart down to this. */
 const SETTLED = 2 ** -36;
 
@@ -27,26 +30,29 @@ type Interval = readonly [number, number];
  *
  * Shapes    a stable system with as many inputs as outputs, k ≥ 1
  * Throws    no-convergence; too-large
- * Accuracy  upper = value (1 + 2^-24); at most 200 rounds
+ * Accuracy  value as `scaledBound` at the peak; upper is 2^-24 above it after up to 32 rounds, and four times that for every
+ *           32 more; at most 320
  * Source    Sideris & Sánchez Peña, IEEE Trans. Autom. Control 34 (1989) 1272-1278, for the idea (from memory)
  */
 export function jointPeak(system: FrequencySystem): JointPeak {
   const boundAt = scaledBoundOf(system);
   const valueAt = (v: number) => boundAt(v).upper;
   let best = startPeak(system, valueAt);
-  const finish = () => ({ ...best, lower: boundAt(best.at).lower, upper: best.value * LEVEL });
-  if (system.n === 0 || best.value === 0) return finish();
+  const finish = (slack: number) => ({ ...best, lower: boundAt(best.at).lower, upper: best.value * (1 + slack) });
+  if (system.n === 0 || best.value === 0) return finish(0);
   const form = boundaryForm(system);
   let open: Interval[] = [[0, Number.POSITIVE_INFINITY]];
   let scale = boundAt(best.at).scale;
   for (let round = 0; round < MOST_ROUNDS; round++) {
-    open = stillOpen(system, form, open, scale, best.value * LEVEL);
+    const slack = SLACK * powerOfTwo(2 * Math.trunc(round / PATIENCE));
+    const level = best.value * (1 + slack);
+    open = stillOpen(system, form, open, scale, level);
     const next = open[0];
-    if (next === undefined) return finish();
+    if (next === undefined) return finish(slack);
     const v = placeIn(next, best.at, round);
     const here = boundAt(v);
     scale = here.scale;
-    if (!(here.upper > best.value * LEVEL)) continue;
+    if (!(here.upper > level)) continue;
     const above = Number.isFinite(next[1]) ? next[1] : 2 * v;
     best =
       v > next[0] && v < above

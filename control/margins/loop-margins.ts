@@ -82,20 +82,27 @@ function ends(system: FrequencySystem): Crossing[] {
   });
 }
 
-/** -1/L = -S/T for a real L below zero; null where L is above zero, or zero or infinite within rounding. */
-function gainFactor([left, right]: Crossing, period: number | null): Found | null {
-  if (![left, right].every(({ S, T, errorOfS, errorOfT }) => Math.abs(S.re) > errorOfS && Math.abs(T.re) > errorOfT)) return null;
-  if (!(left.S.re * left.T.re < 0)) return null;
+/** -1/L = -S/T for a real L below zero; null where L is above zero, or cannot be told from zero or infinity. */
+function gainFactor(crossing: Crossing, period: number | null): Found | null {
+  const certain = crossing.every(
+    ({ S, T, errorOfS, errorOfT }) => Math.abs(S.re) > 4 * errorOfS && Math.abs(T.re) > 4 * errorOfT && S.re > 0 !== T.re > 0,
+  );
+  if (!certain) return null;
+  const [left, right] = crossing;
   const factorOf = ({ S, T }: SensitivityPoint) => -S.re / T.re;
   const shareOf = ({ S, T, errorOfS, errorOfT }: SensitivityPoint) => errorOfS / Math.abs(S.re) + errorOfT / Math.abs(T.re);
   const value = factorOf(right);
+  if (!Number.isFinite(value) || !Number.isFinite(2 / value)) return null;
   return enclosed(value, factorOf(left), value * Math.max(shareOf(left), shareOf(right)), frequencyOf(right.v, period));
 }
 
 /** Angle of -L where |L| = 1: how far the loop may lag (positive) or lead (negative) more. */
 function phaseTurn([left, right]: Crossing, period: number | null): Found {
-  const turnOf = ({ S, T }: SensitivityPoint) =>
-    angleOf({ re: 0 - (T.re * S.re + T.im * S.im), im: 0 - (T.im * S.re - T.re * S.im) });
+  const turnOf = ({ S, T }: SensitivityPoint) => {
+    const size = Math.abs(S.re) + Math.abs(S.im);
+    const [x, y, p, q] = [S.re / size, S.im / size, T.re / size, T.im / size];
+    return angleOf({ re: 0 - (p * x + q * y), im: p * y - q * x });
+  };
   const shareOf = ({ S, T, errorOfS, errorOfT }: SensitivityPoint) =>
     errorOfS / (Math.abs(S.re) + Math.abs(S.im)) + errorOfT / (Math.abs(T.re) + Math.abs(T.im));
   return enclosed(turnOf(right), turnOf(left), 2 * Math.max(shareOf(left), shareOf(right)), frequencyOf(right.v, period));
@@ -133,7 +140,8 @@ function shortestDelay(system: FrequencySystem, turns: readonly Found[]): Margin
     return { value: 0, lower: 0, upper: 0, frequency: null, reason: null };
   }
   const delays = turns.flatMap(({ value, lower, upper, frequency }) => {
-    if (frequency === null || frequency === 0) return [];
+    // A crossing so slow that the delay has no number is as good as none.
+    if (frequency === null || !Number.isFinite((4 * Math.PI) / frequency)) return [];
     const round = value > 0 ? 0 : 2 * Math.PI;
     return [
       {

@@ -27,8 +27,8 @@ export type LoopRobustness = {
  * Units     factors, rad, rad/s, seconds; period in seconds, null when continuous. Singular values in the signals' own units
  * Throws    not-stabilising { pole } when the closed loop does not decay; singular when it has no solution; shape-mismatch;
  *           not-finite; bad-option; too-large; no-convergence
- * Accuracy  peaks and each loop's disk 2^-30; together 2^-24: `lower` is sure for any number of loops, and the exact limit for
- *           up to three; with more, the least margin of one loop is what bounds it from above
+ * Accuracy  peaks and each loop's disk 2^-30. Together: 2^-24, more where `lower` and `upper` say so; `lower` is sure for any
+ *           number of loops and the size is the exact limit for up to three, for more the least disk of one bounds it from above
  * Source    Seiler, Packard & Gahinet, IEEE Control Systems Magazine 40 (2020) 78-95
  */
 export function loopRobustness(L: System, period: number | null = null): LoopRobustness {
@@ -61,8 +61,11 @@ function jointDisk(S: System, period: number | null, channels: readonly ChannelR
   const system = prepareFrequency(shifted(S, 0.5), period);
   const { at, value, lower, upper } = jointPeak(system);
   const own = (gain: number) => timesPowerOfTwo(gain, system.size);
+  const alone = channels.flatMap(({ disk }) => (disk === null ? [] : [disk.upper]));
+  // No loop has a limit of its own, and no ring of loops was found that has one.
+  if (lower === 0 && alone.length === 0) return null;
   const joint = diskMargin({ value: own(value), lower: own(lower), upper: own(upper), frequency: frequencyOf(at, period) });
-  if (joint === null || channels.length <= 3) return joint;
-  const alone = channels.reduce((least, { disk }) => Math.min(least, disk?.upper ?? least), Number.MAX_VALUE);
-  return { ...joint, upper: Math.max(joint.size, alone) };
+  if (joint === null) return null;
+  const limits = channels.length <= 3 || alone.length === 0 ? [joint.upper, ...alone] : alone;
+  return { ...joint, upper: Math.max(joint.size, Math.min(...limits)) };
 }

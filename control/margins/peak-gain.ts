@@ -10,7 +10,7 @@ import { boundaryForm } from "./boundary-form";
 import { levelFrequencies } from "./level-frequencies";
 import { partition, rising } from "./partition";
 import { climb, type Peak } from "./peak-search";
-import { type FrequencySystem, prepareFrequency } from "./prepare-frequency";
+import { type FrequencySystem, prepareFrequency, requirePeriod } from "./prepare-frequency";
 import { evaluateOnBoundary, frequencyOf, responseRoom } from "./response-at";
 
 /**
@@ -49,6 +49,7 @@ export function peakGain(given: System, period: number | null = null): PeakValue
 
 /** Throws not-stabilising with the first pole on or beyond the boundary within the accuracy of a pole. */
 export function requireDecay(A: Matrix, period: number | null): void {
+  requirePeriod(period);
   const accuracy = 2 * A.rows * Number.EPSILON;
   const lasting = eigenvalues(A).find(({ re, im }) => {
     const size = Math.sqrt(re * re + im * im);

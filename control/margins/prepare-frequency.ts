@@ -83,6 +83,11 @@ function requireSystem({ A, B, C, D }: System, period: number | null): void {
   requireShape("C", C, C.rows, A.rows);
   requireShape("D", D, C.rows, B.columns);
   for (const [name, M] of Object.entries({ A, B, C, D })) requireFinite(name, M);
+  requirePeriod(period);
+}
+
+/** Throws bad-option unless the period is positive and finite, or null for a continuous system. */
+export function requirePeriod(period: number | null): void {
   if (period !== null && !(period > 0 && Number.isFinite(period)))
     throw new NumericalError("bad-option", { option: "period", given: period });
 }

@@ -1,5 +1,7 @@
+import { NumericalError } from "../errors";
 import { factorShiftedHessenberg, solveShiftedHessenberg } from "../linalg/complex-hessenberg";
 import { timesPowerOfTwo } from "../linalg/power-of-two";
+import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
 import type { FrequencySystem } from "./prepare-frequency";
 import { boundaryPoint } from "./response-at";
@@ -18,6 +20,7 @@ export type SensitivityPoint = {
  * little gain.
  *
  * Shapes    a stable system with one input and one output
+ * Throws    too-large
  * Accuracy  the two errors are 4 n ε times the sum of the sizes of the terms
  */
 export function sensitivityAt(system: FrequencySystem, v: number): SensitivityPoint {
@@ -29,6 +32,7 @@ export function sensitivityAt(system: FrequencySystem, v: number): SensitivityPo
   let terms = 0;
   if (s !== null && n > 0) {
     factorShiftedHessenberg(h, n, { re: timesPowerOfTwo(s.re, rate), im: timesPowerOfTwo(s.im, rate) }, room.factors);
+    if (room.factors.zeroPivot >= 0) throw new NumericalError("too-large", { what: "gain", limit: Number.MAX_VALUE });
     room.re.set(b);
     room.im.fill(0);
     solveShiftedHessenberg(room.factors, room.re, room.im, 1);
@@ -40,6 +44,7 @@ export function sensitivityAt(system: FrequencySystem, v: number): SensitivityPo
   }
   const unit = 4 * Math.max(n, 1) * Number.EPSILON;
   const moved = { re: timesPowerOfTwo(re, size), im: timesPowerOfTwo(im, size) };
+  requireRepresentable("gain", [moved.re, moved.im, direct, timesPowerOfTwo(terms, size)]);
   const errorOfT = unit * (timesPowerOfTwo(terms, size) + Math.abs(1 - direct));
   return {
     v,
