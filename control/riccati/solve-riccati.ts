@@ -24,6 +24,8 @@ export type { RiccatiMethod, RiccatiSolution } from "./solution";
 
 /** Once every start has failed, a mode this near to being unreachable is named as the cause. */
 const NEARLY_UNREACHABLE = 1e-6;
+/** Beyond this ratio of scaled entries no start keeps a digit of what the small ones do: the refusal speaks of the ratio. */
+const WIDEST_SPREAD = 1e60;
 const GAIN_SHIFTS = [0.3, 3, 0.03];
 
 /**
@@ -126,12 +128,28 @@ function scalingWeight(problem: FlatProblem): Float64Array {
 function refusal(original: FlatProblem, problem: FlatProblem, reasons: readonly NumericalError[]): NumericalError {
   const singularWeight = startable(problem).auxiliary ? reasons.find(({ code }) => code === "not-positive-definite") : undefined;
   if (singularWeight) return singularWeight;
+  const given = spread(problem);
+  if (given > WIDEST_SPREAD) return new NumericalError("too-large", { what: "spread", limit: WIDEST_SPREAD, given });
   const nearest = leastReachable(original, NEARLY_UNREACHABLE);
   if (nearest && nearest.distance < NEARLY_UNREACHABLE) return new NumericalError("not-stabilizable", nearest);
   const distance = axisDistance(problem);
   if (distance !== null) return new NumericalError("on-stability-boundary", { distance });
   const failed = reasons.find(({ code }) => code === "too-large" || code === "inaccurate");
   return failed ?? new NumericalError("no-convergence", { routine: "solve-riccati", limit: 2 + GAIN_SHIFTS.length });
+}
+
+/** Of the largest to the smallest entry that is not zero, in scaled coordinates. */
+function spread({ a, b, q, r, s }: FlatProblem): number {
+  let largest = 0;
+  let smallest = Number.POSITIVE_INFINITY;
+  for (const part of [a, b, q, r, s]) {
+    for (let i = 0; i < part.length; i++) {
+      const size = Math.abs(part[i]);
+      if (size > largest) largest = size;
+      if (size > 0 && size < smallest) smallest = size;
+    }
+  }
+  return largest === 0 ? 1 : Math.min(largest / smallest, Number.MAX_VALUE);
 }
 
 /** Least real part in size among the Hamiltonian eigenvalues where it is within √ε of zero, else null. */

@@ -3,6 +3,7 @@ import { eigenvalues } from "../linalg/eigenvalues";
 import { flatProduct, flatTranspose, flatTransposedProduct, fromFlat, largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, timesPowerOfTwo } from "../linalg/power-of-two";
+import type { Complex } from "../plant/model";
 import { boundaryMargin } from "./check-modes";
 import { closedLoop } from "./closed-loop";
 import { conditionNumber } from "./condition-number";
@@ -11,6 +12,8 @@ import type { FlatProblem } from "./problem";
 import type { Refined } from "./refine";
 import type { ScaledProblem } from "./scale-problem";
 import type { RiccatiMethod, RiccatiSolution } from "./solution";
+
+import { unseenStates } from "./unseen-states";
 
 /** A gain that may be off by more than this has no digit worth showing. */
 const LARGEST_ERROR = 0.1;
@@ -35,11 +38,15 @@ export function verifiedSolution(
   const e = Array.from(input, exponentOf);
   const x = rescaled(refined.x.hi, n, (i, j) => cost - time - d[i] - d[j]);
   const k = rescaled(gain.k.hi, n, (i, j) => e[i] - d[j]);
+  for (const unseen of unseenStates(original)) {
+    for (let i = 0; i < n; i++) x[unseen * n + i] = x[i * n + unseen] = 0;
+    for (let i = 0; i < m; i++) k[i * n + unseen] = 0;
+  }
   if (!(Number.isFinite(largestEntry(x)) && Number.isFinite(largestEntry(k))))
     throw new NumericalError("too-large", { what: "solution", limit: Number.MAX_VALUE });
   const { residual, bound } = relativeResidual(scaled.problem, refined);
   if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
-  const closedLoopPoles = eigenvalues(fromFlat(closedLoop(original, k), n, n));
+  const closedLoopPoles = polesOf(scaled, gain.k.hi);
   const stabilityDistance = Math.min(...closedLoopPoles.map((pole) => boundaryMargin(pole, original.sampled)));
   if (!(stabilityDistance > 0)) throw new NumericalError("on-stability-boundary", { distance: stabilityDistance });
   const K = fromFlat(k, m, n);
@@ -56,6 +63,16 @@ export function verifiedSolution(
     stabilityDistance,
     method,
   };
+}
+
+/** Poles of the loop with the rounded gain: scaling by powers of two moves them by the unit of time alone. */
+function polesOf({ problem, time }: ScaledProblem, k: Float64Array): Complex[] {
+  const poles = eigenvalues(fromFlat(closedLoop(problem, k), problem.n, problem.n));
+  if (time === 0) return poles;
+  const moved = poles.map(({ re, im }) => ({ re: timesPowerOfTwo(re, time), im: timesPowerOfTwo(im, time) }));
+  if (!moved.every(({ re, im }) => Number.isFinite(re) && Number.isFinite(im)))
+    throw new NumericalError("too-large", { what: "eigenvalue", limit: Number.MAX_VALUE });
+  return moved;
 }
 
 function rescaled(from: Float64Array, columns: number, exponent: (i: number, j: number) => number): Float64Array {

@@ -33,6 +33,7 @@ const RESULTS: Readonly<Record<string, string>> = {
   "gain at rest": "The gain at rest",
   "reference gain": "The reference gain",
   weights: "A weight",
+  spread: "The ratio between the entries of the plant and of its weights",
   states: "The number of states",
   inputs: "The number of inputs",
   outputs: "The number of outputs",
