@@ -47,6 +47,7 @@ export function distanceToUncontrollability(A: Matrix, B: Matrix, evaluations = 
   const starts = poles.map(({ re, im }) => ({ re: re * scale, im: im * scale }));
   const size = flatNorm(a);
   const norm = pythagoras(size, flatNorm(b));
+  if (norm === 0) return { lower: 0, upper: 0, at: { re: 0, im: 0 }, evaluations: 0 };
   const floor = 4 * (n + m) * Number.EPSILON * norm;
   // A pole p has σ(p) ≤ |B|, and σ(s) ≥ |s| - |A| grows beyond that; wider than A alone asks for, so that squares keep digits.
   const radius = 2 * powerOfTwo(exponentOf(Math.max(2 * size, norm) || 1));

@@ -66,8 +66,9 @@ test("what outputs see is as far from hidden as the dual pair from out of reach,
   expect(distanceToUnobservability(A, C)).toEqual(distanceToUncontrollability(A.transpose(), C.transpose()));
 });
 
-test("without inputs the distance is zero, and shapes and entries are checked at the door", () => {
+test("without inputs, and without anything at all, the distance is zero, and shapes and entries are checked at the door", () => {
   expect(distanceToUncontrollability(new Matrix([[2]]), Matrix.zeros(1, 0))).toMatchObject({ lower: 0 });
+  expect(distanceToUncontrollability(Matrix.zeros(2, 2), Matrix.zeros(2, 1))).toMatchObject({ lower: 0, upper: 0 });
   expect(() => distanceToUncontrollability(Matrix.eye(2), Matrix.ones(3, 1))).toThrow("shape-mismatch");
   expect(() => distanceToUnobservability(Matrix.eye(2), Matrix.ones(1, 3))).toThrow("shape-mismatch");
   expect(() => distanceToUncontrollability(new Matrix([[Number.NaN]]), Matrix.ones(1, 1))).toThrow("not-finite");
