@@ -12,6 +12,7 @@ import type { Solved } from "../bench/bench-types";
 import { computed } from "../evidence/figures-reply";
 import { type GainMatrix, gainMatrices } from "./gain-matrices";
 import { gainText } from "./gain-text";
+import { SpringReading } from "./spring-reading";
 
 type GainsSectionProps = Readonly<{ solved: Solved; plantName: string; designName: string | null }>;
 
@@ -21,6 +22,7 @@ export const GainsSection = memo(function GainsSection({ solved, plantName, desi
   const matrices = gainMatrices(evidence, ground.model);
   if (matrices.length === 0) return null;
   const observer = computed(evidence.observer);
+  const gains = computed(evidence.gains);
   const law = describeLaw(computed(evidence.reference) !== null, observer !== null);
   const observerLaw = observer && describeObserverLaw(observer.kind, ground.model.timeBase);
   const timeBase = describeTimeBase(ground.model.timeBase);
@@ -49,6 +51,11 @@ export const GainsSection = memo(function GainsSection({ solved, plantName, desi
           <GainMatrixFigure key={matrix.symbol} matrix={matrix} />
         ))}
       </div>
+      {gains ? (
+        <div className="mt-4">
+          <SpringReading model={ground.model} K={gains.K} />
+        </div>
+      ) : null}
       <div className="mt-5">
         <Cautions />
       </div>
