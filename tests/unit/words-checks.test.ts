@@ -243,7 +243,7 @@ describe("findings", () => {
       ],
     });
     expect(finding(hidden, "zeros").sentence).toContain(
-      "At 1 u1 and u2 moving as 1 : −1 of their largest acceptable deviations are blocked, and y1 and y2 feel it most.",
+      "At 1, u1 and u2 moving as 1 : −1 of their largest acceptable deviations are blocked, and y1 and y2 feel it most.",
     );
     const single = smallPlant({
       A: [

@@ -20,7 +20,7 @@ export function blockedMotion(zeros: readonly ZeroReport[], model: PlantModel): 
   const inputs = model.inputs.length > 1 && nearest.inputDirection ? motionOf(nearest.inputDirection, model) : "";
   const outputs = model.outputs.length > 1 && nearest.outputDirection ? leading(nearest.outputDirection, model.outputs) : "";
   if (inputs === "" && outputs === "") return "";
-  const at = `At ${formatComplex(nearest.value)}`;
+  const at = `At ${formatComplex(nearest.value)},`;
   if (inputs === "") return ` ${at} it is felt in ${outputs}.`;
   return ` ${at} ${inputs} blocked${outputs === "" ? "" : `, and ${outputs} feel it most`}.`;
 }
