@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { addNarrow, type Wide } from "../linalg/double-double";
-import { flatProduct, flatTranspose } from "../linalg/flat";
+import { flatProductInto, flatTranspose } from "../linalg/flat";
 import { distinctRows } from "./distinct-rows";
 import type { Drive, LoopDynamics } from "./loop-dynamics";
 import { flatExponential } from "./matrix-exponential";
@@ -42,13 +42,14 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
   const block = flatTranspose(signalBlock(phi, order, rows), width, order);
   const blocks = Math.ceil(samples / BLOCK);
   const starts = new Float64Array(blocks * order);
+  const departed = new Float64Array(blocks * width);
   return ({ departure, final }) => {
     starts.set(departure);
     for (let k = 1; k < blocks; k++) {
       const here = starts.subarray(k * order, (k + 1) * order);
       timesVector(phiBlock, starts.subarray((k - 1) * order, k * order), order, here);
     }
-    const departed = flatProduct(starts, block, blocks, order, width);
+    flatProductInto(departed, starts, block, blocks, order, width);
     const values = new Float64Array(signals * samples);
     for (let i = 0; i < places.length; i++) {
       const rest = final[places[i]];
