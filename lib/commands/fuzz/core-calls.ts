@@ -122,7 +122,7 @@ const bracketed = ({ lower, upper }: core.DistanceBracket) => lower <= upper;
 /** The same plant with every mode made to decay, so that it has gramians. */
 function decaying({ A, B, C, n, sampled }: HostileProblem): core.GramianProblem {
   const size = 1 + A.to1DArray().reduce((sum, entry) => sum + Math.abs(entry), 0);
-  const settled = sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(n).mul(size));
+  const settled = sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(A.rows, A.columns).mul(size));
   return { A: settled, B, C, timeBase: sampled ? "sampled" : "continuous" };
 }
 
@@ -135,11 +135,11 @@ const structure: Record<string, CoreCall> = {
     return { value, holds: value.length <= n };
   },
   distanceToUncontrollability: ({ A, B }) => {
-    const value = core.distanceToUncontrollability(A, B, 100);
+    const value = core.distanceToUncontrollability(A, B, 40);
     return { value, holds: bracketed(value) };
   },
   distanceToUnobservability: ({ A, C }) => {
-    const value = core.distanceToUnobservability(A, C, 100);
+    const value = core.distanceToUnobservability(A, C, 40);
     return { value, holds: bracketed(value) };
   },
   gramians: (problem) => ({ value: core.gramians(decaying(problem)) }),
