@@ -8,7 +8,7 @@ import { strayNumber } from "@/lib/commands/fuzz/stray-number";
 import { watchFuzz } from "@/lib/commands/fuzz/watch-fuzz.mjs";
 
 /** Eleven matrices each; `npm run fuzz:core` goes on for a million matrices. */
-const PLANTS = 1_850;
+const PLANTS = 1_200;
 
 /** Speak of what others computed: tried beside those, on their results and refusals. */
 const SPOKEN = ["describeChecks", "describeMode", "explainRefusal"];
@@ -20,12 +20,12 @@ test("every function that the core exports is tried on hostile plants: a new one
   expect(Object.keys(CORE_CALLS).filter((name) => !functions.includes(name))).toEqual([]);
 });
 
-test("20,000 sparse, defective, badly scaled, huge and tiny matrices bring no hang, no stray number, no odd error and no gain that fails", async () => {
+test("13,000 sparse, defective, badly scaled, huge and tiny matrices bring no hang, no stray number, no odd error and no gain that fails", async () => {
   const { findings, answered } = await watchFuzz({ from: 1, cases: PLANTS, threads: 1 });
   expect(findings).toEqual([]);
   // Refusing everything would find nothing either.
   for (const name of Object.keys(CORE_CALLS)) expect(answered[name] ?? 0, name).toBeGreaterThan(PLANTS / 20);
-}, 240_000);
+}, 400_000);
 
 test("the same seed gives the same plant", () => {
   for (const seed of [1, 77, 4_711]) expect(hostileProblem(seed)).toEqual(hostileProblem(seed));

@@ -120,7 +120,7 @@ const dynamics: Record<string, CoreCall> = {
 const bracketed = ({ lower, upper }: core.DistanceBracket) => lower <= upper;
 
 /** The same plant with every mode made to decay, so that it has gramians. */
-function decaying({ A, B, C, n, sampled }: HostileProblem): core.GramianProblem {
+function decaying({ A, B, C, sampled }: HostileProblem): core.GramianProblem {
   const size = 1 + A.to1DArray().reduce((sum, entry) => sum + Math.abs(entry), 0);
   const settled = sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(A.rows, A.columns).mul(size));
   return { A: settled, B, C, timeBase: sampled ? "sampled" : "continuous" };

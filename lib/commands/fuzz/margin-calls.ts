@@ -4,10 +4,10 @@ import type { CoreCall } from "./core-calls";
 import type { HostileProblem } from "./hostile-problem";
 
 /** Most hostile plants do not decay and would only be refused: two of three are made to. */
-function system({ A, B, C, D, n, sampled, seed }: HostileProblem) {
+function system({ A, B, C, D, sampled, seed }: HostileProblem) {
   if (seed % 3 === 0) return { A, B, C, D };
   const size = 1 + A.to1DArray().reduce((sum, entry) => sum + Math.abs(entry), 0);
-  return { A: sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(n).mul(size)), B, C, D };
+  return { A: sampled ? Matrix.mul(A, 1 / size) : Matrix.sub(A, Matrix.eye(A.rows, A.columns).mul(size)), B, C, D };
 }
 
 /** A loop with as many outputs as inputs, around a plant that decays, with a gain small enough to leave some of the loops stable. */
