@@ -20,7 +20,8 @@ const MOST_ROUNDS = 40;
  * Shapes    a n×n row-major → matrix n×n, order n, scale n (in the new order)
  * Throws    nothing: finite input is the caller's duty
  * Accuracy  exact; at most 40 rounds
- * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304; strong components in place of their search for isolated rows
+ * Source    Parlett & Reinsch, Numer. Math. 13 (1969) 293-304, with strong components in place of their search for isolated
+ *           rows; 2-norms with the diagonal: James, Langou & Lowery, On matrix balancing and eigenvector computation, 2014
  */
 export function balance(a: Float64Array, n: number): Balanced {
   const { order, starts } = strongComponents(a, n);
@@ -50,10 +51,11 @@ function scaleBlock(b: Float64Array, n: number, from: number, to: number, scale:
       let column = 0;
       let row = 0;
       for (let j = from; j < to; j++) {
-        if (j === i) continue;
-        column += Math.abs(b[j * n + i]);
-        row += Math.abs(b[i * n + j]);
+        column += b[j * n + i] * b[j * n + i];
+        row += b[i * n + j] * b[i * n + j];
       }
+      column = Math.sqrt(column);
+      row = Math.sqrt(row);
       if (column === 0 || row === 0) continue;
       const half = Math.round((exponentOf(row) - exponentOf(column)) / 2);
       const total = exponentOf(scale[i]) + half;

@@ -54,6 +54,57 @@ describe("closed forms worked out by hand", () => {
   });
 });
 
+// Newton, Gould & Kaiser, Analytical Design of Linear Feedback Controls, Wiley 1957, appendix E; James, Nichols & Phillips,
+// Theory of Servomechanisms, 1947, section 7.9 (from memory): integrals of |c(s) / d(s)|² along the axis, here with c = c0.
+test.each([
+  ["I2 = c0² / (2 d0 d1)", [2, 0.75], 1 / (2 * 2 * 0.75)],
+  ["I3 = c0² d2 / (2 d0 (d1 d2 - d0 d3))", [3, 5, 2], 2 / (2 * 3 * (5 * 2 - 3))],
+] as const)("Phillips' table of noise integrals, %s", (_name, d, published) => {
+  const n = d.length;
+  const A = Matrix.zeros(n, n);
+  for (let i = 0; i + 1 < n; i++) A.set(i, i + 1, 1);
+  d.forEach((entry, j) => {
+    A.set(n - 1, j, -entry);
+  });
+  const Q = Matrix.zeros(n, n);
+  Q.set(n - 1, n - 1, 1);
+  const { X } = solveLyapunov({ A, Q, timeBase: "continuous" });
+  expect(Math.abs(X.get(0, 0) / published - 1)).toBeLessThan(2 * EPS);
+});
+
+// Box & Jenkins, Time Series Analysis, Holden-Day 1970, equation 3.2.28 (from memory).
+test("the variance of a second-order autoregressive process, (1 - φ2) / ((1 + φ2)((1 - φ2)² - φ1²))", () => {
+  for (const [one, two] of [
+    [0.75, -0.5],
+    [1.25, -0.375],
+    [1.9375, -0.9375 - 2 ** -20],
+  ]) {
+    const A = new Matrix([
+      [one, two],
+      [1, 0],
+    ]);
+    const Q = new Matrix([
+      [1, 0],
+      [0, 0],
+    ]);
+    const { X } = solveLyapunov({ A, Q, timeBase: "sampled" });
+    // (1 - φ2)² - φ1² as a product, so that the last, nearly unstable case loses nothing to cancellation.
+    const published = (1 - two) / ((1 + two) * (1 - two - one) * (1 - two + one));
+    expect(Math.abs(X.get(0, 0) / published - 1)).toBeLessThan(8 * EPS);
+  }
+});
+
+// Bartels & Stewart, Solution of the matrix equation AX + XB = C, Commun. ACM 15 (1972) 820-826, solve by a known X; here X = I.
+test("A + A' = -Q has the solution X = I, whatever the part of A that is skew", () => {
+  const A = new Matrix([
+    [-1, 7, -3],
+    [-7, -2, 11],
+    [3, -11, -4],
+  ]);
+  const { X } = solveLyapunov({ A, Q: Matrix.diag([2, 4, 8]), timeBase: "continuous" });
+  for (let i = 0; i < 3; i++) for (let j = 0; j < 3; j++) expect(Math.abs(X.get(i, j) - (i === j ? 1 : 0))).toBeLessThan(1e-30);
+});
+
 // Kitagawa, An algorithm for solving the matrix equation X = F X F' + S, Int. J. Control 25 (1977) 745-753: the 5×5 matrices
 // below are those of his example as commonly quoted (from memory); the digits are from 320-bit arithmetic.
 const KITAGAWA = {
