@@ -18,8 +18,17 @@ export type RiccatiProblem = {
   readonly allowIndefinite?: boolean;
 };
 
-/** `indefinite` holds the refusal that was waived by `allowIndefinite`. */
-export type CheckedProblem = { readonly problem: FlatProblem; readonly indefinite: NumericalError | null };
+/** `indefinite` holds the refusal that was waived by `allowIndefinite`; `definite` weights see every state. */
+export type CheckedProblem = {
+  readonly problem: FlatProblem;
+  readonly indefinite: NumericalError | null;
+  readonly definite: boolean;
+};
+
+type WeightVerdict = { readonly refusal: NumericalError | null; readonly definite: boolean };
+
+/** Pivots of weights scaled to a unit diagonal above which no direction is unweighted in any sense. */
+const PLAINLY_POSITIVE = 1e-6;
 
 /** Shapes, finiteness and symmetry, then the definiteness of the weights; the flat problem with Q and R exactly symmetric. */
 export function checkProblem({ A, B, Q, R, S, sampled = false, allowIndefinite = false }: RiccatiProblem): CheckedProblem {
@@ -44,9 +53,9 @@ export function checkProblem({ A, B, Q, R, S, sampled = false, allowIndefinite =
   requireSymmetric("R", R);
   const problem = { n, m, sampled, a: toFlat(A), b: toFlat(B), q: symmetricFlat(Q), r: symmetricFlat(R), s: toFlat(cross) };
   if (!sampled) flatCholesky(problem.r, m, "R");
-  const indefinite = weightRefusal(problem);
-  if (indefinite && !allowIndefinite) throw indefinite;
-  return { problem, indefinite };
+  const { refusal, definite } = judgeWeights(problem);
+  if (refusal && !allowIndefinite) throw refusal;
+  return { problem, indefinite: refusal, definite };
 }
 
 export function symmetricFlat(M: Matrix): Float64Array {
@@ -57,8 +66,13 @@ export function symmetricFlat(M: Matrix): Float64Array {
   return flat;
 }
 
+/** Why [Q S; S' R] is no weight, or null. */
+export function weightRefusal(problem: FlatProblem): NumericalError | null {
+  return judgeWeights(problem).refusal;
+}
+
 /** The block [Q S; S' R], scaled by powers of two to a diagonal near one, may be negative only by rounding. */
-export function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | null {
+function judgeWeights({ n, m, q, r, s }: FlatProblem): WeightVerdict {
   const size = n + m;
   const entry = (i: number, j: number): number => {
     if (i < n) return j < n ? q[i * n + j] : s[i * m + j - n];
@@ -74,19 +88,21 @@ export function weightRefusal({ n, m, q, r, s }: FlatProblem): NumericalError | 
   if (!Number.isFinite(largestEntry(block))) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
   // Rounding of entries typed in decimal, or of a product C'C, is a few n ε of the unit diagonal.
   const tolerance = 16 * size * Number.EPSILON;
-  if (plainlySemidefinite(block.slice(), size)) return null;
+  const pivot = leastPivot(block.slice(), size);
+  if (pivot >= 0) return { refusal: null, definite: pivot > PLAINLY_POSITIVE };
   const least = symmetricEigenvalues(
     new Matrix(Array.from({ length: size }, (_, i) => [...block.subarray(i * size, i * size + size)])),
   )[0];
-  if (least >= -tolerance) return null;
+  if (least >= -tolerance) return { refusal: null, definite: false };
   const given = new Matrix(Array.from({ length: size }, (_, i) => Array.from({ length: size }, (_, j) => entry(i, j))));
   const matrix = s.some((x) => x !== 0) ? "[Q S; S' R]" : blame(given, n);
   const index = firstNegative(block, size, tolerance);
-  return new NumericalError("not-positive-semidefinite", {
+  const refusal = new NumericalError("not-positive-semidefinite", {
     matrix,
     eigenvalue: symmetricEigenvalues(given)[0],
     ...(index !== null && { index: matrix === "R" ? index - n : index }),
   });
+  return { refusal, definite: false };
 }
 
 /** Without a cross term the block splits: which of the two is to blame. */
@@ -114,19 +130,21 @@ function firstNegative(block: Float64Array, n: number, tolerance: number): numbe
   return null;
 }
 
-/** Quick proof by elimination without pivoting: pivots positive, or an exactly zero row. */
-function plainlySemidefinite(a: Float64Array, n: number): boolean {
+/** Quick proof by elimination without pivoting: the least pivot, zero for an exactly zero row, -1 where nothing is proved. */
+function leastPivot(a: Float64Array, n: number): number {
+  let least = Number.POSITIVE_INFINITY;
   for (let k = 0; k < n; k++) {
     const pivot = a[k * n + k];
+    least = Math.min(least, pivot);
     if (pivot === 0) {
-      for (let j = k + 1; j < n; j++) if (a[k * n + j] !== 0) return false;
+      for (let j = k + 1; j < n; j++) if (a[k * n + j] !== 0) return -1;
       continue;
     }
-    if (pivot < n * Number.EPSILON) return false;
+    if (pivot < n * Number.EPSILON) return -1;
     for (let i = k + 1; i < n; i++) {
-      const factor = a[i * n + k] / pivot;
-      if (factor !== 0) for (let j = k + 1; j < n; j++) a[i * n + j] -= factor * a[k * n + j];
+      const factor = a[k * n + i] / pivot;
+      if (factor !== 0) for (let j = i; j < n; j++) a[i * n + j] -= factor * a[k * n + j];
     }
   }
-  return true;
+  return least;
 }

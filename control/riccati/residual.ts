@@ -49,35 +49,52 @@ export function gainSystem(problem: SplitProblem, x: Wide): GainSystem {
  */
 export function riccatiResidual(problem: SplitProblem, x: Wide, k: Float64Array, { weight, right }: GainSystem): Float64Array {
   const { n, m, sampled, at, q } = problem;
-  const residual = widen(q);
-  const product = wideProduct(at, x, n, n, n);
-  if (sampled) {
-    addWide(residual, wideProduct(at, wideTranspose(product, n, n), n, n, n), 1);
-    addWide(residual, x, -1);
-  } else {
-    addWide(residual, product, 1);
-    addWide(residual, wideTranspose(product, n, n), 1);
-  }
   const kt = split(flatTranspose(k, m, n));
-  // W - (weight K) / 2 on the right makes both halves of the correction at once.
-  const pull = wideTranspose(wideProduct(kt, wideTranspose(weight, m, m), n, m, m), n, m);
-  halve(pull);
-  const rest = { hi: right.hi.slice(), lo: right.lo.slice() };
-  addWide(rest, pull, -1);
-  const half = wideProduct(kt, rest, n, m, n);
-  addWide(residual, half, -1);
-  addWide(residual, wideTranspose(half, n, n), -1);
-  return symmetricPart(residual.hi, n);
-}
-
-function halve({ hi, lo }: Wide): void {
-  for (let i = 0; i < hi.length; i++) {
-    hi[i] *= 0.5;
-    lo[i] *= 0.5;
+  const half = wideProduct(kt, lessHalf(right, wideProduct(kt, weight, n, m, m), n, m), n, m, n);
+  let own = wideProduct(at, x, n, n, n);
+  if (sampled) {
+    own = wideProduct(at, wideTranspose(own, n, n), n, n, n);
+    addWide(own, x, -1);
+    for (let i = 0; i < own.hi.length; i++) {
+      own.hi[i] *= 0.5;
+      own.lo[i] *= 0.5;
+    }
   }
+  addWide(own, half, -1);
+  return withTranspose(own, q, n);
 }
 
-function symmetricPart(a: Float64Array, n: number): Float64Array {
-  for (let i = 0; i < n; i++) for (let j = 0; j < i; j++) a[i * n + j] = a[j * n + i] = 0.5 * (a[i * n + j] + a[j * n + i]);
-  return a;
+/** W - (weight K) / 2 from K' weight: on the right of K' it makes both halves of the correction at once. */
+function lessHalf(right: Wide, pull: Wide, n: number, m: number): Wide {
+  const hi = new Float64Array(m * n);
+  const lo = new Float64Array(m * n);
+  for (let i = 0; i < m; i++) {
+    for (let j = 0, at = i * n, from = i; j < n; j++, at++, from += m) {
+      const sum = right.hi[at];
+      const term = -0.5 * pull.hi[from];
+      const total = sum + term;
+      const part = total - sum;
+      const rest = sum - (total - part) + (term - part) + (right.lo[at] - 0.5 * pull.lo[from]);
+      hi[at] = total + rest;
+      lo[at] = rest - (hi[at] - total);
+    }
+  }
+  return { hi, lo };
+}
+
+/** T + T' + Q, summed in double-double and rounded; symmetric to the bit. */
+function withTranspose({ hi, lo }: Wide, q: Float64Array, n: number): Float64Array {
+  const sum = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) {
+    for (let j = 0, at = i * n, mirror = i; j <= i; j++, at++, mirror += n) {
+      const [x, y, z] = [hi[at], hi[mirror], q[at]];
+      const first = x + y;
+      const part = first - x;
+      const second = first + z;
+      const more = second - first;
+      const below = x - (first - part) + (y - part) + (first - (second - more) + (z - more));
+      sum[at] = sum[mirror] = second + (below + (lo[at] + lo[mirror]));
+    }
+  }
+  return sum;
 }

@@ -102,7 +102,7 @@ function scaled(
   rightSign: number,
 ): Float64Array {
   const to = new Float64Array(from.length);
-  const factors = Float64Array.from(right, (e) => powerOfTwo(rightSign * e));
+  const factors = right.map((e) => powerOfTwo(rightSign * e));
   for (let at = 0, i = 0; i < rows; i++) {
     const own = leftSign * left[i] - less;
     const factor = powerOfTwo(own);

@@ -43,7 +43,7 @@ const GAIN_SHIFTS = [0.3, 3, 0.03];
  *           double-double; scaling: Benner 2001
  */
 export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
-  const { problem: original, indefinite } = checkProblem(given);
+  const { problem: original, indefinite, definite } = checkProblem(given);
   const scaled = scaleProblem(original, scalingWeight);
   const problem = splitProblem(scaled.problem);
   const units = unitsOf(scaled.state);
@@ -58,7 +58,7 @@ export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
       continue;
     }
     if (!wellWithinReach(problem, found.refined)) checkReach(original);
-    if (!wellInSight(problem, found.refined)) checkSight(original);
+    if (!definite && !wellInSight(problem, found.refined)) checkSight(original);
     return found.solution;
   }
   checkReach(original);

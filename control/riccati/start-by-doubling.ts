@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { flatIdentity, flatProduct, flatTranspose } from "../linalg/flat";
-import { factorLu, inverseOneNorm, type Lu, solveLu } from "../linalg/lu";
+import { factorLu, type Lu, solveLu } from "../linalg/lu";
 import { flatNorm } from "../linalg/norms";
 import { flatOneNorm } from "../linalg/solve-linear";
 import type { PlainProblem } from "./remove-cross-term";
@@ -104,20 +104,19 @@ function tryCayley(
   const factors = factorLu(outer, n);
   if (factors.zeroPivot >= 0) return null;
   // W = 2γ (A_γ' + H A_γ⁻¹ G)⁻¹; E = I + W', G = A_γ⁻¹ G W, H = W H A_γ⁻¹.
-  const w = solveLu(factors, flatIdentity(n), n);
+  const identity = flatIdentity(n);
+  const w = solveLu(factors, identity, n);
+  const innerInverse = solveLu(inner, identity, n);
+  const growth = Math.max(flatOneNorm(shifted, n) * flatOneNorm(innerInverse, n), flatOneNorm(outer, n) * flatOneNorm(w, n));
   for (let i = 0; i < w.length; i++) w[i] *= 2 * gamma;
   const e = flatTranspose(w, n, n);
   for (let i = 0; i < n; i++) e[i * n + i] += 1;
-  const hInverse = flatProduct(q, solveLu(inner, flatIdentity(n), n), n, n, n);
+  const hInverse = flatProduct(q, innerInverse, n, n, n);
   const zero = new Float64Array(n * n);
   const triple = {
     e,
     g: symmetric(flatProduct(solvedG, w, n, n, n), zero, n),
     h: symmetric(flatProduct(w, hInverse, n, n, n), zero, n),
   };
-  return { triple, condition: Math.min(reciprocalCondition(shifted, n, inner), reciprocalCondition(outer, n, factors)) };
-}
-
-function reciprocalCondition(a: Float64Array, n: number, factors: Lu): number {
-  return 1 / (flatOneNorm(a, n) * inverseOneNorm(factors));
+  return { triple, condition: 1 / growth };
 }

@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { eigenvalues } from "../linalg/eigenvalues";
-import { flatProduct, flatTranspose, flatTransposedProduct, fromFlat, largestEntry } from "../linalg/flat";
+import { flatTranspose, flatTransposedProduct, fromFlat, largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, timesPowerOfTwo } from "../linalg/power-of-two";
 import type { Complex } from "../plant/model";
@@ -87,18 +87,23 @@ function rescaled(from: Float64Array, columns: number, exponent: (i: number, j: 
 function growthOf(k: Float64Array, m: number, n: number): number {
   const whole = flatNorm(k);
   if (whole === 0) return 0;
-  let v = new Float64Array(n);
+  const v = new Float64Array(n);
+  const next = new Float64Array(n);
   for (let i = 0; i < m; i++) for (let j = 0; j < n; j++) if (Math.abs(k[i * n + j]) > Math.abs(v[j])) v[j] = k[i * n + j];
   let growth = 0;
   for (let round = 0; round < POWER_ROUNDS; round++) {
     const size = flatNorm(v);
-    for (let j = 0; j < n; j++) v[j] /= size;
-    const image = flatProduct(k, v, m, n, 1);
-    growth = Math.max(growth, flatNorm(image));
-    const next = new Float64Array(n);
-    for (let i = 0; i < m; i++) for (let j = 0; j < n; j++) next[j] += (k[i * n + j] / whole) * (image[i] / growth);
-    if (growth === 0 || flatNorm(next) === 0) break;
-    v = next;
+    if (size === 0) break;
+    next.fill(0);
+    let square = 0;
+    for (let i = 0; i < m; i++) {
+      let image = 0;
+      for (let j = 0; j < n; j++) image += (k[i * n + j] / whole) * (v[j] / size);
+      square += image * image;
+      for (let j = 0; j < n; j++) next[j] += (k[i * n + j] / whole) * image;
+    }
+    growth = Math.max(growth, whole * Math.sqrt(square));
+    v.set(next);
   }
   return Math.max(growth, whole / Math.sqrt(Math.min(m, n)));
 }
