@@ -1,3 +1,4 @@
+import { balance } from "../linalg/balance";
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { MOST_EXPONENT } from "./balance-states";
@@ -17,6 +18,9 @@ export type BalancedSystem = FlatSystem & {
 /** Few, because a system without a rate of its own (a chain of integrators) would go on shrinking. */
 const MOST_PASSES = 4;
 const MOST_ROUNDS = 40;
+/** A may be as much larger than its fastest mode: shrunk further, all modes and zeros would crowd about rest. */
+const MOST_OVER_RATE = 16;
+const CHAIN_ROUNDING = 1 / 64;
 
 /**
  * The same system in states, inputs and outputs rescaled by powers of two so that the rows of [A B] and the columns
@@ -41,11 +45,13 @@ export function balanceSystem(given: FlatSystem, spectralRadius: number): Balanc
   };
   const { a, b } = system;
   const inner = innerStates(system);
+  const ownRate = reliableRate(given, spectralRadius);
   const exponents = new Int32Array(n);
   let timeScale = 1;
   for (let pass = 0; pass < MOST_PASSES; pass++) {
     sizeSignals(system);
-    const factor = powerOfTwo(-exponentOf(largestBetween(a, n, inner) || spectralRadius * timeScale || largestEntry(a) || 1));
+    const size = Math.min(largestBetween(a, n, inner), MOST_OVER_RATE * ownRate * timeScale || Number.POSITIVE_INFINITY);
+    const factor = powerOfTwo(-exponentOf(size || spectralRadius * timeScale || largestEntry(a) || 1));
     if (pass > 0 && factor === 1) break;
     timeScale *= factor;
     for (let i = 0; i < a.length; i++) a[i] *= factor;
@@ -59,6 +65,12 @@ export function balanceSystem(given: FlatSystem, spectralRadius: number): Balanc
   }
   sizeSignals(system);
   return { ...system, timeScale, stateScale: Float64Array.from(exponents, powerOfTwo) };
+}
+
+/** The largest modulus of an eigenvalue; zero where, beside the balanced A, it may be the rounding of a chain of integrators. */
+function reliableRate({ n, a }: FlatSystem, spectralRadius: number): number {
+  const { matrix, shift } = balance(a, n);
+  return spectralRadius > CHAIN_ROUNDING * largestEntry(matrix) * powerOfTwo(-shift) ? spectralRadius : 0;
 }
 
 type Sized = Omit<BalancedSystem, "timeScale" | "stateScale">;
