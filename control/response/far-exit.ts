@@ -21,12 +21,12 @@ export type FarSearch = {
 
 const MOST_DOUBLINGS = 60;
 const FIRST_WINDOW = 8;
-const MOST_CELLS = 20_000;
+const MOST_CELLS = 40_000;
 
 /**
  * Finishes the tracks of a motion that fades too slowly to be followed swing by swing. The modes' envelope says from when on a
  * signal must be in its band; the motion is carried exactly to shortly before, and followed from there. Tracks whose extremes
- * are not certain yet, or whose last exit is not found in 20 000 cells, stay unfinished.
+ * are not certain yet, or whose last exit is not found in 40 000 cells, stay unfinished.
  *
  * Accuracy  as the walk; times are those of the loop with the digits that closing it lost
  */

@@ -2,7 +2,7 @@ import type { StepFigures } from "../design/evidence";
 import { NumericalError } from "../errors";
 import { POINTS } from "./cell-basis";
 import { type DistinctRows, distinctRows } from "./distinct-rows";
-import { finishFar } from "./far-exit";
+import { finishFar, type Halt } from "./far-exit";
 import { boundaryDistance, type Drive, type LoopDynamics } from "./loop-dynamics";
 import type { Experiment } from "./loop-experiments";
 import { type ModalBound, modalBound } from "./modal-bound";
@@ -124,11 +124,14 @@ function walksOf(dynamics: LoopDynamics, rows: Float64Array, experiments: number
   const walk =
     (resolved?: number): Walk =>
     ({ departure }, tracks) => {
-      const halt = walkContinuous(walker, { time: 0, state: departure }, tracks, Math.min(limit, PATIENCE), resolved);
-      if (halt === null) return;
-      if (bound === undefined) bound = modalBound(a, order, rows);
-      if (bound) finishFar({ dynamics, bound, cell: walker.ladder(walker.firstLevel) }, departure, halt, tracks);
-      if (tracks.some(({ finished }) => !finished)) walkContinuous(walker, halt, tracks, limit, resolved);
+      let halt: Halt | null = { time: 0, state: departure };
+      for (const patience of [Math.min(limit, PATIENCE), limit]) {
+        halt = walkContinuous(walker, halt, tracks, patience, resolved);
+        if (halt === null) return;
+        if (bound === undefined) bound = modalBound(a, order, rows);
+        if (bound) finishFar({ dynamics, bound, cell: walker.ladder(walker.firstLevel) }, departure, halt, tracks);
+        if (tracks.every(({ finished }) => finished)) return;
+      }
     };
   return { step: walk(), settling: walk(ROUGHLY_RESOLVED) };
 }
