@@ -2,8 +2,9 @@ import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { fromFlat, toFlat } from "../linalg/flat";
 import { type Admissible, admissibleVectors, type InputRange, inputRange } from "./admissible-vectors";
+import { chainPlans } from "./chain-plan";
+import { chainVectors } from "./chain-vectors";
 import { dyadicGain, scaledSingleInputGain } from "./dyadic-gain";
-import type { Frame } from "./eigenvector-frame";
 import { gainFromVectors } from "./gain-from-vectors";
 import { robustEigenvectors } from "./robust-eigenvectors";
 import { type ScaledPlant, scalePlant } from "./scale-plant";
@@ -21,6 +22,9 @@ export type Candidate = {
 
 const SINGLE_INPUT = "one input: row of the wanted polynomial in double-double";
 const ONE_DIRECTION = "one direction of the inputs: row of the wanted polynomial in double-double";
+
+const CHAINS = "shortest chains of principal vectors, of least condition";
+const MOST_PLANS = 12;
 
 /** Beyond this condition or error in the plant's own units, the same is tried in balanced ones. */
 const DOUBTFUL = Math.sqrt(Number.EPSILON);
@@ -53,8 +57,8 @@ export function firstPlacement(
 /**
  * A checked gain for a plant whose inputs move every mode, `first` being what was tried before.
  *
- * Shapes    A n×n, B n×m, blocks covering n poles; `dependent`: when poles are repeated or clustered beyond what independent
- *           eigenvectors allow, one direction of the inputs may place them
+ * Shapes    A n×n, B n×m, blocks covering n poles; `dependent`: poles repeated beyond what independent eigenvectors allow may
+ *           share chains of principal vectors, and poles that only lie together may be moved along one direction of the inputs
  * Units     entries and poles of like size, or they may not be squared
  * Throws    too-sensitive { poleError?, limit }; no-convergence
  * Accuracy  the check's
@@ -68,8 +72,7 @@ export function freePlacement(
 ): Candidate {
   const candidates = B.columns === 1 ? [first] : robustCandidates(A, B, blocks, first);
   if (dependent && B.columns > 1 && !candidates.some((found) => found?.check.holds)) {
-    const K = dyadicGain(A, B, blocks);
-    if (K) candidates.push(candidate({ A, B, K, blocks, vectors: null, wide: true }, ONE_DIRECTION, false));
+    candidates.push(chainCandidate(A, B, blocks) ?? dyadicCandidate(A, B, blocks));
   }
   return accept(candidates);
 }
@@ -107,18 +110,53 @@ function robustCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[], ba
   const spaces = scaledBlocks.map((block) => admissibleVectors(plant, range, block));
   const frame = spaces.every(({ size }) => size > 0) ? robustEigenvectors(spaces, plant.n) : null;
   if (!frame) return null;
-  const K = gainOrNull(plant, range, frame, scaledBlocks);
+  const K = unlessSingular(() => gainFromVectors(plant, range, frame, scaledBlocks));
   const method = balanced ? "eigenvectors of least condition, balanced units" : "eigenvectors of least condition";
   return K && candidate({ A, B, K, blocks, vectors: { frame, plant }, wide: false }, method, hasSpare(spaces, range));
+}
+
+/** Repeated poles strung into the shortest chains of principal vectors that this plant has. */
+function chainCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate | null {
+  if (!hasRepeats(blocks)) return null;
+  const plant = scaled(A, B, blocks, true);
+  const range = inputRange(plant);
+  const scaledBlocks = inTime(blocks, plant);
+  const spaces = scaledBlocks.map((block) => admissibleVectors(plant, range, block));
+  if (range.rank === 0 || hasSpare(spaces, range)) return null;
+  for (const chains of chainPlans(blocks, range.rank).slice(0, MOST_PLANS)) {
+    const K = unlessSingular(() => {
+      const frame = chainVectors(plant, range, spaces, chains);
+      return frame && gainFromVectors(plant, range, frame, withPredecessors(scaledBlocks, chains));
+    });
+    const found = K && candidate({ A, B, K, blocks, vectors: null, wide: false }, CHAINS, false);
+    if (found?.check.holds) return found;
+  }
+  return null;
+}
+
+function dyadicCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate | null {
+  const K = dyadicGain(A, B, blocks);
+  return K && candidate({ A, B, K, blocks, vectors: null, wide: true }, ONE_DIRECTION, false);
+}
+
+function withPredecessors(blocks: readonly WantedPole[], chains: readonly (readonly number[])[]): WantedPole[] {
+  const linked = [...blocks];
+  for (const chain of chains) {
+    chain.forEach((place, k) => {
+      if (k > 0) linked[place] = { ...blocks[place], after: blocks[chain[k - 1]].column };
+    });
+  }
+  return linked;
 }
 
 function hasSpare(spaces: readonly Admissible[], { rank }: InputRange): boolean {
   return spaces.some(({ size }) => size > rank);
 }
 
-function gainOrNull(plant: ScaledPlant, range: InputRange, frame: Frame, blocks: readonly WantedPole[]): Matrix | null {
+/** Null where vectors turn out to be dependent to working accuracy. */
+function unlessSingular<T>(run: () => T): T | null {
   try {
-    return gainFromVectors(plant, range, frame, blocks);
+    return run();
   } catch (error) {
     if (error instanceof NumericalError && error.code === "singular") return null;
     throw error;

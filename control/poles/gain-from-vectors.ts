@@ -30,12 +30,13 @@ export function gainFromVectors(plant: ScaledPlant, range: InputRange, frame: Fr
   return K;
 }
 
-/** A X - X Λ in real form: what B K X has to be. */
+/** A X - X Λ in real form, Λ with ones between the vectors of a chain: what B K X has to be. */
 export function residualColumns(a: Float64Array, x: Float64Array, blocks: readonly WantedPole[], n: number): Float64Array {
   const out = flatProduct(a, x, n, n, n);
-  for (const { re, im, column, width } of blocks) {
+  for (const { re, im, column, width, after } of blocks) {
     for (let i = 0; i < n; i++) {
       const at = i * n + column;
+      for (let k = 0; k < width && after !== undefined; k++) out[at + k] -= x[i * n + after + k];
       out[at] -= re * x[at];
       if (width === 1) continue;
       out[at] += im * x[at + 1];

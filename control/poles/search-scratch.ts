@@ -34,6 +34,20 @@ export type Scratch = {
   readonly descent: DescentRoom;
 };
 
+/** Room for k variables. */
+export function createDescentRoom(k: number): DescentRoom {
+  const vector = () => new Float64Array(k);
+  return {
+    x: vector(),
+    gradient: vector(),
+    direction: vector(),
+    trial: vector(),
+    trialGradient: vector(),
+    bent: vector(),
+    inverse: new Float64Array(k * k),
+  };
+}
+
 /** Room for n states and admissible spaces of one size. */
 export function createScratch(n: number, size: number): Scratch {
   const vector = () => new Float64Array(2 * size);
@@ -47,14 +61,6 @@ export function createScratch(n: number, size: number): Scratch {
     square: square(),
     products: [vector(), vector()],
     forms: { size, a: vector(), b: vector(), pRe: square(), pIm: square(), rRe: square(), rIm: square() },
-    descent: {
-      x: vector(),
-      gradient: vector(),
-      direction: vector(),
-      trial: vector(),
-      trialGradient: vector(),
-      bent: vector(),
-      inverse: new Float64Array(4 * size * size),
-    },
+    descent: createDescentRoom(2 * size),
   };
 }

@@ -17,7 +17,10 @@ import { polesOf, samePole, type WantedPole } from "./wanted-poles";
 export type PlacementCheck = {
   /** Eigenvalues of A - B K, in the order of the blocks. */
   readonly achieved: readonly Complex[];
-  /** Largest error of a pole over its size, and what rounding of the gain, and of eigenvalues not found exactly, can account for. */
+  /**
+   * Largest error of a pole over its size, and what rounding of the gain, and of eigenvalues not found exactly, can account for;
+   * never less than an error found exactly.
+   */
   readonly poleError: number;
   readonly poleBound: number;
   /** The poles were found with 32 digits. */
@@ -76,7 +79,7 @@ export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): Pla
     achieved,
     poleError,
     exact,
-    poleBound: Math.max(...bounds.map((limit, k) => limit / sizes[k])),
+    poleBound: Math.max(exact ? poleError : 0, ...bounds.map((limit, k) => limit / sizes[k])),
     holds: poleError <= USABLE_POLE_ERROR && (exact || (residual <= bound && errors.every((error, k) => error <= bounds[k]))),
     conditioning: condition * loop.n * Number.EPSILON < 1 ? condition : null,
     residual,

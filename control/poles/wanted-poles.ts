@@ -2,7 +2,14 @@ import { NumericalError } from "../errors";
 import type { Complex } from "../plant/model";
 
 /** One wanted real pole, or one conjugate pair with im > 0, and the columns its eigenvectors take. */
-export type WantedPole = { readonly re: number; readonly im: number; readonly column: number; readonly width: 1 | 2 };
+export type WantedPole = {
+  readonly re: number;
+  readonly im: number;
+  readonly column: number;
+  readonly width: 1 | 2;
+  /** First column of the vector before it in a chain of principal vectors; absent for an eigenvector. */
+  readonly after?: number;
+};
 
 /** NEARLY_EQUAL · ε is how far apart two poles may be, relative to their size, and still count as one repeated pole. */
 const NEARLY_EQUAL = 8;

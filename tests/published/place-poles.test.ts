@@ -129,7 +129,7 @@ describe("several inputs: the poles are unique, conditioning is what counts", ()
       A: new Matrix([
         [-0.0366, 0.0271, 0.0188, -0.4555],
         [0.0482, -1.01, 0.0024, -4.0208],
-        [0.1002, 0.3681, -0.707, 1.42],
+        [0.1002, 0.3681, -707 / 1000, 1.42],
         [0, 0, 1, 0],
       ]),
       B: new Matrix([
