@@ -1,6 +1,6 @@
 import { NumericalError } from "../errors";
 import { complexSingularValues, singularRoom } from "../linalg/complex-singular-values";
-import { timesPowerOfTwo } from "../linalg/power-of-two";
+import { powerOfTwo } from "../linalg/power-of-two";
 import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
 import type { System } from "../plant/scale-plant";
@@ -45,14 +45,17 @@ export function frequencyResponse(
   const [re, im] = [new Float64Array(points.length * count), new Float64Array(points.length * count)];
   const unbounded: number[] = [];
   const value = responseRoom(prepared);
+  // Two factors, because 2^size alone may be beyond the range in which its product with a value is not.
+  const half = powerOfTwo(Math.trunc(size / 2));
+  const rest = powerOfTwo(size - Math.trunc(size / 2));
   for (let k = 0; k < points.length; k++) {
     if (!evaluateResponse(prepared, placeOf(points[k], period), value)) {
       unbounded.push(k);
       continue;
     }
     for (let at = 0; at < count; at++) {
-      re[k * count + at] = timesPowerOfTwo(value.re[at], size);
-      im[k * count + at] = timesPowerOfTwo(value.im[at], size);
+      re[k * count + at] = value.re[at] * half * rest;
+      im[k * count + at] = value.im[at] * half * rest;
       if (!Number.isFinite(re[k * count + at]) || !Number.isFinite(im[k * count + at]))
         throw new NumericalError("too-large", { what: "gain", limit: Number.MAX_VALUE });
     }

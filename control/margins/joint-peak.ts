@@ -9,8 +9,12 @@ import { climb, type Peak } from "./peak-search";
 import type { FrequencySystem } from "./prepare-frequency";
 import { evaluateOnBoundary, responseRoom } from "./response-at";
 import { type ScaledBound, scaledBound } from "./scaled-bound";
+import { variationBound } from "./variation-bound";
 
-/** In units of 2^size: the bound is `value` at the coordinate `at`, below `upper` everywhere, and its dual there is `lower`. */
+/**
+ * In units of 2^size: the bound is `value` at the coordinate `at` and below `upper` everywhere; the structured singular value
+ * there is at least `lower`.
+ */
 export type JointPeak = Peak & { readonly lower: number; readonly upper: number };
 
 /** How far above the largest bound found the level starts below which every frequency must be shown to stay; */
@@ -20,6 +24,8 @@ const PATIENCE = 32;
 const MOST_ROUNDS = 10 * PATIENCE;
 /** Bounds of neighbouring frequencies are told apart down to this. */
 const SETTLED = 2 ** -36;
+
+const EXACT_CHANNELS = 3;
 
 type Interval = readonly [number, number];
 
@@ -38,7 +44,11 @@ export function jointPeak(system: FrequencySystem): JointPeak {
   const boundAt = scaledBoundOf(system);
   const valueAt = (v: number) => boundAt(v).upper;
   let best = startPeak(system, valueAt);
-  const finish = (slack: number) => ({ ...best, lower: boundAt(best.at).lower, upper: best.value * (1 + slack) });
+  const finish = (slack: number) => ({
+    ...best,
+    lower: lowerAt(system, best.at, boundAt(best.at).lower),
+    upper: best.value * (1 + slack),
+  });
   if (system.n === 0 || best.value === 0) return finish(0);
   const form = boundaryForm(system);
   let open: Interval[] = [[0, Number.POSITIVE_INFINITY]];
@@ -61,6 +71,14 @@ export function jointPeak(system: FrequencySystem): JointPeak {
     scale = boundAt(best.at).scale;
   }
   throw new NumericalError("no-convergence", { routine: "joint-peak", limit: MOST_ROUNDS });
+}
+
+/** For up to three channels the scaled bound is the structured singular value; beyond, a variation has to be shown. */
+function lowerAt(system: FrequencySystem, v: number, dual: number): number {
+  const value = responseRoom(system);
+  if (!evaluateOnBoundary(system, v, value)) return 0;
+  const shown = variationBound(value, system.m);
+  return system.m <= EXACT_CHANNELS ? Math.max(shown, dual) : shown;
 }
 
 function scaledBoundOf(system: FrequencySystem): (v: number) => ScaledBound {

@@ -27,8 +27,8 @@ export type LoopRobustness = {
  * Units     factors, rad, rad/s, seconds; period in seconds, null when continuous. Singular values in the signals' own units
  * Throws    not-stabilising { pole } when the closed loop does not decay; singular when it has no solution; shape-mismatch;
  *           not-finite; bad-option; too-large; no-convergence
- * Accuracy  peaks and each loop's disk 2^-30. Together: 2^-24, more where `lower` and `upper` say so; `lower` is sure for any
- *           number of loops and the size is the exact limit for up to three, for more the least disk of one bounds it from above
+ * Accuracy  peaks and each loop's disk 2^-30. Together: 2^-24, more where the bracket says so; `lower` is sure for any number of
+ *           loops, `upper` is a variation that was found. Up to three loops they meet, beyond they usually do
  * Source    Seiler, Packard & Gahinet, IEEE Control Systems Magazine 40 (2020) 78-95
  */
 export function loopRobustness(L: System, period: number | null = null): LoopRobustness {
@@ -66,6 +66,5 @@ function jointDisk(S: System, period: number | null, channels: readonly ChannelR
   if (lower === 0 && alone.length === 0) return null;
   const joint = diskMargin({ value: own(value), lower: own(lower), upper: own(upper), frequency: frequencyOf(at, period) });
   if (joint === null) return null;
-  const limits = channels.length <= 3 || alone.length === 0 ? [joint.upper, ...alone] : alone;
-  return { ...joint, upper: Math.max(joint.size, Math.min(...limits)) };
+  return { ...joint, upper: Math.max(joint.size, Math.min(joint.upper, ...alone)) };
 }

@@ -7,6 +7,7 @@ import { frequencyGrid } from "@/control/margins/frequency-grid";
 import { frequencyResponse, responseSingularValues } from "@/control/margins/frequency-response";
 import { peakGain } from "@/control/margins/peak-gain";
 import { scaledBound } from "@/control/margins/scaled-bound";
+import { variationBound } from "@/control/margins/variation-bound";
 import type { Rows } from "@/control/plant/model";
 import type { System } from "@/control/plant/scale-plant";
 import { seededMatrix, seededUniform } from "../helpers/seeded";
@@ -240,4 +241,19 @@ test("the scaled bound: rank one is exact, a triangle costs only its diagonal, l
   const triangle = { re: Float64Array.from([2, 100, 0, 1]), im: Float64Array.from([0, 5, 0, 1]) };
   expect(scaledBound(triangle, 2).upper).toBeCloseTo(2, 6);
   expect(scaledBound({ re: new Float64Array(4), im: new Float64Array(4) }, 2)).toMatchObject({ lower: 0, upper: 0 });
+});
+
+test("a variation that is shown meets the scaled bound for two and three channels, and never passes it", () => {
+  const random = seededUniform(11);
+  for (let run = 0; run < 30; run++) {
+    const k = 2 + (run % 5);
+    const M = {
+      re: Float64Array.from(seededMatrix(random, k, k).to1DArray()),
+      im: Float64Array.from(seededMatrix(random, k, k).to1DArray()),
+    };
+    const { upper } = scaledBound(M, k);
+    const shown = variationBound(M, k);
+    expect(shown).toBeLessThanOrEqual(upper * (1 + 1e-12));
+    expect(shown / upper).toBeGreaterThan(k <= 3 ? 0.999999 : 0.9);
+  }
 });
