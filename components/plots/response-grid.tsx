@@ -1,12 +1,13 @@
 "use client";
 
+import { Maximize2 } from "lucide-react";
 import { type CSSProperties, type PointerEvent, useMemo, useState } from "react";
 import { formatNumber, formatSeconds } from "@/control/words/format-number";
 import { joinClasses } from "../ui/join-classes";
 import { ScrollBox } from "../ui/scroll-box";
 import { AxisBar } from "./axis-bar";
 import { ResponseCurves } from "./response-curves";
-import type { ResponseColumn, ResponseRow, TimeGrid } from "./response-data";
+import type { ResponseCell, ResponseColumn, ResponseRow, TimeGrid } from "./response-data";
 import { rowRange } from "./response-scale";
 import { ResponseText } from "./response-text";
 import { cellCaption, cellSentence, farLimits } from "./response-words";
@@ -18,13 +19,15 @@ type ResponseGridProps = Readonly<{
   columns: readonly ResponseColumn[];
   rows: readonly ResponseRow[];
   time: TimeGrid;
+  /** Offers every cell in full size. */
+  onEnlarge?: (row: ResponseRow, column: ResponseColumn, cell: ResponseCell) => void;
 }>;
 
 /**
  * Small multiples: one column per command, one row per quantity, so that the cells off the diagonal are the cross-coupling. Time is
  * shared by all, the scale by each row. `captions`: columns say what is commanded, rows what the machine does.
  */
-export function ResponseGrid({ caption, columns, rows, time }: ResponseGridProps) {
+export function ResponseGrid({ caption, columns, rows, time, onEnlarge }: ResponseGridProps) {
   const [cursor, setCursor] = useState<number | null>(null);
   const last = time.samples - 1;
   const layout = {
@@ -48,7 +51,12 @@ export function ResponseGrid({ caption, columns, rows, time }: ResponseGridProps
             </p>
           ))}
           {rows.map((row) => (
-            <ResponseLine key={row.key} {...{ row, columns, cursor }} onPoint={follow} onLeave={() => setCursor(null)} />
+            <ResponseLine
+              key={row.key}
+              {...{ row, columns, cursor, onEnlarge }}
+              onPoint={follow}
+              onLeave={() => setCursor(null)}
+            />
           ))}
           <span />
           {columns.map((column) => (
@@ -69,11 +77,12 @@ type ResponseLineProps = Readonly<{
   row: ResponseRow;
   columns: readonly ResponseColumn[];
   cursor: number | null;
+  onEnlarge: ResponseGridProps["onEnlarge"];
   onPoint: (event: PointerEvent<HTMLElement>) => void;
   onLeave: () => void;
 }>;
 
-function ResponseLine({ row, columns, cursor, onPoint, onLeave }: ResponseLineProps) {
+function ResponseLine({ row, columns, cursor, onEnlarge, onPoint, onLeave }: ResponseLineProps) {
   const range = useMemo(() => rowRange(row), [row]);
   const far = farLimits(row);
   return (
@@ -97,14 +106,31 @@ function ResponseLine({ row, columns, cursor, onPoint, onLeave }: ResponseLinePr
         return (
           <div
             key={column.key}
-            role="img"
-            aria-label={cell ? cellSentence(row, column, cell) : `${column.label}: no response of ${row.label}`}
             onPointerMove={onPoint}
             onPointerLeave={onLeave}
-            className={joinClasses("response-cell relative h-28 border bg-sheet", cell?.own ? "border-control" : "border-rule")}
+            className={joinClasses(
+              "group response-cell relative h-28 border bg-sheet",
+              cell?.own ? "border-control" : "border-rule",
+            )}
           >
-            {cell ? <ResponseCurves row={row} cell={cell} range={range} /> : null}
-            <span className="absolute top-0.5 right-1.5 font-mono text-xs text-soft">{corner}</span>
+            <div
+              role="img"
+              aria-label={cell ? cellSentence(row, column, cell) : `${column.label}: no response of ${row.label}`}
+              className="absolute inset-0"
+            >
+              {cell ? <ResponseCurves row={row} cell={cell} range={range} /> : null}
+              <span className="absolute top-0.5 right-1.5 font-mono text-xs text-soft">{corner}</span>
+            </div>
+            {cell && onEnlarge ? (
+              <button
+                type="button"
+                aria-label={`Enlarge ${column.label}: ${row.label}`}
+                onClick={() => onEnlarge(row, column, cell)}
+                className="no-print absolute top-0 left-0 flex size-6 items-center justify-center opacity-0 group-hover:opacity-100 focus-visible:opacity-100 pointer-coarse:opacity-100"
+              >
+                <Maximize2 aria-hidden size={13} />
+              </button>
+            ) : null}
           </div>
         );
       })}

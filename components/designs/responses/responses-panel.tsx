@@ -1,6 +1,6 @@
 "use client";
 
-import { memo } from "react";
+import { memo, useState } from "react";
 import { ResponseGrid } from "../../plots/response-grid";
 import { Button } from "../../ui/button";
 import { ErrorState } from "../../ui/error-state";
@@ -9,6 +9,7 @@ import { Notice } from "../../ui/notice";
 import type { Solved } from "../bench/bench-types";
 import { computed, type ResponsesReply } from "../evidence/figures-reply";
 import { RefusedPart } from "../evidence/refused-part";
+import { type Enlarged, EnlargedCell } from "./enlarged-cell";
 import { ResponseControls } from "./response-controls";
 import { type GridWanted, responsePicture } from "./response-rows";
 import { useCurves, useStoredCurves } from "./use-curves";
@@ -50,6 +51,7 @@ const NOTES = {
 
 function Picture({ solved, ghostOf, wanted, figures }: PictureProps) {
   const { model } = solved.ground;
+  const [enlarged, setEnlarged] = useState<Enlarged | null>(null);
   const withStates = wanted.roles.includes("state");
   const { curves, error, again } = useCurves(solved, wanted.kind, withStates);
   const ghosts = useStoredCurves(ghostOf, wanted.kind, withStates);
@@ -72,7 +74,12 @@ function Picture({ solved, ghostOf, wanted, figures }: PictureProps) {
     );
   return (
     <>
-      <ResponseGrid caption={CAPTIONS[wanted.kind]} {...picture} />
+      <ResponseGrid
+        caption={CAPTIONS[wanted.kind]}
+        {...picture}
+        onEnlarge={(row, column, cell) => setEnlarged({ row, column, cell })}
+      />
+      <EnlargedCell shown={enlarged} step={picture.time.step} onClose={() => setEnlarged(null)} />
       <Legend wanted={wanted} ghost={ghostOf !== null} observed={computed(solved.evidence.observer) !== null} />
     </>
   );
