@@ -1,6 +1,6 @@
 import { Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
-import { useAccelerator } from "@/control/accelerator/accelerator";
+import { switchAccelerator } from "@/control/accelerator/accelerator";
 import { NumericalError } from "@/control/errors";
 import { eigenvalues } from "@/control/linalg/eigenvalues";
 import { toFlat } from "@/control/linalg/flat";
@@ -86,12 +86,12 @@ describe("an ensemble of loops", () => {
     expect(respondEnsemble({ ...request, plants: [runaway] }).band).toBeNull();
   });
 
-  test("has the same bits with and exact the accelerator", () => {
-    const before = useAccelerator(true);
+  test("has the same bits with and without the accelerator", () => {
+    const before = switchAccelerator(true);
     const fast = respondEnsemble(request);
-    useAccelerator(false);
+    switchAccelerator(false);
     const plain = respondEnsemble(request);
-    useAccelerator(before);
+    switchAccelerator(before);
     expect(plain).toEqual(fast);
   });
 
