@@ -38,37 +38,52 @@ export function orthogonaliseRows(given: Rows): OrthogonalRows {
   const turn = { re: unit(), im: given.im ? unit() : null };
   for (let i = 0; i < count; i++) turn.re[i][i] = 1;
   const tolerance = Number.EPSILON * Math.sqrt(Math.max(length, 1));
+  const squares = Float64Array.from(rows.re, (_, i) => squareOf(rows, i));
   for (let sweep = 0; ; sweep++) {
     if (sweep === SWEEP_LIMIT) throw new NumericalError("no-convergence", { routine: "one-sided-jacobi", limit: SWEEP_LIMIT });
     let turned = false;
     for (let i = 0; i < count - 1; i++)
-      for (let j = i + 1; j < count; j++) turned = turnPair(rows, turn, i, j, tolerance) || turned;
+      for (let j = i + 1; j < count; j++) turned = turnPair(rows, turn, squares, i, j, tolerance) || turned;
     if (!turned) break;
   }
-  const lengths = rows.re.map((_, i) => timesPowerOfTwo(Math.sqrt(squareOf(rows, i)), -shift));
+  const lengths = rows.re.map((_, i) => timesPowerOfTwo(Math.sqrt(squares[i]), -shift));
   const order = lengths.map((_, i) => i).sort((i, j) => lengths[j] - lengths[i] || i - j);
   const pick = ({ re, im }: Rows): Rows => ({ re: order.map((i) => re[i]), im: im ? order.map((i) => im[i]) : null });
   return { values: order.map((i) => lengths[i]), rows: pick(rows), turn: pick(turn) };
 }
 
 function squareOf({ re, im }: Rows, i: number): number {
-  let sum = 0;
-  for (let k = 0; k < re[i].length; k++) sum += re[i][k] * re[i][k];
-  if (im) for (let k = 0; k < im[i].length; k++) sum += im[i][k] * im[i][k];
-  return sum;
+  return dot(re[i], re[i]) + (im ? dot(im[i], im[i]) : 0);
+}
+
+/** Summed as four parts that do not wait for each other. */
+function dot(x: Float64Array, y: Float64Array): number {
+  let [a, b, c, d] = [0, 0, 0, 0];
+  const whole = x.length - (x.length % 4);
+  let k = 0;
+  for (; k < whole; k += 4) {
+    a += x[k] * y[k];
+    b += x[k + 1] * y[k + 1];
+    c += x[k + 2] * y[k + 2];
+    d += x[k + 3] * y[k + 3];
+  }
+  for (; k < x.length; k++) a += x[k] * y[k];
+  return a + b + (c + d);
 }
 
 /** Makes rows i and j orthogonal; false when they already are. The longer one is kept first. */
-function turnPair(rows: Rows, turn: Rows, i: number, j: number, tolerance: number): boolean {
-  const a = squareOf(rows, i);
-  const b = squareOf(rows, j);
+function turnPair(rows: Rows, turn: Rows, squares: Float64Array, i: number, j: number, tolerance: number): boolean {
+  const a = squares[i];
+  const b = squares[j];
   if (a === 0 && b === 0) return false;
-  const [re, im] = innerProduct(rows, i, j);
+  const re = dot(rows.re[i], rows.re[j]) + (rows.im ? dot(rows.im[i], rows.im[j]) : 0);
+  const im = rows.im ? dot(rows.im[i], rows.re[j]) - dot(rows.re[i], rows.im[j]) : 0;
   const size = im === 0 ? Math.abs(re) : modulus(re, im);
   const bound = tolerance * Math.sqrt(a) * Math.sqrt(b);
   if (size <= bound || size <= NEGLIGIBLE * Math.max(a, b) || Math.min(a, b) < VANISHED) {
     if (a >= b) return false;
     for (const part of [rows, turn]) exchange(part, i, j);
+    [squares[i], squares[j]] = [b, a];
     return false;
   }
   const zeta = (b - a) / (2 * size);
@@ -77,6 +92,9 @@ function turnPair(rows: Rows, turn: Rows, i: number, j: number, tolerance: numbe
   const sin = cos * t;
   for (const part of [rows, turn]) rotate(part, i, j, cos, sin, re / size, im / size);
   if (a < b) for (const part of [rows, turn]) exchange(part, i, j);
+  // Computed anew: updated, they would lose the digits of the smaller one.
+  squares[i] = squareOf(rows, i);
+  squares[j] = squareOf(rows, j);
   return true;
 }
 
@@ -86,20 +104,6 @@ function modulus(re: number, im: number): number {
   const x = timesPowerOfTwo(re, -exponent);
   const y = timesPowerOfTwo(im, -exponent);
   return timesPowerOfTwo(Math.sqrt(x * x + y * y), exponent);
-}
-
-/** Sum of row i times conjugated row j. */
-function innerProduct({ re, im }: Rows, i: number, j: number): [number, number] {
-  let real = 0;
-  let imaginary = 0;
-  for (let k = 0; k < re[i].length; k++) real += re[i][k] * re[j][k];
-  if (im) {
-    for (let k = 0; k < re[i].length; k++) {
-      real += im[i][k] * im[j][k];
-      imaginary += im[i][k] * re[j][k] - re[i][k] * im[j][k];
-    }
-  }
-  return [real, imaginary];
 }
 
 function exchange({ re, im }: Rows, i: number, j: number): void {
