@@ -13,9 +13,8 @@ export function bitsOfDesigns(count: number, accelerated: boolean): DesignBits {
   const inUse = switchAccelerator(accelerated);
   const designs = Array.from({ length: count }, (_, i) => {
     const { model, recipe } = seededDesign(1000 + i);
-    const { gains, poles, reference, observer, responses } = computeDesign(model, recipe);
-    const parts = Object.entries({ gains, poles, reference, observer, responses });
-    return Object.fromEntries(parts.map(([name, part]) => [name, `${part.state} ${hashOfBits(part)}`]));
+    const { methodVersion, ...parts } = computeDesign(model, recipe);
+    return Object.fromEntries(Object.entries(parts).map(([name, part]) => [name, `${part.state} ${hashOfBits(part)}`]));
   });
   switchAccelerator(true);
   return { accelerated: inUse, designs };
