@@ -23,7 +23,7 @@ export type NumericalErrorCode =
   | "pole-count" // { expected, given }
   | "poles-not-conjugate" // { index, pole: Complex }
   | "pole-multiplicity" // { pole: Complex, multiplicity, rank }
-  | "too-sensitive" // { poleError?, limit }: rounding moves the wanted poles by more than the limit, relative to their size
+  | "too-sensitive" // { poleError?, pole?, limit }: rounding moves a wanted pole by more than the limit, relative to its size
   | "unstable-pole" // { index, pole: Complex }
   | "period-missing" // {}
   | "bad-option" // { option, given }

@@ -9,7 +9,7 @@ import { gainFromVectors } from "./gain-from-vectors";
 import { robustEigenvectors } from "./robust-eigenvectors";
 import { type ScaledPlant, scalePlant } from "./scale-plant";
 import { evenStateUnits } from "./state-units";
-import { type Placed, type PlacementCheck, USABLE_POLE_ERROR, verifyPlacement } from "./verify-placement";
+import { type Placed, type PlacementCheck, verifyPlacement } from "./verify-placement";
 import { samePole, type WantedPole } from "./wanted-poles";
 
 export type Candidate = {
@@ -55,12 +55,12 @@ export function firstPlacement(
 }
 
 /**
- * A checked gain for a plant whose inputs move every mode, `first` being what was tried before.
+ * The best gain for a plant whose inputs move every mode, `first` being what was tried before; its check says whether it holds.
  *
  * Shapes    A n×n, B n×m, blocks covering n poles; `dependent`: poles repeated beyond what independent eigenvectors allow may
  *           share chains of principal vectors, and poles that only lie together may be moved along one direction of the inputs
  * Units     entries and poles of like size, or they may not be squared
- * Throws    too-sensitive { poleError?, limit }; no-convergence
+ * Throws    no-convergence
  * Accuracy  the check's
  */
 export function freePlacement(
@@ -69,17 +69,17 @@ export function freePlacement(
   blocks: readonly WantedPole[],
   first: Candidate | null,
   dependent: boolean,
-): Candidate {
+): Candidate | null {
   const candidates = B.columns === 1 ? [first] : robustCandidates(A, B, blocks, first);
   if (dependent && B.columns > 1 && !candidates.some((found) => found?.check.holds)) {
     candidates.push(chainCandidate(A, B, blocks) ?? dyadicCandidate(A, B, blocks));
   }
-  return accept(candidates);
+  return best(candidates);
 }
 
 /** The same with eigenvectors chosen for their independence, which also keeps modes that no input moves. */
-export function robustPlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate {
-  return accept(robustCandidates(A, B, blocks, robustCandidate(A, B, blocks, false)));
+export function robustPlacement(A: Matrix, B: Matrix, blocks: readonly WantedPole[]): Candidate | null {
+  return best(robustCandidates(A, B, blocks, robustCandidate(A, B, blocks, false)));
 }
 
 function robustCandidates(A: Matrix, B: Matrix, blocks: readonly WantedPole[], first: Candidate | null): (Candidate | null)[] {
@@ -94,13 +94,11 @@ function unitsDiffer(A: Matrix, B: Matrix): boolean {
   return Math.max(...units) > LIKE_UNITS * Math.min(...units);
 }
 
-/** The candidate with the smallest pole error, if it holds. */
-function accept(candidates: readonly (Candidate | null)[]): Candidate {
+/** The candidate with the smallest pole error, those that hold before the others. */
+function best(candidates: readonly (Candidate | null)[]): Candidate | null {
   const found = candidates.filter((one) => one !== null);
-  const sorted = found.toSorted((p, q) => p.check.poleError - q.check.poleError);
-  const best = sorted.find(({ check }) => check.holds);
-  if (best) return best;
-  throw new NumericalError("too-sensitive", { poleError: sorted[0]?.check.poleError, limit: USABLE_POLE_ERROR });
+  const rank = ({ check }: Candidate) => (check.holds ? 0 : 1);
+  return found.toSorted((p, q) => rank(p) - rank(q) || p.check.poleError - q.check.poleError)[0] ?? null;
 }
 
 function robustCandidate(A: Matrix, B: Matrix, blocks: readonly WantedPole[], balanced: boolean): Candidate | null {

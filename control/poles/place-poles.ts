@@ -11,7 +11,13 @@ import { keepFixedModes } from "./fixed-modes";
 import { matchPoles } from "./match-poles";
 import { requireFewRepeats } from "./require-few-repeats";
 import { isStablePole } from "./require-stable-poles";
-import { groupPoles, type WantedPole } from "./wanted-poles";
+import { USABLE_POLE_ERROR } from "./verify-placement";
+import { groupPoles, polesOf, type WantedPole } from "./wanted-poles";
+
+const KEPT = "modes that no input moves kept";
+const CAUTION = "poles that rounding of the gain moves visibly";
+/** Pole error from which a placement says so in its method. */
+const SENSITIVE = 1e-6;
 
 export type PlacementProblem = {
   readonly A: Matrix;
@@ -50,7 +56,7 @@ export type Placement = {
  * Units     poles in the plant's plane; K in input per state
  * Throws    shape-mismatch; not-finite; pole-count; poles-not-conjugate; pole-multiplicity { pole, multiplicity, rank };
  *           not-controllable { pole, state, distance } when a mode that no input moves is not among the wanted poles;
- *           too-sensitive { poleError?, limit } when even that gain, rounded to doubles, misses by more than a sixteenth of a pole;
+ *           too-sensitive { poleError?, pole?, limit } when even that gain, rounded to doubles, misses by more than a sixteenth of a pole;
  *           not-stabilising { pole } when so rounded it leaves the boundary that all wanted poles respect; no-convergence; too-large
  * Accuracy  poleError is that of the gain returned, with poles found with 32 digits: 1e-12 κ or better. One input: every entry
  *           of the gain the double next to the exact one, or its neighbour
@@ -87,7 +93,7 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
     conditioning: check.conditioning,
     residual: check.residual,
     bound: check.bound,
-    method: fixed.length === 0 ? method : `${method}; modes that no input moves kept`,
+    method: [method, ...(fixed.length > 0 ? [KEPT] : []), ...(check.poleError > SENSITIVE ? [CAUTION] : [])].join("; "),
     gainNorm,
     poleShiftPerGainDigit: check.poleShiftPerGainDigit,
     fixedModes: fixed,
@@ -107,9 +113,23 @@ function choose(
   const first = firstPlacement(scaled.A, scaled.B, wanted.map(inUnit));
   if (first.found && first.proven) return { chosen: first.found, fixed: [] };
   const { blocks, fixed } = keepFixedModes(A, B, wanted);
-  if (fixed.length > 0) return { chosen: robustPlacement(scaled.A, scaled.B, blocks.map(inUnit)), fixed };
-  requireFewRepeats(scaled.A, scaled.B, blocks, allowDefective);
-  return { chosen: freePlacement(scaled.A, scaled.B, blocks.map(inUnit), first.found, allowDefective), fixed };
+  const inTime = blocks.map(inUnit);
+  if (fixed.length === 0) requireFewRepeats(scaled.A, scaled.B, blocks, allowDefective);
+  const chosen =
+    fixed.length > 0
+      ? robustPlacement(scaled.A, scaled.B, inTime)
+      : freePlacement(scaled.A, scaled.B, inTime, first.found, allowDefective);
+  return { chosen: requireUsable(chosen, blocks), fixed };
+}
+
+/** Throws too-sensitive, with the pole that is farthest off, unless the gain holds its poles. */
+function requireUsable(chosen: Candidate | null, blocks: readonly WantedPole[]): Candidate {
+  if (chosen?.check.holds) return chosen;
+  const pole = chosen ? polesOf(blocks)[chosen.check.worst] : undefined;
+  throw new NumericalError("too-sensitive", {
+    ...(chosen && pole ? { poleError: chosen.check.poleError, pole } : {}),
+    limit: USABLE_POLE_ERROR,
+  });
 }
 
 /** Throws not-stabilising when all poles were wanted on the stable side of a boundary and one is not there. */

@@ -23,6 +23,8 @@ export type PlacementCheck = {
    */
   readonly poleError: number;
   readonly poleBound: number;
+  /** Place of the pole with that error. */
+  readonly worst: number;
   /** The poles were found with 32 digits. */
   readonly exact: boolean;
   /** No pole off by more than is usable; poles told by plain eigenvalues within their bounds, and the equation within its. */
@@ -74,10 +76,12 @@ export function verifyPlacement({ A, B, K, blocks, vectors, wide }: Placed): Pla
   const { residual, bound } = set ? vectorResidual(set, K, blocks) : distanceResidual(loop, blocks);
   const values = set ? singularValues(set.X) : [1, 0];
   const condition = values[0] / values[loop.n - 1];
-  const poleError = Math.max(...errors.map((error, k) => error / sizes[k]));
+  const shares = errors.map((error, k) => error / sizes[k]);
+  const poleError = Math.max(...shares);
   return {
     achieved,
     poleError,
+    worst: shares.indexOf(poleError),
     exact,
     poleBound: Math.max(exact ? poleError : 0, ...bounds.map((limit, k) => limit / sizes[k])),
     holds: poleError <= USABLE_POLE_ERROR && (exact || (residual <= bound && errors.every((error, k) => error <= bounds[k]))),

@@ -129,6 +129,7 @@ describe("placePoles refuses", () => {
     const error = refusal(() => placePoles({ A: seededMatrix(random, n, n), B: seededMatrix(random, n, 1), poles: spread(n) }));
     expect(error.code).toBe("too-sensitive");
     expect(error.data.poleError).toBeGreaterThan(error.data.limit as number);
+    expect(spread(n)).toContainEqual(error.data.pole);
   });
 
   test("a loop that rounding alone pushes over the stability boundary that every wanted pole respects", () => {

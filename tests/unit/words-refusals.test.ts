@@ -49,7 +49,10 @@ const CASES: Record<NumericalErrorCode, { data: Record<string, unknown>; names: 
     data: { pole: { re: -1, im: 0 }, multiplicity: 3, rank: 1 },
     names: ["−1", "3 times", "1 independent input"],
   },
-  "too-sensitive": { data: { poleError: 0.25, limit: 1 / 16 }, names: ["25 %", "6.3 %", "another input"] },
+  "too-sensitive": {
+    data: { poleError: 0.25, pole: { re: -7, im: 0 }, limit: 1 / 16 },
+    names: ["wanted pole −7", "25 %", "6.3 %", "another input"],
+  },
   "unstable-pole": { data: { index: 0, pole: { re: 1, im: 0 } }, names: ["1", "left of the imaginary axis"] },
   "period-missing": { data: {}, names: ["sample time"] },
   "bad-option": { data: { option: "inputs", index: 0, given: -1 }, names: ["F1cmd", "−1"] },

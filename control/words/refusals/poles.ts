@@ -43,13 +43,13 @@ function tooSensitive(data: Facts): RefusalWords {
   const error = numberOf(data, "poleError");
   const limit = numberOf(data, "limit");
   const share = (value: number) => `${formatNumber(100 * value, 2)} %`;
-  const found = error === null || error > 1 ? "by more than their own size" : `by ${share(error)} of their size`;
+  const found = error === null || error > 1 ? "by more than its own size" : `by ${share(error)} of its size`;
   const one = ofObserver(data) ? "sensor" : "input";
   return {
     title: "The wanted poles are too sensitive",
-    sentence: `Even with every digit a computer keeps, rounding the gain moves the poles ${found}${
+    sentence: `${pole(data)} cannot be held: even with every digit a computer keeps, rounding the gain moves it ${found}${
       limit === null ? "" : `, where ${share(limit)} is allowed`
-    }, so it is not shown.`,
+    }, so the gain is not shown.`,
     nextStep: `Ask for poles nearer to the plant's own, spread poles that lie close together, or use another ${one}.`,
   };
 }
