@@ -20,7 +20,7 @@ export function responseRoom({ m, p }: FrequencySystem): ResponseValue {
  * Source    Laub, IEEE Trans. Autom. Control 26 (1981) 407-408
  */
 export function evaluateResponse(system: FrequencySystem, s: Complex, value: ResponseValue): boolean {
-  const { n, m, p, h, b, c, d, rate, room } = system;
+  const { n, m, p, h, b, d, rate, room } = system;
   value.im.fill(0);
   value.re.set(d);
   if (n === 0 || m === 0 || p === 0) return true;
@@ -32,19 +32,28 @@ export function evaluateResponse(system: FrequencySystem, s: Complex, value: Res
   room.re.set(b);
   room.im.fill(0);
   solveShiftedHessenberg(room.factors, room.re, room.im, m);
-  for (let i = 0; i < p; i++) {
-    const out = i * m;
-    for (let k = 0; k < n; k++) {
-      const factor = c[i * n + k];
-      if (factor === 0) continue;
-      const from = k * m;
-      for (let j = 0; j < m; j++) {
-        value.re[out + j] += factor * room.re[from + j];
-        value.im[out + j] += factor * room.im[from + j];
-      }
-    }
-  }
+  for (let i = 0; i < p; i += 2) for (let j = 0; j < m; j++) addRowsTimesColumn(system, i, j, value);
   return Number.isFinite(largestEntry(value.re)) && Number.isFinite(largestEntry(value.im));
+}
+
+/** Rows i and i + 1 of c times column j of the states, which the room holds; four sums at a time stay in registers. */
+function addRowsTimesColumn({ n, m, p, c, room }: FrequencySystem, i: number, j: number, value: ResponseValue): void {
+  const { re, im } = room;
+  const second = i + 1 < p ? n : 0;
+  let [ar, ai, br, bi] = [0, 0, 0, 0];
+  for (let at = i * n, from = j; at < (i + 1) * n; at++, from += m) {
+    const x = re[from];
+    const y = im[from];
+    ar += c[at] * x;
+    ai += c[at] * y;
+    br += c[at + second] * x;
+    bi += c[at + second] * y;
+  }
+  value.re[i * m + j] += ar;
+  value.im[i * m + j] += ai;
+  if (second === 0) return;
+  value.re[(i + 1) * m + j] += br;
+  value.im[(i + 1) * m + j] += bi;
 }
 
 /** The pole that s cannot be told from, or null. */

@@ -10,7 +10,9 @@ import { scaledBound } from "@/control/margins/scaled-bound";
 import { variationBound } from "@/control/margins/variation-bound";
 import type { Rows } from "@/control/plant/model";
 import type { System } from "@/control/plant/scale-plant";
+import { explainRefusal } from "@/control/words/explain-refusal";
 import { seededMatrix, seededUniform } from "../helpers/seeded";
+import { smallPlant } from "../helpers/small-plant";
 
 function system(A: Rows, B: Rows, C: Rows, D: Rows): System {
   const matrix = (rows: Rows) => new Matrix(rows.map((row) => [...row]));
@@ -90,6 +92,12 @@ test("negative and infinite frequencies and a period that is none are refused", 
   for (const w of [-1, Number.NaN, Number.POSITIVE_INFINITY])
     expect(codeOf(() => frequencyResponse(lag, null, [w]))).toBe("bad-option");
   for (const period of [0, -1, Number.NaN]) expect(codeOf(() => frequencyResponse(lag, period, [0]))).toBe("bad-option");
+});
+
+test("a refused frequency is named in words", () => {
+  const plant = smallPlant({ A: [[-1]], B: [[1]], C: [[1]] });
+  const { sentence } = explainRefusal("bad-option", { option: "frequency", given: -3 }, plant);
+  expect(sentence).toContain("A frequency");
 });
 
 test("the default grid rises, spans a decade beyond poles and zeros, and is dense around a light damping", () => {

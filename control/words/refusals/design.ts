@@ -7,6 +7,7 @@ const OPTIONS: Readonly<Record<string, string>> = {
   period: "The sample time",
   degreeOfStability: "The degree of stability",
   horizon: "The length of the response",
+  frequency: "A frequency",
 };
 
 function badOption(data: Facts, model: PlantModel): RefusalWords {
