@@ -21,6 +21,8 @@ export type Refined = {
   readonly gain: Gain;
   /** A - BK */
   readonly loop: Float64Array;
+  /** Real Schur form of the transpose of the loop, or of one very near it. */
+  readonly schurForm: Float64Array;
   /** Of the equation at x, in double. */
   readonly residual: Float64Array;
   readonly error: SolutionError;
@@ -78,7 +80,7 @@ export function refine(problem: SplitProblem, start: Start, units: Float64Array)
     }
     const { loop } = held;
     const residual = riccatiResidual(problem, x, gain.k.hi, system);
-    const now = { x, system, gain, loop: loop.matrix, residual };
+    const now = { x, system, gain, loop: loop.matrix, schurForm: loop.schur.t, residual };
     const change = solveInLoop(problem, loop, residual);
     const size = relativeSize(change, x.hi, n);
     if (!Number.isFinite(size)) break;
