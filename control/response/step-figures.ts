@@ -1,4 +1,5 @@
 import type { SignalFigures } from "../design/evidence";
+import { requireRepresentable } from "../linalg/require-representable";
 import { hasSetPoint, type SignalTrack, settledAt, sizeOf } from "./signal-track";
 
 export const SETTLING_BAND = 0.02;
@@ -10,12 +11,14 @@ const NO_OVERSHOOT = 1e-12;
  * null where the final value is negligible, where the signal never gets there, or where the work allowed did not prove them.
  *
  * Units     final and peak in the signal's unit, times in seconds, overshoot and undershoot in percent of the final value
+ * Throws    too-large for a peak beyond the largest double
  * Accuracy  as the walk that filled the track
  * Source    rise 10 to 90 %, settling to 2 %: IEC 60050-351
  */
 export function signalFigures(track: SignalTrack, whole: boolean): SignalFigures {
   const { final, finished, rising } = track;
   const { peak, peakAt } = peakOf(track);
+  requireRepresentable("response", [final, peak]);
   const measurable = whole && finished && hasSetPoint(track) && Math.abs(final) > 4 * track.noise;
   if (!measurable) return { final, peak, peakAt, overshoot: null, undershoot: null, rise: null, settling: null };
   const size = Math.abs(final);

@@ -66,7 +66,7 @@ const observers: Record<string, CoreCall> = {
   },
   reducedObserver: ({ A, B, C, D, poles, p, n }) => {
     const value = core.reducedObserver({ A, B, C, D, poles: poles.slice(0, Math.max(0, n - p)) });
-    return { value, holds: within(value) };
+    return { value, holds: value.poleError <= USABLE_POLE_ERROR };
   },
 };
 
