@@ -23,7 +23,10 @@ export type PlacementProblem = {
   readonly A: Matrix;
   readonly B: Matrix;
   readonly poles: readonly Complex[];
-  /** Repeat poles more often than the inputs allow for independent eigenvectors; such loops are very sensitive. */
+  /**
+   * Repeat poles more often than the inputs allow for independent eigenvectors: they share chains of principal vectors as short as
+   * the inputs allow, and move like the root, of the longest chain's order, of a rounding.
+   */
   readonly allowDefective?: boolean;
 };
 
@@ -61,7 +64,7 @@ export type Placement = {
  * Accuracy  poleError is that of the gain returned, with poles found with 32 digits: 1e-12 κ or better. One input: every entry
  *           of the gain the double next to the exact one, or its neighbour
  * Source    Kautsky, Nichols & Van Dooren, Int. J. Control 41 (1985) 1129-1155; Tits & Yang, IEEE Trans. Autom. Control 41
- *           (1996) 1432-1452; one input: Ackermann 1972 in double-double
+ *           (1996) 1432-1452; one input: Ackermann 1972 in double-double; chains: Klein & Moore, the same 22 (1977) 140-141
  */
 export function placePoles({ A, B, poles, allowDefective = false }: PlacementProblem): Placement {
   requireSquare("A", A);
