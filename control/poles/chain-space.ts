@@ -12,7 +12,7 @@ import type { ScaledPlant } from "./scale-plant";
  * Units     scaled states
  * Throws    singular when a mode stands at the pole that no input moves; not-finite
  * Accuracy  n ε times the condition of U'(A - pole I)
- * Source    Klein & Moore, IEEE Trans. Autom. Control 22 (1977) 140-141: eigenvectors and principal vectors under feedback
+ * Source    Klein & Moore, IEEE Trans. Autom. Control 22 (1977) 140-141, from memory: principal vectors under feedback
  */
 export function chainStep(
   { n, a }: ScaledPlant,

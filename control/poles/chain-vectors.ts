@@ -26,7 +26,7 @@ type Link = {
  * Units     scaled states and time: neighbours in a chain are coupled by one
  * Throws    singular, as `chainStep`
  * Accuracy  a local optimum of the Frobenius condition, nearly
- * Source    Klein & Moore, IEEE Trans. Autom. Control 22 (1977) 140-141; the search is our own
+ * Source    Klein & Moore, IEEE Trans. Autom. Control 22 (1977) 140-141, from memory; the search is our own
  */
 export function chainVectors(
   plant: ScaledPlant,

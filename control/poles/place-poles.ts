@@ -64,7 +64,7 @@ export type Placement = {
  * Accuracy  poleError is that of the gain returned, with poles found with 32 digits: 1e-12 κ or better. One input: every entry
  *           of the gain the double next to the exact one, or its neighbour
  * Source    Kautsky, Nichols & Van Dooren, Int. J. Control 41 (1985) 1129-1155; Tits & Yang, IEEE Trans. Autom. Control 41
- *           (1996) 1432-1452; one input: Ackermann 1972 in double-double; chains: Klein & Moore, the same 22 (1977) 140-141
+ *           (1996) 1432-1452; one input: Ackermann 1972 in double-double; chains: Klein & Moore 1977 (from memory)
  */
 export function placePoles({ A, B, poles, allowDefective = false }: PlacementProblem): Placement {
   requireSquare("A", A);

@@ -1,3 +1,4 @@
+import { pythagoras } from "../linalg/flat";
 import type { Complex } from "../plant/model";
 import { type HymanMatrix, logarithmicDerivative, prepareHyman, type WideComplex } from "./hyman-step";
 import { reduceWide } from "./wide-hessenberg";
@@ -7,6 +8,7 @@ const MOST_ROUNDS = 60;
 /** A root stands still once its step is this small beside its size, or this small beside its way from where it started. */
 const STILL = Number.EPSILON / 8;
 const NEAR_ENOUGH = 1e-4;
+const SMALLEST_SQUARE = 2 ** -960;
 
 /**
  * Eigenvalues of a matrix kept with some 32 digits, from starts near them: what the poles of a loop really are where plain
@@ -57,13 +59,22 @@ function aberthStep(matrix: HymanMatrix, roots: readonly WideComplex[], k: numbe
     const other = roots[j];
     const x = roots[k].re - other.re + (roots[k].reLow - other.reLow);
     const y = roots[k].im - other.im + (roots[k].imLow - other.imLow);
-    const square = x * x + y * y;
-    gap = Math.min(gap, square);
-    re -= x / square;
-    im += y / square;
+    gap = Math.min(gap, pythagoras(x, y));
+    const push = reciprocal(x, y);
+    re -= push.re;
+    im -= push.im;
   }
-  const square = re * re + im * im;
-  return { step: slope === null ? { re: 0, im: 0 } : { re: re / square, im: -im / square }, gap: Math.sqrt(gap) };
+  return { step: slope === null ? { re: 0, im: 0 } : reciprocal(re, im), gap };
+}
+
+/** 1 / (x + iy), also where the square of the size leaves the range of numbers: a step of zero would look like rest. */
+function reciprocal(x: number, y: number): Complex {
+  const square = x * x + y * y;
+  if (square > SMALLEST_SQUARE && square < 1 / SMALLEST_SQUARE) return { re: x / square, im: -y / square };
+  const size = Math.max(Math.abs(x), Math.abs(y));
+  const [a, b] = [x / size, y / size];
+  const turned = a * a + b * b;
+  return { re: a / turned / size, im: -b / turned / size };
 }
 
 function standsStill(root: WideComplex, start: Complex, size: number): boolean {
