@@ -1,9 +1,7 @@
 "use client";
 
-import { useRouter } from "next/navigation";
 import { parseAsStringLiteral, useQueryState } from "nuqs";
 import { useState } from "react";
-import { FEWEST, MOST } from "@/lib/schemas/compared-count";
 import type { DesignSummary } from "@/lib/schemas/design";
 import { useSession } from "../providers/session-provider";
 import { Button } from "../ui/button";
@@ -15,13 +13,15 @@ import { LoadingState } from "../ui/loading-state";
 import { ShowMore } from "../ui/show-more";
 import { SHOWN, ShownSelect } from "../ui/shown-select";
 import { DESIGN_COLUMNS } from "./design-columns";
-import { sideBySideAddress } from "./side-by-side-address";
+import { PickedList } from "./picked-list";
+import { type Picked, togglePicked } from "./picked-revisions";
+import { PickBox, RevisionChoice } from "./revision-choice";
 import { useDesigns } from "./use-designs";
 
 type DesignsTableProps = Readonly<{
   plantId: string;
   /** Design revisions already chosen, as in an address with too few of them. */
-  chosen?: readonly string[];
+  chosen?: readonly Picked[];
 }>;
 
 /** The designs of a plant with their worst figures. Two to six of them are chosen here and laid side by side. */
@@ -29,7 +29,8 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
   const { role } = useSession();
   const mayWrite = role !== "reviewer";
   const [archived, setArchived] = useQueryState("archived", parseAsStringLiteral(SHOWN).withDefault("no"));
-  const [picked, setPicked] = useState<readonly string[]>(chosen);
+  const [picked, setPicked] = useState(chosen);
+  const [unfolded, setUnfolded] = useState<string | null>(null);
   const designs = useDesigns(plantId, archived);
   if (designs.isPending) return <LoadingState label="Loading the designs" />;
   if (designs.isError) {
@@ -43,12 +44,13 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
   const rows = designs.data.pages.flatMap(({ items }) => items);
   if (rows.length === 0 && archived === "no")
     return <NoDesign plantId={plantId} mayWrite={mayWrite} onShowAll={() => setArchived("all")} />;
-  const toggle = (id: string) => setPicked((now) => (now.includes(id) ? now.filter((other) => other !== id) : [...now, id]));
+  const onToggle = (one: Picked) => setPicked((now) => togglePicked(now, one));
+  const onUnfold = (id: string) => setUnfolded((now) => (now === id ? null : id));
   return (
     <>
       <div className="mb-4 flex flex-wrap items-end gap-4">
         <ShownSelect value={archived} onChange={setArchived} />
-        <Comparing plantId={plantId} picked={picked} />
+        <PickedList plantId={plantId} picked={picked} onRemove={onToggle} />
         {mayWrite ? (
           <LinkButton href={`/plants/${plantId}/designs/new`} className="ml-auto">
             New design
@@ -62,7 +64,8 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
       ) : (
         <DataTable
           caption="Designs of this plant, figures worst over everything commanded"
-          columns={[choiceColumn(picked, toggle), ...DESIGN_COLUMNS]}
+          columns={columnsWith({ picked, onToggle, unfolded, onUnfold })}
+          detail={(design) => (design.id === unfolded ? <RevisionChoice {...{ design, picked, onToggle }} /> : null)}
           rowHeader="name"
           rows={rows}
           rowKey={({ id }) => id}
@@ -73,40 +76,39 @@ export function DesignsTable({ plantId, chosen = [] }: DesignsTableProps) {
   );
 }
 
-const choiceColumn = (picked: readonly string[], onToggle: (revisionId: string) => void): Column<DesignSummary> => ({
-  key: "choose",
-  header: <span className="sr-only">Choose for side-by-side</span>,
-  cell: ({ name, currentRevision: { id } }) => (
-    <label className="inline-flex min-h-6 min-w-6 items-center">
-      <span className="sr-only">Lay {name} side by side</span>
-      <input
-        type="checkbox"
-        checked={picked.includes(id)}
-        disabled={picked.length >= MOST && !picked.includes(id)}
-        onChange={() => onToggle(id)}
-        className="size-4"
-      />
-    </label>
-  ),
-});
+type Choosing = Readonly<{
+  picked: readonly Picked[];
+  onToggle: (one: Picked) => void;
+  /** The design whose earlier revisions are shown. */
+  unfolded: string | null;
+  onUnfold: (designId: string) => void;
+}>;
 
-function Comparing({ plantId, picked }: Readonly<{ plantId: string; picked: readonly string[] }>) {
-  const router = useRouter();
-  const enough = picked.length >= FEWEST;
-  const said =
-    picked.length === 0
-      ? "Choose two to six designs to compare."
-      : `${picked.length} chosen${picked.length < FEWEST ? ", one more is needed" : picked.length === MOST ? ", as many as fit" : ""}.`;
-  return (
-    <div className="flex flex-wrap items-center gap-3">
-      <Button tone="primary" disabled={!enough} onClick={() => router.push(sideBySideAddress(plantId, picked))}>
-        Lay side by side
-      </Button>
-      <p role="status" className="text-sm text-soft">
-        {said}
-      </p>
-    </div>
-  );
+function columnsWith({ picked, onToggle, unfolded, onUnfold }: Choosing): Column<DesignSummary>[] {
+  const choice: Column<DesignSummary> = {
+    key: "choose",
+    header: <span className="sr-only">Choose for side-by-side</span>,
+    cell: ({ name, currentRevision }) => <PickBox {...{ picked, onToggle }} one={{ ...currentRevision, name }} />,
+  };
+  const revision = ({ id, name, currentRevision: { number } }: DesignSummary) =>
+    number === 1 ? (
+      number
+    ) : (
+      <span className="inline-flex items-baseline gap-1">
+        {number}
+        <Button
+          size="small"
+          tone="quiet"
+          className="font-sans underline underline-offset-3"
+          aria-expanded={unfolded === id}
+          aria-label={`Earlier revisions of ${name}`}
+          onClick={() => onUnfold(id)}
+        >
+          earlier
+        </Button>
+      </span>
+    );
+  return [choice, ...DESIGN_COLUMNS.map((column) => (column.key === "revision" ? { ...column, cell: revision } : column))];
 }
 
 type NoDesignProps = Readonly<{ plantId: string; mayWrite: boolean; onShowAll: () => void }>;

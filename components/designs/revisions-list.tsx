@@ -1,10 +1,7 @@
 "use client";
 
-import { useInfiniteQuery } from "@tanstack/react-query";
 import Link from "next/link";
-import { designKeys, fetchDesignRevisions } from "@/lib/client/designs";
 import type { DesignRevisionEntry, DesignSummary } from "@/lib/schemas/design";
-import { useSession } from "../providers/session-provider";
 import { Button } from "../ui/button";
 import { ErrorState } from "../ui/error-state";
 import { LoadingState } from "../ui/loading-state";
@@ -12,18 +9,13 @@ import { SheetSection } from "../ui/sheet-section";
 import { ShowMore } from "../ui/show-more";
 import { When } from "../ui/when";
 import { sideBySideAddress } from "./side-by-side-address";
+import { useDesignRevisions } from "./use-design-revisions";
 
 type RevisionsListProps = Readonly<{ design: DesignSummary; shownId: string }>;
 
 /** Every revision of the design, newest first; each can be looked at again and held against the newest. */
 export function RevisionsList({ design, shownId }: RevisionsListProps) {
-  const { resume } = useSession();
-  const revisions = useInfiniteQuery({
-    queryKey: designKeys.revisions(design.id),
-    queryFn: ({ signal, pageParam }) => resume(() => fetchDesignRevisions(design.id, { cursor: pageParam }, signal)),
-    initialPageParam: undefined as string | undefined,
-    getNextPageParam: ({ nextCursor }) => nextCursor ?? undefined,
-  });
+  const revisions = useDesignRevisions(design.id);
   return (
     <SheetSection title="Revisions" note="they never change; a save adds one" ruled>
       {revisions.isPending ? <LoadingState label="Loading the revisions" lines={2} /> : null}

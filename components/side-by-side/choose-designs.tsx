@@ -3,13 +3,14 @@
 import { MOST } from "@/lib/schemas/compared-count";
 import { ComparisonsList } from "../designs/comparisons-list";
 import { DesignsTable } from "../designs/designs-table";
+import type { Picked } from "../designs/picked-revisions";
 import { Notice } from "../ui/notice";
 import { PageHeading } from "../ui/page-heading";
 import { SheetSection } from "../ui/sheet-section";
 
 type ChooseDesignsProps = Readonly<{
   plant: { readonly id: string; readonly name: string };
-  chosen: readonly string[];
+  chosen: readonly Picked[];
   tooMany: boolean;
 }>;
 

@@ -5,9 +5,12 @@ import { computed } from "../designs/evidence/figures-reply";
 import { gainMatrices } from "../designs/gains/gain-matrices";
 import type { GainFacts } from "../designs/gains/gain-text";
 import { recipeLines } from "../designs/recipe/recipe-lines";
-import { alignFacts, type ComparedSection } from "./compared-rows";
+import { alignFacts, type ComparedSection, type Fact } from "./compared-rows";
 import { evidenceFacts } from "./evidence-facts";
+import { type ObserverFacts, observerFacts } from "./observer-words";
 import type { OverlaidDesign } from "./overlay-pictures";
+import { type Sorting, sortedPlaces, sortingWords } from "./sort-designs";
+import { type TradeSide, tradeSide } from "./trade-side";
 
 export type ComparedDesign = OverlaidDesign & {
   readonly designId: string;
@@ -16,9 +19,20 @@ export type ComparedDesign = OverlaidDesign & {
   readonly plantRevision: number;
   readonly outdated: boolean;
   readonly gains: GainFacts;
+  readonly observer: ObserverFacts;
+  readonly trade: TradeSide;
 };
 
-export type Comparing = { readonly designs: readonly ComparedDesign[]; readonly sections: readonly ComparedSection[] };
+/** As asked for: one list of facts per design, in the order of the address. */
+export type Comparing = { readonly designs: readonly ComparedDesign[]; readonly facts: readonly (readonly Fact[])[] };
+
+/** As shown: in the order wanted, row by row. */
+export type Arranged = {
+  readonly designs: readonly ComparedDesign[];
+  readonly sections: readonly ComparedSection[];
+  /** Null where the order is the one that was chosen. */
+  readonly sorted: string | null;
+};
 
 /** Two revisions of one design share a name; then the revision is said too. */
 function labels(revisions: readonly DesignRevision[]): string[] {
@@ -39,15 +53,17 @@ function gainFacts({ plantName, plantRevision, designName, number, evidence, mod
   };
 }
 
-function comparedDesign(revision: DesignRevision, label: string): ComparedDesign {
+function comparedDesign(revision: DesignRevision, label: string, place: number): ComparedDesign {
   const { id, designId, designName, number, plantRevision, outdated, evidence, model } = revision;
   return {
-    ...{ id, designId, label, name: designName, number, plantRevision: plantRevision.number, outdated },
+    ...{ id, designId, label, place, name: designName, number, plantRevision: plantRevision.number, outdated },
     commanded: model.commanded.map(({ name, unit, amplitude }) => ({ name, unit, amplitude })),
     figures: computed(evidence.responses)?.figures ?? [],
     hasObserver: computed(evidence.observer) !== null,
     sampled: model.timeBase.kind === "sampled",
     gains: gainFacts(revision),
+    observer: observerFacts(revision),
+    trade: tradeSide(revision, label),
   };
 }
 
@@ -57,13 +73,33 @@ const mixedForms = (revisions: readonly DesignRevision[]) => {
   return new Set(forms).size > 1;
 };
 
-/** Everything that stands side by side, as plain data. The revisions are of one plant. */
-export function compareDesigns(revisions: readonly DesignRevision[]): Comparing {
+/** Everything said of each design, in the order it is read: recipe, reasons, evidence. */
+export function factsOf(revisions: readonly DesignRevision[]): Fact[][] {
   const asMatrices = mixedForms(revisions);
-  const names = labels(revisions);
-  const facts = revisions.map((revision) => [
+  return revisions.map((revision) => [
     ...recipeLines(revision.recipe, revision.model as PlantModel, asMatrices),
     ...evidenceFacts(revision),
   ]);
-  return { designs: revisions.map((revision, k) => comparedDesign(revision, names[k])), sections: alignFacts(facts) };
+}
+
+/** Everything that stands side by side, as plain data. The revisions are of one plant. */
+export function compareDesigns(revisions: readonly DesignRevision[]): Comparing {
+  const names = labels(revisions);
+  // Numbers are for files; a page shows texts.
+  const facts = factsOf(revisions).map((own) => own.map(({ data: _, ...fact }) => fact));
+  return { designs: revisions.map((revision, k) => comparedDesign(revision, names[k], k)), facts };
+}
+
+/** Rows that stand side by side, the designs put in order by a figure or as they were chosen. */
+export function arrangeDesigns({ designs, facts }: Comparing, sorting: Sorting | null): Arranged {
+  const places = sorting && sortedPlaces(facts, sorting);
+  const [shown, own] = places ? [places.map((k) => designs[k]), places.map((k) => facts[k])] : [designs, facts];
+  const sorted =
+    places &&
+    sortingWords(
+      shown.map(({ label }) => label),
+      own,
+      sorting,
+    );
+  return { designs: shown, sections: alignFacts(own), sorted };
 }

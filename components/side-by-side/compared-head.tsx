@@ -13,7 +13,7 @@ export function ComparedHead({ plantId, designs }: ComparedHeadProps) {
     <thead>
       <tr>
         <td className="sticky left-0 z-1 min-w-40 border-b border-rule bg-paper print:static print:min-w-0" />
-        {designs.map(({ id, designId, name, number, plantRevision, outdated }, place) => (
+        {designs.map(({ id, designId, name, number, plantRevision, outdated, place }) => (
           <th
             key={id}
             scope="col"

@@ -10,8 +10,9 @@ import { Disclosure } from "../ui/disclosure";
 import { Segmented } from "../ui/radio-group";
 import { SheetSection } from "../ui/sheet-section";
 import type { ComparedDesign } from "./compare-designs";
-import { differsFrom, gainDifference } from "./compared-gains";
+import { absentWords, differsFrom, gainDifference, noDifference } from "./compared-gains";
 import { mergeOrder } from "./compared-rows";
+import { observersDiffer } from "./observer-words";
 import type { SideBySideView } from "./use-side-by-side-view";
 
 type ComparedMatricesProps = Readonly<{ designs: readonly ComparedDesign[]; view: SideBySideView; whole: boolean }>;
@@ -24,6 +25,7 @@ export function ComparedMatrices({ designs, view: [view, setView], whole }: Comp
   const difference = view.gains === "difference";
   const note = difference ? "minus the first design's" : "an entry that differs from the first design's is underlined";
   const others = symbols.filter((symbol) => symbol !== "K");
+  const observers = observersDiffer(designs);
   return (
     <SheetSection title="Gains" note={note} ruled>
       <div className="no-print mb-4 flex">
@@ -38,6 +40,7 @@ export function ComparedMatrices({ designs, view: [view, setView], whole }: Comp
           ]}
         />
       </div>
+      {observers ? <p className="mb-4 max-w-[80ch] text-table">{observers}</p> : null}
       {symbols.includes("K") ? <Matrices symbol="K" {...{ designs, difference }} /> : <p>No design here has a gain.</p>}
       {others.map((symbol) => (
         <div key={symbol} className="mt-4">
@@ -59,15 +62,17 @@ const meaning = (designs: readonly ComparedDesign[], symbol: string) =>
 type MatricesProps = Readonly<{ symbol: string; designs: readonly ComparedDesign[]; difference: boolean }>;
 
 function Matrices({ symbol, designs, difference }: MatricesProps) {
-  const first = find(designs[0].gains, symbol);
+  const [base] = designs;
+  const first = find(base.gains, symbol);
   return (
     <div className="flex flex-wrap gap-x-10 gap-y-6">
-      {designs.map(({ id, label, gains }, place) => {
+      {designs.map((design, place) => {
+        const { id, label, gains } = design;
         const matrix = find(gains, symbol);
         if (!matrix) {
           return (
             <p key={id} className="text-table text-soft">
-              {label} has no {symbol}.
+              {absentWords(symbol, design)}
             </p>
           );
         }
@@ -77,7 +82,7 @@ function Matrices({ symbol, designs, difference }: MatricesProps) {
         return (
           <div key={id} className="min-w-0">
             {changed ? (
-              <Difference {...{ matrix, first, label }} base={designs[0].label} />
+              <Difference {...{ matrix, first, design, base }} />
             ) : (
               <WovenMatrix
                 name={symbol}
@@ -97,23 +102,23 @@ function Matrices({ symbol, designs, difference }: MatricesProps) {
   );
 }
 
-type DifferenceProps = Readonly<{ matrix: GainMatrix; first: GainMatrix | undefined; label: string; base: string }>;
+type DifferenceProps = Readonly<{
+  matrix: GainMatrix;
+  first: GainMatrix | undefined;
+  design: ComparedDesign;
+  base: ComparedDesign;
+}>;
 
-function Difference({ matrix, first, label, base }: DifferenceProps) {
-  if (!first) {
-    return (
-      <p className="text-table text-soft">
-        {base} has no {matrix.symbol} to hold that of {label} against.
-      </p>
-    );
-  }
+function Difference({ matrix, first, design, base }: DifferenceProps) {
+  const why = noDifference(matrix, first, design, base);
+  if (!first || why !== null) return <p className="max-w-[60ch] text-table text-soft">{why}</p>;
   const { matrix: change, left } = gainDifference(matrix, first);
   const note = left.length > 0 ? `without ${joinNames(left)}, which only one of the two has` : undefined;
   const { rows, columns, values, symbol } = change;
   return (
     <WovenMatrix
       name={`${symbol} changed`}
-      caption={`${label} minus ${base}`}
+      caption={`${design.label} minus ${base.label}`}
       {...{ note, rows, columns, values }}
       copy={false}
     />

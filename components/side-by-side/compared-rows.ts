@@ -1,3 +1,4 @@
+import type { Measured } from "../designs/measured";
 import type { StateKind } from "../ui/state-mark";
 
 /** One thing said of one design. Facts of several designs with the same section and key are about the same thing. */
@@ -13,18 +14,22 @@ export type Fact = {
   readonly prose?: boolean;
   readonly note?: string;
   readonly mark?: { readonly kind: StateKind; readonly word: string };
-  /** Where less is better: what best and last are judged by. */
+  /** Where less is better: what best and worst are judged by. */
   readonly size?: number;
+  /** Where the designs can be put in order by it: its name in an address, and in words. */
+  readonly sort?: { readonly key: string; readonly words: string };
+  /** The same as numbers: what a file holds. */
+  readonly data?: readonly Measured[];
 };
 
-export type Verdict = "best" | "last";
+export type Verdict = "best" | "best, shared" | "worst" | "worst, shared";
 
 export type ComparedCell = Pick<Fact, "text" | "exact" | "note" | "mark"> & {
   readonly differs: boolean;
   readonly verdict: Verdict | null;
 };
 
-export type ComparedRow = Pick<Fact, "key" | "label" | "axis" | "prose"> & {
+export type ComparedRow = Pick<Fact, "key" | "label" | "axis" | "prose" | "sort"> & {
   /** One per design; null where the design says nothing about it. */
   readonly cells: readonly (ComparedCell | null)[];
   /** Whether each cell differs from the first; also where one of the two is empty. */
@@ -51,13 +56,24 @@ export function mergeOrder(lists: readonly (readonly string[])[]): string[] {
 const SHOWN_DIGITS = 4;
 const asShown = (size: number) => Number(size.toPrecision(SHOWN_DIGITS));
 
-/** The least is best and the largest last, as far as they can be told apart in the digits shown. */
+/** The least is best and the largest worst, as far as they can be told apart in the digits shown; ties are said. */
 export function verdicts(sizes: readonly (number | undefined)[]): (Verdict | null)[] {
   const shown = sizes.map((size) => (size === undefined ? undefined : asShown(size)));
   const known = shown.filter((size) => size !== undefined);
   const [least, most] = [Math.min(...known), Math.max(...known)];
   if (known.length < 2 || least === most) return sizes.map(() => null);
-  return shown.map((size) => (size === least ? "best" : size === most ? "last" : null));
+  const word = (name: "best" | "worst", end: number): Verdict =>
+    known.filter((size) => size === end).length > 1 ? `${name}, shared` : name;
+  return shown.map((size) => (size === least ? word("best", least) : size === most ? word("worst", most) : null));
+}
+
+/** One size per fact, in the digits shown: facts that read alike are of one size. */
+export function shownSizes(facts: readonly (Fact | undefined)[]): (number | undefined)[] {
+  const alike = (fact: Fact) => facts.find((other) => other?.text === fact.text && other.note === fact.note) ?? fact;
+  return facts.map((fact) => {
+    const size = fact && alike(fact).size;
+    return size === undefined ? undefined : asShown(size);
+  });
 }
 
 const LATER = "differs beyond the figures shown";
@@ -66,15 +82,15 @@ function comparedRow(facts: readonly (Fact | undefined)[]): ComparedRow {
   const first = facts[0];
   const named = facts.find((fact) => fact !== undefined) as Fact;
   const differs = facts.map((fact) => fact?.exact !== first?.exact);
-  const judged = verdicts(facts.map((fact) => fact?.size));
+  const judged = verdicts(shownSizes(facts));
   const cells = facts.map((fact, k): ComparedCell | null => {
     if (!fact) return null;
     const hidden = differs[k] && fact.text === first?.text && fact.note === first?.note;
     const note = hidden ? LATER : fact.note;
     return { text: fact.text, exact: fact.exact, note, mark: fact.mark, differs: differs[k], verdict: judged[k] };
   });
-  const { key, label, axis, prose } = named;
-  return { key, label, axis, prose, cells, differs, equal: !differs.includes(true) };
+  const { key, label, axis, prose, sort } = named;
+  return { key, label, axis, prose, sort, cells, differs, equal: !differs.includes(true) };
 }
 
 /** Facts of several designs, one list each, as rows that stand side by side. */

@@ -1,19 +1,20 @@
-import { AxisBar } from "../plots/axis-bar";
 import { joinClasses } from "../ui/join-classes";
 import { ScrollBox } from "../ui/scroll-box";
 import { StateMark } from "../ui/state-mark";
 import type { ComparedDesign } from "./compare-designs";
 import { ComparedHead } from "./compared-head";
-import type { ComparedCell, ComparedRow, ComparedSection } from "./compared-rows";
+import { ComparedRowHeader, type SortControl } from "./compared-row-header";
+import type { ComparedCell, ComparedRow, ComparedSection, Verdict } from "./compared-rows";
 
-type ComparedTableProps = Readonly<{
-  plantId: string;
-  designs: readonly ComparedDesign[];
-  sections: readonly ComparedSection[];
-}>;
+type ComparedTableProps = SortControl &
+  Readonly<{
+    plantId: string;
+    designs: readonly ComparedDesign[];
+    sections: readonly ComparedSection[];
+  }>;
 
 /** Every fact on a line of its own, one column per design; a thick rule stands left of what differs from the first. */
-export function ComparedTable({ plantId, designs, sections }: ComparedTableProps) {
+export function ComparedTable({ plantId, designs, sections, ...sort }: ComparedTableProps) {
   const caption = "Designs side by side";
   return (
     <ScrollBox label={caption}>
@@ -21,16 +22,16 @@ export function ComparedTable({ plantId, designs, sections }: ComparedTableProps
         <caption className="sr-only">{caption}; the first design is what the others are held against</caption>
         <ComparedHead {...{ plantId, designs }} />
         {sections.map((section) => (
-          <SectionRows key={section.title} section={section} designs={designs} />
+          <SectionRows key={section.title} {...{ section, designs }} {...sort} />
         ))}
       </table>
     </ScrollBox>
   );
 }
 
-type SectionRowsProps = Readonly<{ section: ComparedSection; designs: readonly ComparedDesign[] }>;
+type SectionRowsProps = SortControl & Readonly<{ section: ComparedSection; designs: readonly ComparedDesign[] }>;
 
-function SectionRows({ section: { title, rows }, designs }: SectionRowsProps) {
+function SectionRows({ section: { title, rows }, designs, ...sort }: SectionRowsProps) {
   return (
     <tbody>
       <tr>
@@ -43,24 +44,18 @@ function SectionRows({ section: { title, rows }, designs }: SectionRowsProps) {
         </th>
       </tr>
       {rows.map((row) => (
-        <Row key={row.key} row={row} designs={designs} />
+        <Row key={row.key} {...{ row, designs }} {...sort} />
       ))}
     </tbody>
   );
 }
 
-function Row({ row, designs }: Readonly<{ row: ComparedRow; designs: readonly ComparedDesign[] }>) {
+type RowProps = SortControl & Readonly<{ row: ComparedRow; designs: readonly ComparedDesign[] }>;
+
+function Row({ row, designs, ...sort }: RowProps) {
   return (
     <tr className="break-inside-avoid">
-      <th
-        scope="row"
-        className="sticky left-0 z-1 border-b border-rule bg-paper px-2.5 py-1 text-left align-baseline font-normal print:static"
-      >
-        <span className="inline-flex items-baseline gap-2">
-          {row.axis === undefined ? null : <AxisBar axis={row.axis} />}
-          {row.label}
-        </span>
-      </th>
+      <ComparedRowHeader row={row} {...sort} />
       {designs.map(({ id }, k) => (
         <td
           key={id}
@@ -78,7 +73,13 @@ function Row({ row, designs }: Readonly<{ row: ComparedRow; designs: readonly Co
   );
 }
 
-const VERDICT_STYLE = { best: "text-met-mark", last: "text-unmet-mark" } as const;
+/** The word says it; neither is met or not met, so ink alone sets them apart. */
+const VERDICT_STYLE: Readonly<Record<Verdict, string>> = {
+  best: "font-semibold text-ink",
+  "best, shared": "font-semibold text-ink",
+  worst: "text-soft italic",
+  "worst, shared": "text-soft italic",
+};
 
 function CellContent({ cell, prose }: Readonly<{ cell: ComparedCell | null; prose?: boolean }>) {
   if (!cell) {
@@ -98,9 +99,7 @@ function CellContent({ cell, prose }: Readonly<{ cell: ComparedCell | null; pros
       >
         {mark ? <StateMark {...mark} /> : null}
         {text}
-        {verdict ? (
-          <span className={joinClasses("font-sans text-xs font-semibold", VERDICT_STYLE[verdict])}> {verdict}</span>
-        ) : null}
+        {verdict ? <span className={joinClasses("font-sans text-xs", VERDICT_STYLE[verdict])}> {verdict}</span> : null}
       </span>
       {note ? <span className="block text-sm text-soft print:text-xs">{note}</span> : null}
     </>

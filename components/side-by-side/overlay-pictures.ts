@@ -11,6 +11,8 @@ export type CommandedSignal = { readonly name: string; readonly unit: string; re
 export type OverlaidDesign = {
   readonly id: string;
   readonly label: string;
+  /** Place among the designs as chosen: it decides the dash, which stays when they are put in another order. */
+  readonly place: number;
   readonly commanded: readonly CommandedSignal[];
   readonly figures: readonly StepFiguresReply[];
   readonly hasObserver: boolean;
@@ -65,7 +67,7 @@ function sentence(design: OverlaidDesign, { role, index, name, unit }: Signal, c
   return `${design.label}: ${parts.join(", ")}.`;
 }
 
-type Overlaid = { readonly design: OverlaidDesign; readonly place: number; readonly curve: ResponseCurves };
+type Overlaid = { readonly design: OverlaidDesign; readonly curve: ResponseCurves };
 
 /** Measured quantities that are commanded too are drawn once, as commanded. */
 function wantedSignals({ signals }: ResponseCurves): Signal[] {
@@ -80,25 +82,25 @@ export function overlayPictures(
   designs: readonly OverlaidDesign[],
   curves: readonly (ResponseCurves | null)[],
 ): OverlayPicture[] {
-  const drawn = designs.flatMap((design, place): Overlaid[] => {
-    const curve = curves[place];
-    return curve ? [{ design, place, curve }] : [];
+  const drawn = designs.flatMap((design, index): Overlaid[] => {
+    const curve = curves[index];
+    return curve ? [{ design, curve }] : [];
   });
   const keys = mergeOrder(drawn.map(({ curve }) => wantedSignals(curve).map(keyOf)));
   return keys.map((key) => {
-    const found = drawn.flatMap(({ design, place, curve }) => {
+    const found = drawn.flatMap(({ design, curve }) => {
       const row = curve.signals.findIndex((signal) => keyOf(signal) === key);
-      return row < 0 ? [] : [{ design, place, curve, signal: curve.signals[row], values: curve.values[row] }];
+      return row < 0 ? [] : [{ design, curve, signal: curve.signals[row], values: curve.values[row] }];
     });
     const { name, unit, role, axis } = found[0].signal;
-    const traces = found.map(({ design, place, curve, values }) => ({
+    const traces = found.map(({ design, curve, values }) => ({
       key: design.id,
       name: design.label,
       values,
       step: curve.step,
       // The hue is the first design's, so that one quantity has one hue.
       axis,
-      design: place,
+      design: design.place,
       held: role === "input" && design.sampled,
     }));
     const summary = found.flatMap(({ design, signal, curve }) => sentence(design, signal, curve) ?? []);

@@ -1,22 +1,23 @@
 "use client";
 
-import { useRef, useState } from "react";
+import { useMemo, useRef, useState } from "react";
+import { comparisonFileAddress } from "@/lib/client/designs";
 import { ComparisonsList } from "../designs/comparisons-list";
 import { Button } from "../ui/button";
-import { Checkbox } from "../ui/checkbox";
+import { buttonStyle } from "../ui/button-style";
 import { CopyButton } from "../ui/copy-button";
 import { LinkButton } from "../ui/link-button";
 import { Notice } from "../ui/notice";
 import { PageHeading } from "../ui/page-heading";
 import { SheetSection } from "../ui/sheet-section";
-import type { ComparedDesign, Comparing } from "./compare-designs";
+import { arrangeDesigns, type ComparedDesign, type Comparing } from "./compare-designs";
+import { ComparedFacts, sortingOf } from "./compared-facts";
 import { ComparedMatrices } from "./compared-matrices";
 import { ComparedResponses } from "./compared-responses";
-import { withoutEqual } from "./compared-rows";
-import { ComparedTable } from "./compared-table";
+import { ComparedTrades } from "./compared-trades";
 import { SaveComparison } from "./save-comparison";
 import { usePrinting } from "./use-printing";
-import { useSideBySideView } from "./use-side-by-side-view";
+import { type SideBySideView, useSideBySideView } from "./use-side-by-side-view";
 
 type SideBySidePageProps = Readonly<{
   plant: { readonly id: string; readonly name: string };
@@ -26,10 +27,18 @@ type SideBySidePageProps = Readonly<{
 
 const COUNTS = ["", "", "Two", "Three", "Four", "Five", "Six"];
 
+/** Of one design its revisions stand here. */
+function titleOf(designs: readonly ComparedDesign[]): string {
+  const what = new Set(designs.map(({ designId }) => designId)).size === 1 ? `revisions of ${designs[0].name}` : "designs";
+  return `${COUNTS[designs.length]} ${what}, side by side`;
+}
+
 /** Two to six designs, every number and curve aligned, differences marked. */
-export function SideBySidePage({ plant, comparing: { designs, sections }, maySave }: SideBySidePageProps) {
+export function SideBySidePage({ plant, comparing, maySave }: SideBySidePageProps) {
   const page = useRef<HTMLDivElement>(null);
   const view = useSideBySideView();
+  const arranged = useArranged(comparing, view);
+  const { designs } = arranged;
   const { whole, waiting, print } = usePrinting(page);
   const [saving, setSaving] = useState(false);
   const ids = designs.map(({ id }) => id);
@@ -39,6 +48,9 @@ export function SideBySidePage({ plant, comparing: { designs, sections }, maySav
       <Button busy={waiting} onClick={print}>
         Print
       </Button>
+      <a href={comparisonFileAddress(plant.id, ids)} download className={buttonStyle()}>
+        Download CSV
+      </a>
       <LinkButton href={`/plants/${plant.id}/side-by-side?choose=yes&designs=${ids.join(",")}`}>Choose designs</LinkButton>
       {maySave ? (
         <Button tone="primary" onClick={() => setSaving(true)}>
@@ -49,9 +61,10 @@ export function SideBySidePage({ plant, comparing: { designs, sections }, maySav
   );
   return (
     <div ref={page}>
-      <PageHeading title={`${COUNTS[designs.length]} designs, side by side`} crumbs={crumbs(plant, designs)} actions={actions} />
+      <PageHeading title={titleOf(designs)} crumbs={crumbs(plant, designs)} actions={actions} />
       <PlantsDiffer designs={designs} />
-      <Facts {...{ designs, sections, view }} plantId={plant.id} />
+      <ComparedFacts {...{ arranged, view }} plantId={plant.id} />
+      <ComparedTrades designs={designs} />
       <ComparedResponses {...{ designs, view, whole }} />
       <ComparedMatrices {...{ designs, view, whole }} />
       <div className="no-print">
@@ -62,6 +75,11 @@ export function SideBySidePage({ plant, comparing: { designs, sections }, maySav
       {saving ? <SaveComparison plantId={plant.id} designRevisionIds={ids} onClose={() => setSaving(false)} /> : null}
     </div>
   );
+}
+
+function useArranged(comparing: Comparing, [view]: SideBySideView) {
+  const { sort, order } = view;
+  return useMemo(() => arrangeDesigns(comparing, sortingOf({ sort, order })), [comparing, sort, order]);
 }
 
 function crumbs({ id, name }: SideBySidePageProps["plant"], designs: readonly ComparedDesign[]) {
@@ -82,32 +100,6 @@ function PlantsDiffer({ designs }: Readonly<{ designs: readonly ComparedDesign[]
       <Notice kind="caution" title="These designs were computed on different revisions of the plant.">
         Signals are matched by name; what differs may come from the plant and not from the recipe.
       </Notice>
-    </div>
-  );
-}
-
-type FactsProps = Comparing & Readonly<{ plantId: string; view: ReturnType<typeof useSideBySideView> }>;
-
-function Facts({ plantId, designs, sections, view: [view, setView] }: FactsProps) {
-  const short = withoutEqual(sections);
-  const hiding = view.hide === "equal";
-  const shown = hiding ? short.sections : sections;
-  return (
-    <div className="mb-8">
-      <div className="mb-2 flex flex-wrap items-center gap-x-4 text-table">
-        <div className="no-print">
-          <Checkbox
-            label="Hide equal rows"
-            checked={hiding}
-            onChange={({ target }) => setView({ hide: target.checked ? "equal" : null })}
-          />
-        </div>
-        <p role="status" className="text-sm text-soft">
-          {hiding ? `${short.hidden} equal rows are hidden` : `${short.hidden} rows are equal`}; a thick rule stands where a
-          design differs from the first
-        </p>
-      </div>
-      <ComparedTable {...{ plantId, designs }} sections={shown} />
     </div>
   );
 }

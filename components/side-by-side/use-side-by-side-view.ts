@@ -11,6 +11,8 @@ export function useSideBySideView() {
       hide: parseAsStringLiteral(["equal"] as const),
       commanded: parseAsString,
       loop: parseAsStringLiteral(LOOPS).withDefault("observer"),
+      sort: parseAsString,
+      order: parseAsStringLiteral(["least", "most"] as const).withDefault("least"),
       gains: parseAsStringLiteral(["entries", "difference"] as const).withDefault("entries"),
     },
     { history: "replace" },

@@ -1,6 +1,6 @@
 "use client";
 
-import { type ReactNode, useState } from "react";
+import { Fragment, type ReactNode, useState } from "react";
 import { joinClasses } from "./join-classes";
 import { ScrollBox } from "./scroll-box";
 
@@ -28,6 +28,8 @@ type DataTableProps<Row> = Readonly<{
   onSort?: (sort: Sort) => void;
   /** The column that names the row; its cells are row headers. */
   rowHeader?: string;
+  /** What is unfolded below a row, across all columns. */
+  detail?: (row: Row) => ReactNode;
 }>;
 
 export function DataTable<Row>({
@@ -39,6 +41,7 @@ export function DataTable<Row>({
   sort = null,
   onSort,
   rowHeader = columns[0]?.key,
+  detail,
 }: DataTableProps<Row>) {
   const [ownSort, setOwnSort] = useState(sort);
   const active = onSort ? sort : ownSort;
@@ -57,26 +60,21 @@ export function DataTable<Row>({
           </tr>
         </thead>
         <tbody>
-          {ordered.map((row) => (
-            <tr key={rowKey(row)} className="border-b border-rule">
-              {columns.map((column) => {
-                const content = column.cell(row);
-                const style = joinClasses(
-                  "px-2.5 py-1.5 align-baseline first:pl-0 last:pr-0",
-                  column.kind === "figure" && FIGURE,
-                );
-                return column.key === rowHeader ? (
-                  <th key={column.key} scope="row" className={joinClasses(style, "text-left font-normal")}>
-                    {content}
-                  </th>
-                ) : (
-                  <td key={column.key} className={style}>
-                    {content}
-                  </td>
-                );
-              })}
-            </tr>
-          ))}
+          {ordered.map((row) => {
+            const below = detail?.(row);
+            return (
+              <Fragment key={rowKey(row)}>
+                <BodyRow {...{ row, columns, rowHeader }} />
+                {below ? (
+                  <tr className="border-b border-rule">
+                    <td colSpan={columns.length} className="py-2 pl-10">
+                      {below}
+                    </td>
+                  </tr>
+                ) : null}
+              </Fragment>
+            );
+          })}
         </tbody>
       </table>
     </ScrollBox>
@@ -84,6 +82,28 @@ export function DataTable<Row>({
 }
 
 const FIGURE = "text-right font-mono whitespace-nowrap";
+
+type BodyRowProps<Row> = Readonly<{ row: Row; columns: readonly Column<Row>[]; rowHeader: string | undefined }>;
+
+function BodyRow<Row>({ row, columns, rowHeader }: BodyRowProps<Row>) {
+  return (
+    <tr className="border-b border-rule">
+      {columns.map((column) => {
+        const content = column.cell(row);
+        const style = joinClasses("px-2.5 py-1.5 align-baseline first:pl-0 last:pr-0", column.kind === "figure" && FIGURE);
+        return column.key === rowHeader ? (
+          <th key={column.key} scope="row" className={joinClasses(style, "text-left font-normal")}>
+            {content}
+          </th>
+        ) : (
+          <td key={column.key} className={style}>
+            {content}
+          </td>
+        );
+      })}
+    </tr>
+  );
+}
 
 type HeaderCellProps<Row> = Readonly<{ column: Column<Row>; sort: Sort | null; onSort: (sort: Sort) => void }>;
 

@@ -50,6 +50,8 @@ export const fetchCurves = async (revisionId: string, { kind, loop, source, sign
 /** Address of a download; the browser fetches it itself. */
 export const gainFileAddress = (revisionId: string, format: "csv" | "json") =>
   `/api/v1/design-revisions/${revisionId}/gains?format=${format}`;
+export const comparisonFileAddress = (plantId: string, designRevisionIds: readonly string[]) =>
+  `/api/v1/plants/${plantId}/side-by-side?designs=${designRevisionIds.join(",")}&format=csv`;
 
 /** Computes without storing. */
 export const compute = async (body: Compute, signal?: AbortSignal) =>

@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { GainMatrix } from "@/components/designs/gains/gain-matrices";
-import { compareDesigns } from "@/components/side-by-side/compare-designs";
-import { differsFrom, gainDifference } from "@/components/side-by-side/compared-gains";
+import { arrangeDesigns, compareDesigns } from "@/components/side-by-side/compare-designs";
+import { absentWords, differsFrom, gainDifference, noDifference } from "@/components/side-by-side/compared-gains";
 import { alignFacts, type Fact, mergeOrder, verdicts, withoutEqual } from "@/components/side-by-side/compared-rows";
 import { commandText, loopOf, type OverlaidDesign, overlayPictures } from "@/components/side-by-side/overlay-pictures";
 import { askedDesigns } from "@/components/side-by-side/side-by-side-ids";
@@ -74,17 +74,28 @@ describe("aligned rows", () => {
   });
 });
 
-describe("best and last", () => {
+describe("best and worst", () => {
   test("are the least and the largest; those between and those without a figure are neither", () => {
-    expect(verdicts([3, 1, undefined, 2])).toEqual(["last", "best", null, null]);
+    expect(verdicts([3, 1, undefined, 2])).toEqual(["worst", "best", null, null]);
   });
-  test("are shared by figures that read alike in four digits", () => {
-    expect(verdicts([1.00001, 1.00002, 2])).toEqual(["best", "best", "last"]);
+  test("are said to be shared by figures that read alike in four digits", () => {
+    expect(verdicts([1.00001, 1.00002, 2])).toEqual(["best, shared", "best, shared", "worst"]);
+    expect(verdicts([5, 1, 5, 3])).toEqual(["worst, shared", "best", "worst, shared", null]);
   });
   test("are not said where nothing can be told apart", () => {
     expect(verdicts([1, 1.000001])).toEqual([null, null]);
     expect(verdicts([1, undefined])).toEqual([null, null]);
     expect(verdicts([])).toEqual([]);
+  });
+  test("never part figures that read alike, however many digits they were computed in", () => {
+    const [{ rows }] = alignFacts([
+      [fact("settling", "3.6 s", { size: 3.601 })],
+      [fact("settling", "3.6 s", { size: 3.604 })],
+      [fact("settling", "4.8 s", { size: 4.8 })],
+    ]);
+    expect(rows[0].cells.map((cell) => cell?.verdict)).toEqual(["best, shared", "best, shared", "worst"]);
+    const [{ rows: alike }] = alignFacts([[fact("a", "1 s", { size: 1.001 })], [fact("a", "1 s", { size: 1.004 })]]);
+    expect(alike[0].cells.map((cell) => cell?.verdict)).toEqual([null, null]);
   });
 });
 
@@ -140,6 +151,35 @@ describe("gains of two designs", () => {
   });
 });
 
+describe("a difference that cannot be drawn is said", () => {
+  const own = (symbol: string, order: number): GainMatrix => {
+    const w = Array.from({ length: order }, (_, k) => ({ label: `w${k + 1}`, axis: null }));
+    return { ...gain([], [], []), symbol, rows: w, columns: w };
+  };
+  const reduced = (label: string, order: number, plantRevision = 1) => ({
+    ...{ label, plantRevision },
+    observer: { words: `an observer of reduced order ${order}`, order },
+  });
+  const bare = { label: "Bare", plantRevision: 1, observer: { words: "no observer", order: null } };
+  test("where the first has no such matrix", () => {
+    expect(noDifference(own("Fw", 2), undefined, reduced("Low", 2), bare)).toBe(
+      "Bare has no Fw: it has no observer. That of Low has nothing to be held against.",
+    );
+    expect(absentWords("F", bare)).toBe("Bare has no F.");
+  });
+  test("where observers of different order have coordinates of their own", () => {
+    expect(noDifference(own("Fw", 2), own("Fw", 3), reduced("Low", 2), reduced("High", 3))).toBe(
+      "No difference of Fw of Low and of High: Low has an observer of reduced order 2, High an observer of reduced order 3, each in coordinates of its own.",
+    );
+    expect(noDifference(own("Fw", 2), own("Fw", 2), reduced("Low", 2), reduced("Old", 2, 4))).toMatch(/different revisions/);
+  });
+  test("and is drawn where the coordinates are the same or are the plant's", () => {
+    expect(noDifference(own("Fw", 2), own("Fw", 2), reduced("Low", 2), reduced("Other", 2))).toBeNull();
+    const K = gain(["F"], ["y"], [[1]]);
+    expect(noDifference(K, K, reduced("Low", 2), bare)).toBeNull();
+  });
+});
+
 const signals = (names: readonly string[]) =>
   names.map((name) => ({ role: "commanded" as const, index: names.indexOf(name), name, unit: "mm", axis: names.indexOf(name) }));
 const curve = (loop: ResponseCurves["loop"], names: readonly string[], source: number): ResponseCurves => ({
@@ -153,7 +193,7 @@ const curve = (loop: ResponseCurves["loop"], names: readonly string[], source: n
 });
 const rest = { final: 0, undershoot: null, rise: null };
 const overlaid = (label: string, names: readonly string[], hasObserver: boolean, amplitude = 10): OverlaidDesign => ({
-  ...{ id: label, label, hasObserver, sampled: true },
+  ...{ id: label, label, place: label === "Firm" ? 1 : 0, hasObserver, sampled: true },
   commanded: names.map((name) => ({ name, unit: "mm", amplitude })),
   figures: [
     {
@@ -191,6 +231,14 @@ describe("overlaid responses", () => {
   test("keep a design's dash where an earlier one has no such response", () => {
     const [only] = overlayPictures(designs, [null, curve("full-state", ["turn", "y"], 1)]);
     expect(only.traces.map(({ name, design }) => [name, design])).toEqual([["Firm", 1]]);
+  });
+  test("keep the dash of every design when they stand in another order", () => {
+    const [soft, firm] = designs;
+    const [picture] = overlayPictures([firm, soft], [curve("full-state", ["turn", "y"], 1), curve("observer", ["y", "turn"], 0)]);
+    expect(picture.traces.map(({ name, design }) => [name, design])).toEqual([
+      ["Firm", 1],
+      ["Soft", 0],
+    ]);
   });
   test("name every size where the tests differ", () => {
     expect(commandText(designs, "y")).toBe("y commanded 10 mm");
@@ -282,7 +330,7 @@ describe("designs of different plant revisions", () => {
       [-4, 0, 1],
     ],
   );
-  const { sections, designs } = compareDesigns([soft, firm]);
+  const { sections, designs } = arrangeDesigns(compareDesigns([soft, firm]), null);
   const texts = (title: string) =>
     sections
       .find((section) => section.title === title)

@@ -1,9 +1,10 @@
-import type { Recipe, WeightsRecipe } from "@/control/design/recipe";
-import type { PlantModel, Rows } from "@/control/plant/model";
+import type { PoleEntry, Recipe, WeightsRecipe } from "@/control/design/recipe";
+import type { PlantModel, Rows, TimeBase } from "@/control/plant/model";
 import { formatNumber } from "@/control/words/format-number";
+import type { Measured } from "../measured";
 import { noiseUnit, weightUnit } from "../unit-text";
 import { weightOf } from "./recipe-form";
-import { METHOD_WORDS, OBSERVER_WORDS, poleEntryText, reasonPlace } from "./recipe-words";
+import { METHOD_WORDS, OBSERVER_WORDS, poleEntryFigures, poleEntryText, reasonPlace } from "./recipe-words";
 
 /** The sections that facts stand in, in the order they are read. */
 export const RECIPE_SECTIONS = [
@@ -33,11 +34,24 @@ export type RecipeLine = {
   readonly axis?: number | null;
   /** Prose, to be read across; the rest are figures. */
   readonly prose?: boolean;
+  /** The same as numbers, where it is one: what a file holds. */
+  readonly data?: readonly Measured[];
 };
 
 type Signal = { readonly name: string; readonly unit: string; readonly axis: number | null };
 
 const withUnit = (value: number, unit: string) => (unit ? `${formatNumber(value)} ${unit}` : formatNumber(value));
+/** A number with its unit, as it is read and as it is. */
+const measured = (value: number, unit: string) => ({
+  text: withUnit(value, unit),
+  exact: String(value),
+  data: [{ what: "", unit: unit || "1", value }],
+});
+const poleEntry = (entry: PoleEntry, timeBase: TimeBase) => ({
+  text: poleEntryText(entry, timeBase),
+  exact: JSON.stringify(entry),
+  data: poleEntryFigures(entry, timeBase),
+});
 
 function deviationLines({ weights }: WeightsRecipe, { states, inputs }: PlantModel): RecipeLine[] {
   if (weights.form !== "deviations") return [];
@@ -46,8 +60,7 @@ function deviationLines({ weights }: WeightsRecipe, { states, inputs }: PlantMod
     key: `${section} ${name}`,
     label: name,
     axis,
-    text: value === null ? "not weighted" : withUnit(value, unit),
-    exact: String(value),
+    ...(value === null ? { text: "not weighted", exact: String(value) } : measured(value, unit)),
   });
   return [
     ...states.map((signal, i) => line("Largest deviation accepted", signal, weights.states[i] ?? null)),
@@ -70,16 +83,7 @@ function matrixLines(
       if (square ? j < i || (i !== j && value === 0) : value === 0) return [];
       const label = square && i === j ? row.name : `${row.name}, ${column.name}`;
       const axis = row.axis === column.axis ? row.axis : null;
-      return [
-        {
-          section,
-          key: `${section} ${label}`,
-          label,
-          axis,
-          text: withUnit(value, unit(row.unit, column.unit)),
-          exact: String(value),
-        },
-      ];
+      return [{ section, key: `${section} ${label}`, label, axis, ...measured(value, unit(row.unit, column.unit)) }];
     }),
   );
 }
@@ -111,8 +115,7 @@ function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): Re
         section: "Wanted poles",
         key: `wanted ${k}`,
         label: `entry ${k + 1}`,
-        text: poleEntryText(entry, model.timeBase),
-        exact: JSON.stringify(entry),
+        ...poleEntry(entry, model.timeBase),
       }),
     );
     return [method, ...poles];
@@ -122,8 +125,7 @@ function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): Re
     section: "Method",
     key: "stability",
     label: "degree of stability",
-    text: degree === null ? "not asked for" : withUnit(degree, "1/s"),
-    exact: String(degree),
+    ...(degree === null ? { text: "not asked for", exact: String(degree) } : measured(degree, "1/s")),
   };
   const weights =
     asMatrices || recipe.weights.form === "matrices" ? weightMatrixLines(recipe, model) : deviationLines(recipe, model);
@@ -156,8 +158,7 @@ function observerLines({ observer }: Recipe, { states, outputs, timeBase }: Plan
       section,
       key: `observer ${k}`,
       label: `observer pole entry ${k + 1}`,
-      text: poleEntryText(entry, timeBase),
-      exact: JSON.stringify(entry),
+      ...poleEntry(entry, timeBase),
     }),
   );
   return [kind, ...poles];
@@ -170,8 +171,7 @@ function testLines({ reference, test }: Recipe, { states, inputs }: PlantModel):
     key: `${what} ${name}`,
     label: `${what} ${name}`,
     axis,
-    text: withUnit(size, unit),
-    exact: String(size),
+    ...measured(size, unit),
   });
   const followed = reference.kind === "feed-through";
   return [
@@ -180,8 +180,9 @@ function testLines({ reference, test }: Recipe, { states, inputs }: PlantModel):
       section,
       key: "horizon",
       label: "length of the responses",
-      text: test.horizon === null ? "chosen from the settling" : withUnit(test.horizon, "s"),
-      exact: String(test.horizon),
+      ...(test.horizon === null
+        ? { text: "chosen from the settling", exact: String(test.horizon) }
+        : measured(test.horizon, "s")),
     },
     ...states.map((signal, i) => value("initial state", signal, test.initialState[i] ?? 0)),
     ...inputs.map((signal, j) => value("disturbance of", signal, test.inputDisturbance[j] ?? 0)),

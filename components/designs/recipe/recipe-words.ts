@@ -1,6 +1,7 @@
 import type { ObserverRecipe, PoleEntry, Recipe } from "@/control/design/recipe";
 import type { TimeBase } from "@/control/plant/model";
 import { formatNumber } from "@/control/words/format-number";
+import type { Measured } from "../measured";
 
 export const METHOD_WORDS: Readonly<Record<Recipe["method"], string>> = { weights: "quadratic weights", poles: "poles" };
 
@@ -45,5 +46,26 @@ export function poleEntryText(entry: PoleEntry, timeBase: TimeBase, digits = 4):
       return `${figure(entry.frequency)} rad/s, damping ${figure(entry.damping)}`;
     case "time-constant":
       return `time constant ${figure(entry.seconds)} s`;
+  }
+}
+
+/** The same in numbers. */
+export function poleEntryFigures(entry: PoleEntry, timeBase: TimeBase): Measured[] {
+  const plane = timeBase.kind === "continuous" ? "1/s" : "1";
+  switch (entry.kind) {
+    case "real":
+      return [{ what: "real part", unit: plane, value: entry.value }];
+    case "pair":
+      return [
+        { what: "real part", unit: plane, value: entry.re },
+        { what: "imaginary part, plus and minus", unit: plane, value: entry.im },
+      ];
+    case "damping":
+      return [
+        { what: "frequency", unit: "rad/s", value: entry.frequency },
+        { what: "damping", unit: "1", value: entry.damping },
+      ];
+    case "time-constant":
+      return [{ what: "time constant", unit: "s", value: entry.seconds }];
   }
 }

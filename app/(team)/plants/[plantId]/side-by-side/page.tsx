@@ -11,6 +11,7 @@ import { NotFound } from "@/lib/errors";
 import { isAllowed } from "@/lib/permissions/allow";
 import { PlantAddress } from "@/lib/schemas/addresses";
 import { FEWEST } from "@/lib/schemas/compared-count";
+import type { DesignRevision } from "@/lib/schemas/design";
 import { readDesignRevisions } from "@/lib/services/designs/read-revisions";
 import { readPlant } from "@/lib/services/plants/read";
 
@@ -45,12 +46,14 @@ export async function generateMetadata(props: PageProps): Promise<Metadata> {
   return { title: `Side-by-side, ${plant.name}` };
 }
 
+const toPicked = ({ id, designName, number }: DesignRevision) => ({ id, name: designName, number });
+
 export default async function Page(props: PageProps) {
   const { plant, ids, tooMany, revisions, maySave, choosing } = await startOf(props);
   return (
     <PageBody>
       {choosing ? (
-        <ChooseDesigns key={ids.join()} plant={plant} chosen={ids} tooMany={tooMany} />
+        <ChooseDesigns key={ids.join()} plant={plant} chosen={revisions.map(toPicked)} tooMany={tooMany} />
       ) : (
         <SideBySidePage key={ids.join()} plant={plant} comparing={compareDesigns(revisions)} maySave={maySave} />
       )}
