@@ -4,6 +4,7 @@
  * `control/expression/`) are left out on purpose: whoever imports them also loads the parser.
  */
 
+export { switchAccelerator } from "./accelerator/accelerator";
 export { computeDesign, METHOD_VERSION } from "./design/compute-design";
 export { defaultRecipe } from "./design/default-recipe";
 export type * from "./design/evidence";
