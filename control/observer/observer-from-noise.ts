@@ -22,6 +22,10 @@ export type NoiseObserver = {
   readonly bound: number;
   /** Bound on the relative error of L, 2-norm. */
   readonly errorBound: number;
+  /** Of the covariance, as `solveRiccati` states it for the dual problem. */
+  readonly condition: number;
+  /** Least distance of an eigenvalue of A - LC from the stability boundary. */
+  readonly stabilityDistance: number;
   readonly method: string;
 };
 
@@ -51,6 +55,6 @@ export function observerFromNoise({ A, C, processNoise, measurementNoise, sample
   const solved = inDual(() =>
     solveRiccati({ A: A.transpose(), B: C.transpose(), Q: processNoise, R: measurementNoise, sampled }),
   );
-  const { X, K, closedLoopPoles, residual, bound, errorBound, method } = solved;
-  return { L: K.transpose(), covariance: X, achieved: closedLoopPoles, residual, bound, errorBound, method };
+  const { X, K, closedLoopPoles: achieved, residual, bound, errorBound, condition, stabilityDistance, method } = solved;
+  return { L: K.transpose(), covariance: X, achieved, residual, bound, errorBound, condition, stabilityDistance, method };
 }

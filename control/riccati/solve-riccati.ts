@@ -34,13 +34,15 @@ const GAIN_SHIFTS = [0.3, 3, 0.03];
  *
  * Shapes    A n×n, B n×m, Q n×n, R m×m, S n×m (zero when absent) → X n×n, K m×n
  * Units     u = -K x minimises x'Qx + 2 x'Su + u'Ru
- * Throws    shape-mismatch; not-finite; too-large; not-symmetric; not-positive-definite (R; sampled: R + B'XB);
+ * Throws    shape-mismatch; not-finite; too-large (also "spread": entries further apart than any digits); not-symmetric;
+ *           not-positive-definite (R; sampled: R + B'XB);
  *           not-positive-semidefinite ([Q S; S' R]; with allowIndefinite only when no
  *           stabilising solution is found); not-stabilizable; unweighted-boundary-mode; on-stability-boundary;
  *           no-convergence; inaccurate. Never returns a gain that does not stabilise
- * Accuracy  ordinarily every entry of X and K correctly rounded; errorBound says when not
- * Source    doubling: Chu, Fan & Lin 2005; Schur method: Laub 1979; Newton: Kleinman 1968, Hewer 1971, with residuals in
- *           double-double; scaling: Benner 2001
+ * Accuracy  ordinarily every entry of X and K correctly rounded; errorBound says when not. Each start is refined until
+ *           contraction and the residual prove the digits; at most five starts of sixty steps
+ * Source    doubling: Chu, Fan & Lin 2005; Schur method: Laub 1979; stabilising gain: Varga 1981; Newton: Kleinman 1968,
+ *           Hewer 1971, with residuals in double-double and the step length of Benner & Byers 1998; scaling: Benner 2001
  */
 export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
   const { problem: original, indefinite, definite } = checkProblem(given);

@@ -62,14 +62,15 @@ function innerFactors(g: Float64Array, h: Float64Array, n: number): Lu {
   return factors;
 }
 
-/** Symmetric part of the increment, plus the symmetric matrix it is added to. */
-function symmetric(increment: Float64Array, to: Float64Array, n: number): Float64Array {
-  const sum = new Float64Array(n * n);
+/** Symmetric part of the increment, in its place, plus the symmetric matrix it is added to, if any. */
+function symmetric(increment: Float64Array, to: Float64Array | null, n: number): Float64Array {
   for (let i = 0; i < n; i++) {
-    for (let j = 0; j <= i; j++)
-      sum[i * n + j] = sum[j * n + i] = to[i * n + j] + 0.5 * (increment[i * n + j] + increment[j * n + i]);
+    for (let j = 0, at = i * n, mirror = i; j <= i; j++, at++, mirror += n) {
+      const mean = 0.5 * (increment[at] + increment[mirror]);
+      increment[at] = increment[mirror] = to ? to[at] + mean : mean;
+    }
   }
-  return sum;
+  return increment;
 }
 
 /** Start of the doubling for the continuous equation, with the first factor whose two inverses are well conditioned. */
@@ -112,11 +113,10 @@ function tryCayley(
   const e = flatTranspose(w, n, n);
   for (let i = 0; i < n; i++) e[i * n + i] += 1;
   const hInverse = flatProduct(q, innerInverse, n, n, n);
-  const zero = new Float64Array(n * n);
   const triple = {
     e,
-    g: symmetric(flatProduct(solvedG, w, n, n, n), zero, n),
-    h: symmetric(flatProduct(w, hInverse, n, n, n), zero, n),
+    g: symmetric(flatProduct(solvedG, w, n, n, n), null, n),
+    h: symmetric(flatProduct(w, hInverse, n, n, n), null, n),
   };
   return { triple, condition: 1 / growth };
 }
