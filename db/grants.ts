@@ -14,7 +14,7 @@ export const TABLE_GRANTS: Readonly<Record<string, string>> = {
   audit_events: "SELECT, INSERT",
   idempotency_keys: "SELECT, INSERT, UPDATE (status, reply), DELETE",
   rate_limits: "SELECT, INSERT, UPDATE, DELETE",
-  plants: "SELECT, INSERT, UPDATE (name, version, current_revision, archived_at, updated_at)",
+  plants: "SELECT, INSERT, UPDATE (name, version, current_revision, criteria, archived_at, updated_at)",
   plant_revisions: "SELECT, INSERT",
   designs: "SELECT, INSERT, UPDATE (name, version, current_revision, archived_at, updated_at)",
   design_revisions: "SELECT, INSERT",

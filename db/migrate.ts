@@ -11,9 +11,14 @@ const MIGRATION_LOCK = 727_460_011;
 
 /**
  * Brings the database of `ownerUrl` to this release: tables, job queue, rights of the app role. Safe to run again and at once
- * by several processes. The owner must be able to create schemas; a missing app role is created without a sign-in.
+ * by several processes. The owner must be able to create schemas; a missing app role is created without a sign-in. The rights
+ * are this release's: a folder that stops earlier lacks what some of them speak of, and brings its own.
  */
-export async function migrate(ownerUrl: string, folder = join(process.cwd(), "drizzle")): Promise<void> {
+export async function migrate(
+  ownerUrl: string,
+  folder = join(process.cwd(), "drizzle"),
+  rights: readonly string[] = grantStatements(),
+): Promise<void> {
   const client = new pg.Client({ connectionString: ownerUrl });
   client.on("error", () => undefined); // a lost connection also rejects the query that waits on it
   await client.connect();
@@ -23,16 +28,16 @@ export async function migrate(ownerUrl: string, folder = join(process.cwd(), "dr
     await client.query("SET lock_timeout = '5s'");
     await applyMigrations(drizzle(client), { migrationsFolder: folder });
     await migrateQueue({ connectionString: ownerUrl });
-    await grantRights(client);
+    await grantRights(client, rights);
   } finally {
     await client.end();
   }
 }
 
-async function grantRights(client: pg.Client): Promise<void> {
+async function grantRights(client: pg.Client, rights: readonly string[]): Promise<void> {
   const known = await client.query("SELECT 1 FROM pg_roles WHERE rolname = $1", [APP_ROLE]);
   if (known.rowCount === 0) await client.query(`CREATE ROLE ${APP_ROLE} NOLOGIN NOBYPASSRLS`);
   await client.query("BEGIN");
-  for (const statement of grantStatements()) await client.query(statement);
+  for (const statement of rights) await client.query(statement);
   await client.query("COMMIT");
 }

@@ -11,6 +11,7 @@ export const AUDIT_PHRASES: Readonly<Record<string, Phrase>> = {
   "plant.created": { did: "entered the plant" },
   "plant.revised": { did: "saved a new revision of the plant" },
   "plant.renamed": { did: "renamed the plant, now" },
+  "plant.criteria-set": { did: "set the acceptance criteria of the plant" },
   "plant.archived": { did: "archived the plant" },
   "plant.restored": { did: "brought back the plant" },
   "design.created": { did: "made the design" },

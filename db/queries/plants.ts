@@ -1,5 +1,6 @@
 import "server-only";
 import { and, eq, ilike, type SQL, sql } from "drizzle-orm";
+import type { Criterion } from "@/control/design/criteria";
 import type { Db } from "../client";
 import { designs } from "../schema/designs";
 import { plantRevisions, plants } from "../schema/plants";
@@ -41,10 +42,15 @@ const withCurrent = and(
 );
 
 export async function findPlant(db: Db, key: PlantKey) {
-  const [found] = await db.select(row).from(plants).innerJoin(plantRevisions, withCurrent).where(owned(key));
+  const [found] = await db
+    .select({ ...row, criteria: plants.criteria })
+    .from(plants)
+    .innerJoin(plantRevisions, withCurrent)
+    .where(owned(key));
   return found;
 }
 export type PlantRow = NonNullable<Awaited<ReturnType<typeof findPlant>>>;
+export type PlantSummaryRow = Omit<PlantRow, "criteria">;
 
 export async function listPlants(
   db: Db,
@@ -67,7 +73,7 @@ export async function listPlants(
     .limit(query.limit);
 }
 
-export async function insertPlant(db: Db, values: { teamId: string; name: string; createdBy: string }) {
+export async function insertPlant(db: Db, values: { teamId: string; name: string; createdBy: string; criteria?: Criterion[] }) {
   const [made] = await db.insert(plants).values(values).returning({ id: plants.id });
   return made;
 }
@@ -77,7 +83,7 @@ async function changeAt(
   db: Db,
   key: PlantKey,
   version: number,
-  change: { name?: string; archivedAt?: SQL | null; currentRevision?: SQL },
+  change: { name?: string; archivedAt?: SQL | null; currentRevision?: SQL; criteria?: Criterion[] },
 ) {
   const [saved] = await db
     .update(plants)
@@ -88,6 +94,8 @@ async function changeAt(
 }
 
 export const renamePlantAt = (db: Db, key: PlantKey, version: number, name: string) => changeAt(db, key, version, { name });
+export const setCriteriaAt = (db: Db, key: PlantKey, version: number, criteria: Criterion[]) =>
+  changeAt(db, key, version, { criteria });
 export const archivePlantAt = (db: Db, key: PlantKey, version: number, archived: boolean) =>
   changeAt(db, key, version, { archivedAt: archived ? sql`now()` : null });
 export const advancePlantAt = (db: Db, key: PlantKey, version: number) =>

@@ -1,5 +1,6 @@
 import { sql } from "drizzle-orm";
 import { check, foreignKey, index, integer, jsonb, pgTable, text, unique, uuid } from "drizzle-orm/pg-core";
+import type { Criterion } from "@/control/design/criteria";
 import type { PlantModel } from "@/control/plant/model";
 import type { PlantContent } from "@/lib/schemas/plant";
 import { authorOf } from "./author";
@@ -15,6 +16,8 @@ export const plants = pgTable(
       .references(() => teams.id),
     name: text("name").notNull(),
     currentRevision: integer("current_revision").notNull().default(1),
+    /** Of the plant, not of a revision: a limit that is drawn tighter holds for every design there is. */
+    criteria: jsonb("criteria").$type<Criterion[]>().notNull().default([]),
     ...kept(),
   },
   (table) => [
@@ -23,6 +26,7 @@ export const plants = pgTable(
     index("plants_by_update").on(table.teamId, table.updatedAt, table.id),
     index("plants_by_name").on(table.teamId, table.name, table.id),
     check("plants_name_length", sql`length(${table.name}) between 1 and 120`),
+    check("plants_criteria_list", sql`jsonb_typeof(${table.criteria}) = 'array'`),
     check("plants_version", sql`${table.version} >= 1 and ${table.currentRevision} >= 1`),
   ],
 );

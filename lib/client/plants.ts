@@ -1,7 +1,9 @@
+import type { Criteria } from "../schemas/criteria";
 import type { ChecksReply } from "../schemas/evidence";
 import type {
   AddPlantRevision,
   CreatePlant,
+  Plant,
   PlantContent,
   PlantDifference,
   PlantQuery,
@@ -27,7 +29,7 @@ export const plantKeys = {
 export const fetchPlants = async (query: Partial<PlantQuery>, signal?: AbortSignal) =>
   (await request<Page<PlantSummary>>("/api/v1/plants", { query, signal })).data;
 export const fetchPlant = async (plantId: string, signal?: AbortSignal) =>
-  (await request<PlantSummary>(plantPath(plantId), { signal })).data;
+  (await request<Plant>(plantPath(plantId), { signal })).data;
 export const fetchPlantRevisions = async (plantId: string, query: { cursor?: string }, signal?: AbortSignal) =>
   (await request<Page<PlantRevisionEntry>>(`${plantPath(plantId)}/revisions`, { query, signal })).data;
 export const fetchPlantRevision = async (plantId: string, revisionId: string, signal?: AbortSignal) =>
@@ -43,14 +45,16 @@ export const checkContent = async (content: PlantContent, signal?: AbortSignal) 
 
 /** `key`: the same again when the same create is sent again, so that a repeated click makes one plant. */
 export const createPlant = async (body: CreatePlant, key = newKey()) =>
-  (await request<PlantSummary>("/api/v1/plants", { method: "POST", body, key })).data;
+  (await request<Plant>("/api/v1/plants", { method: "POST", body, key })).data;
 export const duplicatePlant = async (plantId: string, body: { name: string; revisionId?: string }, key = newKey()) =>
-  (await request<PlantSummary>(`${plantPath(plantId)}/duplicate`, { method: "POST", body, key })).data;
+  (await request<Plant>(`${plantPath(plantId)}/duplicate`, { method: "POST", body, key })).data;
 
 /** Each change carries the version it started from. */
 export const renamePlant = async (plantId: string, version: number, name: string) =>
-  (await request<PlantSummary>(plantPath(plantId), { method: "PATCH", body: { name }, version })).data;
+  (await request<Plant>(plantPath(plantId), { method: "PATCH", body: { name }, version })).data;
 export const archivePlant = async (plantId: string, version: number, archived: boolean) =>
-  (await request<PlantSummary>(`${plantPath(plantId)}/archive`, { method: "POST", body: { archived }, version })).data;
+  (await request<Plant>(`${plantPath(plantId)}/archive`, { method: "POST", body: { archived }, version })).data;
+export const setCriteria = async (plantId: string, version: number, criteria: Criteria) =>
+  (await request<Plant>(`${plantPath(plantId)}/criteria`, { method: "PUT", body: { criteria }, version })).data;
 export const addPlantRevision = async (plantId: string, version: number, body: AddPlantRevision) =>
-  (await request<PlantSummary>(`${plantPath(plantId)}/revisions`, { method: "POST", body, version })).data;
+  (await request<Plant>(`${plantPath(plantId)}/revisions`, { method: "POST", body, version })).data;

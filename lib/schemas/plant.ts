@@ -17,6 +17,7 @@ import {
   Unit,
   Version,
 } from "./common";
+import { Criteria } from "./criteria";
 
 export const TimeBase = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("continuous") }),
@@ -109,6 +110,10 @@ export const PlantSummary = z.strictObject({
   updatedAt: Timestamp,
 });
 export type PlantSummary = z.infer<typeof PlantSummary>;
+
+/** One plant by itself, with what its designs are held against. */
+export const Plant = PlantSummary.extend({ criteria: Criteria });
+export type Plant = z.infer<typeof Plant>;
 
 export const PlantRevision = z.strictObject({
   id: Id,

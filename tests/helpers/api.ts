@@ -52,6 +52,7 @@ export function apiOf(headers: Readonly<Record<string, string>>) {
     get: <T>(path: string) => taken<T>("GET", path),
     post: <T>(path: string, body: unknown, version?: number) => taken<T>("POST", path, { body, version }),
     patch: <T>(path: string, body: unknown, version?: number) => taken<T>("PATCH", path, { body, version }),
+    put: <T>(path: string, body: unknown, version?: number) => taken<T>("PUT", path, { body, version }),
     remove: <T>(path: string, version?: number) => taken<T>("DELETE", path, { version }),
   };
 }

@@ -98,6 +98,7 @@ const REQUESTS: Readonly<Record<string, Make>> = {
   "POST /api/v1/plants": body({ name: "New", content }),
   "PATCH /api/v1/plants/{plantId}": change("/api/v1/plants/{plantId}", { name: "Renamed" }),
   "POST /api/v1/plants/{plantId}/archive": change("/api/v1/plants/{plantId}", { archived: false }),
+  "PUT /api/v1/plants/{plantId}/criteria": change("/api/v1/plants/{plantId}", { criteria: [] }),
   "POST /api/v1/plants/{plantId}/designs": ({ ids }) => ({
     body: { name: "New", plantRevisionId: ids.revisionId, recipe },
   }),

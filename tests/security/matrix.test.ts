@@ -86,6 +86,7 @@ const TABLE: Readonly<Record<string, Readonly<Record<string, keyof typeof RULES>
   "/api/v1/plants": { GET: "reads own team", POST: "builds in own team" },
   "/api/v1/plants/{plantId}": { GET: "reads", PATCH: "builds" },
   "/api/v1/plants/{plantId}/archive": { POST: "builds" },
+  "/api/v1/plants/{plantId}/criteria": { PUT: "builds" },
   "/api/v1/plants/{plantId}/designs": { GET: "reads", POST: "builds" },
   "/api/v1/plants/{plantId}/difference": { GET: "reads" },
   "/api/v1/plants/{plantId}/duplicate": { POST: "builds" },

@@ -2,7 +2,7 @@ import "server-only";
 import { insertPlantRevision } from "@/db/queries/plant-revisions";
 import { advancePlantAt } from "@/db/queries/plants";
 import { allow } from "@/lib/permissions/allow";
-import type { AddPlantRevision, PlantSummary } from "@/lib/schemas/plant";
+import type { AddPlantRevision, Plant } from "@/lib/schemas/plant";
 import type { Context } from "../context";
 import { changePlantAt } from "./change-at-version";
 import { evaluateOrRefuse } from "./evaluate-or-refuse";
@@ -14,7 +14,7 @@ export async function addPlantRevision(
   version: number,
   { content, note }: AddPlantRevision,
   signal?: AbortSignal,
-): Promise<PlantSummary> {
+): Promise<Plant> {
   allow(ctx, "plant:write");
   const model = await evaluateOrRefuse(ctx, content, { signal });
   return changePlantAt(ctx, plantId, version, "plant.revised", async (tx, key) => {

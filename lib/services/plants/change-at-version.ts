@@ -3,10 +3,10 @@ import { type Db, inTransaction } from "@/db/client";
 import { findPlant, type PlantKey } from "@/db/queries/plants";
 import { NotFound, StaleVersion } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
-import type { PlantSummary } from "@/lib/schemas/plant";
+import type { Plant } from "@/lib/schemas/plant";
 import { recordEvent } from "../audit";
 import type { Context } from "../context";
-import { toPlantSummary } from "./to-plant";
+import { toPlant } from "./to-plant";
 
 type Saved = { readonly currentRevision: number } | undefined;
 
@@ -17,7 +17,7 @@ export async function changePlantAt(
   version: number,
   kind: string,
   write: (tx: Db, key: PlantKey) => Promise<Saved>,
-): Promise<PlantSummary> {
+): Promise<Plant> {
   allow(ctx, "plant:write");
   return inTransaction(ctx, async (tx) => {
     const key = { teamId: ctx.teamId, plantId };
@@ -26,6 +26,6 @@ export async function changePlantAt(
     if (!current) throw new NotFound("Plant");
     if (!saved) throw new StaleVersion(version, current.version);
     await recordEvent(tx, ctx, kind, { type: "plant", id: plantId, revision: saved.currentRevision });
-    return toPlantSummary(current);
+    return toPlant(current);
   });
 }

@@ -4,17 +4,17 @@ import { findPlantRevision } from "@/db/queries/plant-revisions";
 import { findPlant } from "@/db/queries/plants";
 import { NotFound } from "@/lib/errors";
 import { allow } from "@/lib/permissions/allow";
-import type { PlantSummary } from "@/lib/schemas/plant";
+import type { Plant } from "@/lib/schemas/plant";
 import type { Context } from "../context";
 import { insertWithFirstRevision } from "./create";
-import { toPlantSummary, toRevision } from "./to-plant";
+import { toPlant, toRevision } from "./to-plant";
 
-/** A plant of its own, starting from one revision (the newest when none is named). Designs stay with the original. */
+/** A plant of its own with the same criteria, starting from one revision (the newest when none is named). Designs stay with the original. */
 export async function duplicatePlant(
   ctx: Context,
   plantId: string,
   { name, revisionId }: { name: string; revisionId?: string },
-): Promise<PlantSummary> {
+): Promise<Plant> {
   allow(ctx, "plant:write");
   const { teamId } = ctx;
   return inTransaction(ctx, async (tx) => {
@@ -24,9 +24,9 @@ export async function duplicatePlant(
     if (!found || found.plantId !== plantId) throw new NotFound("Plant revision");
     const { content, model, number } = toRevision(found);
     const note = `From ${original.name}, revision ${number}`;
-    const made = await insertWithFirstRevision(tx, ctx, { name, content, model, note });
+    const made = await insertWithFirstRevision(tx, ctx, { name, content, model, note, criteria: original.criteria });
     const copy = await findPlant(tx, { teamId, plantId: made.plantId });
     if (!copy) throw new NotFound("Plant");
-    return toPlantSummary(copy);
+    return toPlant(copy);
   });
 }

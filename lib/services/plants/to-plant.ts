@@ -1,10 +1,10 @@
 import "server-only";
 import type { PlantRevisionEntryRow, PlantRevisionRow } from "@/db/queries/plant-revisions";
-import type { PlantRow } from "@/db/queries/plants";
-import type { PlantRevision, PlantRevisionEntry, PlantSummary } from "@/lib/schemas/plant";
+import type { PlantRow, PlantSummaryRow } from "@/db/queries/plants";
+import type { Plant, PlantRevision, PlantRevisionEntry, PlantSummary } from "@/lib/schemas/plant";
 
 /** Only the fields we mean to show. */
-export function toPlantSummary(row: PlantRow): PlantSummary {
+export function toPlantSummary(row: PlantSummaryRow): PlantSummary {
   return {
     id: row.id,
     name: row.name,
@@ -21,6 +21,8 @@ export function toPlantSummary(row: PlantRow): PlantSummary {
     updatedAt: row.updatedAt.toISOString(),
   };
 }
+
+export const toPlant = (row: PlantRow): Plant => ({ ...toPlantSummary(row), criteria: row.criteria });
 
 export function toRevisionEntry(row: PlantRevisionEntryRow): PlantRevisionEntry {
   const { id, plantId, plantName, number, note, createdBy } = row;

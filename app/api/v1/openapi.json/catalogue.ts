@@ -26,6 +26,7 @@ export const catalogue: RouteCatalogue = {
   "/api/v1/plants": () => import("../plants/route"),
   "/api/v1/plants/{plantId}": () => import("../plants/[plantId]/route"),
   "/api/v1/plants/{plantId}/archive": () => import("../plants/[plantId]/archive/route"),
+  "/api/v1/plants/{plantId}/criteria": () => import("../plants/[plantId]/criteria/route"),
   "/api/v1/plants/{plantId}/designs": () => import("../plants/[plantId]/designs/route"),
   "/api/v1/plants/{plantId}/difference": () => import("../plants/[plantId]/difference/route"),
   "/api/v1/plants/{plantId}/duplicate": () => import("../plants/[plantId]/duplicate/route"),

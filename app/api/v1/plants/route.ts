@@ -1,7 +1,7 @@
 import { route } from "@/lib/api/route";
 
 import { page } from "@/lib/schemas/common";
-import { CreatePlant, PlantQuery, PlantSummary } from "@/lib/schemas/plant";
+import { CreatePlant, Plant, PlantQuery, PlantSummary } from "@/lib/schemas/plant";
 import { createPlant } from "@/lib/services/plants/create";
 import { EXPRESSIONS_HERE } from "@/lib/services/plants/evaluate-or-refuse";
 import { listPlants } from "@/lib/services/plants/list";
@@ -15,7 +15,7 @@ export const POST = route(
   {
     summary: "Create a plant with its first revision",
     body: CreatePlant,
-    reply: PlantSummary,
+    reply: Plant,
     right: "plant:write",
     idempotent: true,
     inTurnAbove: EXPRESSIONS_HERE,

@@ -1,12 +1,12 @@
 import { route } from "@/lib/api/route";
 
 import { PlantAddress } from "@/lib/schemas/addresses";
-import { PlantSummary, RenamePlant } from "@/lib/schemas/plant";
+import { Plant, RenamePlant } from "@/lib/schemas/plant";
 import { readPlant } from "@/lib/services/plants/read";
 import { renamePlant } from "@/lib/services/plants/rename";
 
 export const GET = route(
-  { summary: "Read a plant", params: PlantAddress, reply: PlantSummary, right: "plant:read" },
+  { summary: "Read a plant", params: PlantAddress, reply: Plant, right: "plant:read" },
   async ({ ctx, params }) => {
     const plant = await readPlant(ctx, params.plantId);
     return { body: plant, version: plant.version };
@@ -18,7 +18,7 @@ export const PATCH = route(
     summary: "Rename a plant",
     params: PlantAddress,
     body: RenamePlant,
-    reply: PlantSummary,
+    reply: Plant,
     right: "plant:write",
     ifMatch: true,
   },

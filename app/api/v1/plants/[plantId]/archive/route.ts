@@ -1,7 +1,7 @@
 import { route } from "@/lib/api/route";
 
 import { PlantAddress } from "@/lib/schemas/addresses";
-import { ArchivePlant, PlantSummary } from "@/lib/schemas/plant";
+import { ArchivePlant, Plant } from "@/lib/schemas/plant";
 import { archivePlant } from "@/lib/services/plants/archive";
 
 export const POST = route(
@@ -9,7 +9,7 @@ export const POST = route(
     summary: "Archive a plant, or bring it back",
     params: PlantAddress,
     body: ArchivePlant,
-    reply: PlantSummary,
+    reply: Plant,
     right: "plant:write",
     ifMatch: true,
   },

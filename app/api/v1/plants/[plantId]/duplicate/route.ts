@@ -1,7 +1,7 @@
 import { route } from "@/lib/api/route";
 
 import { PlantAddress } from "@/lib/schemas/addresses";
-import { DuplicatePlant, PlantSummary } from "@/lib/schemas/plant";
+import { DuplicatePlant, Plant } from "@/lib/schemas/plant";
 import { duplicatePlant } from "@/lib/services/plants/duplicate";
 
 export const POST = route(
@@ -9,7 +9,7 @@ export const POST = route(
     summary: "Make a plant of its own from a revision of this one",
     params: PlantAddress,
     body: DuplicatePlant,
-    reply: PlantSummary,
+    reply: Plant,
     right: "plant:write",
     idempotent: true,
     status: 201,

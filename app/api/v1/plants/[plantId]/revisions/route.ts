@@ -2,7 +2,7 @@ import { route } from "@/lib/api/route";
 
 import { PlantAddress } from "@/lib/schemas/addresses";
 import { PageQuery, page } from "@/lib/schemas/common";
-import { AddPlantRevision, PlantRevisionEntry, PlantSummary } from "@/lib/schemas/plant";
+import { AddPlantRevision, Plant, PlantRevisionEntry } from "@/lib/schemas/plant";
 import { addPlantRevision } from "@/lib/services/plants/add-revision";
 import { EXPRESSIONS_HERE } from "@/lib/services/plants/evaluate-or-refuse";
 import { listPlantRevisions } from "@/lib/services/plants/list-revisions";
@@ -24,7 +24,7 @@ export const POST = route(
     summary: "Add a revision to a plant",
     params: PlantAddress,
     body: AddPlantRevision,
-    reply: PlantSummary,
+    reply: Plant,
     right: "plant:write",
     ifMatch: true,
     inTurnAbove: EXPRESSIONS_HERE,

@@ -1,0 +1,2 @@
+ALTER TABLE "plants" ADD COLUMN "criteria" jsonb DEFAULT '[]'::jsonb NOT NULL;--> statement-breakpoint
+ALTER TABLE "plants" ADD CONSTRAINT "plants_criteria_list" CHECK (jsonb_typeof("plants"."criteria") = 'array');
