@@ -4,8 +4,8 @@ import { powerOfTwo } from "../linalg/power-of-two";
 import { type BoundaryForm, boundaryForm } from "./boundary-form";
 import { levelFrequencies } from "./level-frequencies";
 import { innerPlaces } from "./partition";
-import { startPlaces } from "./peak-gain";
-import { climb, type Peak } from "./peak-search";
+import { climbAmong, startPlaces } from "./peak-gain";
+import type { Peak } from "./peak-search";
 import type { FrequencySystem } from "./prepare-frequency";
 import { evaluateOnBoundary, responseRoom } from "./response-at";
 import { type ScaledBound, scaledBound } from "./scaled-bound";
@@ -63,11 +63,7 @@ export function jointPeak(system: FrequencySystem): JointPeak {
     const here = boundAt(v);
     scale = here.scale;
     if (!(here.upper > level)) continue;
-    const above = Number.isFinite(next[1]) ? next[1] : 2 * v;
-    best =
-      v > next[0] && v < above
-        ? climb(valueAt, { at: v, value: here.upper }, next[0], above, SETTLED)
-        : { at: v, value: here.upper };
+    best = climbAmong(system, valueAt, { at: v, value: here.upper }, next, SETTLED);
     scale = boundAt(best.at).scale;
   }
   throw new NumericalError("no-convergence", { routine: "joint-peak", limit: MOST_ROUNDS });
@@ -97,10 +93,7 @@ function startPeak(system: FrequencySystem, valueAt: (v: number) => number): Pea
     const value = valueAt(at);
     if (value > best.value * (1 + SETTLED)) best = { at, value };
   }
-  if (best.at === 0 || !Number.isFinite(best.at)) return best;
-  const k = places.indexOf(best.at);
-  const above = places[k + 1] ?? Number.POSITIVE_INFINITY;
-  return climb(valueAt, best, places[k - 1] ?? best.at / 2, Number.isFinite(above) ? above : 2 * best.at, SETTLED);
+  return climbAmong(system, valueAt, best, places, SETTLED);
 }
 
 /** The parts of open intervals in which D G D⁻¹ is not shown to stay below the level. */

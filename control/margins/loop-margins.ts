@@ -5,7 +5,7 @@ import { frequencyOf } from "./response-at";
 import { type SensitivityPoint, sensitivityAt } from "./sensitivity-point";
 
 /** Why there is no margin to report: nothing of the kind makes the loop unstable. */
-export type NoMargin = "no-phase-crossover" | "no-gain-crossover" | "outside-every-disk";
+export type NoMargin = "no-phase-crossover" | "no-gain-crossover";
 
 /**
  * A margin with the frequency (rad/s; null: approached as frequency grows without bound) at which the loop would stand on
@@ -129,7 +129,7 @@ function least(found: readonly Found[], reason: NoMargin): Margin {
   return first ? { ...first, reason: null } : noMargin(reason);
 }
 
-export function noMargin(reason: NoMargin): Margin {
+function noMargin(reason: NoMargin): Margin {
   return { value: null, lower: null, upper: null, frequency: null, reason };
 }
 

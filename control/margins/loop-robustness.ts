@@ -27,7 +27,7 @@ export type LoopRobustness = {
  * Units     factors, rad, rad/s, seconds; period in seconds, null when continuous. Singular values in the signals' own units
  * Throws    not-stabilising { pole } when the closed loop does not decay; singular when it has no solution; shape-mismatch;
  *           not-finite; bad-option; too-large; no-convergence
- * Accuracy  peaks and each loop's disk 2^-30. Together: 2^-24, more where the bracket says so; `lower` is sure for any number of
+ * Accuracy  peaks and each loop's disk as `peakGain`. Together: 2^-24, more where the bracket says so; `lower` is sure for any number of
  *           loops, `upper` is a variation that was found. Up to three loops they meet, beyond they usually do
  * Source    Seiler, Packard & Gahinet, IEEE Control Systems Magazine 40 (2020) 78-95
  */

@@ -2,6 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { complexSingularValues, singularRoom } from "../linalg/complex-singular-values";
 import { eigenvalues } from "../linalg/eigenvalues";
+import { pythagoras } from "../linalg/flat";
 import { timesPowerOfTwo } from "../linalg/power-of-two";
 import { requireRepresentable } from "../linalg/require-representable";
 import type { Complex } from "../plant/model";
@@ -11,7 +12,7 @@ import { levelFrequencies } from "./level-frequencies";
 import { partition, rising } from "./partition";
 import { climb, type Peak } from "./peak-search";
 import { type FrequencySystem, prepareFrequency, requirePeriod } from "./prepare-frequency";
-import { evaluateOnBoundary, frequencyOf, responseRoom } from "./response-at";
+import { boundaryPoint, evaluateOnBoundary, frequencyOf, responseRoom } from "./response-at";
 
 /**
  * A largest value over all frequencies: attained within rounding at `frequency` (rad/s; null: approached as frequency grows
@@ -27,6 +28,8 @@ export type PeakValue = {
 /** The level that no gain may pass, above the largest one found. */
 const LEVEL = 1 + 2 ** -30;
 const MOST_ROUNDS = 40;
+/** The bracket is this many times wider than the scatter seen. */
+const SAFETY = 8;
 /** Below this, in the balanced system whose entries are about 1, a gain counts as none. */
 const NO_GAIN = 2 ** -900;
 
@@ -37,8 +40,9 @@ const NO_GAIN = 2 ** -900;
  * Units     value in those of y/u, in the 2-norm as they stand; period in seconds, null when continuous
  * Throws    not-stabilising { pole } for a pole that does not decay within its accuracy; shape-mismatch; not-finite; bad-option;
  *           too-large; no-convergence
- * Accuracy  upper = lower (1 + 2^-30); value is the gain at that frequency, c n ε of it unless the pole there is ill-conditioned.
- *           No frequency is taken for a crossing on the word of an eigenvalue alone: each is evaluated. At most 40 rounds
+ * Accuracy  lower..upper spans 2^-30 of the value, more where a pole is so near the boundary that rounding moves it: the
+ *           scatter of neighbouring evaluations is added to it. No frequency is taken for a crossing on the word of an
+ *           eigenvalue alone: each is evaluated. At most 40 rounds
  * Source    Boyd & Balakrishnan, Systems & Control Letters 15 (1990) 1-7; Bruinsma & Steinbuch, the same 14 (1990) 287-293
  */
 export function peakGain(given: System, period: number | null = null): PeakValue {
@@ -58,11 +62,22 @@ export function requireDecay(A: Matrix, period: number | null): void {
   if (lasting) throw new NumericalError("not-stabilising", { pole: lasting });
 }
 
-export function inOwnUnits({ size, period }: FrequencySystem, { at, value }: Peak): PeakValue {
+/** The peak with its bracket, which the scatter of the evaluation widens. */
+export function inOwnUnits(system: FrequencySystem, { at, value }: Peak): PeakValue {
+  const { size, period } = system;
+  const scatter = SAFETY * scatterAround(gainOnBoundary(system), { at, value });
   const found = timesPowerOfTwo(value, size);
-  const upper = timesPowerOfTwo(value * LEVEL, size);
+  const lower = timesPowerOfTwo(value * (1 - Math.min(scatter, 0.999)), size);
+  const upper = timesPowerOfTwo(value * (LEVEL + scatter), size);
   requireRepresentable("gain", [found, upper]);
-  return { value: found, lower: found, upper, frequency: frequencyOf(at, period) };
+  return { value: found, lower, upper, frequency: frequencyOf(at, period) };
+}
+
+/** How far, relatively, the gain is apart at the next few numbers: near a pole, rounding moves it more than frequency does. */
+function scatterAround(valueAt: (v: number) => number, { at, value }: Peak): number {
+  if (at === 0 || !Number.isFinite(at) || !(value > 0)) return 0;
+  const apart = [-3, -1, 1, 3].map((steps) => Math.abs(valueAt(at * (1 + steps * Number.EPSILON)) / value - 1));
+  return Math.max(...apart.filter(Number.isFinite), 0);
 }
 
 /** The peak in units of 2^size, at a coordinate of the boundary; of equal gains one at infinite frequency, else at the lowest. */
@@ -72,7 +87,7 @@ export function largestOnBoundary(system: FrequencySystem): Peak {
   const places = startPlaces(system);
   let best = bestOf(valueAt, [Number.POSITIVE_INFINITY, ...places]);
   if (best.value === 0) best = bestOf(valueAt, morePlaces(system));
-  best = climbAmong(valueAt, best, places);
+  best = climbAmong(system, valueAt, best, places);
   if (best.value <= NO_GAIN) return best;
   const form = boundaryForm(system);
   for (let round = 0; round < MOST_ROUNDS; round++) {
@@ -80,7 +95,7 @@ export function largestOnBoundary(system: FrequencySystem): Peak {
     const inspected = partition(levelFrequencies(form, best.value * LEVEL));
     const top = bestOf(valueAt, inspected);
     if (!(top.value > best.value * LEVEL)) return best;
-    best = climbAmong(valueAt, top, inspected);
+    best = climbAmong(system, valueAt, top, inspected);
   }
   throw new NumericalError("no-convergence", { routine: "peak-gain", limit: MOST_ROUNDS });
 }
@@ -104,12 +119,33 @@ function bestOf(valueAt: (v: number) => number, places: readonly number[]): Peak
   return best;
 }
 
-/** Places between two neighbours of a rising list, or beyond its ends, are where a peak can still rise. */
-function climbAmong(valueAt: (v: number) => number, start: Peak, places: readonly number[]): Peak {
-  if (start.at === 0 || !Number.isFinite(start.at) || !(start.value > 0) || !Number.isFinite(start.value)) return start;
-  const k = places.indexOf(start.at);
-  const above = places[k + 1] ?? Number.POSITIVE_INFINITY;
-  return climb(valueAt, start, places[k - 1] ?? start.at / 2, Number.isFinite(above) ? above : 2 * start.at);
+/**
+ * Climbs from a place between its neighbours in a rising list, and no further than the nearest pole is away: within that
+ * distance the response varies smoothly, however light its damping.
+ */
+export function climbAmong(
+  system: FrequencySystem,
+  valueAt: (v: number) => number,
+  start: Peak,
+  places: readonly number[],
+  settled?: number,
+): Peak {
+  const { at, value } = start;
+  if (at === 0 || !Number.isFinite(at) || !(value > 0) || !Number.isFinite(value)) return start;
+  const reach = nearestPole(system, at);
+  const below = Math.max(...places.filter((place) => place < at), at - reach, 0);
+  const above = Math.min(...places.filter((place) => place > at), at + reach, 2 * at);
+  return climb(valueAt, start, below, above, settled);
+}
+
+/** Distance to the nearest pole from a place on the boundary, in units of its coordinate. */
+function nearestPole({ poles, period }: FrequencySystem, v: number): number {
+  const s = boundaryPoint(v, period) ?? { re: 0, im: v };
+  const nearest = poles.reduce(
+    (least, pole) => Math.min(least, pythagoras(s.re - pole.re, s.im - pole.im)),
+    Number.POSITIVE_INFINITY,
+  );
+  return period === null ? nearest : (nearest * (1 + v * v)) / 2;
 }
 
 /** Rest, infinity, and what the poles suggest: where they are nearest the boundary and as far from the origin. */

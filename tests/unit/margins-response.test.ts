@@ -265,3 +265,36 @@ test("a variation that is shown meets the scaled bound for two and three channel
     expect(shown / upper).toBeGreaterThan(k <= 3 ? 0.999999 : 0.9);
   }
 });
+
+test("next to the boundary the bracket of a peak is wide enough for what rounding does there", () => {
+  // A slow light pole beside a fast one: rounding of the size of the fast one moves the slow pole by 1e-6 of its damping.
+  const slow = 2 ** -9;
+  const damping = 1e-7 * slow;
+  const turn = (A: Rows): Rows => {
+    const T = new Matrix([
+      [1, 0.25, 0, 0.5],
+      [0, 1, 0.25, 0],
+      [0, 0, 1, 0.25],
+      [0, 0, 0, 1],
+    ]);
+    const back = new Matrix([
+      [1, -0.25, 0.0625, -0.515625],
+      [0, 1, -0.25, 0.0625],
+      [0, 0, 1, -0.25],
+      [0, 0, 0, 1],
+    ]);
+    return T.mmul(new Matrix(A.map((row) => [...row])))
+      .mmul(back)
+      .to2DArray();
+  };
+  const A = turn([
+    [-damping, slow, 0, 0],
+    [-slow, -damping, 0, 0],
+    [0, 0, -1, 32],
+    [0, 0, -32, -1],
+  ]);
+  const { lower, value, upper } = peakGain(system(A, [[1], [0], [0], [0]], [[1, -0.25, 0.0625, -0.515625]], [[0]]));
+  expect(lower).toBeLessThanOrEqual(value);
+  expect(upper).toBeGreaterThanOrEqual(1 / (2 * damping));
+  expect(value * 2 * damping).toBeCloseTo(1, 4);
+});
