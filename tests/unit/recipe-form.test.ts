@@ -248,3 +248,17 @@ describe("what differs between two recipes", () => {
     }
   });
 });
+
+test("dependent eigenvectors are allowed by name only, and go with their list of poles", () => {
+  const allowed: Recipe = {
+    ...poles,
+    allowDefective: true,
+    observer: { kind: "reduced", poles: [{ kind: "pair", re: -80, im: 40 }], allowDefective: true },
+  };
+  expect(readForm(formOf(allowed, model), model).recipe).toEqual(allowed);
+  expect(readForm(formOf(poles, model), model).recipe).toEqual(poles);
+  const { allowDefective: _, ...older } = formOf(allowed, model);
+  expect(readForm(older, model).recipe).toEqual(poles);
+  const said = recipeLines(allowed, model).filter(({ label }) => label === "dependent eigenvectors");
+  expect(said.map(({ section }) => section)).toEqual(["Wanted poles", "Observer"]);
+});

@@ -27,8 +27,8 @@ const inMatrices = (deviations: typeof form) => {
 
 describe("a sweep", () => {
   test("has the recipe as it stands in its middle, and a decade to either side", () => {
-    expect(SWEEP_FACTORS).toHaveLength(21);
-    expect(SWEEP_FACTORS[10]).toBe(1);
+    expect(SWEEP_FACTORS).toHaveLength(11);
+    expect(SWEEP_FACTORS[5]).toBe(1);
     expect(SWEEP_FACTORS[0]).toBeCloseTo(0.1, 12);
     expect(SWEEP_FACTORS.at(-1)).toBeCloseTo(10, 12);
     expect(sweptForm(form, { of: "effort" }, 1)).toBe(form);

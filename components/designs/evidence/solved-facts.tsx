@@ -3,9 +3,11 @@ import { TypesetNumber } from "../../ui/typeset-number";
 import { methodText } from "./evidence-words";
 import type { GainsReply, ObserverReply } from "./figures-reply";
 
+const FOUR_DIGITS = 1e-4;
+
 /** How the gain was found and how far it can be trusted. */
 export function SolvedFacts({ gains }: Readonly<{ gains: GainsReply }>) {
-  const { method, residual, bound, errorBound, poleError, eigenvectorCondition } = gains;
+  const { method, residual, bound, errorBound, poleError, eigenvectorCondition, gainNorm, poleShiftPerGainDigit } = gains;
   return (
     <div className="text-table">
       <p>{methodText(method)}.</p>
@@ -30,6 +32,18 @@ export function SolvedFacts({ gains }: Readonly<{ gains: GainsReply }>) {
             </>
           )}
         </li>
+        {gainNorm === undefined ? null : (
+          <li>
+            Size of K <TypesetNumber value={gainNorm} digits={3} />: of all gains with these poles, one whose eigenvectors are as
+            independent as could be found
+          </li>
+        )}
+        {poleShiftPerGainDigit ? (
+          <li>
+            K kept to four digits moves a pole by up to <TypesetNumber value={FOUR_DIGITS * poleShiftPerGainDigit} digits={2} />{" "}
+            of its size
+          </li>
+        ) : null}
       </ul>
     </div>
   );

@@ -7,6 +7,7 @@ import { Button } from "../../ui/button";
 import { parseNumber } from "../../ui/parse-number";
 import { RadioGroup } from "../../ui/radio-group";
 import { noiseUnit } from "../unit-text";
+import { DefectiveChoice } from "./defective-choice";
 import { entryOf, type PoleDraft } from "./pole-drafts";
 import { PoleList } from "./pole-list";
 import { ReasonField } from "./reason-field";
@@ -43,7 +44,12 @@ export function ObserverFields({ loopPoles }: Readonly<{ loopPoles: readonly Com
         choices={CHOICES.map((choice) => ({ ...choice, disabled: !measured && choice.value !== "none" }))}
       />
       {kind === "noise" ? <NoiseFields /> : null}
-      {kind === "poles" || kind === "reduced" ? <ObserverPoles kind={kind} loopPoles={loopPoles} /> : null}
+      {kind === "poles" || kind === "reduced" ? (
+        <>
+          <ObserverPoles kind={kind} loopPoles={loopPoles} />
+          <DefectiveChoice of="observer" held="outputs" />
+        </>
+      ) : null}
       {kind === "none" ? null : <ReasonField of="observer" about="the observer" />}
     </div>
   );

@@ -2,6 +2,7 @@
 
 import type { Complex } from "@/control/plant/model";
 import { Button } from "../../ui/button";
+import { DefectiveChoice } from "./defective-choice";
 import { PoleList } from "./pole-list";
 import { PrototypeFields } from "./prototype-fields";
 import { ReasonField } from "./reason-field";
@@ -38,6 +39,7 @@ export function PolesFields({ loopPoles }: Readonly<{ loopPoles: readonly Comple
           ) : null
         }
       />
+      <DefectiveChoice of="loop" held="inputs" />
       <PrototypeFields />
       <ReasonField of="poles" about="the poles" />
     </div>

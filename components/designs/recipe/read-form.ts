@@ -25,12 +25,18 @@ class Reader {
   recipe(form: RecipeForm): Recipe {
     const base = {
       version: 1 as const,
-      observer: this.observer(form.observer),
+      observer: this.observer(form.observer, form.allowDefective?.observer ?? false),
       reference: { kind: form.reference },
       test: this.test(form.test),
       reasons: writtenReasons(form.reasons),
     };
-    if (form.method === "poles") return { ...base, method: "poles", poles: this.poles("/poles", form.poles) };
+    if (form.method === "poles")
+      return {
+        ...base,
+        method: "poles",
+        poles: this.poles("/poles", form.poles),
+        ...defective(form.allowDefective?.loop ?? false),
+      };
     return {
       ...base,
       method: "weights",
@@ -103,11 +109,11 @@ class Reader {
     });
   }
 
-  private observer({ kind, poles, reduced, process, measurement }: RecipeForm["observer"]): ObserverRecipe {
+  private observer({ kind, poles, reduced, process, measurement }: RecipeForm["observer"], allowed: boolean): ObserverRecipe {
     const { states, outputs } = this.model;
     if (kind === "none") return { kind };
-    if (kind === "poles") return { kind, poles: this.poles("/observer/poles", poles) };
-    if (kind === "reduced") return { kind, poles: this.poles("/observer/poles", reduced) };
+    if (kind === "poles") return { kind, poles: this.poles("/observer/poles", poles), ...defective(allowed) };
+    if (kind === "reduced") return { kind, poles: this.poles("/observer/poles", reduced), ...defective(allowed) };
     return {
       kind,
       process: this.matrix("/observer/process", process, states, states),
@@ -125,6 +131,8 @@ class Reader {
     };
   }
 }
+
+const defective = (allowed: boolean): { allowDefective?: true } => (allowed ? { allowDefective: true } : {});
 
 const writtenReasons = (reasons: RecipeForm["reasons"]) =>
   Object.fromEntries(Object.entries(reasons).flatMap(([key, text]) => (text.trim() === "" ? [] : [[key, text.trim()]])));

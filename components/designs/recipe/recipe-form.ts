@@ -23,6 +23,8 @@ export type RecipeForm = {
   readonly cross: Entries | null;
   readonly degreeOfStability: number | null;
   readonly poles: readonly PoleDraft[];
+  /** Repeated poles beyond what independent eigenvectors can hold apart, of the loop and of the observer. */
+  readonly allowDefective?: { readonly loop: boolean; readonly observer: boolean };
   readonly observer: {
     readonly kind: ObserverRecipe["kind"];
     readonly poles: readonly PoleDraft[];
@@ -86,6 +88,10 @@ export function formOf(recipe: Recipe, model: PlantModel): RecipeForm {
     cross: recipe.method === "weights" && recipe.crossWeight ? asEntries(recipe.crossWeight) : null,
     degreeOfStability: recipe.method === "weights" ? recipe.degreeOfStability : null,
     poles: recipe.method === "poles" ? draftsOf(recipe.poles) : [],
+    allowDefective: {
+      loop: recipe.method === "poles" && recipe.allowDefective === true,
+      observer: (observer.kind === "poles" || observer.kind === "reduced") && observer.allowDefective === true,
+    },
     observer: {
       kind: observer.kind,
       poles: observer.kind === "poles" ? draftsOf(observer.poles) : [],

@@ -118,7 +118,7 @@ function methodLines(recipe: Recipe, model: PlantModel, asMatrices: boolean): Re
         ...poleEntry(entry, model.timeBase),
       }),
     );
-    return [method, ...poles];
+    return [method, ...poles, ...defectiveLines("Wanted poles", recipe)];
   }
   const { degreeOfStability: degree, crossWeight } = recipe;
   const stability: RecipeLine = {
@@ -161,7 +161,13 @@ function observerLines({ observer }: Recipe, { states, outputs, timeBase }: Plan
       ...poleEntry(entry, timeBase),
     }),
   );
-  return [kind, ...poles];
+  return [kind, ...poles, ...defectiveLines(section, observer)];
+}
+
+/** Said only where it was asked for. */
+function defectiveLines(section: RecipeLine["section"], { allowDefective }: { readonly allowDefective?: true }): RecipeLine[] {
+  if (!allowDefective) return [];
+  return [{ section, key: `${section} defective`, label: "dependent eigenvectors", text: "allowed", exact: "true" }];
 }
 
 function testLines({ reference, test }: Recipe, { states, inputs }: PlantModel): RecipeLine[] {

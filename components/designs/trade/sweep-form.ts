@@ -4,8 +4,8 @@ import type { Entries, RecipeForm } from "../recipe/recipe-form";
 /** What a sweep turns: the cost of all control together, or one weight. */
 export type Swept = { readonly of: "effort" } | { readonly of: "state" | "input"; readonly index: number };
 
-const STEPS_TO_A_SIDE = 10;
-const STEPS_PER_DECADE = 10;
+const STEPS_TO_A_SIDE = 5;
+const STEPS_PER_DECADE = 5;
 const DIGITS = 3;
 
 /** Factors on the accepted figure, the same ratio from one to the next; the recipe as it stands is in the middle. */

@@ -11,7 +11,7 @@ type TradePictureProps = Readonly<{
   onChoose: (place: number) => void;
 }>;
 
-const FRAME = { width: 480, height: 240, left: 12, right: 12, top: 16, bottom: 20 } as const;
+const FRAME = { width: 480, height: 300, left: 12, right: 12, top: 16, bottom: 20 } as const;
 
 type Scale = { readonly low: number; readonly high: number; readonly at: (value: number) => number };
 
