@@ -38,7 +38,7 @@ export type Arranged = {
 function labels(revisions: readonly DesignRevision[]): string[] {
   const names = revisions.map(({ designName }) => designName);
   return revisions.map(({ designName, number }) =>
-    names.filter((name) => name === designName).length > 1 ? `${designName}, revision ${number}` : designName,
+    names.filter((name) => name === designName).length > 1 ? `${designName} revision ${number}` : designName,
   );
 }
 

@@ -25,11 +25,19 @@ export type ComparisonSource = {
 };
 
 type OwnLine = Omit<ComparedLine, "cells"> & { readonly cell: Cell };
-const keyOf = ({ section, item, figure, unit }: OwnLine) => JSON.stringify([section, item, figure, unit]);
+const aboutOf = ({ section, item, figure }: OwnLine) => JSON.stringify([section, item, figure]);
+const keyOf = (line: OwnLine) => `${aboutOf(line)} ${line.unit}`;
+
+/** A word in place of a number, such as "not weighted", stands in the line of the numbers. */
+function besideNumbers(designs: readonly (readonly OwnLine[])[]): OwnLine[][] {
+  const measured = designs.flatMap((lines) => lines.filter(({ unit }) => unit !== ""));
+  const units = new Map(measured.map((line) => [aboutOf(line), line.unit]));
+  return designs.map((lines) => lines.map((line) => (line.unit ? line : { ...line, unit: units.get(aboutOf(line)) ?? "" })));
+}
 
 /** Lines of several designs about the same thing, in the same unit, as one. */
 function aligned(designs: readonly (readonly OwnLine[])[]): ComparedLine[] {
-  const own = designs.map((lines) => new Map(lines.map((line) => [keyOf(line), line])));
+  const own = besideNumbers(designs).map((lines) => new Map(lines.map((line) => [keyOf(line), line])));
   const keys = mergeOrder(own.map((lines) => [...lines.keys()]));
   const sections = mergeOrder(designs.map((lines) => [...new Set(lines.map(({ section }) => section))]));
   const rows = keys.map((key): ComparedLine => {

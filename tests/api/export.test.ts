@@ -7,6 +7,7 @@ import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
 import type { PlantSummary } from "@/lib/schemas/plant";
 import { type Api, member } from "../helpers/api";
 import { problemIn } from "../helpers/call-route";
+import { cellsOf } from "../helpers/csv-records";
 import { twoCarriages } from "../helpers/plant-content";
 import { byPoles, byWeights, observers } from "../helpers/recipes";
 import { testDatabase } from "../helpers/test-database";
@@ -28,15 +29,6 @@ async function stored(
 }
 const file = (api: Api, { id }: DesignRevision, query = "") => api.ask("GET", `/api/v1/design-revisions/${id}/gains${query}`);
 
-/** RFC 4180, as a spreadsheet reads it. */
-function cellsOf(text: string): string[][] {
-  const records: string[][] = [[]];
-  for (const [, quoted, plain, end] of text.matchAll(/(?:"((?:[^"]|"")*)"|([^",\r\n]*))(,|\r\n)/g)) {
-    records.at(-1)?.push(quoted?.replaceAll('""', '"') ?? plain);
-    if (end === "\r\n") records.push([]);
-  }
-  return records;
-}
 /** The entries below the head line that begins with this symbol, with the names and units along both edges. */
 function matrixIn(records: string[][], symbol: string, rows: number) {
   const head = records.findIndex(([first]) => first === symbol);

@@ -82,6 +82,8 @@ beforeAll(async () => {
     `/design-revisions/${revisions[0]}`,
     `/design-revisions/${revisions[0]}/responses`,
     `/design-revisions/${revisions[0]}/gains`,
+    `/plants/${plantId}/side-by-side?designs=${revisions.join(",")}`,
+    `/plants/${plantId}/drafts/${made[0].id}`,
     "/comparisons",
     `/comparisons/${comparisonId}`,
     "/templates",
@@ -103,6 +105,18 @@ test("a read of a list or of one thing sends at most five statements, who asks a
     });
     expect(sent.length, `${path}:\n${sent.join("\n")}`).toBeLessThanOrEqual(5);
     expect(sent.length, path).toBeGreaterThanOrEqual(3);
+  }
+});
+
+test("keeping a draft, again and again, sends at most five statements", async () => {
+  const path = `/api/v1/plants/${plantId}/drafts/${plantId}`;
+  const { currentRevision } = await api.get<PlantSummary>(`/api/v1/plants/${plantId}`);
+  let replaces: string[] = [];
+  for (const form of [{ step: 1 }, { step: 2 }]) {
+    const body = { mark: randomUUID(), replaces, plantRevisionId: currentRevision.id, base: null, form };
+    const sent = await statementsOf(() => api.put(path, body));
+    expect(sent.length, sent.join("\n")).toBeLessThanOrEqual(5);
+    replaces = [body.mark];
   }
 });
 

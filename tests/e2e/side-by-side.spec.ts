@@ -1,8 +1,9 @@
 import { randomUUID } from "node:crypto";
 import type { Page } from "@playwright/test";
 import type { DesignSummary } from "@/lib/schemas/design";
-import { signUpAs } from "../helpers/browser-requests";
-import { openDesign, part, press, shownMatrix, storedDesign } from "../helpers/design-page";
+import { signUpAs, told } from "../helpers/browser-requests";
+import { cellsOf } from "../helpers/csv-records";
+import { newestRevision, openDesign, part, press, shownMatrix, storedDesign } from "../helpers/design-page";
 import { untilTakenOver } from "../helpers/matrix-page";
 import { byPoles, byWeights, observers } from "../helpers/recipes";
 import { expect, storedPlant, test } from "../helpers/team-test";
@@ -71,6 +72,115 @@ test("designs are chosen from the table and compared, what differs said in words
   await page.reload();
   await expect(page.getByRole("checkbox", { name: "Hide equal rows" })).toBeChecked();
   await expect(row(page, "x1").first()).toBeVisible();
+});
+
+const heads = (page: Page) => table(page).getByRole("columnheader").getByRole("link");
+
+/** The names of the designs, the one that settles first foremost, as their stored figures say. */
+async function bySettling(request: Request, designs: readonly DesignSummary[]): Promise<string[]> {
+  const timed = [];
+  for (const { id, name } of designs) {
+    const { responses } = (await newestRevision(request, id)).evidence;
+    if (responses.state !== "computed") throw new Error(`the responses of ${name} were refused`);
+    timed.push({ name, settling: Number(responses.value.summary.fullState.worstSettling) });
+  }
+  return timed.sort((a, b) => a.settling - b.settling).map(({ name }) => name);
+}
+
+test("a figure that is pressed puts the designs in order of it: in the address, after a reload, in words, and back again", async ({
+  page,
+  team,
+}) => {
+  const { plant, designs } = await threeDesigns(team.lead.request);
+  const order = await bySettling(team.lead.request, designs);
+  await open(page, address(plant.id, designs), "Three");
+  await expect(heads(page)).toHaveText(["Stiff", "Calm", "Placed"]);
+  await expect(page.getByRole("status").filter({ hasText: "In the order chosen; Stiff is what the others" })).toBeVisible();
+  const figure = table(page).getByRole("rowheader", { name: "settling, 2 %", exact: true }).first();
+  await expect(figure).toHaveAttribute("aria-sort", "none");
+  await figure.getByRole("button").click();
+  await expect(page).toHaveURL(/[?&]sort=full-state(\+|%20)settling(&|$)/);
+  await expect(heads(page)).toHaveText(order);
+  await expect(figure).toHaveAttribute("aria-sort", "ascending");
+  const said = page.getByRole("status").filter({ hasText: /^Sorted by/ });
+  await expect(said).toHaveText(`Sorted by settling, 2 %, with the full state, least first: ${order.join(", ")}.`);
+  await expect(table(page).getByRole("row").filter({ has: figure }).getByRole("cell").first()).toContainText("best");
+
+  await figure.getByRole("button").press("Enter");
+  await expect(page).toHaveURL(/[?&]order=most(&|$)/);
+  const turned = order.toReversed();
+  await expect(heads(page)).toHaveText(turned);
+  await page.reload();
+  await expect(heads(page)).toHaveText(turned);
+  await expect(said).toHaveText(`Sorted by settling, 2 %, with the full state, most first: ${turned.join(", ")}.`);
+  const bought = part(page, "What each trade bought").getByRole("listitem");
+  await expect(bought).toHaveCount(2);
+  for (const name of turned.slice(1)) await expect(bought.filter({ hasText: name })).toContainText(turned[0]);
+
+  await untilTakenOver(page);
+  await press(page, "Back to the order chosen");
+  await expect(heads(page)).toHaveText(["Stiff", "Calm", "Placed"]);
+  await expect(page).not.toHaveURL(/[?&](sort|order)=/);
+});
+
+test("revisions of one design are chosen beside or instead of the newest, left out again, and laid side by side", async ({
+  page,
+  team,
+}) => {
+  const { request } = team.lead;
+  const plant = await storedPlant(request);
+  const first = await storedDesign(request, plant, { name: "Stiff" });
+  const calm = { form: "deviations", states: [0.002, 0.001, 0.05, 0.05], inputs: [40, 40] } as const;
+  await told(request, `/api/v1/designs/${first.id}/revisions`, {
+    version: first.version,
+    data: { plantRevisionId: plant.currentRevision.id, recipe: byWeights({ weights: calm }), note: "Twice the deviation" },
+  });
+  await page.goto(`/plants/${plant.id}/side-by-side`);
+  await untilTakenOver(page);
+  const earlier = page.getByRole("button", { name: "Earlier revisions of Stiff" });
+  await earlier.click();
+  await expect(earlier).toHaveAttribute("aria-expanded", "true");
+  const old = page.getByRole("checkbox", { name: "Lay revision 1 of Stiff side by side" });
+  await old.check();
+  await page.getByRole("checkbox", { name: "Lay Stiff side by side" }).check();
+  const chosen = page.getByRole("list", { name: "Chosen, in order" }).getByRole("listitem");
+  await expect(chosen).toHaveText([/^1\. Stiff, revision 1/, /^2\. Stiff, revision 2/]);
+  await press(page, "Leave out Stiff, revision 1");
+  await expect(old).not.toBeChecked();
+  await expect(page.getByText("1 chosen, one more is needed.")).toBeVisible();
+  await old.check();
+  await expect(chosen).toHaveText([/^1\. Stiff, revision 2/, /^2\. Stiff, revision 1/]);
+  await press(page, "Lay side by side");
+  await expect(page.getByRole("heading", { level: 1, name: "Two revisions of Stiff, side by side" })).toBeVisible();
+  await expect(table(page).getByRole("columnheader")).toHaveText([/^Stiff ?revision 2,/, /^Stiff ?revision 1,/]);
+  await expect(row(page, "x1").first().getByRole("cell")).toHaveText(["0.002 m", "differs from the first: 0.001 m"]);
+  const bought = part(page, "What each trade bought").getByRole("listitem");
+  await expect(bought).toHaveText(/^Against Stiff revision 2, Stiff revision 1 .+\.$/);
+  await page.getByRole("link", { name: "Choose designs" }).click();
+  await expect(chosen).toHaveText([/^1\. Stiff, revision 2/, /^2\. Stiff, revision 1/]);
+});
+
+test("the comparison is downloaded as a table with every fact, the words and the cautions", async ({ page, team }) => {
+  const { plant, designs } = await threeDesigns(team.lead.request);
+  await open(page, address(plant.id, designs), "Three");
+  const [file] = await Promise.all([
+    page.waitForEvent("download"),
+    page.getByRole("link", { name: "Download CSV", exact: true }).click(),
+  ]);
+  expect(file.suggestedFilename()).toBe(`${plant.name} side by side.csv`);
+  const chunks: Buffer[] = [];
+  for await (const chunk of await file.createReadStream()) chunks.push(chunk as Buffer);
+  const records = cellsOf(Buffer.concat(chunks).toString("utf8"));
+  expect(records[0]).toEqual(["section", "item", "figure", "unit", "Stiff", "Calm", "Placed", "best", "worst"]);
+  const accepted = records.find(([section, item]) => section === "Largest deviation accepted" && item === "x1");
+  expect(accepted?.slice(3, 7)).toEqual(["m", "0.001", "0.002", ""]);
+  const stored = (await newestRevision(team.lead.request, designs[2].id)).evidence.gains;
+  if (stored.state !== "computed") throw new Error("the gains were refused");
+  const entries = records.filter(([section]) => section === "K, state feedback").map((record) => Number(record[6]));
+  expect(entries).toEqual(stored.value.K.flat());
+  const words = records.find(([section]) => section === "What each trade bought");
+  expect(words?.[5]).toMatch(/^(Against Stiff, Calm|Calm and Stiff) /);
+  expect(records.filter(([section]) => section === "Caution")).toHaveLength(3);
 });
 
 test("gains stand side by side as stored, or minus the first's, with the cautions", async ({ page, team }) => {
@@ -203,4 +313,8 @@ test("on paper the comparison has its facts and cautions and nothing to press", 
     await expect(left, role).toHaveCount(0);
   }
   await expect(page.getByRole("navigation", { name: "Main" })).toBeHidden();
+  await expect(page.getByRole("link", { name: "Download CSV" })).toBeHidden();
+  // What orders the designs on screen is a plain word on paper.
+  await expect(table(page).getByRole("rowheader", { name: "settling, 2 %", exact: true }).first()).toBeVisible();
+  await expect(part(page, "What each trade bought").getByRole("listitem")).toHaveCount(1);
 });

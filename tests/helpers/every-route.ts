@@ -105,6 +105,7 @@ const REQUESTS: Readonly<Record<string, Make>> = {
   "GET /api/v1/plants/{plantId}/difference": ({ ids }) => ({ query: `?from=${ids.revisionId}&to=${ids.revisionId}` }),
   "POST /api/v1/plants/{plantId}/duplicate": body({ name: "Copy" }),
   "POST /api/v1/plants/{plantId}/revisions": change("/api/v1/plants/{plantId}", { content }),
+  "GET /api/v1/plants/{plantId}/side-by-side": ({ designRevisionIds }) => ({ query: `?designs=${designRevisionIds.join(",")}` }),
   "POST /api/v1/sign-up": () => ({ body: { name: "New", email: newEmail(), password: PASSWORD, teamName: "New team" } }),
   "PATCH /api/v1/team": body({ name: "Renamed Team" }),
   "POST /api/v1/team/invitations": () => ({ body: { email: newEmail(), role: "reviewer" } }),

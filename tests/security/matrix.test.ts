@@ -93,6 +93,7 @@ const TABLE: Readonly<Record<string, Readonly<Record<string, keyof typeof RULES>
   "/api/v1/plants/{plantId}/revisions": { GET: "reads", POST: "builds" },
   "/api/v1/plants/{plantId}/revisions/{revisionId}": { GET: "reads" },
   "/api/v1/plants/{plantId}/revisions/{revisionId}/checks": { GET: "reads" },
+  "/api/v1/plants/{plantId}/side-by-side": { GET: "reads" },
   "/api/v1/team": { GET: "reads own team", PATCH: "leads own team" },
   "/api/v1/team/audit": { GET: "reads own team" },
   "/api/v1/team/invitations": { GET: "leads own team", POST: "leads own team" },

@@ -111,6 +111,14 @@ describe("another team's ids in a body or a query are answered like ids of nothi
         body: { plantId: ours.ids.plantId, title: name, designRevisionIds: [ours.designRevisionIds[1], ids.designRevisionId] },
       }),
     ],
+    [
+      "a revision side by side in a file",
+      "GET /api/v1/plants/{plantId}/side-by-side",
+      ({ ids }) => ({
+        query: `?designs=${ours.designRevisionIds[1]},${ids.designRevisionId}`,
+        ids: { plantId: ours.ids.plantId },
+      }),
+    ],
     ["a team to work in", "PUT /api/v1/account/team", ({ ctx }) => ({ body: { teamId: ctx.teamId } })],
   ];
   test.each(cases)("%s", async (_, wanted, make) => {

@@ -355,8 +355,8 @@ describe("designs of different plant revisions", () => {
   test("are told apart by revision where two are of one design", () => {
     expect(designs.map(({ label }) => label)).toEqual(["Soft", "Firm"]);
     expect(compareDesigns([soft, { ...soft, number: 4 }]).designs.map(({ label }) => label)).toEqual([
-      "Soft, revision 1",
-      "Soft, revision 4",
+      "Soft revision 1",
+      "Soft revision 4",
     ]);
   });
 });

@@ -34,6 +34,7 @@ export const catalogue: RouteCatalogue = {
   "/api/v1/plants/{plantId}/revisions/{revisionId}": () => import("../plants/[plantId]/revisions/[revisionId]/route"),
   "/api/v1/plants/{plantId}/revisions/{revisionId}/checks": () =>
     import("../plants/[plantId]/revisions/[revisionId]/checks/route"),
+  "/api/v1/plants/{plantId}/side-by-side": () => import("../plants/[plantId]/side-by-side/route"),
   "/api/v1/sign-up": () => import("../sign-up/route"),
   "/api/v1/team": () => import("../team/route"),
   "/api/v1/team/audit": () => import("../team/audit/route"),
