@@ -43,6 +43,7 @@ function selectDesignRevisions(db: Db) {
       designName: designs.name,
       plantId: designRevisions.plantId,
       plantName: plants.name,
+      criteria: plants.criteria,
       plantRevisionId: plantRevisions.id,
       plantRevisionNumber: plantRevisions.number,
       newestPlantRevision: plants.currentRevision,

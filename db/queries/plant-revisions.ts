@@ -40,7 +40,7 @@ export type PlantRevisionEntryRow = Awaited<ReturnType<typeof listPlantRevisions
 /** Of one team, in no order; ids that are not there, or another team's, are missing in what comes back. */
 export async function findPlantRevisions(db: Db, key: { readonly teamId: string; readonly revisionIds: readonly string[] }) {
   return db
-    .select({ ...entry, content: plantRevisions.content, model: plantRevisions.model })
+    .select({ ...entry, content: plantRevisions.content, model: plantRevisions.model, criteria: plants.criteria })
     .from(plantRevisions)
     .innerJoin(plants, ofPlant)
     .leftJoin(users, eq(users.id, plantRevisions.createdBy))

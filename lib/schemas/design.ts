@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { Id, inUnit, Name, PageQuery, Remark, Rows, Timestamp, Version } from "./common";
+import { Acceptance, Criteria } from "./criteria";
 import { ChecksReply, EvidenceReply, ResponseCurves, SignalRole, Summary } from "./evidence";
 import { PlantContent, PlantModel } from "./plant";
 import { Recipe } from "./recipe";
@@ -45,6 +46,7 @@ export const DesignRevision = DesignRevisionEntry.extend({
   recipe: Recipe,
   model: PlantModel,
   evidence: EvidenceReply,
+  acceptance: Acceptance,
   cautions: z.array(z.string()),
 });
 export type DesignRevision = z.infer<typeof DesignRevision>;
@@ -74,6 +76,8 @@ export const Compute = z.strictObject({
   recipe: Recipe,
   /** Which signals the responses hold; without it: commanded, output and input. */
   signals: z.array(SignalRole).min(1).max(5).optional(),
+  /** What the design is held against; without it the criteria of the stored plant, or none. */
+  criteria: Criteria.optional(),
 });
 export type Compute = z.infer<typeof Compute>;
 
@@ -81,6 +85,7 @@ export const Computation = z.strictObject({
   model: PlantModel,
   checks: ChecksReply,
   evidence: EvidenceReply,
+  acceptance: Acceptance,
   responses: z.array(ResponseCurves),
   cautions: z.array(z.string()),
 });

@@ -3,11 +3,13 @@ import { afterAll, describe, expect, test } from "vitest";
 import { closePool } from "@/db/client";
 import { closeNumericPool } from "@/lib/jobs/run-numeric";
 import type { Criteria } from "@/lib/schemas/criteria";
+import type { Computation, DesignRevision, DesignSummary } from "@/lib/schemas/design";
 import type { Plant, PlantSummary } from "@/lib/schemas/plant";
 import { listAuditEvents } from "@/lib/services/team/list-audit-events";
 import { type Api, member } from "../helpers/api";
 import { problemIn } from "../helpers/call-route";
 import { twoCarriages } from "../helpers/plant-content";
+import { byWeights } from "../helpers/recipes";
 import { testDatabase } from "../helpers/test-database";
 
 await testDatabase();
@@ -104,4 +106,51 @@ test("criteria that cannot be judged are refused at their own field", async () =
   const many = Array.from({ length: 25 }, (_, k) => ({ ...settling, signal: `s${k}` }));
   expect(await refused(many)).toEqual(["/criteria"]);
   expect((await put(api, plant, { criteria: many.slice(0, 24) })).status).toBe(200);
+});
+
+describe("verdicts", () => {
+  test("of a stored design are by the plant's present criteria, with the numbers of its evidence", async () => {
+    const { ctx, api } = await member();
+    const plant = await create(api);
+    const body = { name: "First", plantRevisionId: plant.currentRevision.id, recipe: byWeights() };
+    const design = await api.post<DesignSummary>(`/api/v1/plants/${plant.id}/designs`, body);
+    const path = `/api/v1/design-revisions/${design.currentRevision.id}`;
+    const before = await api.get<DesignRevision>(path);
+    expect(before.acceptance).toEqual({ judgedBy: "plant", met: 0, of: 0, verdicts: [] });
+    const worst = design.summary?.worstSettling ?? Number.NaN;
+    const sent: Criteria = [
+      { ...settling, limit: worst },
+      { kind: "settling", signal: "enc9", limit: 5 },
+      { kind: "effort", signal: null, limit: 1e-6 },
+    ];
+    await api.put(`/api/v1/plants/${plant.id}/criteria`, { criteria: sent }, 1);
+    const { acceptance } = await api.get<DesignRevision>(path);
+    expect(acceptance).toMatchObject({ judgedBy: "plant", met: 1, of: 3 });
+    expect(acceptance.verdicts.map(({ criterion }) => criterion)).toEqual(sent);
+    expect(acceptance.verdicts[0]).toMatchObject({ value: worst, met: true, reason: null });
+    expect(acceptance.verdicts[0].sentence).toMatch(/^Met: worst settling to 2 % is .+ m?s, at most .+ m?s is asked\.$/);
+    expect(acceptance.verdicts[1]).toMatchObject({ value: null, met: false, reason: "no-signal" });
+    const share = Math.max(...(design.summary?.peakEffort ?? []).map(({ overLimit }) => overLimit ?? 0));
+    expect(acceptance.verdicts[2]).toMatchObject({ value: 100 * share, met: false });
+    await api.put(`/api/v1/plants/${plant.id}/criteria`, { criteria: [{ ...settling, limit: worst / 2 }] }, 2);
+    const reviewer = (await member(ctx.teamId, "reviewer")).api;
+    expect((await reviewer.get<DesignRevision>(path)).acceptance).toMatchObject({ met: 0, of: 1 });
+  });
+
+  test("of a computation are by the criteria sent along, else by the stored plant's, else there are none", async () => {
+    const { api } = await member();
+    const plant = await create(api);
+    await api.put(`/api/v1/plants/${plant.id}/criteria`, { criteria }, 1);
+    const compute = async (body: object) =>
+      (await api.post<Computation>("/api/v1/computations", { recipe: byWeights(), ...body })).acceptance;
+    const stored = { plant: { revisionId: plant.currentRevision.id } };
+    expect(await compute(stored)).toMatchObject({ judgedBy: "plant", of: 3 });
+    expect(await compute({ ...stored, criteria: [settling] })).toMatchObject({ judgedBy: "request", of: 1 });
+    expect(await compute({ ...stored, criteria: [] })).toMatchObject({ judgedBy: "request", of: 0 });
+    expect(await compute({ plant: { content: twoCarriages() } })).toMatchObject({ of: 0, verdicts: [] });
+    const wrong = await api.ask("POST", "/api/v1/computations", {
+      body: { recipe: byWeights(), ...stored, criteria: [{ ...settling, limit: -1 }] },
+    });
+    expect((await problemIn(wrong)).errors?.map(({ pointer }) => pointer)).toContain("/criteria/0/limit");
+  });
 });

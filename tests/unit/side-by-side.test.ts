@@ -273,6 +273,7 @@ function revision(name: string, number: number, states: States, poles: readonly 
       createdAt: "2026-01-01T00:00:00Z",
     },
     ...{ plantId: "plant", plantName: "Plant", plantRevision: { id: "r", number: 1 }, outdated: false, cautions: [] },
+    acceptance: { judgedBy: "plant", met: 0, of: 0, verdicts: [] },
     recipe: {
       ...{ version: 1, method: "weights", crossWeight: null, degreeOfStability: null },
       weights: { form: "deviations", states: states.map(({ accepted }) => accepted), inputs: [60] },

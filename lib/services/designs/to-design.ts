@@ -5,6 +5,7 @@ import type { DesignRow } from "@/db/queries/designs";
 import type { EvidenceRow } from "@/db/queries/evidence";
 import type { DesignRevision, DesignRevisionEntry, DesignSummary } from "@/lib/schemas/design";
 import { evidenceReply } from "./evidence-reply";
+import { toAcceptance } from "./to-acceptance";
 
 /** Only the fields we mean to show. */
 export function toDesignSummary(row: DesignRow): DesignSummary {
@@ -31,8 +32,9 @@ export function toDesignRevisionEntry(row: DesignRevisionEntryRow): DesignRevisi
   return { id, designId, number, note, createdBy, createdAt: row.createdAt.toISOString() };
 }
 
-export function toDesignRevision(row: DesignRevisionRow, evidence: readonly EvidenceRow[]): DesignRevision {
+export function toDesignRevision(row: DesignRevisionRow, rows: readonly EvidenceRow[]): DesignRevision {
   const { designName, plantId, plantName, plantRevisionId, plantRevisionNumber, newestPlantRevision } = row;
+  const evidence = evidenceReply(rows, row.methodVersion, row.model);
   return {
     ...toDesignRevisionEntry(row),
     ...{ designName, plantId, plantName },
@@ -40,7 +42,8 @@ export function toDesignRevision(row: DesignRevisionRow, evidence: readonly Evid
     outdated: plantRevisionNumber !== newestPlantRevision,
     recipe: row.recipe as DesignRevision["recipe"],
     model: row.model as DesignRevision["model"],
-    evidence: evidenceReply(evidence, row.methodVersion, row.model),
+    evidence,
+    acceptance: toAcceptance(row.criteria, "plant", { evidence, model: row.model }),
     cautions: [...CAUTIONS],
   };
 }

@@ -57,4 +57,8 @@ export const twoTanks: z.input<typeof Compute> = {
     test: { horizon: null, initialState: [1, 0], inputDisturbance: [0, 0] },
     reasons: { weights: "A level may stray as far as its gauge can be read from the walkway." },
   },
+  criteria: [
+    { kind: "settling", signal: null, limit: 60 },
+    { kind: "cross-peak", signal: "left level", limit: 10 },
+  ],
 };
