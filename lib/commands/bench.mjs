@@ -13,7 +13,8 @@ await runCommand(
     if (!scipy) console.log("SciPy was not found (on Debian: sudo apt-get install python3-scipy): only our own times follow.");
     await bench(scipy?.clock ?? null);
     scipy?.stop();
-    return 0;
+    const { benchInBrowser } = await import("./bench/in-browser.mjs");
+    return benchInBrowser();
   },
   { interrupted: 130 },
 );
