@@ -18,6 +18,7 @@ export const TABLE_GRANTS: Readonly<Record<string, string>> = {
   plant_revisions: "SELECT, INSERT",
   designs: "SELECT, INSERT, UPDATE (name, version, current_revision, archived_at, updated_at)",
   design_revisions: "SELECT, INSERT",
+  design_drafts: "SELECT, INSERT, UPDATE (plant_revision_id, base_revision_id, base_version, form, mark, updated_at), DELETE",
   evidence: "SELECT, INSERT",
   response_records: "SELECT, INSERT",
   comparisons: "SELECT, INSERT, UPDATE (title, note, design_revision_ids, version, archived_at, updated_at)",

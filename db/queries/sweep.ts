@@ -3,6 +3,7 @@ import { lt, sql } from "drizzle-orm";
 import type { PgTable } from "drizzle-orm/pg-core";
 import type { Db } from "../client";
 import { passwordResets, sessions } from "../schema/access";
+import { designDrafts } from "../schema/design-drafts";
 import { outbox } from "../schema/outbox";
 import { idempotencyKeys } from "../schema/requests";
 
@@ -14,6 +15,7 @@ const DUE = {
   passwordResets: { table: passwordResets, condition: lt(passwordResets.expiresAt, ago("30 days")) },
   mails: { table: outbox, condition: lt(sql`coalesce(${outbox.sentAt}, ${outbox.createdAt})`, ago("30 days")) },
   idempotencyKeys: { table: idempotencyKeys, condition: lt(idempotencyKeys.createdAt, ago("24 hours")) },
+  drafts: { table: designDrafts, condition: lt(designDrafts.updatedAt, ago("90 days")) },
 } as const satisfies Record<string, { readonly table: PgTable; readonly condition: ReturnType<typeof lt> }>;
 
 export type Kind = keyof typeof DUE;

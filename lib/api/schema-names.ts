@@ -2,7 +2,9 @@ import { zodToOpenAPIRegistry } from "@asteasolutions/zod-to-openapi";
 import { z } from "zod";
 import * as account from "@/lib/schemas/account";
 import * as comparison from "@/lib/schemas/comparison";
+import * as criteria from "@/lib/schemas/criteria";
 import * as design from "@/lib/schemas/design";
+import * as draft from "@/lib/schemas/draft";
 import * as evidence from "@/lib/schemas/evidence";
 import * as invitation from "@/lib/schemas/invitation";
 import * as plant from "@/lib/schemas/plant";
@@ -15,7 +17,9 @@ const MODULES: readonly Readonly<Record<string, unknown>>[] = [
   plant,
   recipe,
   evidence,
+  criteria,
   design,
+  draft,
   comparison,
   template,
   account,

@@ -7,6 +7,8 @@ import { ComparedRevisions } from "./comparison";
 export const PlantAddress = z.strictObject({ plantId: Id });
 export const PlantRevisionAddress = z.strictObject({ plantId: Id, revisionId: Id });
 export const DesignAddress = z.strictObject({ designId: Id });
+/** `subjectId`: a design, an older revision of one, or for a new design the plant itself. */
+export const DraftAddress = z.strictObject({ plantId: Id, subjectId: Id });
 export const DesignRevisionAddress = z.strictObject({ revisionId: Id });
 export const ComparisonAddress = z.strictObject({ comparisonId: Id });
 export const TemplateAddress = z.strictObject({ templateId: Id });

@@ -109,6 +109,21 @@ test("a secret opens the one row that holds it and nothing else", async () => {
   }
 });
 
+test("a draft is seen and written by its writer only, not by a colleague", async () => {
+  const { teamId, designId } = ours;
+  const colleague = { "app.team_id": teamId, "app.user_id": theirs.userId };
+  expect(await asking(app, colleague, () => count(app, "design_drafts"))).toBe(0);
+  expect(await asking(app, { "app.team_id": teamId }, () => count(app, "design_drafts"))).toBe(0);
+  const change = "update design_drafts set form = '{}' where design_id = $1";
+  expect((await asking(app, colleague, () => app.query(change, [designId]))).rowCount).toBe(0);
+  expect((await asking(app, settingsOf(ours), () => app.query(change, [designId]))).rowCount).toBe(1);
+  const copy = `insert into design_drafts (team_id, user_id, subject_id, plant_id, plant_revision_id, form, mark)
+    values ($1, $2, $3, $3, $4, '{}', gen_random_uuid())`;
+  const values = [teamId, ours.userId, ours.plantId, ours.revisionId];
+  expect(await asking(app, colleague, () => stateOf(app.query(copy, values)))).toBe("42501");
+  expect(await asking(app, settingsOf(ours), () => stateOf(app.query(copy, values)))).toBe("done");
+});
+
 test("an address opens the one account that it names", async () => {
   const seen = await asking(app, { "app.email": `${ours.userId}@saltmarsh.example` }, () => app.query("select id from users"));
   expect(seen.rows).toEqual([{ id: ours.userId }]);

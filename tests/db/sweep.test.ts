@@ -14,7 +14,7 @@ afterAll(async () => {
   await Promise.all([admin.end(), app.end()]);
   await closePool();
 });
-const SWEPT = ["sessions", "password_resets", "outbox", "idempotency_keys"];
+const SWEPT = ["sessions", "password_resets", "outbox", "idempotency_keys", "design_drafts"];
 
 async function counts(): Promise<Record<string, number>> {
   const each = SWEPT.map((table) => `(select count(*)::int from ${table}) as ${table}`);
@@ -49,21 +49,29 @@ async function oldAndYoung(teamId: string, userId: string): Promise<void> {
   const key = `insert into idempotency_keys (team_id, user_id, route, key, body_hash, created_at)
     values ($1, $2, 'POST /plants', $3, 'h', now() + $4::interval)`;
   for (const age of ["-25 hours", "-23 hours"]) await admin.query(key, [teamId, userId, randomUUID(), age]);
+  const draft = `insert into design_drafts (team_id, user_id, subject_id, plant_id, plant_revision_id, form, mark, updated_at)
+    select team_id, $1, plant_id, plant_id, id, '{}', $2, now() + $3::interval from plant_revisions where team_id = $4`;
+  await admin.query(draft, [userId, randomUUID(), "-91 days", teamId]);
+  await admin.query(
+    "update design_drafts set updated_at = now() - interval '89 days' where design_id is not null and user_id = $1",
+    [userId],
+  );
 }
 
 test("what is old enough goes, in every team, and everything younger stays", async () => {
   const young = await counts();
   for (const { teamId, userId } of [await fillTeam(admin), await fillTeam(admin)]) await oldAndYoung(teamId, userId);
   const before = await counts();
-  expect(await sweep()).toEqual({ sessions: 4, passwordResets: 2, mails: 4, idempotencyKeys: 2 });
+  expect(await sweep()).toEqual({ sessions: 4, passwordResets: 2, mails: 4, idempotencyKeys: 2, drafts: 2 });
   expect(await counts()).toEqual({
     sessions: before.sessions - 4,
     password_resets: before.password_resets - 2,
     outbox: before.outbox - 4,
     idempotency_keys: before.idempotency_keys - 2,
+    design_drafts: before.design_drafts - 2,
   });
   expect(before).not.toEqual(young);
-  expect(await sweep()).toEqual({ sessions: 0, passwordResets: 0, mails: 0, idempotencyKeys: 0 });
+  expect(await sweep()).toEqual({ sessions: 0, passwordResets: 0, mails: 0, idempotencyKeys: 0, drafts: 0 });
 });
 
 test("more than one statement takes is taken by several", async () => {
@@ -88,10 +96,10 @@ test("the serving role can remove nothing young, and nothing old outside a sweep
   };
   const own = { "app.team_id": teamId, "app.user_id": userId };
   for (const table of SWEPT) {
-    // A person's own keys end with the requests that made them; everything else only in a sweep.
+    // A person's own keys end with the requests that made them, drafts with a save; everything else only in a sweep.
     const [withOwn, sweeping] = [await removedBy(own, table), await removedBy({ "app.sweeping": "on" }, table)];
-    expect(withOwn, table).toBe(table === "idempotency_keys" ? 3 : 0);
-    expect(sweeping, table).toBe({ sessions: 2, password_resets: 1, outbox: 2, idempotency_keys: 1 }[table]);
+    expect(withOwn, table).toBe({ idempotency_keys: 3, design_drafts: 2 }[table] ?? 0);
+    expect(sweeping, table).toBe({ sessions: 2, password_resets: 1, outbox: 2, idempotency_keys: 1, design_drafts: 1 }[table]);
   }
 });
 

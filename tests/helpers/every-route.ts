@@ -1,3 +1,4 @@
+import { randomUUID } from "node:crypto";
 import { readdirSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import { twoTanks } from "@/app/api/v1/computations/example";
@@ -58,6 +59,8 @@ const freshMember: Make = async ({ ctx }) => {
 
 const recipe = byWeights();
 const content = twoCarriages();
+/** The same for each draft, so that whoever kept one removes it. */
+const draftMark = randomUUID();
 
 /** A request to each route that its stocked team's lead would have carried out; those left out need nothing but their address. */
 const REQUESTS: Readonly<Record<string, Make>> = {
@@ -103,6 +106,10 @@ const REQUESTS: Readonly<Record<string, Make>> = {
     body: { name: "New", plantRevisionId: ids.revisionId, recipe },
   }),
   "GET /api/v1/plants/{plantId}/difference": ({ ids }) => ({ query: `?from=${ids.revisionId}&to=${ids.revisionId}` }),
+  "PUT /api/v1/plants/{plantId}/drafts/{subjectId}": ({ ids }) => ({
+    body: { mark: draftMark, plantRevisionId: ids.revisionId, base: null, form: {} },
+  }),
+  "DELETE /api/v1/plants/{plantId}/drafts/{subjectId}": () => ({ query: `?marks=${draftMark}` }),
   "POST /api/v1/plants/{plantId}/duplicate": body({ name: "Copy" }),
   "POST /api/v1/plants/{plantId}/revisions": change("/api/v1/plants/{plantId}", { content }),
   "GET /api/v1/plants/{plantId}/side-by-side": ({ designRevisionIds }) => ({ query: `?designs=${designRevisionIds.join(",")}` }),

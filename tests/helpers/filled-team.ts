@@ -46,6 +46,14 @@ export async function fillTeam(admin: pg.Client): Promise<FilledTeam> {
   await put("evidence", { team_id: teamId, design_revision_id: designRevisionId, part: "gains", state: "computed", content: {} });
   const curve = { position: 0, kind: "step", loop: "full-state", source: 0, amplitude: 1, samples: 2, step: 0.1 };
   await put("response_records", { team_id: teamId, design_revision_id: designRevisionId, ...curve, values: Buffer.alloc(16) });
+  // An earlier release's database, which a test may fill before it is migrated, has no drafts.
+  const { rows: drafts } = await admin.query(
+    "select 1 from pg_tables where schemaname = 'public' and tablename = 'design_drafts'",
+  );
+  if (drafts.length > 0) {
+    const draft = { subject_id: designId, plant_id: plantId, design_id: designId, plant_revision_id: revisionId };
+    await put("design_drafts", { team_id: teamId, user_id: userId, ...draft, form: {}, mark: randomUUID() });
+  }
   const compared = { title: "Both", design_revision_ids: [designRevisionId, second] };
   await put("comparisons", { ...made, plant_id: plantId, ...compared });
   await put("templates", { ...made, name: "Template", content: EMPTY_TEMPLATE });

@@ -46,6 +46,7 @@ export async function stockedTeam(adminUrl: string): Promise<Stock> {
     plantId: plant.id,
     revisionId: plant.currentRevision.id,
     designId: one.id,
+    subjectId: one.id,
     designRevisionId: one.currentRevision.id,
     comparisonId: comparison.id,
     templateId: published.id,

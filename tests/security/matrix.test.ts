@@ -89,6 +89,7 @@ const TABLE: Readonly<Record<string, Readonly<Record<string, keyof typeof RULES>
   "/api/v1/plants/{plantId}/criteria": { PUT: "builds" },
   "/api/v1/plants/{plantId}/designs": { GET: "reads", POST: "builds" },
   "/api/v1/plants/{plantId}/difference": { GET: "reads" },
+  "/api/v1/plants/{plantId}/drafts/{subjectId}": { GET: "builds", PUT: "builds", DELETE: "builds" },
   "/api/v1/plants/{plantId}/duplicate": { POST: "builds" },
   "/api/v1/plants/{plantId}/revisions": { GET: "reads", POST: "builds" },
   "/api/v1/plants/{plantId}/revisions/{revisionId}": { GET: "reads" },

@@ -25,7 +25,7 @@ export function HowToCall() {
           Lists come in pages of <code>{"{ items, nextCursor }"}</code>, at most 100 items each. Each person may send 600 reads,
           120 changes, 30 computations and 60 checks of a plant a minute, a whole team five times as many reads and changes and
           three times as many of the others; beyond that the answer is 429 with <code>Retry-After</code>. Two computations or
-          checks of a team run at once and ten wait.
+          checks of a team run at once and ten wait. Drafts, which a page keeps by itself, are counted apart: 120 a minute.
         </p>
         <p>
           Whatever is refused is answered with a problem document; <Link href="/docs/problems">the list of problems</Link> says

@@ -4,8 +4,11 @@ import { spendPoint } from "@/db/queries/rate-limits";
 import { DomainError } from "@/lib/errors";
 import type { Context, Visitor } from "../context";
 
-/** What a request costs: `solve` and `check` run the core, `check` so briefly that it comes with looking at a plant. */
-export type Cost = "read" | "write" | "check" | "solve";
+/**
+ * What a request costs: `solve` and `check` run the core, `check` so briefly that it comes with looking at a plant. A `draft` is
+ * kept by the page itself, which must never use up what a person's own changes need.
+ */
+export type Cost = "read" | "write" | "draft" | "check" | "solve";
 
 const SECONDS = 60;
 /** An office behind one address shares this; guessing passwords has narrower limits of its own. */
@@ -17,6 +20,7 @@ type Allowance = { readonly person: number; readonly team: number; readonly name
 const PER_MINUTE: Readonly<Record<Cost, Allowance>> = {
   read: { person: 600, team: 3_000, name: "reads" },
   write: { person: 120, team: 600, name: "changes" },
+  draft: { person: 120, team: 2_400, name: "drafts" },
   check: { person: 60, team: 180, name: "checks of a plant" },
   solve: { person: 30, team: 90, name: "computations" },
 };

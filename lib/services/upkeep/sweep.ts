@@ -6,7 +6,7 @@ const AT_ONCE = 1_000;
 /** Whatever is left after so many goes the next day. */
 const ROUNDS = 500;
 
-/** Removes ended sessions, old reset links, mails and idempotency keys, and nothing else; tells how many of each. */
+/** Removes ended sessions, old reset links, mails, idempotency keys and drafts, and nothing else; tells how many of each. */
 export async function sweep(): Promise<Readonly<Record<Kind, number>>> {
   const counts = {} as Record<Kind, number>;
   for (const kind of KINDS) counts[kind] = await removeAll(kind);

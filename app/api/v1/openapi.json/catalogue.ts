@@ -29,6 +29,7 @@ export const catalogue: RouteCatalogue = {
   "/api/v1/plants/{plantId}/criteria": () => import("../plants/[plantId]/criteria/route"),
   "/api/v1/plants/{plantId}/designs": () => import("../plants/[plantId]/designs/route"),
   "/api/v1/plants/{plantId}/difference": () => import("../plants/[plantId]/difference/route"),
+  "/api/v1/plants/{plantId}/drafts/{subjectId}": () => import("../plants/[plantId]/drafts/[subjectId]/route"),
   "/api/v1/plants/{plantId}/duplicate": () => import("../plants/[plantId]/duplicate/route"),
   "/api/v1/plants/{plantId}/revisions": () => import("../plants/[plantId]/revisions/route"),
   "/api/v1/plants/{plantId}/revisions/{revisionId}": () => import("../plants/[plantId]/revisions/[revisionId]/route"),
