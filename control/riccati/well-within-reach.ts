@@ -57,7 +57,10 @@ export function wellInSight(problem: FlatProblem, refined: Refined): boolean {
   let least = Number.POSITIVE_INFINITY;
   for (let j = 0; j < m; j++) least = Math.min(least, r[j * m + j]);
   const sizeB = flatNorm(b);
-  const moved = everywhere(problem, refined) / sizeB;
+  const proven = everywhere(problem, refined);
+  // A loop that rounding alone keeps off the boundary proves nothing.
+  if (!(proven > CLEAR * n * Number.EPSILON * (flatNorm(a) + sizeB * flatNorm(refined.gain.k.hi)))) return false;
+  const moved = proven / sizeB;
   const seen = flatNorm(q) + 2 * (flatNorm(a) + sizeB) * flatNorm(refined.x.hi);
   return least * moved * moved > CLEAR * n * Number.EPSILON * seen;
 }

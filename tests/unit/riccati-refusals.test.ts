@@ -1,5 +1,6 @@
 import { Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
+import { holdEquivalent } from "../../control/response/hold-equivalent";
 import { type RiccatiProblem, solveRiccati } from "../../control/riccati/solve-riccati";
 import { processorMs } from "../helpers/processor-time";
 
@@ -177,6 +178,28 @@ describe("modes that stand in the way are named", () => {
     const problem = { A: new Matrix(rows), B: new Matrix([[1], [1]]), Q: Matrix.zeros(2, 2), R: I(1), sampled };
     expect(() => solveRiccati(problem)).toThrow(refusal("unweighted-boundary-mode", { pole, state: 0 }));
   });
+
+  test.each([false, true])(
+    "no weight at all leaves a drift where it is, however small rounding makes it, sampled: %s",
+    (sampled) => {
+      // Two carriages on a spring: a drift at rest, a slow decay, an oscillation.
+      const A = new Matrix([
+        [0, 0, 1, 0],
+        [0, 0, 0, 1],
+        [-355.3, 355.3, -0.4, 0],
+        [355.3, -355.3, 0, -0.4],
+      ]);
+      const B = new Matrix([
+        [0, 0],
+        [0, 0],
+        [1 / 12, 0],
+        [0, 1 / 12],
+      ]);
+      const plant = sampled ? holdEquivalent({ A, B, period: 0.01 }) : { A, B };
+      const problem = { A: plant.A, B: plant.B, Q: Matrix.zeros(4, 4), R: Matrix.diag([1 / 1600, 1 / 1600]), sampled };
+      expect(() => solveRiccati(problem)).toThrow(refusal("unweighted-boundary-mode"));
+    },
+  );
 
   test("a sampled unstable mode no input reaches", () => {
     const problem = {
