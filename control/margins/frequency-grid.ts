@@ -30,6 +30,7 @@ const AROUND = [-8, -4, -2, -1, -0.5, -0.25, 0, 0.25, 0.5, 1, 2, 4, 8];
  * Units     rad/s
  * Throws    as `prepareFrequency`
  * Accuracy  plain arithmetic throughout: the same places in every engine
+ * Source    the poles and zeros of the system
  */
 export function frequencyGrid(system: System, period: number | null = null): Float64Array {
   const { poles } = prepareFrequency(system, period);

@@ -13,9 +13,12 @@ const PLANTS = 1_200;
 /** Speak of what others computed: tried beside those, on their results and refusals. */
 const SPOKEN = ["describeChecks", "describeMode", "explainRefusal"];
 
+/** Takes no numbers; `tests/property/accelerator.test.ts` tries it. */
+const SWITCHES = ["switchAccelerator"];
+
 test("every function that the core exports is tried on hostile plants: a new one needs a line in lib/commands/fuzz/core-calls.ts", () => {
   const functions = Object.entries(core).flatMap(([name, value]) => (typeof value === "function" ? [name] : []));
-  const tried = [...Object.keys(CORE_CALLS), ...SPOKEN, "NumericalError"];
+  const tried = [...Object.keys(CORE_CALLS), ...SPOKEN, ...SWITCHES, "NumericalError"];
   expect(functions.filter((name) => !tried.includes(name))).toEqual([]);
   expect(Object.keys(CORE_CALLS).filter((name) => !functions.includes(name))).toEqual([]);
 });
