@@ -5,11 +5,10 @@ import { computed } from "../designs/evidence/figures-reply";
 import { gainMatrices } from "../designs/gains/gain-matrices";
 import type { GainFacts } from "../designs/gains/gain-text";
 import { recipeLines } from "../designs/recipe/recipe-lines";
-import { alignFacts, type ComparedSection, type Fact } from "./compared-rows";
+import type { Fact } from "./compared-rows";
 import { evidenceFacts } from "./evidence-facts";
 import { type ObserverFacts, observerFacts } from "./observer-words";
 import type { OverlaidDesign } from "./overlay-pictures";
-import { type Sorting, sortedPlaces, sortingWords } from "./sort-designs";
 import { type TradeSide, tradeSide } from "./trade-side";
 
 export type ComparedDesign = OverlaidDesign & {
@@ -25,14 +24,6 @@ export type ComparedDesign = OverlaidDesign & {
 
 /** As asked for: one list of facts per design, in the order of the address. */
 export type Comparing = { readonly designs: readonly ComparedDesign[]; readonly facts: readonly (readonly Fact[])[] };
-
-/** As shown: in the order wanted, row by row. */
-export type Arranged = {
-  readonly designs: readonly ComparedDesign[];
-  readonly sections: readonly ComparedSection[];
-  /** Null where the order is the one that was chosen. */
-  readonly sorted: string | null;
-};
 
 /** Two revisions of one design share a name; then the revision is said too. */
 function labels(revisions: readonly DesignRevision[]): string[] {
@@ -88,18 +79,4 @@ export function compareDesigns(revisions: readonly DesignRevision[]): Comparing 
   // Numbers are for files; a page shows texts.
   const facts = factsOf(revisions).map((own) => own.map(({ data: _, ...fact }) => fact));
   return { designs: revisions.map((revision, k) => comparedDesign(revision, names[k], k)), facts };
-}
-
-/** Rows that stand side by side, the designs put in order by a figure or as they were chosen. */
-export function arrangeDesigns({ designs, facts }: Comparing, sorting: Sorting | null): Arranged {
-  const places = sorting && sortedPlaces(facts, sorting);
-  const [shown, own] = places ? [places.map((k) => designs[k]), places.map((k) => facts[k])] : [designs, facts];
-  const sorted =
-    places &&
-    sortingWords(
-      shown.map(({ label }) => label),
-      own,
-      sorting,
-    );
-  return { designs: shown, sections: alignFacts(own), sorted };
 }

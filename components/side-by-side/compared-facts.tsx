@@ -2,7 +2,7 @@
 
 import { Button } from "../ui/button";
 import { Checkbox } from "../ui/checkbox";
-import type { Arranged } from "./compare-designs";
+import type { Arranged } from "./arrange-designs";
 import { withoutEqual } from "./compared-rows";
 import { ComparedTable } from "./compared-table";
 import { nextSorting, type Sorting } from "./sort-designs";

@@ -93,13 +93,16 @@ function comparedRow(facts: readonly (Fact | undefined)[]): ComparedRow {
   return { key, label, axis, prose, sort, cells, differs, equal: !differs.includes(true) };
 }
 
-/** Facts of several designs, one list each, as rows that stand side by side. */
-export function alignFacts(designs: readonly (readonly Fact[])[]): ComparedSection[] {
+/**
+ * Facts of several designs, one list each, as rows that stand side by side. `places` puts the columns in another order; the rows
+ * stay where they are.
+ */
+export function alignFacts(designs: readonly (readonly Fact[])[], places = designs.map((_, place) => place)): ComparedSection[] {
   const sections = mergeOrder(designs.map((facts) => [...new Set(facts.map(({ section }) => section))]));
   return sections.map((title) => {
     const own = designs.map((facts) => new Map(facts.filter(({ section }) => section === title).map((fact) => [fact.key, fact])));
     const keys = mergeOrder(own.map((facts) => [...facts.keys()]));
-    return { title, rows: keys.map((key) => comparedRow(own.map((facts) => facts.get(key)))) };
+    return { title, rows: keys.map((key) => comparedRow(places.map((place) => own[place].get(key)))) };
   });
 }
 
