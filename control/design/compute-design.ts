@@ -14,7 +14,7 @@ import type { Recipe } from "./recipe";
 import { reportPoles } from "./report-poles";
 
 /** Changes whenever a method changes any digit of the evidence. */
-export const METHOD_VERSION = "1.0";
+export const METHOD_VERSION = "1.1";
 
 const ABSENT = { state: "absent" } as const;
 
