@@ -4,14 +4,14 @@ import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { archivePlant, duplicatePlant, renamePlant } from "@/lib/client/plants";
 import { RequestProblem } from "@/lib/client/request";
-import type { PlantSummary } from "@/lib/schemas/plant";
+import type { Plant } from "@/lib/schemas/plant";
 import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Menu } from "../ui/menu";
 import { NameDialog } from "../ui/name-dialog";
 import { useCreateKey } from "../ui/use-create-key";
 
-type PlantActionsProps = Readonly<{ plant: PlantSummary; onChanged: (plant: PlantSummary) => void }>;
+type PlantActionsProps = Readonly<{ plant: Plant; onChanged: (plant: Plant) => void }>;
 
 /** What is done to a plant as a whole. Each change carries the version it started from. */
 export function PlantActions({ plant, onChanged }: PlantActionsProps) {

@@ -1,8 +1,8 @@
 import { z } from "zod";
 import type { Criterion as Judged } from "@/control/design/criteria";
 import { Finite, inUnit, SignalName } from "./common";
+import { MOST_CRITERIA } from "./criteria-count";
 
-export const MOST_CRITERIA = 24;
 const MOST_LIMIT = 1e9;
 /** Without overshoot or coupling at all is a wish that can be met; at rest or without effort at once is not. */
 const MAY_BE_ZERO: readonly Judged["kind"][] = ["overshoot", "cross-peak"];

@@ -19,7 +19,7 @@ import { UndoButtons } from "./plant-page";
 import { useEvaluation } from "./use-evaluation";
 import { usePlantDraft } from "./use-plant-draft";
 
-const START = { content: blankPlant(["first axis", "second axis"]), name: "", version: null };
+const START = { content: blankPlant(["first axis", "second axis"]), name: "", version: null, revisionId: null };
 
 /** A plant from nothing: axes first, then signals and matrices of the right shape to type or paste into. */
 export function NewPlantPage() {
@@ -36,7 +36,7 @@ export function NewPlantPage() {
     run(async () => {
       const body = { name: draft.name, content: draft.content, note: "" };
       const made = await resume(() => createPlant(body, keyFor(body)));
-      draft.settle(draft.content, made.version);
+      draft.settle(draft.content, { version: made.version, revisionId: made.currentRevision.id });
       router.push(`/plants/${made.id}`);
     });
 

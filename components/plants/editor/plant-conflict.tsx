@@ -15,6 +15,8 @@ import { DifferenceTable } from "../difference-table";
 type PlantConflictProps = Readonly<{
   /** As this page knew it. */
   plant: PlantSummary;
+  /** The newest revision when the edit started; null where that is not known any more. */
+  startedFrom: string | null;
   content: PlantContent;
   busy: boolean;
   onKeepMine: (version: number) => void;
@@ -25,7 +27,16 @@ type PlantConflictProps = Readonly<{
 }>;
 
 /** Somebody saved first: what they changed, and three ways on. Nothing is lost by any of them. */
-export function PlantConflict({ plant, content, busy, onKeepMine, onTakeTheirs, onCopied, onClose }: PlantConflictProps) {
+export function PlantConflict({
+  plant,
+  startedFrom,
+  content,
+  busy,
+  onKeepMine,
+  onTakeTheirs,
+  onCopied,
+  onClose,
+}: PlantConflictProps) {
   const { resume } = useSession();
   const router = useRouter();
   const copy = useSubmit({});
@@ -36,7 +47,12 @@ export function PlantConflict({ plant, content, busy, onKeepMine, onTakeTheirs, 
         const current = await fetchPlant(plant.id, signal);
         return {
           current,
-          difference: await fetchDifference(plant.id, plant.currentRevision.id, current.currentRevision.id, signal),
+          difference: await fetchDifference(
+            plant.id,
+            startedFrom ?? plant.currentRevision.id,
+            current.currentRevision.id,
+            signal,
+          ),
         };
       }),
     gcTime: 0,

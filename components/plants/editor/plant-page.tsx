@@ -2,7 +2,7 @@
 
 import { useRouter } from "next/navigation";
 import { useState } from "react";
-import type { PlantRevision, PlantSummary } from "@/lib/schemas/plant";
+import type { Plant, PlantRevision } from "@/lib/schemas/plant";
 import { PlantDesigns } from "../../designs/plant-designs";
 import { useSession } from "../../providers/session-provider";
 import { useToast } from "../../providers/toast-provider";
@@ -10,6 +10,7 @@ import { Button } from "../../ui/button";
 import { Chip } from "../../ui/chip";
 import { LinkButton } from "../../ui/link-button";
 import { PageHeading } from "../../ui/page-heading";
+import { CriteriaTab } from "../criteria/criteria-tab";
 import { HistoryTab } from "../history-tab";
 import { PlantActions } from "../plant-actions";
 import { PlantChecks } from "../plant-checks";
@@ -21,7 +22,7 @@ import { SaveRevision } from "./save-revision";
 import { useEvaluation } from "./use-evaluation";
 import { usePlantDraft } from "./use-plant-draft";
 
-type PlantPageProps = Readonly<{ plant: PlantSummary; revision: PlantRevision; mayWrite: boolean; mayPublish: boolean }>;
+type PlantPageProps = Readonly<{ plant: Plant; revision: PlantRevision; mayWrite: boolean; mayPublish: boolean }>;
 
 /** A stored plant: its newest revision, ready to be changed by those who may. */
 export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: PlantPageProps) {
@@ -31,15 +32,19 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
   const [plant, setPlant] = useState(start);
   const [revisionId, setRevisionId] = useState(revision.id);
   const key = `gainwright:plant:${teamId}:${userId}:${plant.id}`;
-  const draft = usePlantDraft(key, { content: revision.content, name: "", version: plant.version });
+  const draft = usePlantDraft(key, { content: revision.content, name: "", version: plant.version, revisionId });
   const evaluation = useEvaluation(draft.content);
   const readOnly = !mayWrite || plant.archivedAt !== null;
   const model = evaluation?.model ?? null;
   const shownModel = draft.dirty ? model : (model ?? revision.model);
-  /** A new name leaves the model as it is: an edit that started from the version before goes on from this one. */
-  const changed = (next: PlantSummary) => {
-    if (draft.version === plant.version) draft.rebase(next.version);
-    setPlant(next);
+  /**
+   * New names and criteria leave the model as it is: an edit that started from the version before goes on from this one. A newer
+   * model that somebody saved meanwhile is not what this page shows, and an edit has still not seen it.
+   */
+  const changed = (next: Plant) => {
+    const sameModel = next.currentRevision.id === plant.currentRevision.id;
+    if (sameModel && draft.version === plant.version) draft.rebase(next.version);
+    setPlant(sameModel ? next : { ...next, currentRevision: plant.currentRevision });
   };
 
   return (
@@ -72,12 +77,12 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
               <SaveRevision
                 plant={plant}
                 content={draft.content}
-                version={draft.version ?? plant.version}
+                from={{ version: draft.version ?? plant.version, revisionId: draft.revisionId }}
                 disabled={!draft.dirty || model === null}
                 onSaved={(saved, content) => {
                   setPlant(saved);
                   setRevisionId(saved.currentRevision.id);
-                  draft.settle(content, saved.version);
+                  draft.settle(content, { version: saved.version, revisionId: saved.currentRevision.id });
                   toast({ text: `Revision ${saved.currentRevision.number} is saved.`, kind: "met" });
                   router.refresh();
                 }}
@@ -101,6 +106,12 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
             label: "Designs",
             count: plant.designCount,
             panel: <PlantDesigns plantId={plant.id} designCount={plant.designCount} />,
+          },
+          {
+            key: "criteria",
+            label: "Acceptance criteria",
+            count: plant.criteria.length,
+            panel: <CriteriaTab {...{ plant, readOnly }} content={draft.content} onSaved={changed} />,
           },
           { key: "history", label: "History", panel: <HistoryTab plantId={plant.id} /> },
         ]}

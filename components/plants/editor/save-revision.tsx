@@ -2,46 +2,51 @@
 
 import { useState } from "react";
 import { addPlantRevision } from "@/lib/client/plants";
-import { RequestProblem } from "@/lib/client/request";
-import type { PlantContent, PlantSummary } from "@/lib/schemas/plant";
+import type { Plant, PlantContent } from "@/lib/schemas/plant";
 import { useSession } from "../../providers/session-provider";
 import { Button } from "../../ui/button";
 import { DialogForm } from "../../ui/dialog-form";
 import { NoteField } from "../../ui/note-field";
 import { useSubmit } from "../../ui/use-submit";
+import { changePastOthers, isStale } from "../change-past-others";
 import { PlantConflict } from "./plant-conflict";
 
 const FIELDS = { "/note": "revision-note" };
 
 type SaveRevisionProps = Readonly<{
-  plant: PlantSummary;
+  plant: Plant;
   content: PlantContent;
-  /** The version the edit started from. */
-  version: number;
+  /** What the edit started from. */
+  from: { readonly version: number; readonly revisionId: string | null };
   disabled: boolean;
-  onSaved: (saved: PlantSummary, content: PlantContent) => void;
+  onSaved: (saved: Plant, content: PlantContent) => void;
   onTakeTheirs: () => void;
   onCopied: () => void;
 }>;
 
 /** Adds an immutable revision. Somebody else's newer one is never overwritten without a look. */
-export function SaveRevision({ plant, content, version, disabled, onSaved, onTakeTheirs, onCopied }: SaveRevisionProps) {
+export function SaveRevision({ plant, content, from, disabled, onSaved, onTakeTheirs, onCopied }: SaveRevisionProps) {
   const { resume } = useSession();
   const [asking, setAsking] = useState(false);
   const [conflict, setConflict] = useState(false);
   const [note, setNote] = useState("");
   const submit = useSubmit(FIELDS);
 
+  /** A new name or other criteria are no other model: nobody has to choose between them and this edit. */
+  const sameModel = ({ currentRevision, archivedAt }: Plant) =>
+    currentRevision.id === from.revisionId && archivedAt === plant.archivedAt;
+
   async function save(atVersion: number) {
     await submit.run(async () => {
       try {
-        const saved = await resume(() => addPlantRevision(plant.id, atVersion, { content, note }));
+        const send = (version: number) => addPlantRevision(plant.id, version, { content, note });
+        const saved = await resume(() => changePastOthers(plant.id, atVersion, send, sameModel));
         setAsking(false);
         setConflict(false);
         setNote("");
         onSaved(saved, content);
       } catch (error) {
-        if (!(error instanceof RequestProblem && error.code === "stale-version")) throw error;
+        if (!isStale(error)) throw error;
         setAsking(false);
         setConflict(true);
       }
@@ -61,7 +66,7 @@ export function SaveRevision({ plant, content, version, disabled, onSaved, onTak
         leave="Go on editing"
         label="Save"
         busyLabel="Saving…"
-        onSend={() => save(version)}
+        onSend={() => save(from.version)}
       >
         <NoteField
           id={FIELDS["/note"]}
@@ -75,6 +80,7 @@ export function SaveRevision({ plant, content, version, disabled, onSaved, onTak
       {conflict ? (
         <PlantConflict
           {...{ plant, content, onTakeTheirs, onCopied }}
+          startedFrom={from.revisionId}
           busy={submit.busy}
           onClose={() => setConflict(false)}
           onKeepMine={save}

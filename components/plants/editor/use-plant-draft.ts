@@ -4,7 +4,15 @@ import { useEffect, useRef, useState } from "react";
 import type { PlantContent } from "@/lib/schemas/plant";
 import { useHistory } from "../../matrix/use-history";
 
-type Kept = { readonly content: PlantContent; readonly name: string; readonly version: number | null; readonly at: string };
+/** What an edit started from: the version of the plant, and its newest revision then. Null for a plant that is not stored yet. */
+type From = { readonly version: number | null; readonly revisionId: string | null };
+type Kept = Omit<From, "revisionId"> & {
+  readonly content: PlantContent;
+  readonly name: string;
+  /** An earlier release kept none. */
+  readonly revisionId?: string | null;
+  readonly at: string;
+};
 
 const SAVE_AFTER_MS = 300;
 
@@ -26,16 +34,17 @@ function keep(key: string, draft: Kept | null): void {
   }
 }
 
-type Start = { readonly content: PlantContent; readonly name: string; readonly version: number | null };
+type Start = From & { readonly content: PlantContent; readonly name: string };
 
 /**
  * The plant being edited with its undo history, kept in the browser's storage until it is saved, so that a reload, a killed
- * tab or an ended session costs nothing. `version` is what the edit started from and goes with the draft.
+ * tab or an ended session costs nothing. `version` and `revisionId` are what the edit started from and go with the draft.
  */
 export function usePlantDraft(key: string, start: Start) {
   const history = useHistory(start.content);
   const [name, setName] = useState(start.name);
   const [version, setVersion] = useState(start.version);
+  const [revisionId, setRevisionId] = useState(start.revisionId);
   const [saved, setSaved] = useState({ content: start.content, name: start.name });
   const [restoredAt, setRestoredAt] = useState<string | null>(null);
   const ready = useRef(false);
@@ -51,19 +60,20 @@ export function usePlantDraft(key: string, start: Start) {
     set(kept.content);
     setName(kept.name);
     setVersion(kept.version);
+    setRevisionId(kept.revisionId ?? null);
     setRestoredAt(kept.at);
   }, [key, set]);
 
   useEffect(() => {
     if (!ready.current || !dirty) return;
-    const now = () => letGo.current || keep(key, { content: present, name, version, at: new Date().toISOString() });
+    const now = () => letGo.current || keep(key, { content: present, name, version, revisionId, at: new Date().toISOString() });
     const timer = setTimeout(now, SAVE_AFTER_MS);
     window.addEventListener("pagehide", now);
     return () => {
       clearTimeout(timer);
       window.removeEventListener("pagehide", now);
     };
-  }, [key, present, name, version, dirty]);
+  }, [key, present, name, version, revisionId, dirty]);
 
   useEffect(() => {
     if (!dirty) return;
@@ -74,13 +84,14 @@ export function usePlantDraft(key: string, start: Start) {
   }, [dirty]);
 
   /** After a save, or to drop the changes: what the server keeps is the plant again. */
-  function settle(content: PlantContent, atVersion: number | null, named = name) {
+  function settle(content: PlantContent, from: From, named = name) {
     keep(key, null);
     letGo.current = true;
     setRestoredAt(null);
     setSaved({ content, name: named });
     setName(named);
-    setVersion(atVersion);
+    setVersion(from.version);
+    setRevisionId(from.revisionId);
     if (content !== present) reset(content);
   }
 
@@ -90,13 +101,14 @@ export function usePlantDraft(key: string, start: Start) {
     name,
     setName,
     version,
+    revisionId,
     dirty,
     restoredAt,
     dismissRestored: () => setRestoredAt(null),
     /** The same content now starts from a newer version. */
     rebase: setVersion,
     settle,
-    discard: () => settle(saved.content, start.version, saved.name),
+    discard: () => settle(saved.content, start, saved.name),
   };
 }
 export type PlantDraft = ReturnType<typeof usePlantDraft>;
