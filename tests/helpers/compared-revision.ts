@@ -1,4 +1,5 @@
 import type { DesignRevision } from "@/lib/schemas/design";
+import type { ResponseFigures } from "@/lib/schemas/evidence";
 
 export type States = readonly { name: string; axis: number | null; accepted: number }[];
 
@@ -63,5 +64,43 @@ export function comparedRevision(
         })),
       },
     },
+  };
+}
+
+const y = { name: "y", axis: 0, accepted: 0.1 };
+const t = { name: "t", axis: 1, accepted: 0.2 };
+const rest = { final: 0, peak: 1, peakAt: null, overshoot: null, undershoot: null, rise: null };
+const step = (source: number, settling: number): ResponseFigures["figures"][number] => ({
+  ...{ loop: "full-state", source, outputs: [], effort: [] },
+  commanded: [0, 1].map((index) => ({ ...rest, settling: index === source ? settling : null })),
+});
+
+export type Stepped = {
+  settling: readonly [number, number];
+  overshoot?: number;
+  effort: number;
+  limit?: number | null;
+  unit?: string;
+};
+
+/** A design of a plant with two commanded quantities, stepped as told. */
+export function steppedRevision(
+  name: string,
+  { settling, overshoot = 4, effort, limit = null, unit = "N" }: Stepped,
+): DesignRevision {
+  const bare = comparedRevision(name, 1, [y, t], [[-1, 0, 0]]);
+  const [input] = bare.model.inputs;
+  const commanded = [y, t].map((signal) => ({ name: signal.name, unit: "m", axis: signal.axis, amplitude: 0.01 }));
+  const fullState = {
+    ...{ worstSettling: Math.max(...settling), worstRise: null, worstOvershoot: overshoot },
+    worstCrossPeak: { source: 0, signal: 1, peak: 0.3 },
+    peakEffort: [{ peak: effort, overLimit: limit === null ? null : effort / limit }],
+  };
+  const figures = settling.map((seconds, source) => step(source, seconds));
+  const responses = { state: "computed", value: { horizon: 5, figures, summary: { fullState, observer: null } } } as const;
+  return {
+    ...bare,
+    model: { ...bare.model, inputs: [{ ...input, unit }], commanded },
+    evidence: { ...bare.evidence, responses },
   };
 }

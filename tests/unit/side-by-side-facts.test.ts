@@ -3,39 +3,10 @@ import { arrangeDesigns } from "@/components/side-by-side/arrange-designs";
 import { compareDesigns } from "@/components/side-by-side/compare-designs";
 import { comparisonSource } from "@/components/side-by-side/comparison-file";
 import { tradeSide } from "@/components/side-by-side/trade-side";
-import type { DesignRevision } from "@/lib/schemas/design";
-import type { ResponseFigures } from "@/lib/schemas/evidence";
-import { comparedRevision } from "../helpers/compared-revision";
+import { comparedRevision, steppedRevision as stepped } from "../helpers/compared-revision";
 
 const y = { name: "y", axis: 0, accepted: 0.1 };
 const t = { name: "t", axis: 1, accepted: 0.2 };
-const rest = { final: 0, peak: 1, peakAt: null, overshoot: null, undershoot: null, rise: null };
-const step = (source: number, settling: number): ResponseFigures["figures"][number] => ({
-  ...{ loop: "full-state", source, outputs: [], effort: [] },
-  commanded: [0, 1].map((index) => ({ ...rest, settling: index === source ? settling : null })),
-});
-
-type Stepped = { settling: readonly [number, number]; overshoot?: number; effort: number; limit?: number | null; unit?: string };
-
-/** A design of a plant with two commanded quantities, stepped as told. */
-function stepped(name: string, { settling, overshoot = 4, effort, limit = null, unit = "N" }: Stepped): DesignRevision {
-  const bare = comparedRevision(name, 1, [y, t], [[-1, 0, 0]]);
-  const [input] = bare.model.inputs;
-  const commanded = [y, t].map((signal) => ({ name: signal.name, unit: "m", axis: signal.axis, amplitude: 0.01 }));
-  const fullState = {
-    ...{ worstSettling: Math.max(...settling), worstRise: null, worstOvershoot: overshoot },
-    worstCrossPeak: { source: 0, signal: 1, peak: 0.3 },
-    peakEffort: [{ peak: effort, overLimit: limit === null ? null : effort / limit }],
-  };
-  const figures = settling.map((seconds, source) => step(source, seconds));
-  const responses = { state: "computed", value: { horizon: 5, figures, summary: { fullState, observer: null } } } as const;
-  return {
-    ...bare,
-    model: { ...bare.model, inputs: [{ ...input, unit }], commanded },
-    evidence: { ...bare.evidence, responses },
-  };
-}
-
 const calm = stepped("Calm", { settling: [4.8, 2], effort: 40, limit: 100 });
 const quick = stepped("Quick", { settling: [1, 3.6], effort: 120, limit: 100 });
 const wild = comparedRevision("Wild", 1, [y, t], [[-1, 0, 0]]);

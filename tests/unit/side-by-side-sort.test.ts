@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { type Picked, pickedWords, togglePicked } from "@/components/designs/picked-revisions";
 import type { Fact } from "@/components/side-by-side/compared-rows";
 import { nextSorting, sortedPlaces, sortingWords } from "@/components/side-by-side/sort-designs";
 
@@ -48,4 +49,23 @@ test("a figure pressed again turns the order round, then goes back to the one ch
   expect(nextSorting(least, KEY)).toEqual(most);
   expect(nextSorting(most, KEY)).toBeNull();
   expect(nextSorting(most, "observer rise")).toEqual({ key: "observer rise", order: "least" });
+});
+
+describe("revisions chosen to stand side by side", () => {
+  const one = (number: number): Picked => ({ id: `id ${number}`, name: "Stiff", number });
+  const six = [1, 2, 3, 4, 5, 6].map(one);
+  test("keep the order they were chosen in, and leave it when they are pressed again", () => {
+    expect(togglePicked([one(2)], one(1))).toEqual([one(2), one(1)]);
+    expect(togglePicked([one(2), one(1)], { ...one(2) })).toEqual([one(1)]);
+  });
+  test("are six at most", () => {
+    expect(togglePicked(six, one(7))).toEqual(six);
+    expect(togglePicked(six, one(3))).toHaveLength(5);
+  });
+  test("are counted in words", () => {
+    expect([[], six.slice(0, 1), six.slice(0, 3), six].map(pickedWords)).toEqual([
+      ...["Choose two to six designs, or revisions of one, to compare.", "1 chosen, one more is needed."],
+      ...["3 chosen.", "6 chosen, as many as fit."],
+    ]);
+  });
 });
