@@ -80,6 +80,7 @@ export function placePoles({ A, B, poles, allowDefective = false }: PlacementPro
   const { chosen, fixed } = choose({ A, B }, wanted, scaled, inUnit, allowDefective);
   const { K, method, check } = chosen;
   const gain = K.clone().mul(effort).div(time);
+  requireKept(K, gain.clone().mul(time).div(effort));
   const achieved = check.achieved.map(({ re, im }) => ({ re: re / time, im: im / time }));
   requireSameSide(poles, achieved);
   const gainNorm = (singularValues(K)[0] * effort) / time;
@@ -146,4 +147,12 @@ function requireSameSide(wanted: readonly Complex[], achieved: readonly Complex[
 
 function unitPower(size: number): number {
   return size === 0 ? 1 : powerOfTwo(-exponentOf(size));
+}
+
+/** The gain was judged in its own units: digits that underflow beside the given ones would move poles unseen. */
+function requireKept(judged: Matrix, given: Matrix): void {
+  for (let i = 0; i < judged.rows; i++)
+    for (let j = 0; j < judged.columns; j++)
+      if (given.get(i, j) !== judged.get(i, j) && Number.isFinite(given.get(i, j)))
+        throw new NumericalError("too-sensitive", { limit: USABLE_POLE_ERROR });
 }
