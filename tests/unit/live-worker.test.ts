@@ -89,6 +89,15 @@ test("an answer to something that was dropped is not taken for the newest", asyn
   expect(await second).toEqual({ kind: "done", value: solution(2) });
 });
 
+test("a late failure of a worker that was ended does not end the one after it", async () => {
+  void live.run(design(recipe("a")));
+  live.stop();
+  const next = live.run(design(recipe("b")));
+  worker(0).dispatchEvent(new Event("error"));
+  worker(1).answer(solution(5));
+  expect(await next).toEqual({ kind: "done", value: solution(5) });
+});
+
 test("what takes half a minute is given up", async () => {
   const asked = live.run(design(recipe("endless")));
   vi.advanceTimersByTime(30_000);

@@ -69,7 +69,8 @@ export class LiveWorker {
     try {
       const worker = this.#makeWorker();
       worker.addEventListener("message", ({ data }: MessageEvent<LiveAnswer>) => this.#told(data));
-      worker.addEventListener("error", () => this.#endRunning({ kind: "broken" }));
+      // One that was ended while its program was still being fetched may say so late: that is not the present one's failure.
+      worker.addEventListener("error", () => worker === this.#worker && this.#endRunning({ kind: "broken" }));
       this.#worker = worker;
     } catch {
       return null; // no workers here: the caller has another way
