@@ -1,5 +1,5 @@
 import type { Criterion, Verdict } from "../design/criteria";
-import { formatNumber, formatSeconds } from "./format-number";
+import { formatNumber } from "./format-number";
 
 type Kind = Criterion["kind"];
 
@@ -11,9 +11,12 @@ export const CRITERION_WORDS: Readonly<Record<Kind, { readonly name: string; rea
   effort: { name: "peak effort", of: "input", unit: "% of its limit" },
 };
 
-/** Enough for any double: what differs is shown to differ. */
-const MOST_DIGITS = 17;
 const DIGITS = 3;
+/** Enough for any double. */
+const MOST_DIGITS = 17;
+/** As many as any decimal number keeps. */
+const LIMIT_DIGITS = 15;
+/** Less is not written out: no machine shows it. */
 const LEAST_PERCENT = 0.01;
 
 /** "settling of y to 2 %", "cross-axis peak while y is commanded", "worst overshoot". */
@@ -24,24 +27,19 @@ export function criterionSubject({ kind, signal }: Criterion): string {
   return kind === "cross-peak" ? `${name} while ${signal} is commanded` : `${name} of ${signal}`;
 }
 
-/** A figure of a criterion with its unit; none in percent that is written out to a digit no machine shows. */
-export function criterionFigure(kind: Kind, value: number, digits = DIGITS): string {
-  if (kind === "settling") return formatSeconds(value, digits);
-  return value !== 0 && Math.abs(value) < LEAST_PERCENT && digits === DIGITS
-    ? `< ${LEAST_PERCENT} %`
-    : `${formatNumber(value, digits)} %`;
-}
+const UNITS: Readonly<Record<Kind, string>> = { settling: "s", overshoot: "%", "cross-peak": "%", effort: "%" };
 
-/** Figure and limit in as many digits as tell them apart; null where there is no figure. */
-export function criterionFigures({ criterion: { kind, limit }, value }: Pick<Verdict, "criterion" | "value">): {
-  readonly value: string | null;
-  readonly limit: string;
-} {
-  for (let digits = DIGITS; value !== null && digits <= MOST_DIGITS; digits++) {
-    const shown = { value: criterionFigure(kind, value, digits), limit: criterionFigure(kind, limit, digits) };
-    if (value === limit || shown.value !== shown.limit) return shown;
-  }
-  return { value: null, limit: criterionFigure(kind, limit) };
+/** A limit as it was written, with its unit. */
+export const criterionLimit = ({ kind, limit }: Criterion): string => `${formatNumber(limit, LIMIT_DIGITS)} ${UNITS[kind]}`;
+
+/** The figure in as many digits as show on which side of its limit it is, and in the limit's unit; null where there is none. */
+export function criterionValue({ criterion: { kind, limit }, value }: Pick<Verdict, "criterion" | "value">): string | null {
+  if (value === null) return null;
+  const slight = kind !== "settling" && value !== 0 && value < LEAST_PERCENT && (limit === 0 || limit >= LEAST_PERCENT);
+  if (slight) return `< ${LEAST_PERCENT} %`;
+  let digits = DIGITS;
+  while (digits < MOST_DIGITS && Math.sign(Number(value.toPrecision(digits)) - limit) !== Math.sign(value - limit)) digits++;
+  return `${formatNumber(value, digits)} ${UNITS[kind]}`;
 }
 
 /** Why there is nothing to judge. */
@@ -55,7 +53,7 @@ export function unjudgedWords({ criterion: { kind, signal }, reason }: Pick<Verd
 
 /** "Met: overshoot of y is 1.2 %, at most 5 % is asked." */
 export function verdictSentence(verdict: Verdict): string {
-  const { value, limit } = criterionFigures(verdict);
+  const [value, limit] = [criterionValue(verdict), criterionLimit(verdict.criterion)];
   const subject = criterionSubject(verdict.criterion);
   const word = verdict.met ? "Met" : "Not met";
   if (value === null) return `${word}: ${subject} cannot be judged, since ${unjudgedWords(verdict)}; at most ${limit} is asked.`;

@@ -128,7 +128,7 @@ describe("verdicts", () => {
     expect(acceptance).toMatchObject({ judgedBy: "plant", met: 1, of: 3 });
     expect(acceptance.verdicts.map(({ criterion }) => criterion)).toEqual(sent);
     expect(acceptance.verdicts[0]).toMatchObject({ value: worst, met: true, reason: null });
-    expect(acceptance.verdicts[0].sentence).toMatch(/^Met: worst settling to 2 % is .+ m?s, at most .+ m?s is asked\.$/);
+    expect(acceptance.verdicts[0].sentence).toMatch(/^Met: worst settling to 2 % is .+ s, at most .+ s is asked\.$/);
     expect(acceptance.verdicts[1]).toMatchObject({ value: null, met: false, reason: "no-signal" });
     const share = Math.max(...(design.summary?.peakEffort ?? []).map(({ overLimit }) => overLimit ?? 0));
     expect(acceptance.verdicts[2]).toMatchObject({ value: 100 * share, met: false });

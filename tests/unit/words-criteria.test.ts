@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
 import type { Criterion, Verdict } from "@/control/design/criteria";
-import { criterionFigures, criterionSubject, verdictSentence } from "@/control/words/describe-criterion";
+import { criterionLimit, criterionSubject, criterionValue, verdictSentence } from "@/control/words/describe-criterion";
 
 const of = (kind: Criterion["kind"], signal: string | null, limit: number): Criterion => ({ kind, signal, limit });
 const verdict = (criterion: Criterion, value: number | null, reason: Verdict["reason"] = null): Verdict => ({
@@ -21,7 +21,7 @@ test("a criterion says what it limits, by signal or for the worst", () => {
 describe("a verdict in a sentence", () => {
   test("begins with met or not met and has both figures with their units", () => {
     expect(verdictSentence(verdict(of("settling", "y", 0.1), 0.0834))).toBe(
-      "Met: settling of y to 2 % is 83.4 ms, at most 0.1 s is asked.",
+      "Met: settling of y to 2 % is 0.0834 s, at most 0.1 s is asked.",
     );
     expect(verdictSentence(verdict(of("overshoot", "y", 5), 6.25))).toBe(
       "Not met: overshoot of y is 6.25 %, at most 5 % is asked.",
@@ -44,10 +44,20 @@ describe("a verdict in a sentence", () => {
   });
 });
 
-test("a figure barely beyond its limit is shown in the digits that tell them apart, one at its limit is not", () => {
-  expect(criterionFigures(verdict(of("settling", "y", 0.5), 0.50002))).toEqual({ value: "0.50002 s", limit: "0.5 s" });
-  expect(criterionFigures(verdict(of("overshoot", "y", 5), 5 + 2 ** -50))).toMatchObject({ limit: "5 %" });
-  expect(criterionFigures(verdict(of("overshoot", "y", 5), 5 + 2 ** -50)).value).not.toBe("5 %");
-  expect(criterionFigures(verdict(of("overshoot", "y", 5), 5))).toEqual({ value: "5 %", limit: "5 %" });
-  expect(criterionFigures(verdict(of("overshoot", "y", 0.001), 0.002))).toEqual({ value: "0.002 %", limit: "0.001 %" });
+test("a figure near its limit is shown in the digits that tell its side, one at its limit as it is", () => {
+  const shown = (limit: number, value: number) => criterionValue(verdict(of("settling", "y", limit), value));
+  expect(shown(0.5, 0.50002)).toBe("0.50002 s");
+  expect(shown(0.50002, 0.50003)).toBe("0.50003 s");
+  expect(shown(0.5, 0.49996)).toBe("0.49996 s");
+  expect(shown(5, 5 + 2 ** -50)).toBe("5.000000000000001 s");
+  expect(shown(5, 5)).toBe("5 s");
+  expect(shown(300, 288.4)).toBe("288 s");
+  expect(criterionValue(verdict(of("overshoot", "y", 0.001), 0.002))).toBe("0.002 %");
+  expect(criterionValue(verdict(of("overshoot", "y", 0), 1e-12))).toBe("< 0.01 %");
+});
+
+test("a limit is shown as it was written", () => {
+  expect(criterionLimit(of("settling", null, 0.1))).toBe("0.1 s");
+  expect(criterionLimit(of("settling", null, 1000))).toBe("1000 s");
+  expect(criterionLimit(of("effort", null, 83.123456789))).toBe("83.123456789 %");
 });

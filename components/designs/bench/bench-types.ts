@@ -1,3 +1,4 @@
+import type { Criterion } from "@/control/design/criteria";
 import type { Recipe } from "@/control/design/recipe";
 import type { PlantModel } from "@/control/plant/model";
 import type { Computation, DesignRevision, DesignSummary } from "@/lib/schemas/design";
@@ -14,6 +15,8 @@ export type BenchStart = {
     readonly name: string;
     readonly newest: { readonly id: string; readonly number: number };
     readonly archived: boolean;
+    /** What its designs are held against, as it stands now. */
+    readonly criteria: readonly Criterion[];
   };
   readonly design: DesignSummary | null;
   readonly revision: DesignRevision | null;

@@ -57,9 +57,9 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
       />
       <BenchNotices {...{ bench, start, mayEdit }} />
       {mayEdit ? (
-        <Editing bench={bench} plantName={start.plant.name} />
+        <Editing bench={bench} plant={start.plant} />
       ) : (
-        <Columns bench={bench} plantName={start.plant.name} recipe={<Read bench={bench} />} />
+        <Columns bench={bench} plant={start.plant} recipe={<Read bench={bench} />} />
       )}
       {base.design && base.revision ? <RevisionsList design={base.design} shownId={base.revision.id} /> : null}
       <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={() => setDialog(null)} />
@@ -72,7 +72,7 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
 }
 
 /** Everything that is typed into stands below one context, anew for another plant revision. */
-function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: string }>) {
+function Editing({ bench, plant }: Readonly<{ bench: Bench; plant: BenchStart["plant"] }>) {
   const { base, form, ground, change, undo, redo, setUsable, solving, reading } = bench;
   const { refusal } = solving;
   const problems = useMemo(() => shownProblems(refusal, reading), [refusal, reading]);
@@ -93,7 +93,7 @@ function Editing({ bench, plantName }: Readonly<{ bench: Bench; plantName: strin
     <RecipeContext value={editing}>
       <div key={ground.plantRevision.id}>
         <Columns
-          {...{ bench, plantName }}
+          {...{ bench, plant }}
           trade={form.method === "weights" ? <TradeSection /> : null}
           recipe={
             <>
@@ -134,10 +134,10 @@ function Read({ bench: { base } }: Readonly<{ bench: Bench }>) {
   );
 }
 
-type ColumnsProps = Readonly<{ bench: Bench; plantName: string; recipe: React.ReactNode; trade?: React.ReactNode }>;
+type ColumnsProps = Readonly<{ bench: Bench; plant: BenchStart["plant"]; recipe: React.ReactNode; trade?: React.ReactNode }>;
 
 /** Three columns where there is room, one part below the other on a tablet and on paper. */
-function Columns({ bench, plantName, recipe, trade }: ColumnsProps) {
+function Columns({ bench, plant, recipe, trade }: ColumnsProps) {
   const { base, stale } = bench;
   const { solved } = bench.solving;
   // Curves follow the hand; figures and gains may come a frame later.
@@ -163,10 +163,14 @@ function Columns({ bench, plantName, recipe, trade }: ColumnsProps) {
         <h2 id="evidence-heading" className="mb-3">
           Evidence
         </h2>
-        {settled ? <EvidencePanel solved={settled} /> : <p className="text-soft">It appears with the first solution.</p>}
+        {settled ? (
+          <EvidencePanel plant={plant} solved={settled} />
+        ) : (
+          <p className="text-soft">It appears with the first solution.</p>
+        )}
       </section>
       <div aria-busy={settled !== solved} className={MIDDLE}>
-        {settled ? <GainsSection solved={settled} plantName={plantName} designName={base.design?.name ?? null} /> : null}
+        {settled ? <GainsSection solved={settled} plantName={plant.name} designName={base.design?.name ?? null} /> : null}
       </div>
     </div>
   );

@@ -1,8 +1,9 @@
 import { memo } from "react";
 import { Notice } from "../../ui/notice";
 import { StateMark } from "../../ui/state-mark";
-import type { Solved } from "../bench/bench-types";
+import type { BenchStart, Solved } from "../bench/bench-types";
 import { TWO_COLUMNS } from "../two-columns";
+import { AcceptancePart } from "./acceptance-part";
 import { EvidencePart } from "./evidence-part";
 import { methodText, referenceText } from "./evidence-words";
 import { computed } from "./figures-reply";
@@ -11,13 +12,16 @@ import { RefusedPart } from "./refused-part";
 import { SolvedFacts, Verified } from "./solved-facts";
 import { StepFigures } from "./step-figures";
 
-/** The right column of the page: everything computed, each part by itself, refused parts with their reason. */
-export const EvidencePanel = memo(function EvidencePanel({ solved }: Readonly<{ solved: Solved }>) {
+type EvidencePanelProps = Readonly<{ plant: BenchStart["plant"]; solved: Solved }>;
+
+/** The right column of the page: what is met, then everything computed, each part by itself, refused parts with their reason. */
+export const EvidencePanel = memo(function EvidencePanel({ plant, solved }: EvidencePanelProps) {
   const { evidence, ground } = solved;
   const { model } = ground;
   const poles = computed(evidence.poles);
   return (
     <div className={`flex flex-col gap-6 ${TWO_COLUMNS}`}>
+      <AcceptancePart plant={plant} solved={solved} />
       <StepPart solved={solved} />
       <ReferencePart solved={solved} />
       {poles ? (

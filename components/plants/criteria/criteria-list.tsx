@@ -1,5 +1,5 @@
 import type { Criterion } from "@/control/design/criteria";
-import { criterionFigure, criterionSubject } from "@/control/words/describe-criterion";
+import { criterionLimit, criterionSubject } from "@/control/words/describe-criterion";
 
 /** Criteria to be read: what is limited, and how far. */
 export function CriteriaList({ label, criteria }: Readonly<{ label: string; criteria: readonly Criterion[] }>) {
@@ -9,7 +9,7 @@ export function CriteriaList({ label, criteria }: Readonly<{ label: string; crit
         <li key={`${criterion.kind} ${criterion.signal}`} className="flex flex-wrap justify-between gap-x-4 py-1">
           <span>{criterionSubject(criterion)}</span>
           <span>
-            at most <span className="font-mono">{criterionFigure(criterion.kind, criterion.limit)}</span>
+            at most <span className="font-mono">{criterionLimit(criterion)}</span>
           </span>
         </li>
       ))}

@@ -6,7 +6,7 @@ import { NumberField } from "../../ui/number-field";
 import { Select } from "../../ui/select";
 import { RowButton } from "../editor/row-button";
 import { type CriterionLine, KINDS, signalsOf, withKind } from "./criterion-lines";
-import { type CriteriaEditing, limitId, limitPointer, signalId, signalPointer } from "./use-criteria";
+import { type CriteriaEditing, limitId, signalId, signalPointer } from "./use-criteria";
 
 type CriterionRowProps = Readonly<{ line: CriterionLine; index: number; content: PlantContent; editing: CriteriaEditing }>;
 
@@ -16,7 +16,7 @@ const WORST = "";
 /** One criterion: what is limited, of which signal, and how far. */
 export function CriterionRow({ line, index, content, editing }: CriterionRowProps) {
   const { kind, signal, limit, key } = line;
-  const { put, remove, setUsable, submit } = editing;
+  const { put, remove, setUsable, submit, limitProblem } = editing;
   const label = (what: string) => `${what} of criterion ${index + 1}`;
   const known = signalsOf(kind, content);
   const gone = signal !== null && !known.includes(signal) ? [{ value: signal, label: `${signal}, not in this plant` }] : [];
@@ -49,7 +49,7 @@ export function CriterionRow({ line, index, content, editing }: CriterionRowProp
           hideLabel
           unit={CRITERION_WORDS[kind].unit}
           value={limit}
-          problem={submit.at(limitPointer(index))}
+          problem={limitProblem(line, index)}
           onChange={(value) => put({ ...line, limit: value })}
           onUsable={(usable) => setUsable(key, usable)}
         />

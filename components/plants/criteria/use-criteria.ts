@@ -12,7 +12,7 @@ import { type CriterionLine, linesOf, nextLine, saysTheSame, sentOf } from "./cr
 
 export const limitId = (index: number) => `criterion-${index + 1}-limit`;
 export const signalId = (index: number) => `criterion-${index + 1}-signal`;
-export const limitPointer = (index: number) => `/criteria/${index}/limit`;
+const limitPointer = (index: number) => `/criteria/${index}/limit`;
 export const signalPointer = (index: number) => `/criteria/${index}/signal`;
 
 /** The criteria of a plant while they are written, and their saving as one. */
@@ -22,14 +22,14 @@ export function useCriteria(plant: Plant, onSaved: (saved: Plant) => void) {
   const [stored, setStored] = useState(plant.criteria);
   const [round, setRound] = useState(0);
   const [lines, setLines] = useState(() => linesOf(plant.criteria, 0));
-  const [unread, setUnread] = useState<ReadonlySet<string>>(new Set());
+  const odd = useUnread();
   const [theirs, setTheirs] = useState<Plant | null>(null);
   const fields = lines.flatMap((_, k) => [
     [signalPointer(k), signalId(k)],
     [limitPointer(k), limitId(k)],
   ]);
   const submit = useSubmit(Object.fromEntries(fields));
-  const dirty = !saysTheSame(lines, stored) || unread.size > 0;
+  const dirty = !saysTheSame(lines, stored) || odd.unread.size > 0;
   useLeaveWarning(dirty);
 
   const show = (criteria: Plant["criteria"]) => {
@@ -62,14 +62,18 @@ export function useCriteria(plant: Plant, onSaved: (saved: Plant) => void) {
   const change = (next: (now: CriterionLine[]) => CriterionLine[]) => {
     // Problems are told by place, and places move.
     submit.clear();
+    odd.setTried(false);
     setLines(next);
   };
 
   return {
-    ...{ lines, dirty, theirs, submit, settle, unread },
+    ...{ lines, dirty, theirs, submit, settle },
+    setUsable: odd.setUsable,
+    limitProblem: ({ key }: CriterionLine, index: number) => odd.problemOf(key) ?? submit.at(limitPointer(index)),
     save: () => {
-      const odd = lines.findIndex(({ key }) => unread.has(key));
-      if (odd >= 0) document.getElementById(limitId(odd))?.focus();
+      odd.setTried(true);
+      const first = lines.findIndex(({ key }) => odd.unread.has(key));
+      if (first >= 0) document.getElementById(limitId(first))?.focus();
       else if (overtaken && !theirs) setTheirs(plant);
       else void saveFrom(theirs ?? plant);
     },
@@ -84,14 +88,24 @@ export function useCriteria(plant: Plant, onSaved: (saved: Plant) => void) {
       show(plant.criteria);
       setTheirs(null);
     },
+  };
+}
+export type CriteriaEditing = ReturnType<typeof useCriteria>;
+
+/** Lines whose field holds a text that is no number; said once somebody tried to save. */
+function useUnread() {
+  const [unread, setUnread] = useState<ReadonlySet<string>>(new Set());
+  const [tried, setTried] = useState(false);
+  return {
+    ...{ unread, setTried },
     setUsable: (key: string, usable: boolean) =>
       setUnread((now) => {
         const others = [...now].filter((one) => one !== key);
         return new Set(usable ? others : [...others, key]);
       }),
+    problemOf: (key: string) => (tried && unread.has(key) ? "This is not a number. Write for example 0.25." : undefined),
   };
 }
-export type CriteriaEditing = ReturnType<typeof useCriteria>;
 
 /** The browser asks before it drops what is not saved. */
 function useLeaveWarning(dirty: boolean): void {

@@ -30,7 +30,10 @@ const load = cache(async (plantId: string, designId: string, asked: string | nul
     const revision = await readDesignRevision(ctx, asked ?? design.currentRevision.id);
     if (design.plantId !== plantId || revision.designId !== designId) notFound();
     return {
-      plant: { id: plantId, name: plant.name, newest: plant.currentRevision, archived: plant.archivedAt !== null },
+      plant: {
+        ...{ id: plantId, name: plant.name, newest: plant.currentRevision, archived: plant.archivedAt !== null },
+        criteria: plant.criteria,
+      },
       design,
       revision,
       older: revision.id !== design.currentRevision.id,

@@ -21,9 +21,9 @@ type PageProps = Readonly<{ params: Promise<{ plantId: string }> }>;
 async function load(ctx: Context, plantId: string): Promise<BenchStart> {
   if (!PlantAddress.safeParse({ plantId }).success) notFound();
   try {
-    const { name, archivedAt, currentRevision } = await readPlant(ctx, plantId);
+    const { name, archivedAt, currentRevision, criteria } = await readPlant(ctx, plantId);
     const model = (await readPlantRevision(ctx, plantId, currentRevision.id)).model as PlantModel;
-    const plant = { id: plantId, name, newest: currentRevision, archived: archivedAt !== null };
+    const plant = { id: plantId, name, newest: currentRevision, archived: archivedAt !== null, criteria };
     const ground = { plantRevision: currentRevision, model };
     return { plant, design: null, revision: null, older: false, ground, recipe: defaultRecipe(model) };
   } catch (error) {
