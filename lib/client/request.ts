@@ -10,6 +10,8 @@ export type RequestOptions = {
   /** For a create: the same key again when the same create is sent again; see `newKey`. */
   readonly key?: string;
   readonly signal?: AbortSignal;
+  /** Goes on although the page is left; for small bodies only. */
+  readonly keepalive?: boolean;
   /** Before the path, outside a browser. */
   readonly base?: string;
 };
@@ -79,7 +81,7 @@ export async function request<T>(path: string, options: RequestOptions = {}): Pr
 
 async function send(
   path: string,
-  { method = "GET", query, body, version, key, signal, base = "" }: RequestOptions,
+  { method = "GET", query, body, version, key, signal, keepalive, base = "" }: RequestOptions,
 ): Promise<Response> {
   const headers: Record<string, string> = { accept: "application/json" };
   if (body !== undefined) headers["content-type"] = "application/json";
@@ -88,6 +90,7 @@ async function send(
   const init: RequestInit = { method, headers, credentials: "same-origin", cache: "no-store" };
   if (body !== undefined) init.body = JSON.stringify(body);
   if (signal) init.signal = signal;
+  if (keepalive) init.keepalive = true;
   try {
     return await fetch(`${base}${path}${queryText(query)}`, init);
   } catch (error) {

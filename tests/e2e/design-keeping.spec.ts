@@ -10,6 +10,7 @@ import {
   openDesign,
   part,
   press,
+  reloadKept,
   saveAsDesign,
   saveDesignRevision,
   sendDesignRevision,
@@ -18,7 +19,7 @@ import {
   untilSolved,
 } from "../helpers/design-page";
 import { twoCarriages } from "../helpers/plant-content";
-import { reloadUnsaved, untilKept } from "../helpers/plant-page";
+import { untilKept } from "../helpers/plant-page";
 import { byWeights } from "../helpers/recipes";
 import { expect, storedPlant, test } from "../helpers/team-test";
 
@@ -105,13 +106,13 @@ test("a design is renamed, duplicated, archived, and brought back from its messa
   await expect(designs.getByRole("rowheader")).toHaveText([/^Quiet beam, copy/]);
 });
 
-test("an unsaved recipe is back after a reload, which asks first, and can be let go", async ({ page, team }) => {
+test("an unsaved recipe is back after a reload and can be let go", async ({ page, team }) => {
   const plant = await storedPlant(team.lead.request);
   const design = await storedDesign(team.lead.request, plant);
   await openDesign(page, designPath(design));
   await figure(page, DEVIATION).fill("0.00077");
   await untilKept(page, "0.00077");
-  await reloadUnsaved(page);
+  await reloadKept(page);
   await expect(figure(page, DEVIATION)).toHaveValue("0.00077");
   await press(page, "Discard them");
   await expect(figure(page, DEVIATION)).toHaveValue("0.001");

@@ -85,6 +85,23 @@ export const evidence = (page: Page, title: string | RegExp): Locator =>
     .locator("section")
     .filter({ has: page.getByRole("heading", { level: 3, name: title, exact: typeof title === "string" }) });
 
+/** Once the unsaved work is on the server; the limit is what a reader is promised. */
+export async function untilDraftSaved(page: Page): Promise<void> {
+  await expect(page.getByText("Draft saved", { exact: true })).toBeVisible({ timeout: 2_000 });
+}
+
+/** Leaves with unsaved work that is kept: nobody is asked, and the work is back afterwards. */
+export async function reloadKept(page: Page): Promise<void> {
+  const asked: string[] = [];
+  page.on("dialog", (dialog) => {
+    asked.push(dialog.type());
+    void dialog.accept();
+  });
+  await page.reload();
+  expect(asked).toEqual([]);
+  await expect(page.getByText("Your unsaved changes are back.")).toBeVisible();
+}
+
 /** Saves the recipe on the page as a design of its own. */
 export async function saveAsDesign(page: Page, name: string): Promise<void> {
   await press(page, "Save design");

@@ -1,8 +1,8 @@
 import { describe, expect, test } from "vitest";
 import { baseOf, isDirty, isStale, startedFrom, withDesign } from "@/components/designs/bench/bench-base";
-import { fitsPlant } from "@/components/designs/bench/draft-store";
 import { cellProblems, problemAt, shownProblems } from "@/components/designs/bench/recipe-problems-at";
 import { recipeRefusal } from "@/components/designs/bench/recipe-refusal";
+import { fitsPlant } from "@/components/designs/drafts/draft-store";
 import { poleFigureText, referenceText, slowFirst } from "@/components/designs/evidence/evidence-words";
 import type { EvidenceReply } from "@/components/designs/evidence/figures-reply";
 import { stepFigureRows } from "@/components/designs/evidence/step-figure-rows";

@@ -1,9 +1,10 @@
 import { defaultRecipe } from "@/control/design/default-recipe";
+import type { DraftSubject } from "@/lib/client/drafts";
 import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
+import type { Unsaved } from "../drafts/draft-store";
 import { type FormReading, recipeKey } from "../recipe/read-form";
 import { formOf, type RecipeForm } from "../recipe/recipe-form";
 import type { BenchStart, Ground, Solved } from "./bench-types";
-import type { Unsaved } from "./use-kept-draft";
 
 /** What the page's edits are held against. */
 export type Base = Pick<BenchStart, "design" | "revision" | "recipe" | "ground"> & {
@@ -56,8 +57,14 @@ export function withDesign(base: Base, design: DesignSummary): Base {
   return { ...base, design, from: fresh ? startedFrom(design) : base.from };
 }
 
-/** What a draft is kept under: one per design, and one for each older revision that is edited on its own. */
-export function draftSubject({ design, revision, older, plant }: BenchStart): string {
+/** What a draft is of: a design, an older revision that is edited on its own, or a new design of the plant. */
+export function draftSubject({ design, revision, older, plant }: BenchStart): DraftSubject {
+  const ofDesign = older && revision ? revision.id : design?.id;
+  return { plantId: plant.id, subjectId: ofDesign ?? plant.id };
+}
+
+/** What the copy in the browser is kept under. */
+export function draftName({ design, revision, older, plant }: BenchStart): string {
   if (!design) return `new:${plant.id}`;
   return older && revision ? `${design.id}@${revision.id}` : design.id;
 }

@@ -5,11 +5,11 @@ import { Button } from "../../ui/button";
 import { Chip } from "../../ui/chip";
 import { LinkButton } from "../../ui/link-button";
 import { type Crumb, PageHeading } from "../../ui/page-heading";
+import { DraftState } from "../drafts/draft-state";
 import { DesignMenu } from "../saving/design-menu";
 import { sideBySideAddress } from "../side-by-side-address";
 import type { BenchStart } from "./bench-types";
 import type { Bench } from "./use-bench";
-import type { Keeping } from "./use-kept-draft";
 
 type BenchHeadingProps = Readonly<{
   bench: Bench;
@@ -18,14 +18,8 @@ type BenchHeadingProps = Readonly<{
   mayEdit: boolean;
   onSave: () => void;
   onSaveAsNew: () => void;
+  onKeys: () => void;
 }>;
-
-const KEEPING: Readonly<Record<Keeping, string>> = {
-  nothing: "",
-  keeping: "keeping them in this browser…",
-  kept: "kept in this browser",
-  "not kept": "not kept: this browser stores nothing",
-};
 
 function crumbsOf({ plant }: BenchStart, { ground: { plantRevision, model } }: Bench): Crumb[] {
   const size = `${model.states.length} states, ${model.inputs.length} inputs, ${model.outputs.length} outputs`;
@@ -38,8 +32,8 @@ function crumbsOf({ plant }: BenchStart, { ground: { plantRevision, model } }: B
   ];
 }
 
-export function BenchHeading({ bench, start, mayWrite, mayEdit, onSave, onSaveAsNew }: BenchHeadingProps) {
-  const { base, dirty, keeping } = bench;
+export function BenchHeading({ bench, start, mayWrite, mayEdit, onSave, onSaveAsNew, onKeys }: BenchHeadingProps) {
+  const { base, dirty, drafting } = bench;
   const { design, revision } = base;
   return (
     <PageHeading
@@ -50,7 +44,7 @@ export function BenchHeading({ bench, start, mayWrite, mayEdit, onSave, onSaveAs
           {revision ? <Chip>Revision {revision.number}</Chip> : null}
           {design?.archivedAt ? <Chip>archived</Chip> : null}
           {start.plant.archived ? <Chip>plant archived</Chip> : null}
-          <span role="status">{dirty && mayEdit ? <Chip kind="caution">Unsaved changes, {KEEPING[keeping]}</Chip> : null}</span>
+          {mayEdit ? <DraftState drafting={drafting} dirty={dirty} /> : null}
         </>
       }
       actions={
@@ -65,6 +59,9 @@ export function BenchHeading({ bench, start, mayWrite, mayEdit, onSave, onSaveAs
               </Button>
             </>
           ) : null}
+          <Button tone="quiet" onClick={onKeys}>
+            Keys
+          </Button>
           {revision ? <LinkButton href={sideBySideAddress(start.plant.id, [revision.id])}>Side-by-side</LinkButton> : null}
           {mayWrite && design ? <DesignMenu design={design} onChanged={bench.setDesign} onSaveAsNew={onSaveAsNew} /> : null}
           {mayEdit ? (

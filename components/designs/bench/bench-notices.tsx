@@ -6,6 +6,7 @@ import { Button } from "../../ui/button";
 import { LinkButton } from "../../ui/link-button";
 import { Notice } from "../../ui/notice";
 import { UnsavedBack } from "../../ui/unsaved-back";
+import { DraftNotices } from "../drafts/draft-notices";
 import type { BenchStart } from "./bench-types";
 import type { Bench } from "./use-bench";
 
@@ -17,6 +18,7 @@ export function BenchNotices({ bench, start, mayEdit }: BenchNoticesProps) {
     <>
       <RestoredNotice bench={bench} />
       <div className="mb-6 flex flex-col gap-3 empty:hidden">
+        <DraftNotices drafting={bench.drafting} dirty={bench.dirty} />
         <OlderNotice bench={bench} plantId={start.plant.id} mayEdit={mayEdit} />
         <OutdatedNotice bench={bench} newest={start.plant.newest} mayEdit={mayEdit} />
       </div>
@@ -29,7 +31,7 @@ function RestoredNotice({ bench: { found, base, discard, dismissFound, dirty } }
   const { design } = base;
   const overtaken = design !== null && found.base !== null && found.base.revisionId !== design.currentRevision.id;
   return (
-    <UnsavedBack at={found.at} onKeep={dismissFound} onDiscard={discard}>
+    <UnsavedBack at={found.at} where={found.where} onKeep={dismissFound} onDiscard={discard}>
       {overtaken ? ` Since then revision ${design.currentRevision.number} was saved; saving yours will show what differs.` : ""}
     </UnsavedBack>
   );

@@ -10,6 +10,9 @@ import { EvidencePanel } from "../evidence/evidence-panel";
 import { polesOfReport } from "../evidence/evidence-words";
 import { computed } from "../evidence/figures-reply";
 import { GainsSection } from "../gains/gains-section";
+import { KeyMap } from "../keys/key-map";
+import { useBenchKeys } from "../keys/use-bench-keys";
+import { useMapKey } from "../keys/use-map-key";
 import { RecipeContext, type RecipeEditing } from "../recipe/recipe-context";
 import { recipeFields } from "../recipe/recipe-fields";
 import { RecipeMatrices } from "../recipe/recipe-matrices";
@@ -33,27 +36,38 @@ import { SolveBar } from "./solve-bar";
 import { SolveRefusal } from "./solve-refusal";
 import { type Bench, useBench } from "./use-bench";
 import { useNewestAddress } from "./use-newest-address";
-import { useSolveKey } from "./use-solve-key";
 
 /** The page of a design: recipe, coupled responses and evidence side by side, the gains below. */
 export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
   const mayWrite = useSession().role !== "reviewer";
   const bench = useBench(start, mayWrite);
   const saving = useSaving(bench, start.plant.id);
-  const [dialog, setDialog] = useState<"revision" | "new" | null>(null);
+  const [dialog, setDialog] = useState<"revision" | "new" | "keys" | null>(null);
+  const [mapByKey, setMapByKey] = useMapKey();
   const { base, reading } = bench;
   const mayEdit = mayWrite && !base.design?.archivedAt;
   useNewestAddress(start, base);
-  useSolveKey(() => void (bench.solving.busy || bench.solve()), mayEdit);
   // A recipe that cannot be sent is not asked a name for: its fields say first what is wrong.
   const open = (which: "revision" | "new") => (reading.recipe ? setDialog(which) : void bench.solve());
+  const save = () => open(base.design ? "revision" : "new");
+  const close = () => setDialog(null);
+  useBenchKeys({
+    ...(mapByKey && { map: () => setDialog("keys") }),
+    ...(mayEdit && {
+      solve: () => void (bench.solving.busy || bench.solve()),
+      save: () => void (base.design !== null && !bench.dirty ? null : save()),
+      undo: bench.undo,
+      redo: bench.redo,
+    }),
+  });
   const suggested = base.design ? `${base.design.name}, next`.slice(0, 120) : "";
   return (
     <>
       <BenchHeading
         {...{ bench, start, mayWrite, mayEdit }}
-        onSave={() => open(base.design ? "revision" : "new")}
+        onSave={save}
         onSaveAsNew={() => open("new")}
+        onKeys={() => setDialog("keys")}
       />
       <BenchNotices {...{ bench, start, mayEdit }} />
       {mayEdit ? (
@@ -62,10 +76,11 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
         <Columns bench={bench} plant={start.plant} recipe={<Read bench={bench} />} />
       )}
       {base.design && base.revision ? <RevisionsList design={base.design} shownId={base.revision.id} /> : null}
-      <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={() => setDialog(null)} />
+      <SaveRevisionDialog {...{ bench, saving }} open={dialog === "revision"} onClose={close} />
       {dialog === "new" ? (
-        <SaveNewDialog {...{ bench, saving, suggested }} plantId={start.plant.id} open onClose={() => setDialog(null)} />
+        <SaveNewDialog {...{ bench, saving, suggested }} plantId={start.plant.id} open onClose={close} />
       ) : null}
+      <KeyMap open={dialog === "keys"} onClose={close} mayEdit={mayEdit} byKey={mapByKey} onByKey={setMapByKey} />
       <ConflictDialog {...{ bench, saving }} onCopy={() => setDialog("new")} />
     </>
   );

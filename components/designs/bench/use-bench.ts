@@ -10,22 +10,10 @@ import { type FormReading, readForm } from "../recipe/read-form";
 import { recipeFields } from "../recipe/recipe-fields";
 import { formOf, type RecipeForm } from "../recipe/recipe-form";
 import { useRecipeForm } from "../recipe/use-recipe-form";
-import {
-  type Base,
-  baseOf,
-  draftSubject,
-  groundOf,
-  isDirty,
-  isStale,
-  startedFrom,
-  storedBase,
-  unsavedOf,
-  withDesign,
-} from "./bench-base";
+import { type Base, baseOf, groundOf, isDirty, isStale, startedFrom, storedBase, withDesign } from "./bench-base";
 import { asStored, type BenchStart, type Ground } from "./bench-types";
-import { draftKey, fitsPlant, type RecipeDraft } from "./draft-store";
+import { useBenchDraft } from "./use-bench-draft";
 import { useFollowing } from "./use-following";
-import { useKeptDraft } from "./use-kept-draft";
 import { useSolving } from "./use-solving";
 import { useUnread, withUnread } from "./use-unread";
 
@@ -33,10 +21,8 @@ export type Bench = ReturnType<typeof useBench>;
 
 /** Everything the page of a design holds: what is stored, what is being written, what was solved last. */
 export function useBench(start: BenchStart, mayWrite: boolean) {
-  const { teamId, userId } = useSession();
   const [base, setBase] = useState<Base>(() => baseOf(start));
   const [ground, setGround] = useState(start.ground);
-  const [found, setFound] = useState<RecipeDraft | null>(null);
   const [firstForm] = useState(() => formOf(start.recipe, start.ground.model));
   const editing = useRecipeForm(firstForm);
   const { form, reset } = editing;
@@ -45,27 +31,16 @@ export function useBench(start: BenchStart, mayWrite: boolean) {
   const dirty = useMemo(() => isDirty(base, ground, reading), [base, ground, reading]);
   const { solving, stale } = useFollowedSolving(start, form, ground, reading, mayWrite);
   const { setSolved, solve, clear } = solving;
-  const unsaved = useMemo(
-    () => (dirty && mayWrite ? unsavedOf(form, ground, base) : null),
-    [dirty, mayWrite, form, ground, base],
-  );
   const plantRevision = usePlantRevision(start.plant.id);
 
-  const takeUp = async (draft: RecipeDraft) => {
-    const same = draft.plantRevisionId === start.ground.plantRevision.id;
-    const its = same ? start.ground : await plantRevision(draft.plantRevisionId).catch(() => null);
-    if (!its || !fitsPlant(draft.form, its.model)) return;
-    setGround(its);
-    reset(draft.form);
-    setFound(draft);
-    setBase((now) => ({ ...now, from: draft.base ?? now.from }));
-  };
-  const key = draftKey(teamId, userId, draftSubject(start));
-  const kept = useKeptDraft({ key, unsaved, onFound: (draft) => void (mayWrite && takeUp(draft)) });
+  const { drafting, forget, found, setFound } = useBenchDraft({
+    ...{ start, dirty, editing, base, setBase, ground, setGround, plantRevision },
+    active: mayWrite,
+  });
 
   return {
     ...editing,
-    ...kept,
+    ...{ drafting, forget },
     ...{ base, ground, reading, dirty, stale, solving, found, setUsable },
     solve: () => solve(reading, ground),
     /** What is stored now is where the next edit starts from. */

@@ -56,6 +56,17 @@ let nextKey = 1;
 export const draftsOf = (entries: readonly PoleEntry[]): PoleDraft[] => entries.map((entry) => draftOf(entry, nextKey++));
 export const blankDraft = (): PoleDraft => ({ key: nextKey++, kind: "damping", first: null, second: null });
 
+/** A form from another visit: its keys may be those of entries on this page. */
+export const rekeyed = (form: RecipeForm): RecipeForm => {
+  const fresh = (drafts: readonly PoleDraft[]) => drafts.map((draft) => ({ ...draft, key: nextKey++ }));
+  const { poles, observer } = form;
+  return {
+    ...form,
+    poles: fresh(poles),
+    observer: { ...observer, poles: fresh(observer.poles), reduced: fresh(observer.reduced) },
+  };
+};
+
 /**
  * Noise to start from: each state is pushed by a tenth of its largest acceptable deviation, each output wavers by a hundredth of its own.
  */

@@ -1,32 +1,45 @@
 import type { PlantModel } from "@/control/plant/model";
 import type { RecipeForm } from "../recipe/recipe-form";
 
-/** A recipe that is not saved yet, in the browser's storage. */
-export type RecipeDraft = {
-  readonly version: 1;
+/** What stands on the bench and is not saved. */
+export type Unsaved = {
   readonly form: RecipeForm;
   readonly plantRevisionId: string;
-  /** Version and revision of the design that the edit started from; null for a new one. */
+  /** Version and newest revision of the design that the edit started from; null for a new one. */
   readonly base: { readonly version: number; readonly revisionId: string } | null;
+};
+
+/** Unsaved work that came back: from this browser's storage, or as the server keeps it. */
+export type RecipeDraft = Unsaved & { readonly at: string; readonly where: "browser" | "server" };
+
+/** The copy in the browser's storage, and what it knows of the server's: see `AutosaveStatus`. */
+export type LocalDraft = RecipeDraft & { readonly marks: readonly string[]; readonly synced: boolean };
+
+type Stored = Unsaved & {
+  readonly version: 1;
   readonly at: string;
+  readonly marks?: readonly string[];
+  readonly synced?: boolean;
 };
 
 export const draftKey = (teamId: string, userId: string, what: string) => `gainwright:design:${teamId}:${userId}:${what}`;
 
-export function readDraft(key: string): RecipeDraft | null {
+export function readLocalDraft(key: string): LocalDraft | null {
   try {
     const text = localStorage.getItem(key);
-    const draft = text === null ? null : (JSON.parse(text) as RecipeDraft);
-    return draft?.version === 1 ? draft : null;
+    const stored = text === null ? null : (JSON.parse(text) as Stored);
+    if (stored?.version !== 1) return null;
+    const { form, plantRevisionId, base, at, marks = [], synced = false } = stored;
+    return { form, plantRevisionId, base, at, marks, synced, where: "browser" };
   } catch {
     return null; // storage switched off or not ours: the page works without it
   }
 }
 
-/** False where the browser keeps nothing; leaving the page still asks first. */
-export function keepDraft(key: string, draft: RecipeDraft | null): boolean {
+/** False where the browser keeps nothing. */
+export function keepLocalDraft(key: string, draft: Omit<LocalDraft, "where"> | null): boolean {
   try {
-    if (draft) localStorage.setItem(key, JSON.stringify(draft));
+    if (draft) localStorage.setItem(key, JSON.stringify({ ...draft, version: 1 } satisfies Stored));
     else localStorage.removeItem(key);
     return true;
   } catch {
