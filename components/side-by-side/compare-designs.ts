@@ -5,6 +5,7 @@ import { computed } from "../designs/evidence/figures-reply";
 import { gainMatrices } from "../designs/gains/gain-matrices";
 import type { GainFacts } from "../designs/gains/gain-text";
 import { recipeLines } from "../designs/recipe/recipe-lines";
+import { acceptanceFacts } from "./acceptance-facts";
 import type { Fact } from "./compared-rows";
 import { evidenceFacts } from "./evidence-facts";
 import { type ObserverFacts, observerFacts } from "./observer-words";
@@ -64,11 +65,12 @@ const mixedForms = (revisions: readonly DesignRevision[]) => {
   return new Set(forms).size > 1;
 };
 
-/** Everything said of each design, in the order it is read: recipe, reasons, evidence. */
+/** Everything said of each design, in the order it is read: recipe, reasons, what is met, evidence. */
 export function factsOf(revisions: readonly DesignRevision[]): Fact[][] {
   const asMatrices = mixedForms(revisions);
   return revisions.map((revision) => [
     ...recipeLines(revision.recipe, revision.model as PlantModel, asMatrices),
+    ...acceptanceFacts(revision.acceptance),
     ...evidenceFacts(revision),
   ]);
 }

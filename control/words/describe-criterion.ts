@@ -27,10 +27,12 @@ export function criterionSubject({ kind, signal }: Criterion): string {
   return kind === "cross-peak" ? `${name} while ${signal} is commanded` : `${name} of ${signal}`;
 }
 
-const UNITS: Readonly<Record<Kind, string>> = { settling: "s", overshoot: "%", "cross-peak": "%", effort: "%" };
+/** Of a figure and of its limit. */
+export const CRITERION_UNITS: Readonly<Record<Kind, string>> = { settling: "s", overshoot: "%", "cross-peak": "%", effort: "%" };
 
 /** A limit as it was written, with its unit. */
-export const criterionLimit = ({ kind, limit }: Criterion): string => `${formatNumber(limit, LIMIT_DIGITS)} ${UNITS[kind]}`;
+export const criterionLimit = ({ kind, limit }: Criterion): string =>
+  `${formatNumber(limit, LIMIT_DIGITS)} ${CRITERION_UNITS[kind]}`;
 
 /** The figure in as many digits as show on which side of its limit it is, and in the limit's unit; null where there is none. */
 export function criterionValue({ criterion: { kind, limit }, value }: Pick<Verdict, "criterion" | "value">): string | null {
@@ -39,7 +41,7 @@ export function criterionValue({ criterion: { kind, limit }, value }: Pick<Verdi
   if (slight) return `< ${LEAST_PERCENT} %`;
   let digits = DIGITS;
   while (digits < MOST_DIGITS && Math.sign(Number(value.toPrecision(digits)) - limit) !== Math.sign(value - limit)) digits++;
-  return `${formatNumber(value, digits)} ${UNITS[kind]}`;
+  return `${formatNumber(value, digits)} ${CRITERION_UNITS[kind]}`;
 }
 
 /** Why there is nothing to judge. */

@@ -86,6 +86,30 @@ test("the bench says what is met and not met, and follows the hand on a slider",
   await expect(lines.nth(1)).toContainText(/^Not met/);
 });
 
+test("designs side by side say which criteria each of them meets", async ({ page, team }) => {
+  const plant = await storedPlant(team.lead.request);
+  const designs = [
+    await storedDesign(team.lead.request, plant, { name: "One" }),
+    await storedDesign(team.lead.request, plant, { name: "Other" }),
+  ];
+  await setCriteria(team.lead.request, plant.id, [
+    { kind: "settling", signal: null, limit: 1000 },
+    { kind: "effort", signal: "F1", limit: 0.001 },
+  ]);
+  await page.goto(
+    `/plants/${plant.id}/side-by-side?designs=${designs.map(({ currentRevision }) => currentRevision.id).join(",")}`,
+  );
+  const table = page.getByRole("table", { name: /^Designs side by side/ });
+  const row = (name: RegExp) => table.getByRole("row").filter({ has: page.getByRole("rowheader", { name }) });
+  await expect(row(/^criteria met/).getByRole("cell")).toHaveText([/1 of 2/, /1 of 2/]);
+  await expect(row(/^worst settling to 2 %, at most 1000 s/).getByRole("cell")).toHaveText([/^met, .+ s$/, /^met, .+ s$/]);
+  await expect(
+    row(/^peak effort of F1/)
+      .getByRole("cell")
+      .first(),
+  ).toHaveText(/^not met, .+ %$/);
+});
+
 test("a reviewer reads the criteria and cannot change them", async ({ team, colleague }) => {
   const { id } = await storedPlant(team.lead.request);
   const page = await colleague("reviewer");
