@@ -1,3 +1,4 @@
+import { workArray, workCopy } from "../linalg/work-array";
 import { accelerator } from "./accelerator";
 
 /** Multiplications from which a call repays the copies it needs. */
@@ -24,9 +25,9 @@ export function acceleratedProduct(
   numbers.set(a, atA);
   numbers.set(b, atB);
   kernel.product(8 * atA, 8 * atB, 8 * c, rows, inner, columns, 0);
-  if (!product) return numbers.slice(c, c + rows * columns);
-  product.set(numbers.subarray(c, c + rows * columns));
-  return product;
+  const into = product ?? workArray(rows * columns);
+  into.set(numbers.subarray(c, c + rows * columns));
+  return into;
 }
 
 /** As `wideProduct`, to the bit; null as above. */
@@ -51,5 +52,5 @@ export function acceleratedWideProduct(
   numbers.set(b.hi, bHi);
   numbers.set(b.lo, bLo);
   kernel.wideProduct(8 * atA, 8 * bHi, 8 * bLo, 8 * hi, 8 * lo, rows, inner, columns, 0, 8 * parts);
-  return { hi: numbers.slice(hi, lo), lo: numbers.slice(lo, atA) };
+  return { hi: workCopy(numbers.subarray(hi, lo)), lo: workCopy(numbers.subarray(lo, atA)) };
 }

@@ -1,6 +1,7 @@
 import { largestEntry } from "./flat";
 import { exponentOf, powerOfTwo } from "./power-of-two";
 import { strongComponents } from "./strong-components";
+import { workArray } from "./work-array";
 
 export type Balanced = {
   /** b[i][j] = 2^shift · a[order[i]][order[j]] · scale[j] / scale[i], block upper triangular */
@@ -25,11 +26,11 @@ const MOST_ROUNDS = 40;
  */
 export function balance(a: Float64Array, n: number): Balanced {
   const { order, starts } = strongComponents(a, n);
-  const matrix = new Float64Array(n * n);
+  const matrix = workArray(n * n);
   const shift = safeShift(a);
   const factor = powerOfTwo(shift);
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) matrix[i * n + j] = a[order[i] * n + order[j]] * factor;
-  const scale = new Float64Array(n).fill(1);
+  const scale = workArray(n).fill(1);
   for (let block = 0; block + 1 < starts.length; block++) scaleBlock(matrix, n, starts[block], starts[block + 1], scale);
   return { matrix, order, scale, shift };
 }

@@ -2,6 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
 import { fromFlat, toFlat } from "./flat";
 import { requireFinite, requireSymmetric } from "./require";
+import { workArray, workCopy } from "./work-array";
 
 /**
  * Lower triangular L with M = L L' for a symmetric positive definite M.
@@ -21,7 +22,7 @@ export function cholesky(M: Matrix, name = "M"): Matrix {
 }
 
 export function flatCholesky(m: Float64Array, n: number, name: string): Float64Array {
-  const l = new Float64Array(n * n);
+  const l = workArray(n * n);
   for (let j = 0; j < n; j++) {
     let pivot = m[j * n + j];
     for (let k = 0; k < j; k++) pivot -= l[j * n + k] * l[j * n + k];
@@ -41,7 +42,7 @@ export function flatCholesky(m: Float64Array, n: number, name: string): Float64A
 
 /** M⁻¹ b from the factor of M, for b n×columns. */
 export function solveCholesky(l: Float64Array, n: number, b: Float64Array, columns: number): Float64Array {
-  const x = b.slice();
+  const x = workCopy(b);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < columns; j++) {
       let sum = x[i * columns + j];

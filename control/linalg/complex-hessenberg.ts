@@ -1,5 +1,6 @@
 import { NumericalError } from "../errors";
 import type { Complex } from "../plant/model";
+import { workArray } from "./work-array";
 
 /**
  * P (sI - H) = L U: `re` and `im` hold U above the diagonal and on it, `factorRe` and `factorIm` the one multiplier of each
@@ -17,8 +18,8 @@ export type ShiftedHessenberg = {
 
 /** Room for the factors of one point; reuse it from point to point of a sweep. */
 export function shiftedHessenbergRoom(n: number): ShiftedHessenberg {
-  const square = () => new Float64Array(n * n);
-  const line = () => new Float64Array(n);
+  const square = () => workArray(n * n);
+  const line = () => workArray(n);
   return { n, re: square(), im: square(), factorRe: line(), factorIm: line(), swapped: new Uint8Array(n), zeroPivot: -1 };
 }
 

@@ -1,5 +1,6 @@
 import { acceleratedWideProduct } from "../accelerator/accelerated-product";
 import { SPLITTER, wideProductByLoops } from "./wide-product-loops";
+import { workArray, workCopy } from "./work-array";
 
 /** Unevaluated sum hi + lo of two doubles per entry, |lo| ≤ ulp(hi) / 2: about 32 decimal digits. */
 export type Wide = { readonly hi: Float64Array; readonly lo: Float64Array };
@@ -26,8 +27,8 @@ export function split(value: Float64Array): Split {
 }
 
 function halve(value: Float64Array): { head: Float64Array; tail: Float64Array } {
-  const head = new Float64Array(value.length);
-  const tail = new Float64Array(value.length);
+  const head = workArray(value.length);
+  const tail = workArray(value.length);
   for (let i = 0; i < value.length; i++) {
     const c = SPLITTER * value[i];
     head[i] = c - (c - value[i]);
@@ -37,7 +38,7 @@ function halve(value: Float64Array): { head: Float64Array; tail: Float64Array } 
 }
 
 export function widen(value: Float64Array): Wide {
-  return { hi: value.slice(), lo: new Float64Array(value.length) };
+  return { hi: workCopy(value), lo: workArray(value.length) };
 }
 
 /**
@@ -77,8 +78,8 @@ export function addNarrow(x: Wide, y: Float64Array, sign: 1 | -1): void {
 }
 
 export function wideTranspose(x: Wide, rows: number, columns: number): Wide {
-  const hi = new Float64Array(x.hi.length);
-  const lo = new Float64Array(x.hi.length);
+  const hi = workArray(x.hi.length);
+  const lo = workArray(x.hi.length);
   for (let i = 0; i < rows; i++) {
     for (let j = 0; j < columns; j++) {
       hi[j * rows + i] = x.hi[i * columns + j];

@@ -8,6 +8,7 @@ import { flatSchur } from "./real-schur";
 import { requireFinite, requireSquare } from "./require";
 import { schurValues } from "./schur-values";
 import { triangularVectors } from "./triangular-vectors";
+import { workArray } from "./work-array";
 
 /** A v = value v with v column k of `right`; w* A = value w* with w column k of `left`; unit columns, same order as `values`. */
 export type Eigensystem = { readonly values: Complex[]; readonly right: ComplexMatrix; readonly left: ComplexMatrix };
@@ -51,14 +52,14 @@ function emptyColumns(n: number): ComplexMatrix {
 
 /** Transposed about the other diagonal: again quasi-triangular with the same blocks, in reverse order. */
 function flipTranspose(t: Float64Array, n: number): Float64Array {
-  const flipped = new Float64Array(n * n);
+  const flipped = workArray(n * n);
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) flipped[i * n + j] = t[(n - 1 - j) * n + n - 1 - i];
   return flipped;
 }
 
 /** Q x, with the columns of Q in the rows of qt. */
 function backTransform(x: Float64Array, qt: Float64Array, n: number): Float64Array {
-  const y = new Float64Array(n);
+  const y = workArray(n);
   for (let k = 0; k < n; k++) {
     if (x[k] === 0) continue;
     for (let i = 0; i < n; i++) y[i] += x[k] * qt[k * n + i];

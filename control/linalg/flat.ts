@@ -1,10 +1,11 @@
 import { Matrix } from "ml-matrix";
 import { acceleratedProduct } from "../accelerator/accelerated-product";
 import { productByLoops } from "./product-loops";
+import { workArray } from "./work-array";
 
 /** Row-major entries of M in one array: what every inner loop of this folder works on. */
 export function toFlat(M: Matrix): Float64Array {
-  const flat = new Float64Array(M.rows * M.columns);
+  const flat = workArray(M.rows * M.columns);
   for (let i = 0; i < M.rows; i++) for (let j = 0; j < M.columns; j++) flat[i * M.columns + j] = M.get(i, j);
   return flat;
 }
@@ -16,13 +17,13 @@ export function fromFlat(flat: ArrayLike<number>, rows: number, columns: number)
 }
 
 export function flatIdentity(n: number): Float64Array {
-  const identity = new Float64Array(n * n);
+  const identity = workArray(n * n);
   for (let i = 0; i < n; i++) identity[i * n + i] = 1;
   return identity;
 }
 
 export function flatTranspose(a: Float64Array, rows: number, columns: number): Float64Array {
-  const t = new Float64Array(a.length);
+  const t = workArray(a.length);
   for (let i = 0; i < rows; i++) for (let j = 0; j < columns; j++) t[j * rows + i] = a[i * columns + j];
   return t;
 }

@@ -1,4 +1,5 @@
 import { acceleratedHessenberg } from "../accelerator/accelerated-schur";
+import { workArray } from "./work-array";
 
 /**
  * Reduces h to upper Hessenberg form by orthogonal similarity, in place.
@@ -13,8 +14,8 @@ export function reduceToHessenberg(h: Float64Array, n: number, qt: Float64Array 
 
 /** The reference for the accelerator: sums over rows in order, sums along a row as those of even and of odd places. */
 export function hessenbergByLoops(h: Float64Array, n: number, qt: Float64Array | null): void {
-  const v = new Float64Array(n);
-  const sums = new Float64Array(n);
+  const v = workArray(n);
+  const sums = workArray(n);
   for (let k = 0; k < n - 2; k++) {
     const beta = reflectorOfColumn(h, n, k, v);
     if (beta === 0) continue;

@@ -1,4 +1,5 @@
 import { acceleratedFactor, acceleratedSolve } from "../accelerator/accelerated-lu";
+import { workArray, workCopy } from "./work-array";
 
 /** P A = L U in one array (unit lower triangle below the diagonal); `zeroPivot` is the first row without a pivot, or -1. */
 export type Lu = { readonly lu: Float64Array; readonly rows: Int32Array; readonly n: number; readonly zeroPivot: number };
@@ -11,7 +12,7 @@ export type Lu = { readonly lu: Float64Array; readonly rows: Int32Array; readonl
  * Source    Higham, Accuracy and Stability of Numerical Algorithms, 2nd ed. 2002, section 9
  */
 export function factorLu(a: Float64Array, n: number): Lu {
-  const lu = a.slice();
+  const lu = workCopy(a);
   const rows = Int32Array.from({ length: n }, (_, i) => i);
   const zeroPivot = acceleratedFactor(lu, rows, n) ?? factorByLoops(lu, rows, n);
   return { lu, rows, n, zeroPivot };
@@ -52,7 +53,7 @@ function exchangeRows(lu: Float64Array, rows: Int32Array, n: number, i: number, 
 
 /** A⁻¹ B for B n×columns; only after a factorisation without zero pivot. */
 export function solveLu({ lu, rows, n }: Lu, b: Float64Array, columns: number): Float64Array {
-  const x = new Float64Array(n * columns);
+  const x = workArray(n * columns);
   for (let i = 0; i < n; i++) for (let j = 0; j < columns; j++) x[i * columns + j] = b[rows[i] * columns + j];
   if (columns === 1) solveOneColumn(lu, n, x);
   else if (!acceleratedSolve(lu, n, x, columns)) solveByLoops(lu, n, x, columns);
@@ -90,13 +91,13 @@ function subtractRow(x: Float64Array, columns: number, i: number, k: number, fac
 
 /** A'⁻¹ b for one right side. */
 export function solveLuTransposed({ lu, rows, n }: Lu, b: Float64Array): Float64Array {
-  const x = b.slice();
+  const x = workCopy(b);
   for (let i = 0; i < n; i++) {
     x[i] /= lu[i * n + i];
     for (let j = i + 1; j < n; j++) x[j] -= lu[i * n + j] * x[i];
   }
   for (let i = n - 1; i >= 0; i--) for (let j = 0; j < i; j++) x[j] -= lu[i * n + j] * x[i];
-  const y = new Float64Array(n);
+  const y = workArray(n);
   for (let i = 0; i < n; i++) y[rows[i]] = x[i];
   return y;
 }
@@ -108,7 +109,7 @@ export function solveLuTransposed({ lu, rows, n }: Lu, b: Float64Array): Float64
  */
 export function inverseOneNorm(factors: Lu): number {
   const { n } = factors;
-  let x = new Float64Array(n).fill(1 / n);
+  let x = workArray(n).fill(1 / n);
   let estimate = 0;
   let last = -1;
   for (let round = 0; round < 5; round++) {
@@ -124,7 +125,7 @@ export function inverseOneNorm(factors: Lu): number {
     for (let i = 1; i < n; i++) if (Math.abs(z[i]) > Math.abs(z[place])) place = i;
     if (place === last) break;
     last = place;
-    x = new Float64Array(n);
+    x = workArray(n);
     x[place] = 1;
   }
   const alternating = Float64Array.from({ length: n }, (_, i) => (i % 2 === 0 ? 1 : -1) * (1 + (n > 1 ? i / (n - 1) : 0)));

@@ -3,6 +3,7 @@ import { largestEntry } from "./flat";
 import { orthogonaliseRows } from "./orthogonalise-rows";
 import { requireFinite } from "./require";
 import { requireRepresentable } from "./require-representable";
+import { workArray, workCopy } from "./work-array";
 
 /** Orthonormal columns: `range` spans the columns of M as far as they stand above the tolerance, `complement` what is left. */
 export type OrthonormalBasis = {
@@ -61,10 +62,10 @@ function columnsMatrix(vectors: readonly Float64Array[], rows: number): Matrix {
 
 /** r orthonormal vectors whose last r - k are orthogonal to the k given ones: the columns of their Householder matrix. */
 function completeBasis(vectors: readonly Float64Array[], r: number): Float64Array[] {
-  const work = vectors.map((vector) => vector.slice());
+  const work = vectors.map((vector) => workCopy(vector));
   const reflectors: { v: Float64Array; beta: number }[] = [];
   work.forEach((x, k) => {
-    const v = new Float64Array(r);
+    const v = workArray(r);
     let sum = 0;
     for (let i = k; i < r; i++) {
       v[i] = x[i];
@@ -77,7 +78,7 @@ function completeBasis(vectors: readonly Float64Array[], r: number): Float64Arra
     for (let j = k + 1; j < work.length; j++) reflect(work[j], v, beta);
   });
   return Array.from({ length: r }, (_, j) => {
-    const e = new Float64Array(r);
+    const e = workArray(r);
     e[j] = 1;
     for (let k = reflectors.length - 1; k >= 0; k--) reflect(e, reflectors[k].v, reflectors[k].beta);
     return e;

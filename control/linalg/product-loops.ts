@@ -1,3 +1,5 @@
+import { workArray } from "./work-array";
+
 /** Four columns of the right matrix side by side; grows to the longest inner size seen. */
 let panel = new Float64Array(256);
 
@@ -15,7 +17,7 @@ export function productByLoops(
   rows: number,
   inner: number,
   columns: number,
-  product: Float64Array = new Float64Array(rows * columns),
+  product: Float64Array = workArray(rows * columns),
 ): Float64Array {
   if (panel.length < 4 * inner) panel = new Float64Array(4 * inner);
   for (let j = 0; j < columns; j += 4) {

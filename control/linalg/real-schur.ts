@@ -8,6 +8,7 @@ import { reduceToHessenberg } from "./hessenberg";
 import { powerOfTwo } from "./power-of-two";
 import { requireFinite, requireSquare } from "./require";
 import { schurValues } from "./schur-values";
+import { workCopy } from "./work-array";
 
 /** A = Q T Q', Q orthogonal, T quasi-triangular in standard form, values in order of its diagonal. */
 export type RealSchur = { readonly Q: Matrix; readonly T: Matrix; readonly values: Complex[] };
@@ -40,7 +41,7 @@ export function realSchur(A: Matrix): RealSchur {
 
 /** For finite entries of ordinary size; leaves a untouched. */
 export function flatSchur(a: Float64Array, n: number): FlatSchur {
-  const t = a.slice();
+  const t = workCopy(a);
   const qt = flatIdentity(n);
   reduceToHessenberg(t, n, qt);
   francisIteration(t, n, true, qt);

@@ -5,6 +5,7 @@ import { fromFlat, toFlat } from "./flat";
 import { factorLu, inverseOneNorm, solveLu } from "./lu";
 import { exponentOf, powerOfTwo } from "./power-of-two";
 import { requireFinite, requireShape, requireSquare } from "./require";
+import { workArray, workCopy } from "./work-array";
 
 /**
  * Solves A X = B after scaling rows and columns of A by powers of two, so that units do not count as bad condition.
@@ -64,9 +65,9 @@ function stack(re: Matrix, im: Matrix, square: boolean): Matrix {
 
 /** Rows, then columns, brought to largest entry in [1, 2) by powers of two. */
 function equilibrate(a: Float64Array, n: number): { scaled: Float64Array; rows: Float64Array; cols: Float64Array } {
-  const scaled = a.slice();
-  const rows = new Float64Array(n).fill(1);
-  const cols = new Float64Array(n).fill(1);
+  const scaled = workCopy(a);
+  const rows = workArray(n).fill(1);
+  const cols = workArray(n).fill(1);
   for (let i = 0; i < n; i++) {
     let largest = 0;
     for (let j = 0; j < n; j++) largest = Math.max(largest, Math.abs(scaled[i * n + j]));

@@ -9,6 +9,7 @@ import { type FlatSchur, flatSchur } from "./real-schur";
 import { requireFinite, requireShape, requireSquare, requireSymmetric } from "./require";
 import { requireRepresentable } from "./require-representable";
 import { solveTriangularLyapunov } from "./triangular-lyapunov";
+import { workArray } from "./work-array";
 
 export type LyapunovProblem = { readonly A: Matrix; readonly Q: Matrix; readonly timeBase: "continuous" | "sampled" };
 export type LyapunovSolution = { readonly X: Matrix; readonly residual: number; readonly bound: number };
@@ -49,7 +50,7 @@ export function solveLyapunov({ A, Q, timeBase }: LyapunovProblem): LyapunovSolu
   const { x, residual } = refine(a, timesPower(weight, lift), n, sampled);
   const bound = 4 * n * Number.EPSILON;
   if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
-  const whole = new Float64Array(n * n);
+  const whole = workArray(n * n);
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) whole[order[i] * n + order[j]] = x[i * n + j] * scale[i] * scale[j];
   const solution = timesPower(whole, shift - lift);
   requireRepresentable("solution", solution);
@@ -62,7 +63,7 @@ function timesPower(a: Float64Array, exponent: number): Float64Array {
 
 /** Q in the balanced coordinates, made exactly symmetric. */
 function balancedWeight(q: Float64Array, n: number, order: Int32Array, scale: Float64Array): Float64Array {
-  const balanced = new Float64Array(n * n);
+  const balanced = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) {
       const mean = 0.5 * q[order[i] * n + order[j]] + 0.5 * q[order[j] * n + order[i]];
@@ -76,8 +77,8 @@ function balancedWeight(q: Float64Array, n: number, order: Int32Array, scale: Fl
 function refine(a: Float64Array, q: Float64Array, n: number, sampled: boolean): { x: Float64Array; residual: number } {
   const schur = flatSchur(a, n);
   const parts = split(a);
-  const x = { hi: solveLyapunovBySchur(schur, n, q, sampled), lo: new Float64Array(n * n) };
-  const moved = new Float64Array(n * n);
+  const x = { hi: solveLyapunovBySchur(schur, n, q, sampled), lo: workArray(n * n) };
+  const moved = workArray(n * n);
   let defect = q;
   let before = largestEntry(x.hi);
   for (let round = 0; round < REFINEMENTS; round++) {
@@ -133,7 +134,7 @@ function moveDefect(a: Float64Array, defect: Float64Array, moved: Float64Array, 
 function lyapunovDefect(a: Split, x: Wide, q: Float64Array, n: number, sampled: boolean): Float64Array {
   const product = wideProduct(a, x, n, n, n);
   const first = sampled ? wideProduct(a, wideTranspose(product, n, n), n, n, n) : product;
-  const defect = new Float64Array(n * n);
+  const defect = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) {
       const at = i * n + j;

@@ -1,6 +1,7 @@
 import { NumericalError } from "../errors";
 import { largestEntry } from "./flat";
 import { standardiseAt } from "./francis";
+import { workArray } from "./work-array";
 
 /**
  * Swaps the neighbouring diagonal blocks of sizes p and q that start at k of a real Schur form, in place. A pair that a
@@ -42,8 +43,8 @@ function largestInside(t: Float64Array, n: number, k: number, size: number): num
 function sylvesterBasis(t: Float64Array, n: number, k: number, p: number, q: number): Float64Array {
   const entry = (i: number, j: number) => t[(k + i) * n + k + j];
   const unknowns = p * q;
-  const system = new Float64Array(unknowns * unknowns);
-  const right = new Float64Array(unknowns);
+  const system = workArray(unknowns * unknowns);
+  const right = workArray(unknowns);
   for (let i = 0; i < p; i++) {
     for (let j = 0; j < q; j++) {
       const row = (i * q + j) * unknowns;
@@ -53,7 +54,7 @@ function sylvesterBasis(t: Float64Array, n: number, k: number, p: number, q: num
     }
   }
   const g = solveSmall(system, right, unknowns);
-  const basis = new Float64Array((p + q) * q);
+  const basis = workArray((p + q) * q);
   for (let i = 0; i < p; i++) for (let j = 0; j < q; j++) basis[i * q + j] = -right[i * q + j];
   for (let j = 0; j < q; j++) basis[(p + j) * q + j] = g;
   return basis;
@@ -87,7 +88,7 @@ function solveSmall(a: Float64Array, b: Float64Array, n: number): number {
   const size = largestEntry(b);
   const smallest = Math.abs(a[n * n - 1]);
   const scale = size > smallest ? smallest / size : 1;
-  const x = new Float64Array(n);
+  const x = workArray(n);
   for (let i = n - 1; i >= 0; i--) {
     let sum = b[i] * scale;
     for (let j = i + 1; j < n; j++) sum -= a[i * n + j] * x[j];
@@ -114,7 +115,7 @@ type Reflector = { readonly v: Float64Array; readonly beta: number };
 function columnsReflectors(basis: Float64Array, rows: number, columns: number): Reflector[] {
   const reflectors: Reflector[] = [];
   for (let c = 0; c < columns; c++) {
-    const v = new Float64Array(rows);
+    const v = workArray(rows);
     let scale = 0;
     for (let i = c; i < rows; i++) scale = Math.max(scale, Math.abs(basis[i * columns + c]));
     if (scale === 0) continue;

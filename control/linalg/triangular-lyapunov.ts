@@ -1,6 +1,7 @@
 import { type BlockPair, solveBlockPair } from "./block-pair";
 import { largestEntry } from "./flat";
 import { blockSize } from "./schur-values";
+import { workArray } from "./work-array";
 
 /** What the passes of one call share: T, the right side that turns into Y, and in the sampled case Y T' of the columns at hand. */
 type Work = {
@@ -24,8 +25,8 @@ export function solveTriangularLyapunov(t: Float64Array, n: number, c: Float64Ar
   for (let k = 0; k < n; k += blockSize(t, n, k)) starts.push(k);
   const size = largestEntry(t);
   const floor = Number.MIN_VALUE + Number.EPSILON * Number.EPSILON * (sampled ? 1 + size * size : size);
-  const pair = { system: new Float64Array(16), right: new Float64Array(4), floor };
-  const work = { t, n, y: c, gathered: new Float64Array(sampled ? 2 * n : 0), pair };
+  const pair = { system: workArray(16), right: workArray(4), floor };
+  const work = { t, n, y: c, gathered: workArray(sampled ? 2 * n : 0), pair };
   for (let bj = starts.length - 1; bj >= 0; bj--) {
     const j = starts[bj];
     const q = (starts[bj + 1] ?? n) - j;

@@ -3,6 +3,7 @@ import { complexProduct, complexQuotient, modulus } from "./complex";
 import { largestEntry } from "./flat";
 import { powerOfTwo } from "./power-of-two";
 import { blockSize, schurValues } from "./schur-values";
+import { workArray, workCopy } from "./work-array";
 
 /** Right eigenvectors of a quasi-triangular matrix; entry i of vector k is re[k][i] + i im[k][i]. */
 export type TriangularVectors = { readonly re: Float64Array[]; readonly im: Float64Array[] };
@@ -24,13 +25,13 @@ export function triangularVectors(t: Float64Array, n: number): TriangularVectors
   const floor = Math.max(Number.EPSILON * largestEntry(t), 1e-280);
   for (let k = 0; k < n; ) {
     const size = blockSize(t, n, k);
-    const x = { re: new Float64Array(n), im: new Float64Array(n) };
+    const x = { re: workArray(n), im: workArray(n) };
     startVector(t, n, k, size, values[k], x);
     substituteBack(t, n, k, values[k], floor, x);
     re.push(x.re);
     im.push(x.im);
     if (size === 2) {
-      re.push(x.re.slice());
+      re.push(workCopy(x.re));
       im.push(x.im.map((entry) => 0 - entry));
     }
     k += size;

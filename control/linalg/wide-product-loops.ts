@@ -1,4 +1,5 @@
 import type { Split, Wide } from "./double-double";
+import { workArray } from "./work-array";
 
 /** 2^27 + 1: splits a double into two halves of at most 26 bits (Veltkamp). */
 export const SPLITTER = 134217729;
@@ -14,7 +15,7 @@ export function wideProductByLoops(a: Split, b: Wide, rows: number, inner: numbe
   // Read once: the halves may be made on being asked for.
   const { value, head, tail } = a;
   const left = { value, head, tail };
-  const product = { hi: new Float64Array(rows * columns), lo: new Float64Array(rows * columns) };
+  const product = { hi: workArray(rows * columns), lo: workArray(rows * columns) };
   if (panel.length < 8 * inner) panel = new Float64Array(8 * inner);
   for (let j = 0; j < columns; j += 2) {
     const both = j + 1 < columns;

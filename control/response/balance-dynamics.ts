@@ -2,6 +2,7 @@ import { NumericalError } from "../errors";
 import { balance } from "../linalg/balance";
 import type { Wide } from "../linalg/double-double";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 
 /** x[order[k]] = scale[k] z[k] turns x' = A x into z' = matrix z. */
 export type BalancedDynamics = { readonly matrix: Float64Array; readonly order: Int32Array; readonly scale: Float64Array };
@@ -32,7 +33,7 @@ export function balanceDynamics(a: Float64Array, n: number): BalancedDynamics {
 export function balanceWide(a: Wide, n: number): BalancedDynamics & { readonly wide: Wide } {
   const balanced = balanceDynamics(a.hi, n);
   const { matrix, order, scale } = balanced;
-  const lo = new Float64Array(n * n);
+  const lo = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) lo[i * n + j] = rescaled(a.lo[order[i] * n + order[j]], scale[j], scale[i]);
   }

@@ -2,6 +2,7 @@ import { flatIdentity, flatProduct } from "../linalg/flat";
 import { factorLu, solveLu } from "../linalg/lu";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
+import { workArray } from "../linalg/work-array";
 
 const UNIT_ROUNDOFF = Number.EPSILON / 2;
 
@@ -101,9 +102,9 @@ function extraSquarings(powers: Powers, n: number, scaling: number): number {
 function errorTerm(powers: Powers, n: number, degree: Degree, scaling: number): number {
   const { a } = powers;
   const factor = powerOfTwo(powers.exponent - scaling);
-  let sums = new Float64Array(n).fill(1);
+  let sums = workArray(n).fill(1);
   for (let k = 0; k < 2 * degree + 1; k++) {
-    const next = new Float64Array(n);
+    const next = workArray(n);
     for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) next[j] += sums[i] * Math.abs(a[i * n + j]) * factor;
     sums = next;
   }
@@ -134,7 +135,7 @@ function pade(powers: Powers, n: number, degree: Degree, scaling: number): Float
 
 /** coefficient(0) I + coefficient(1) a² + ... */
 function combine(n: number, even: readonly Float64Array[], coefficient: (k: number) => number): Float64Array {
-  const sum = new Float64Array(n * n);
+  const sum = workArray(n * n);
   for (let k = even.length; k >= 1; k--) {
     const weight = coefficient(k);
     for (let i = 0; i < sum.length; i++) sum[i] += weight * even[k - 1][i];
@@ -145,7 +146,7 @@ function combine(n: number, even: readonly Float64Array[], coefficient: (k: numb
 
 /** Terms of degree 8 to 13 over a⁶. */
 function combineHigh(n: number, even: readonly Float64Array[], b: readonly number[], parity: 0 | 1): Float64Array {
-  const sum = new Float64Array(n * n);
+  const sum = workArray(n * n);
   for (let k = 3; k >= 1; k--) for (let i = 0; i < sum.length; i++) sum[i] += b[2 * (k + 3) + parity] * even[k - 1][i];
   return sum;
 }

@@ -1,6 +1,7 @@
 import { flatProduct } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
+import { workArray } from "../linalg/work-array";
 import { NODES, POINTS } from "./cell-basis";
 
 /** Everything to cross a cell of length h: the state at its end, and all signals at its nodes, from the state at its start. */
@@ -61,7 +62,7 @@ function seriesGrowth(a: Float64Array, n: number, level: number): Float64Array {
   const cube = flatProduct(square, x, n, n, n);
   const factorials = [1];
   for (let k = 1; k < TERMS; k++) factorials.push(factorials[k - 1] * k);
-  let sum: Float64Array = new Float64Array(n * n);
+  let sum: Float64Array = workArray(n * n);
   for (let first = TERMS - GROUP; first >= 0; first -= GROUP) {
     if (first < TERMS - GROUP) sum = flatProduct(sum, cube, n, n, n);
     for (let i = 0; i < sum.length; i++) sum[i] += square[i] / factorials[first + 2] + x[i] / factorials[first + 1];
@@ -83,7 +84,7 @@ function signalsAtNodes(growth: readonly Float64Array[], n: number, rows: Float6
   for (let i = 0; i < three.length; i++) three[i] += one[i] + two[i];
   const by = [one, one, two, three, four];
   const signals = n === 0 ? 0 : rows.length / n;
-  const nodes = new Float64Array(signals * POINTS * n);
+  const nodes = workArray(signals * POINTS * n);
   let moved = rows;
   for (let node = 0; node < POINTS; node++) {
     if (node > 0) {

@@ -1,3 +1,4 @@
+import { workArray } from "../linalg/work-array";
 import type { LoopDynamics } from "./loop-dynamics";
 
 /** Signals that are the same by definition, such as an output that is also commanded, stand once. */
@@ -17,7 +18,7 @@ export function distinctRows(dynamics: LoopDynamics, wanted: readonly number[]):
     const known = places.findIndex((place) => isSameSignal(dynamics, place, row));
     return known >= 0 ? known : places.push(row) - 1;
   });
-  const rows = new Float64Array(places.length * order);
+  const rows = workArray(places.length * order);
   places.forEach((place, i) => {
     rows.set(c.subarray(place * order, (place + 1) * order), i * order);
   });

@@ -1,5 +1,6 @@
 import { addNarrow } from "../linalg/double-double";
 import { powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import { bernsteinCoefficients, POINTS } from "./cell-basis";
 import type { Cell } from "./cell-ladder";
 import type { LoopDynamics } from "./loop-dynamics";
@@ -91,13 +92,13 @@ function searchBack(
 ): void {
   const { order } = dynamics;
   const nodes = cell.nodes.subarray(signal * POINTS * order, (signal + 1) * POINTS * order);
-  const values = new Float64Array(POINTS);
-  const b = new Float64Array(POINTS);
+  const values = workArray(POINTS);
+  const b = workArray(POINTS);
   for (let window = FIRST_WINDOW; window <= MOST_CELLS; window *= 4) {
     const first = Math.max(0, after - window);
     const begin = halt.time + first * cell.h;
     let state = stateAt(dynamics, departure, begin);
-    let next: Float64Array = new Float64Array(order);
+    let next: Float64Array = workArray(order);
     const found = startTrack(track.final, { width: bandOf(track) }, track.final, "settling");
     for (let k = 0; first + k < after; k++) {
       timesVector(nodes, state, order, values);
@@ -121,7 +122,7 @@ function stateAt({ a, lost, order }: FarSearch["dynamics"], departure: Float64Ar
     lost.map((entry) => entry * time),
     1,
   );
-  const state = new Float64Array(order);
+  const state = workArray(order);
   timesVector(wideExponential(scaled, order).hi, departure, order, state);
   return state;
 }

@@ -3,6 +3,7 @@ import { addNarrow, split, widen, wideProduct } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { flatProduct, largestEntry, toFlat } from "../linalg/flat";
 import { factorLu, type Lu, solveLu } from "../linalg/lu";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { isStablePole } from "../poles/require-stable-poles";
 import { balanceDynamics, rescaled } from "./balance-dynamics";
@@ -45,14 +46,14 @@ export function prepareLoop(loop: ClosedLoop, period: number | null): LoopDynami
   if (unstable) throw new NumericalError("not-stabilising", { pole: unstable });
   const { matrix, order: places, scale } = balanceDynamics(toFlat(loop.A), order);
   const columns = loop.B.columns;
-  const b = new Float64Array(order * columns);
+  const b = workArray(order * columns);
   for (let k = 0; k < order; k++) for (let j = 0; j < columns; j++) b[k * columns + j] = loop.B.get(places[k], j) / scale[k];
-  const c = new Float64Array(signals * order);
+  const c = workArray(signals * order);
   for (let i = 0; i < signals; i++) for (let k = 0; k < order; k++) c[i * order + k] = loop.C.get(i, places[k]) * scale[k];
-  const lost = new Float64Array(order * order);
+  const lost = workArray(order * order);
   for (let i = 0; i < order; i++)
     for (let j = 0; j < order; j++) lost[i * order + j] = rescaled(loop.lost.get(places[i], places[j]), scale[j], scale[i]);
-  const shifted = matrix.slice();
+  const shifted = workCopy(matrix);
   if (period !== null) for (let k = 0; k < order; k++) shifted[k * order + k] -= 1;
   const rest = factorLu(shifted, order);
   if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance({ poles, period }) });
@@ -71,7 +72,7 @@ export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: num
   const columns = dynamics.loop.B.columns;
   const push = Float64Array.from({ length: order }, (_, k) => -b[k * columns + input] * amplitude);
   const rest = restOf(dynamics, push);
-  const final = new Float64Array(signals);
+  const final = workArray(signals);
   for (let i = 0; i < signals; i++) {
     let sum = 0;
     for (let k = 0; k < order; k++) sum += c[i * order + k] * rest[k];
@@ -85,7 +86,7 @@ export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: num
 export function startDrive(dynamics: LoopDynamics, x0: readonly number[]): Drive {
   const start = dynamics.loop.startFrom(x0);
   const departure = Float64Array.from(dynamics.places, (place, k) => start[place] / dynamics.scale[k]);
-  return { departure, final: new Float64Array(dynamics.signals) };
+  return { departure, final: workArray(dynamics.signals) };
 }
 
 /** Rounds of refinement, which bring a solution of half the digits to all of them. */
@@ -94,7 +95,7 @@ const REFINEMENTS = 2;
 /** Solves A s = push (sampled: (A - I) s = push) with the residual summed in twice the digits. */
 function restOf(dynamics: LoopDynamics, push: Float64Array): Float64Array {
   const { a, lost, order, rest, period } = dynamics;
-  if (largestEntry(push) === 0) return new Float64Array(order);
+  if (largestEntry(push) === 0) return workArray(order);
   const s = solveLu(rest, push, 1);
   const left = split(a);
   for (let round = 0; round < REFINEMENTS; round++) {

@@ -3,6 +3,7 @@ import { NumericalError } from "../errors";
 import { type Wide, widen } from "../linalg/double-double";
 import { fromFlat, toFlat } from "../linalg/flat";
 import { requireFinite, requireSquare } from "../linalg/require";
+import { workArray } from "../linalg/work-array";
 import { type BalancedDynamics, balanceDynamics, balanceWide, rescaled } from "./balance-dynamics";
 import { balancedExponential } from "./balanced-exponential";
 import { wideExponential } from "./wide-exponential";
@@ -41,7 +42,7 @@ export function flatExponential(a: Float64Array, n: number): Float64Array {
 
 /** Back from balanced coordinates. */
 function restored(exponential: Float64Array, { order, scale }: BalancedDynamics, n: number): Float64Array {
-  const result = new Float64Array(n * n);
+  const result = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) result[order[i] * n + order[j]] = rescaled(exponential[i * n + j], scale[i], scale[j]);
   }

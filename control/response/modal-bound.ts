@@ -2,6 +2,7 @@ import type { ComplexMatrix } from "../linalg/complex";
 import { eigensystem } from "../linalg/eigensystem";
 import { fromFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
+import { workArray, workCopy } from "../linalg/work-array";
 
 /** A free motion as the sum of its modes: |signal i's departure| ≤ Σ sizes[i · order + k] e^(-rates[k] t) for t ≥ 0. */
 export type ModalBound = { readonly rates: Float64Array; readonly sizesOf: (state: Float64Array) => Float64Array };
@@ -30,7 +31,7 @@ export function modalBound(a: Float64Array, n: number, rows: Float64Array): Moda
   if (!(slowest > LEAST_RATE && least > LEAST_COSINE)) return null;
   const spare = 1 + SPARE + (ROUNDING * n) / (slowest * least);
   const signals = rows.length / n;
-  const weights = new Float64Array(rows.length);
+  const weights = workArray(rows.length);
   for (let i = 0; i < signals; i++) {
     const row = rows.subarray(i * n, (i + 1) * n);
     for (let k = 0; k < n; k++) {
@@ -39,7 +40,7 @@ export function modalBound(a: Float64Array, n: number, rows: Float64Array): Moda
     }
   }
   const sizesOf = (state: Float64Array) => {
-    const sizes = weights.slice();
+    const sizes = workCopy(weights);
     for (let k = 0; k < n; k++) {
       const [x, y] = project(state, left, k);
       const amplitude = Math.sqrt(x * x + y * y);

@@ -1,6 +1,7 @@
 import { NumericalError } from "../errors";
 import { addNarrow, type Wide } from "../linalg/double-double";
 import { flatProductInto, flatTranspose } from "../linalg/flat";
+import { workArray, workCopy } from "../linalg/work-array";
 import { distinctRows } from "./distinct-rows";
 import type { Drive, LoopDynamics } from "./loop-dynamics";
 import { flatExponential } from "./matrix-exponential";
@@ -41,8 +42,8 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
   const width = places.length * BLOCK;
   const block = flatTranspose(signalBlock(phi, order, rows), width, order);
   const blocks = Math.ceil(samples / BLOCK);
-  const starts = new Float64Array(blocks * order);
-  const departed = new Float64Array(blocks * width);
+  const starts = workArray(blocks * order);
+  const departed = workArray(blocks * width);
   return ({ departure, final }) => {
     starts.set(departure);
     for (let k = 1; k < blocks; k++) {
@@ -80,7 +81,7 @@ function transitions({ a, lost, order, period }: LoopDynamics, step: number): { 
       1,
     );
     one = wideExponential(scaled, order);
-  } else one = widePower({ hi: a.slice(), lo: lost.slice() }, order, stride);
+  } else one = widePower({ hi: workCopy(a), lo: workCopy(lost) }, order, stride);
   const block = widePower(one, order, BLOCK);
   if (one.hi.every(Number.isFinite) && block.hi.every(Number.isFinite)) return { phi: one.hi, phiBlock: block.hi };
   // Entries that cannot be split are left to plain arithmetic.

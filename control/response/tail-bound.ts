@@ -4,6 +4,7 @@ import { flatIdentity, flatProduct, flatTransposedProduct } from "../linalg/flat
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
+import { workArray, workCopy } from "../linalg/work-array";
 import { flatExponential } from "./matrix-exponential";
 
 /** |signal i's departure| ≤ gains[i] · size(departure) now and at every later time. */
@@ -25,7 +26,7 @@ export function tailBound(a: Float64Array, n: number, rows: Float64Array, sample
   const p = doubledSum(first, step, n);
   if (p === null) return null;
   const signals = n === 0 ? 0 : rows.length / n;
-  const gains = new Float64Array(signals);
+  const gains = workArray(signals);
   const l = factorOf(p, n);
   if (l === null) return { gains: gains.fill(Number.POSITIVE_INFINITY), size: () => 1 };
   for (let i = 0; i < signals; i++) {
@@ -74,7 +75,7 @@ function continuousStep(a: Float64Array, n: number): { first: Float64Array; step
 }
 
 function doubledSum(first: Float64Array, step: Float64Array, n: number): Float64Array | null {
-  const sum = first.slice();
+  const sum = workCopy(first);
   let phi = step;
   for (let k = 0; k < MOST_DOUBLINGS; k++) {
     const later = flatTransposedProduct(phi, flatProduct(sum, phi, n, n, n), n, n, n);

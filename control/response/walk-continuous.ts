@@ -1,4 +1,5 @@
 import { exponentOf } from "../linalg/power-of-two";
+import { workArray, workCopy } from "../linalg/work-array";
 import { bernsteinCoefficients, interpolationError, LEBESGUE, POINTS } from "./cell-basis";
 import { type Cell, cellLadder } from "./cell-ladder";
 import type { Halt } from "./far-exit";
@@ -66,9 +67,9 @@ export function walkContinuous(
 ): Halt | null {
   const { order, ladder, tail, firstLevel } = walker;
   const pace = { size: tail.size(from.state), count: 0 };
-  const values = new Float64Array(tracks.length * POINTS);
+  const values = workArray(tracks.length * POINTS);
   let [here, other] = [newMisses(tracks.length), newMisses(tracks.length)];
-  let [state, after] = [from.state.slice(), new Float64Array(order)];
+  let [state, after] = [workCopy(from.state), workArray(order)];
   let level = firstLevel;
   let time = from.time;
   let before: Misses | null = null; // of the shorter cell before, when this one is tried because that one was easy
@@ -132,7 +133,7 @@ function followCell(tracks: readonly SignalTrack[], values: Float64Array, time: 
 type Misses = { readonly miss: Float64Array; readonly size: Float64Array };
 
 function newMisses(signals: number): Misses {
-  return { miss: new Float64Array(signals), size: new Float64Array(signals) };
+  return { miss: workArray(signals), size: workArray(signals) };
 }
 
 function measureMisses(values: Float64Array, tracks: readonly SignalTrack[], { miss, size }: Misses): void {

@@ -1,4 +1,5 @@
 import { flatProduct } from "../linalg/flat";
+import { workArray, workCopy } from "../linalg/work-array";
 import { finishTracks, followSample, isHopeless, isUneventful, type SignalTrack } from "./signal-track";
 import type { TailBound } from "./tail-bound";
 import { timesVector } from "./times-vector";
@@ -31,7 +32,7 @@ export function sampledWalker(
 /** rows, rows·a, ..., rows·a^15, those of one signal together. */
 export function signalBlock(a: Float64Array, order: number, rows: Float64Array): Float64Array {
   const signals = order === 0 ? 0 : rows.length / order;
-  const block = new Float64Array(rows.length * BLOCK);
+  const block = workArray(rows.length * BLOCK);
   let moved = rows;
   for (let k = 0; k < BLOCK; k++) {
     if (k > 0) moved = flatProduct(moved, a, signals, order, order);
@@ -60,8 +61,8 @@ export function transitionPower(a: Float64Array, n: number, k: number): Float64A
 export function walkSampled(walker: SampledWalker, departure: Float64Array, tracks: readonly SignalTrack[], limit: number): void {
   const { order, period, rows, block, phi, tail } = walker;
   const pace = { size: tail.size(departure), count: 0 };
-  const values = new Float64Array(tracks.length * BLOCK);
-  let [state, after] = [departure.slice(), new Float64Array(order)];
+  const values = workArray(tracks.length * BLOCK);
+  let [state, after] = [workCopy(departure), workArray(order)];
   for (let first = 0; first < limit; first += BLOCK) {
     const size = tail.size(state);
     const factor = finishTracks(tracks, tail.gains, size);

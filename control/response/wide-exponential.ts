@@ -2,6 +2,7 @@ import { addNarrow, split, type Wide, wideProduct } from "../linalg/double-doubl
 import { flatProduct } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
+import { workArray } from "../linalg/work-array";
 import { addScaled, timesPower, type WideScalar, wideOver } from "./wide-scalar";
 
 /** Terms of the series up to X¹⁹ with |X| ≤ 1/8, where the next one is below 1e-36; taken together by fives. */
@@ -46,10 +47,10 @@ export function wideSeries(x: Wide, n: number): Wide {
 
 /** Terms of order `first` to `first` + 4 over x^first, smallest first. */
 function groupOf(powers: readonly Wide[], first: number, n: number): Wide {
-  const sum: Wide = { hi: new Float64Array(n * n), lo: new Float64Array(n * n) };
+  const sum: Wide = { hi: workArray(n * n), lo: workArray(n * n) };
   for (let j = GROUP - 1; j >= 1; j--) addScaled(sum, INVERSE_FACTORIALS[first + j], powers[j - 1]);
-  const head = new Float64Array(n * n);
-  const tail = new Float64Array(n * n);
+  const head = workArray(n * n);
+  const tail = workArray(n * n);
   for (let i = 0; i < n * n; i += n + 1) {
     head[i] = INVERSE_FACTORIALS[first].hi;
     tail[i] = INVERSE_FACTORIALS[first].lo;

@@ -5,6 +5,7 @@ import { largestEntry, toFlat } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { requireFinite, requireShape, requireSymmetric } from "../linalg/require";
 import { symmetricEigenvalues } from "../linalg/symmetric-eigenvalues";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 export type RiccatiProblem = {
@@ -82,13 +83,13 @@ function judgeWeights({ n, m, q, r, s }: FlatProblem): WeightVerdict {
     const diagonal = Math.abs(entry(i, i));
     return diagonal === 0 ? 1 : powerOfTwo(-Math.round(exponentOf(diagonal) / 2));
   });
-  const block = new Float64Array(size * size);
+  const block = workArray(size * size);
   for (let i = 0; i < size; i++)
     for (let j = 0; j <= i; j++) block[i * size + j] = block[j * size + i] = entry(i, j) * scale[i] * scale[j];
   if (!Number.isFinite(largestEntry(block))) throw new NumericalError("too-large", { what: "weights", limit: Number.MAX_VALUE });
   // Rounding of entries typed in decimal, or of a product C'C, is a few n ε of the unit diagonal.
   const tolerance = 16 * size * Number.EPSILON;
-  const pivot = leastPivot(block.slice(), size);
+  const pivot = leastPivot(workCopy(block), size);
   if (pivot >= 0) return { refusal: null, definite: pivot > PLAINLY_POSITIVE };
   const least = symmetricEigenvalues(
     new Matrix(Array.from({ length: size }, (_, i) => [...block.subarray(i * size, i * size + size)])),
@@ -114,7 +115,7 @@ function blame(block: Matrix, n: number): "Q" | "R" {
 
 /** The place at which elimination without pivoting first meets less than nothing; null where it never does. */
 function firstNegative(block: Float64Array, n: number, tolerance: number): number | null {
-  const a = block.slice();
+  const a = workCopy(block);
   for (let k = 0; k < n; k++) {
     const pivot = a[k * n + k];
     if (pivot < -tolerance) return k;

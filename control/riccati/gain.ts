@@ -1,6 +1,7 @@
 import { flatCholesky, solveCholesky } from "../linalg/cholesky";
 import { addNarrow, addWide, split, type Wide, widen, wideProduct } from "../linalg/double-double";
 import { flatNorm } from "../linalg/norms";
+import { workCopy } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 import type { GainSystem } from "./residual";
 
@@ -31,7 +32,7 @@ export function accurateGain(problem: FlatProblem, { weight, right }: GainSystem
   let last = flatNorm(k.hi);
   let previous = last;
   for (let round = 0; round < CORRECTIONS; round++) {
-    const rest = { hi: right.hi.slice(), lo: right.lo.slice() };
+    const rest = { hi: workCopy(right.hi), lo: workCopy(right.lo) };
     addWide(rest, wideProduct(high, k, m, m, n), -1);
     if (low) addWide(rest, wideProduct(low, k, m, m, n), -1);
     const step = solveCholesky(factor, m, rest.hi, n);

@@ -1,5 +1,6 @@
 import type { ComplexVector } from "../linalg/complex";
 import type { FlatSchur } from "../linalg/real-schur";
+import { workArray } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 
 const ROUNDS = 4;
@@ -17,8 +18,8 @@ export type PencilEstimate = { readonly value: number; readonly left: ComplexVec
  */
 export function pencilEstimate({ t }: FlatSchur, n: number, reached: Float64Array, m: number, pole: Complex): PencilEstimate {
   const width = n + m;
-  const re = new Float64Array(n * width);
-  const im = new Float64Array(n * width);
+  const re = workArray(n * width);
+  const im = workArray(n * width);
   for (let i = 0; i < n; i++) {
     re.set(t.subarray(i * n, i * n + n), i * width);
     re.set(reached.subarray(i * m, i * m + m), i * width + n);
@@ -32,8 +33,8 @@ export function pencilEstimate({ t }: FlatSchur, n: number, reached: Float64Arra
 /** A reflection of columns i - 1 (below which T may have an entry), i and those of B puts all of row i into column i. */
 function clearRow(re: Float64Array, im: Float64Array, n: number, width: number, i: number): void {
   const length = width - n + 2;
-  const vr = new Float64Array(length);
-  const vi = new Float64Array(length);
+  const vr = workArray(length);
+  const vi = workArray(length);
   const at = i * width;
   for (let k = 0; k < length; k++) {
     const place = at + (k < 2 ? i - k : n + k - 2);
@@ -83,7 +84,7 @@ function reflectRow(
 /** Of the upper triangular first n columns: 1 / |R⁻*R⁻¹ w| for w from rounds with R R*. */
 function smallestOfTriangle(re: Float64Array, im: Float64Array, n: number, width: number): PencilEstimate {
   const wr = Float64Array.from({ length: n }, (_, i) => (i % 3 === 1 ? -1 : 1));
-  const wi = new Float64Array(n);
+  const wi = workArray(n);
   let least = Number.POSITIVE_INFINITY;
   for (let round = 0; round < ROUNDS; round++) {
     solveUpper(re, im, n, width, wr, wi);

@@ -1,6 +1,7 @@
 import { NumericalError } from "../errors";
 import { addNarrow, type Wide, widen } from "../linalg/double-double";
 import { flatIdentity } from "../linalg/flat";
+import { workArray, workCopy } from "../linalg/work-array";
 import { type Loop, solveInLoop, stableLoop } from "./closed-loop";
 import { accurateGain, type Gain } from "./gain";
 import { bestStepLength } from "./line-search";
@@ -58,7 +59,7 @@ const GAIN_RESULT = Number.EPSILON * Number.EPSILON;
  */
 export function refine(problem: SplitProblem, start: Start, units: Float64Array): Refined {
   const { n } = problem;
-  const x = widen("x" in start ? start.x : new Float64Array(n * n));
+  const x = widen("x" in start ? start.x : workArray(n * n));
   let held: HeldLoop | null = null;
   let amplification: Float64Array | null = null;
   let last = Number.POSITIVE_INFINITY;
@@ -108,7 +109,7 @@ export function refine(problem: SplitProblem, start: Start, units: Float64Array)
 }
 
 function times(a: Float64Array, factor: number): Float64Array {
-  const b = new Float64Array(a.length);
+  const b = workArray(a.length);
   for (let i = 0; i < a.length; i++) b[i] = factor * a[i];
   return b;
 }
@@ -144,7 +145,7 @@ function advance(
   size: number,
   held: HeldLoop,
 ): void {
-  const before = x.hi.slice();
+  const before = workCopy(x.hi);
   addNarrow(x, change, 1);
   if (size <= SETTLE_ABOVE) return;
   settle(problem, x, held);

@@ -1,5 +1,6 @@
 import { flatCholesky, solveCholesky } from "../linalg/cholesky";
 import { flatProduct, flatTranspose, flatTransposedProduct } from "../linalg/flat";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 /** a and q after u = v - R⁻¹ S' x, and g = B R⁻¹ B': the three coefficients of the equation without cross term. */
@@ -26,13 +27,13 @@ export function removeCrossTerm(problem: FlatProblem, name: string): PlainProble
 }
 
 function difference(a: Float64Array, b: Float64Array): Float64Array {
-  const c = new Float64Array(a.length);
+  const c = workArray(a.length);
   for (let i = 0; i < a.length; i++) c[i] = a[i] - b[i];
   return c;
 }
 
 function solveLower(l: Float64Array, m: number, b: Float64Array, columns: number): Float64Array {
-  const x = b.slice();
+  const x = workCopy(b);
   for (let i = 0; i < m; i++) {
     for (let j = 0; j < columns; j++) {
       let sum = x[i * columns + j];

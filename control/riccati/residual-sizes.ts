@@ -1,4 +1,5 @@
 import { flatProduct, flatTransposedProduct, largestEntry } from "../linalg/flat";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 /**
@@ -15,7 +16,7 @@ export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64A
   const size = sizesOf(x);
   const states = flatTransposedProduct(a, size, n, n, n);
   const inputs = flatTransposedProduct(b, size, n, m, n);
-  const right = sampled ? flatProduct(inputs, a, m, n, n) : inputs.slice();
+  const right = sampled ? flatProduct(inputs, a, m, n, n) : workCopy(inputs);
   for (let i = 0; i < n; i++) for (let j = 0; j < m; j++) right[j * n + i] += Math.abs(s[i * m + j]);
   const weight = sizesOf(problem.r);
   const more = sampled ? flatProduct(inputs, b, m, n, m) : null;
@@ -24,7 +25,7 @@ export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64A
   const costs = flatTransposedProduct(gain, flatProduct(weight, gain, m, m, n), m, n, n);
   const own = sampled ? flatProduct(states, a, n, n, n) : states;
   const unit = 4 * (n + m) * Number.EPSILON * Number.EPSILON;
-  const floor = new Float64Array(n * n);
+  const floor = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) {
       const [at, mirror] = [i * n + j, j * n + i];
@@ -36,14 +37,14 @@ export function residualFloor(problem: FlatProblem, x: Float64Array, k: Float64A
 }
 
 function sizesOf(a: Float64Array): Float64Array {
-  const sizes = new Float64Array(a.length);
+  const sizes = workArray(a.length);
   for (let i = 0; i < a.length; i++) sizes[i] = Math.abs(a[i]);
   return sizes;
 }
 
 /** Diagonal matrix D with -D ≤ M ≤ D for every symmetric M whose entries are at most the given sizes. */
 export function diagonalMajorant(sizes: Float64Array, n: number): Float64Array {
-  const majorant = new Float64Array(n * n);
+  const majorant = workArray(n * n);
   const largest = largestEntry(sizes);
   if (largest === 0) return majorant;
   // Weights near the square roots of the diagonal make the majorant of a rank-one pattern no larger than n times it.

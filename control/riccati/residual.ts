@@ -1,5 +1,6 @@
 import { addNarrow, addWide, type Split, split, type Wide, widen, wideProduct, wideTranspose } from "../linalg/double-double";
 import { flatTranspose } from "../linalg/flat";
+import { workArray } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 /** The coefficient matrices of a problem, split once for exact products. */
@@ -66,8 +67,8 @@ export function riccatiResidual(problem: SplitProblem, x: Wide, k: Float64Array,
 
 /** W - (weight K) / 2 from K' weight: on the right of K' it makes both halves of the correction at once. */
 function lessHalf(right: Wide, pull: Wide, n: number, m: number): Wide {
-  const hi = new Float64Array(m * n);
-  const lo = new Float64Array(m * n);
+  const hi = workArray(m * n);
+  const lo = workArray(m * n);
   for (let i = 0; i < m; i++) {
     for (let j = 0, at = i * n, from = i; j < n; j++, at++, from += m) {
       const sum = right.hi[at];
@@ -84,7 +85,7 @@ function lessHalf(right: Wide, pull: Wide, n: number, m: number): Wide {
 
 /** T + T' + Q, summed in double-double and rounded; symmetric to the bit. */
 function withTranspose({ hi, lo }: Wide, q: Float64Array, n: number): Float64Array {
-  const sum = new Float64Array(n * n);
+  const sum = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0, at = i * n, mirror = i; j <= i; j++, at++, mirror += n) {
       const [x, y, z] = [hi[at], hi[mirror], q[at]];

@@ -1,6 +1,7 @@
 import { NumericalError } from "../errors";
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo, timesPowerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 /**
@@ -33,7 +34,7 @@ export function scaleProblem(given: FlatProblem, g: (scaled: FlatProblem) => Flo
   const input = Float64Array.from({ length: m }, (_, j) => inputScale(given, j, cost));
   const sizes = exponents(given, input, cost);
   const time = sampled ? 0 : sizes.time;
-  const state = new Float64Array(n).fill(powerOfTwo(sizes.state));
+  const state = workArray(n).fill(powerOfTwo(sizes.state));
   const first = apply(given, state, input, cost, time);
   balanceStates(first, g(first), state);
   const problem = apply(given, state, input, cost, time);
@@ -101,7 +102,7 @@ function scaled(
   right: readonly number[],
   rightSign: number,
 ): Float64Array {
-  const to = new Float64Array(from.length);
+  const to = workArray(from.length);
   const factors = right.map((e) => powerOfTwo(rightSign * e));
   for (let at = 0, i = 0; i < rows; i++) {
     const own = leftSign * left[i] - less;

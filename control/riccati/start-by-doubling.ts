@@ -3,6 +3,7 @@ import { flatIdentity, flatProduct, flatTranspose } from "../linalg/flat";
 import { factorLu, type Lu, solveLu } from "../linalg/lu";
 import { flatNorm } from "../linalg/norms";
 import { flatOneNorm } from "../linalg/solve-linear";
+import { workCopy } from "../linalg/work-array";
 import type { PlainProblem } from "./remove-cross-term";
 
 const STEP_LIMIT = 40;
@@ -22,7 +23,7 @@ type Triple = { e: Float64Array; g: Float64Array; h: Float64Array };
  */
 export function startByDoubling(problem: PlainProblem): Float64Array {
   const { n } = problem;
-  const triple = problem.sampled ? { e: problem.a, g: problem.g, h: problem.q.slice() } : cayleyTriple(problem);
+  const triple = problem.sampled ? { e: problem.a, g: problem.g, h: workCopy(problem.q) } : cayleyTriple(problem);
   for (let step = 0; step < STEP_LIMIT; step++) {
     const before = triple.h;
     double(triple, n);
@@ -94,7 +95,7 @@ function tryCayley(
   q: Float64Array,
   gamma: number,
 ): { triple: Triple; condition: number } | null {
-  const shifted = a.slice();
+  const shifted = workCopy(a);
   for (let i = 0; i < n; i++) shifted[i * n + i] -= gamma;
   const inner = factorLu(shifted, n);
   if (inner.zeroPivot >= 0) return null;

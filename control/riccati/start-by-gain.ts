@@ -6,6 +6,7 @@ import { flatSchur } from "../linalg/real-schur";
 import { reorderFlat } from "../linalg/reorder-schur";
 import { schurValues } from "../linalg/schur-values";
 import { solveLyapunovBySchur } from "../linalg/solve-lyapunov";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { FlatProblem } from "./problem";
 
 /**
@@ -22,16 +23,16 @@ export function startByGain({ n, m, a, b, sampled }: FlatProblem, shift: number)
   // Unstable eigenvalues last: the last rows of qt then carry a system of their own.
   const stable = reorderFlat(t, qt, n, ({ re, im }) => (sampled ? re * re + im * im < 0.99 : re < 0));
   const k = n - stable;
-  if (k === 0) return new Float64Array(m * n);
+  if (k === 0) return workArray(m * n);
   const rows = qt.subarray(stable * n);
-  const au = new Float64Array(k * k);
+  const au = workArray(k * k);
   for (let i = 0; i < k; i++) for (let j = 0; j < k; j++) au[i * k + j] = t[(stable + i) * n + stable + j];
   const gain = modeByMode(au, flatProduct(rows, b, k, n, m), k, m, sampled, shift);
   return flatProduct(gain, rows, m, k, n);
 }
 
 function modeByMode(a: Float64Array, b: Float64Array, k: number, m: number, sampled: boolean, shift: number): Float64Array {
-  const gain = new Float64Array(m * k);
+  const gain = workArray(m * k);
   for (let round = 0; round <= k; round++) {
     const pulled = flatProduct(b, gain, k, m, k);
     const loop = a.map((entry, at) => entry - pulled[at]);
@@ -40,7 +41,7 @@ function modeByMode(a: Float64Array, b: Float64Array, k: number, m: number, samp
     if (reorderFlat(t, qt, k, ({ re, im }) => (sampled ? re * re + im * im < 0.99 : re < 0)) === k) return gain;
     const size = k > 1 && t[k * k - 2] !== 0 ? 2 : 1;
     const rows = qt.subarray((k - size) * k);
-    const block = new Float64Array(size * size);
+    const block = workArray(size * size);
     for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) block[i * size + j] = t[(k - size + i) * k + k - size + j];
     const reached = flatProduct(rows, b, size, k, m);
     const part = sampled ? sampledGain(block, reached, size, m, shift) : continuousGain(block, reached, size, m, shift);
@@ -53,7 +54,7 @@ function modeByMode(a: Float64Array, b: Float64Array, k: number, m: number, samp
 /** (A + βI) Z + Z (A + βI)' = 2 B B', K = B' Z⁻¹: all poles of A - BK lie at real part -β or on the mirror of it. */
 function continuousGain(a: Float64Array, b: Float64Array, k: number, m: number, shift: number): Float64Array {
   const beta = shift * flatNorm(a) + (flatNorm(a) === 0 ? shift : 0);
-  const moved = a.slice();
+  const moved = workCopy(a);
   for (let i = 0; i < k; i++) moved[i * k + i] += beta;
   const right = flatProduct(b, flatTranspose(b, k, m), k, m, k).map((x) => -2 * x);
   const z = solveLyapunovBySchur(flatSchur(moved, k), k, right, false);

@@ -4,6 +4,7 @@ import { factorLu, solveLu } from "../linalg/lu";
 import { flatSchur } from "../linalg/real-schur";
 import { reorderFlat } from "../linalg/reorder-schur";
 import { schurValues } from "../linalg/schur-values";
+import { workArray } from "../linalg/work-array";
 import type { PlainProblem } from "./remove-cross-term";
 
 /**
@@ -28,8 +29,8 @@ export function startBySchur(problem: PlainProblem): Float64Array {
         );
   const selected = reorderFlat(t, qt, size, (value) => value.re < limit);
   if (selected !== n) throw new NumericalError("no-convergence", { routine: "ordered-schur", limit: n });
-  const u1 = new Float64Array(n * n);
-  const u2 = new Float64Array(n * n);
+  const u1 = workArray(n * n);
+  const u2 = workArray(n * n);
   for (let k = 0; k < n; k++) {
     for (let i = 0; i < n; i++) {
       u1[i * n + k] = qt[k * size + i];
@@ -59,7 +60,7 @@ export function hamiltonianMatrix(problem: PlainProblem): Float64Array {
 /** [A -G; -Q -A'] */
 function hamiltonian({ n, a, g, q }: PlainProblem): Float64Array {
   const size = 2 * n;
-  const h = new Float64Array(size * size);
+  const h = workArray(size * size);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) {
       h[i * size + j] = a[i * n + j];
@@ -74,8 +75,8 @@ function hamiltonian({ n, a, g, q }: PlainProblem): Float64Array {
 /** (M + L)⁻¹ (M - L) for M = [A 0; -Q I], L = [I G; 0 A']: eigenvalue z becomes (z - 1) / (z + 1). */
 function cayleyOfPencil({ n, a, g, q }: PlainProblem): Float64Array {
   const size = 2 * n;
-  const sum = new Float64Array(size * size);
-  const difference = new Float64Array(size * size);
+  const sum = workArray(size * size);
+  const difference = workArray(size * size);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) {
       const one = i === j ? 1 : 0;

@@ -3,12 +3,14 @@ import { eigenvalues } from "../linalg/eigenvalues";
 import { flatTranspose, flatTransposedProduct, fromFlat, largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, timesPowerOfTwo } from "../linalg/power-of-two";
+import { workArray, workCopy } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { boundaryMargin } from "./check-modes";
 import { closedLoop } from "./closed-loop";
 import { conditionNumber } from "./condition-number";
 import type { Gain } from "./gain";
 import type { FlatProblem } from "./problem";
+import { requireProvenStability } from "./proven-stability";
 import type { Refined } from "./refine";
 import type { ScaledProblem } from "./scale-problem";
 import type { RiccatiMethod, RiccatiSolution } from "./solution";
@@ -49,6 +51,7 @@ export function verifiedSolution(
   const closedLoopPoles = polesOf(scaled, gain.k.hi);
   const stabilityDistance = Math.min(...closedLoopPoles.map((pole) => boundaryMargin(pole, original.sampled)));
   if (!(stabilityDistance > 0)) throw new NumericalError("on-stability-boundary", { distance: stabilityDistance });
+  requireProvenStability(scaled.problem, refined);
   const K = fromFlat(k, m, n);
   const errorBound = gainErrorBound(scaled, refined, gain, k, growthOf(k, m, n));
   if (!(errorBound <= LARGEST_ERROR)) throw new NumericalError("inaccurate", { residual: errorBound, bound: LARGEST_ERROR });
@@ -76,7 +79,7 @@ function polesOf({ problem, time }: ScaledProblem, k: Float64Array): Complex[] {
 }
 
 function rescaled(from: Float64Array, columns: number, exponent: (i: number, j: number) => number): Float64Array {
-  const to = new Float64Array(from.length);
+  const to = workArray(from.length);
   for (let at = 0, i = 0; at < from.length; i++) {
     for (let j = 0; j < columns; j++, at++) if (from[at] !== 0) to[at] = timesPowerOfTwo(from[at], exponent(i, j));
   }
@@ -87,8 +90,8 @@ function rescaled(from: Float64Array, columns: number, exponent: (i: number, j: 
 function growthOf(k: Float64Array, m: number, n: number): number {
   const whole = flatNorm(k);
   if (whole === 0) return 0;
-  const v = new Float64Array(n);
-  const next = new Float64Array(n);
+  const v = workArray(n);
+  const next = workArray(n);
   for (let i = 0; i < m; i++) for (let j = 0; j < n; j++) if (Math.abs(k[i * n + j]) > Math.abs(v[j])) v[j] = k[i * n + j];
   let growth = 0;
   for (let round = 0; round < POWER_ROUNDS; round++) {
@@ -113,7 +116,7 @@ function relativeResidual({ n, m, a, b, q, sampled }: FlatProblem, refined: Refi
   const { x, loop, gain } = refined;
   // What rounding took from X passes through the linear part of the equation.
   const passed = flatTransposedProduct(loop, x.lo, n, n, n);
-  const left = refined.residual.slice();
+  const left = workCopy(refined.residual);
   const second = sampled ? flatTransposedProduct(loop, flatTranspose(passed, n, n), n, n, n) : null;
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) {

@@ -2,6 +2,7 @@ import { factorShiftedHessenberg, shiftedHessenbergRoom, solveShiftedHessenberg 
 import { eigenvalues } from "../linalg/eigenvalues";
 import { fromFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
+import { workArray } from "../linalg/work-array";
 import { boundaryMargin } from "./check-modes";
 import type { FlatProblem } from "./problem";
 import type { Refined } from "./refine";
@@ -24,7 +25,7 @@ export function wellWithinReach(problem: FlatProblem, refined: Refined): boolean
   const { n, a, b } = problem;
   const plant = flatNorm(a) + flatNorm(b);
   const needed = n * Number.EPSILON * plant * (1 + flatNorm(refined.gain.k.hi));
-  if (everywhere(problem, refined) > CLEAR * needed) return true;
+  if (loopDistance(problem, refined) > CLEAR * needed) return true;
   const room = shiftedHessenbergRoom(n);
   const slack = Math.sqrt(Number.EPSILON) * (problem.sampled ? 1 : plant);
   return eigenvalues(fromFlat(a, n, n)).every((pole) => {
@@ -36,8 +37,8 @@ export function wellWithinReach(problem: FlatProblem, refined: Refined): boolean
 
 /** Estimate of |(sI - T)⁻¹| from four solutions: each probe has length √n and sees, on average, 1/n of the largest growth squared. */
 function inverseSize(room: ReturnType<typeof shiftedHessenbergRoom>, n: number): number {
-  const re = new Float64Array(n * PROBES);
-  const im = new Float64Array(n * PROBES);
+  const re = workArray(n * PROBES);
+  const im = workArray(n * PROBES);
   for (let at = 0; at < re.length; at++) re[at] = signOf(Math.floor(at / PROBES), at % PROBES);
   solveShiftedHessenberg(room, re, im, PROBES);
   return Math.sqrt(n) * (flatNorm(re) + flatNorm(im));
@@ -57,7 +58,7 @@ export function wellInSight(problem: FlatProblem, refined: Refined): boolean {
   let least = Number.POSITIVE_INFINITY;
   for (let j = 0; j < m; j++) least = Math.min(least, r[j * m + j]);
   const sizeB = flatNorm(b);
-  const proven = everywhere(problem, refined);
+  const proven = loopDistance(problem, refined);
   // A loop that rounding alone keeps off the boundary proves nothing.
   if (!(proven > CLEAR * n * Number.EPSILON * (flatNorm(a) + sizeB * flatNorm(refined.gain.k.hi)))) return false;
   const moved = proven / sizeB;
@@ -66,6 +67,6 @@ export function wellInSight(problem: FlatProblem, refined: Refined): boolean {
 }
 
 /** The loop is at least this far from having an eigenvalue on or outside the boundary. */
-function everywhere({ sampled }: FlatProblem, { amplification }: Refined): number {
+export function loopDistance({ sampled }: FlatProblem, { amplification }: Refined): number {
   return 1 / ((sampled ? 3 : 2) * flatNorm(amplification));
 }
