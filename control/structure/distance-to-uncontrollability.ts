@@ -57,7 +57,8 @@ export function distanceToUncontrollability(A: Matrix, B: Matrix, evaluations = 
     floor,
     most: evaluations,
   });
-  if (!Number.isFinite(found.upper / scale)) throw new NumericalError("too-large", { what: "distance", limit: Number.MAX_VALUE });
+  const largest = Math.max(found.upper, Math.abs(at.re), Math.abs(at.im)) / scale;
+  if (!Number.isFinite(largest)) throw new NumericalError("too-large", { what: "distance", limit: Number.MAX_VALUE });
   return {
     lower: found.lower / scale,
     upper: found.upper / scale,
