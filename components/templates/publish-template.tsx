@@ -4,7 +4,7 @@ import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { fetchDesignRevision } from "@/lib/client/designs";
 import { publishTemplate } from "@/lib/client/templates";
-import type { PlantContent } from "@/lib/schemas/plant";
+import type { Plant, PlantContent } from "@/lib/schemas/plant";
 import { useSession } from "../providers/session-provider";
 import { useToast } from "../providers/toast-provider";
 import { Button } from "../ui/button";
@@ -18,6 +18,8 @@ type PublishTemplateProps = Readonly<{
   plantName: string;
   /** The plant as saved; entries and parameters as typed. */
   content: PlantContent;
+  /** The plant's own, which go along. */
+  criteria: Plant["criteria"];
   /** Whose recipe can go along, the newest first. */
   designs: readonly RecipeChoice[];
 }>;
@@ -25,7 +27,7 @@ type PublishTemplateProps = Readonly<{
 const FORM = "publish-template";
 
 /** For leads: makes the plant and one design's recipe a template. What was typed stays when the dialog is closed. */
-export function PublishTemplate({ plantName, content, designs }: PublishTemplateProps) {
+export function PublishTemplate({ plantName, content, criteria, designs }: PublishTemplateProps) {
   const { resume } = useSession();
   const toast = useToast();
   const router = useRouter();
@@ -52,7 +54,7 @@ export function PublishTemplate({ plantName, content, designs }: PublishTemplate
       const body = {
         name: draft.name,
         description: draft.description,
-        content: { plant: content, recipe, openParameters: parameters },
+        content: { plant: content, recipe, criteria, openParameters: parameters },
       };
       const { id, name } = await resume(() => publishTemplate(body, keyFor(body)));
       setOpen(false);

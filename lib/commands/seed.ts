@@ -1,6 +1,7 @@
 import { randomUUID } from "node:crypto";
 import { inTransaction } from "@/db/client";
 import { findPlant } from "@/db/queries/plants";
+import { Criteria } from "@/lib/schemas/criteria";
 import { CreatePlant, type PlantContent } from "@/lib/schemas/plant";
 import { Recipe } from "@/lib/schemas/recipe";
 import { TemplateContent } from "@/lib/schemas/template";
@@ -10,6 +11,7 @@ import type { Context, Visitor } from "@/lib/services/context";
 import { createDesign } from "@/lib/services/designs/create";
 import { addPlantRevision } from "@/lib/services/plants/add-revision";
 import { createPlant } from "@/lib/services/plants/create";
+import { setCriteria } from "@/lib/services/plants/set-criteria";
 import { joinByInvitation } from "@/lib/services/team/accept-invitation";
 import { issue } from "@/lib/services/team/invite";
 import { publishTemplate } from "@/lib/services/templates/publish";
@@ -24,6 +26,7 @@ import { demoAccounts, demoPassword, demoTeam } from "./demo-accounts.mjs";
 type DemoPlant = {
   readonly name: string;
   readonly note: string;
+  readonly criteria: unknown;
   readonly content: unknown;
   readonly designs: readonly DemoDesign[];
 };
@@ -49,8 +52,9 @@ async function seedPeople(): Promise<Context> {
   return ctx;
 }
 
-async function seedPlant(ctx: Context, { name, note, content, designs }: DemoPlant) {
+async function seedPlant(ctx: Context, { name, note, criteria, content, designs }: DemoPlant) {
   const plant = await createPlant(ctx, CreatePlant.parse({ name, note, content }));
+  await setCriteria(ctx, plant.id, plant.version, Criteria.parse(criteria));
   const revisionIds: string[] = [];
   for (const design of designs) {
     const recipe = Recipe.parse(design.recipe);
@@ -86,6 +90,7 @@ async function seedTemplate(ctx: Context) {
   const content = TemplateContent.parse({
     plant,
     recipe: gantry.designs[1].recipe,
+    criteria: gantry.criteria,
     openParameters: [
       open(plant, "Mb", { lowest: 20, highest: 80, help: "Cross beam without the carriage, weighed or from the drawing." }),
       open(plant, "mc", { lowest: 2, highest: 20, help: "Carriage with camera and its share of the cable chain." }),

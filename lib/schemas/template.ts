@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { Finite, Id, inUnit, Name, OwnUnit, Remark, Timestamp, Unit, Version } from "./common";
+import { Criteria } from "./criteria";
 import { PlantContent } from "./plant";
 import { Recipe } from "./recipe";
 
@@ -23,6 +24,8 @@ export type OpenParameter = z.infer<typeof OpenParameter>;
 export const TemplateContent = z.strictObject({
   plant: PlantContent,
   recipe: Recipe,
+  /** What designs of a plant started from it are held against; without it nothing. */
+  criteria: Criteria.optional(),
   openParameters: z.array(OpenParameter).min(1, "A template needs at least one open parameter").max(64),
 });
 export type TemplateContent = z.infer<typeof TemplateContent>;

@@ -2,7 +2,7 @@ import { afterAll, describe, expect, test } from "vitest";
 import { closePool } from "@/db/client";
 import { closeNumericPool } from "@/lib/jobs/run-numeric";
 import type { DesignRevision, DesignSummary } from "@/lib/schemas/design";
-import type { PlantRevision, PlantSummary } from "@/lib/schemas/plant";
+import type { Plant, PlantRevision, PlantSummary } from "@/lib/schemas/plant";
 import type { Template, TemplateSummary } from "@/lib/schemas/template";
 import { type Api, member } from "../helpers/api";
 import { problemIn } from "../helpers/call-route";
@@ -154,4 +154,20 @@ describe("starting from a template", () => {
     await api.post(path, { archived: false }, 2);
     expect((await start(api, template, {})).status).toBe(201);
   });
+});
+
+test("acceptance criteria go along with the plant, and without any the plant has none", async () => {
+  const { api } = await member();
+  const criteria = [
+    { kind: "settling", signal: "enc1", limit: 4 },
+    { kind: "effort", signal: null, limit: 90 },
+  ] as const;
+  const startedFrom = async (template: Template) => {
+    const { plantId } = await (await start(api, template, { m: 8, wn: 20 })).json();
+    return (await api.get<Plant>(`/api/v1/plants/${plantId}`)).criteria;
+  };
+  const made = await publish(api, { criteria });
+  expect(made.content.criteria).toEqual(criteria);
+  expect(await startedFrom(made)).toEqual(criteria);
+  expect(await startedFrom(await publish(api))).toEqual([]);
 });

@@ -65,9 +65,7 @@ export function PlantPage({ plant: start, revision, mayWrite, mayPublish }: Plan
           <>
             {readOnly ? null : <UndoButtons {...draft} />}
             {mayWrite ? <PlantActions plant={plant} onChanged={changed} /> : null}
-            {mayPublish && !draft.dirty ? (
-              <SaveAsTemplate plantId={plant.id} plantName={plant.name} content={draft.content} />
-            ) : null}
+            {mayPublish && !draft.dirty ? <SaveAsTemplate plant={plant} content={draft.content} /> : null}
             {readOnly || draft.dirty ? null : (
               <LinkButton tone={plant.designCount === 0 ? "primary" : undefined} href={`/plants/${plant.id}/designs/new`}>
                 New design

@@ -29,11 +29,12 @@ export async function startFromTemplate(
     detail: `With these values, at ${pointer} of the template's plant: ${message}`,
   });
   const model = await evaluateOrRefuse(ctx, content, { toIssue, signal });
-  const { recipe } = template.content;
+  const { recipe, criteria } = template.content;
   const evidence = await solveOrRefuse(ctx, model, recipe, { at: "/values", signal });
   const note = `From template ${template.name}`;
   return inTransaction(ctx, async (tx) => {
-    const { plantId, revisionId } = await insertWithFirstRevision(tx, ctx, { name: plantName, content, model, note });
+    const plant = { name: plantName, content, model, note, criteria };
+    const { plantId, revisionId } = await insertWithFirstRevision(tx, ctx, plant);
     const revision = { plantId, plantRevisionId: revisionId, recipe, note, name: designName };
     return { plantId, designId: await insertWithFirstDesignRevision(tx, ctx, revision, evidence) };
   });

@@ -2,6 +2,7 @@ import type { Metadata } from "next";
 import { notFound } from "next/navigation";
 import { cache } from "react";
 import { RecipeReading } from "@/components/designs/recipe/recipe-reading";
+import { CriteriaList } from "@/components/plants/criteria/criteria-list";
 import { ArchiveTemplate } from "@/components/templates/archive-template";
 import { StartFromTemplate } from "@/components/templates/start-from-template";
 import { TemplatePlant } from "@/components/templates/template-plant";
@@ -65,6 +66,11 @@ export default async function Page({ params }: PageProps) {
           <SheetSection title="The plant">
             <TemplatePlant model={model} source={content.plant.source} />
           </SheetSection>
+          {content.criteria?.length ? (
+            <SheetSection title="Acceptance criteria" note="what designs of the plant are held against">
+              <CriteriaList label="Acceptance criteria" criteria={content.criteria} />
+            </SheetSection>
+          ) : null}
           <SheetSection title="The recipe" note="how the first design is made, and why">
             <div className="max-w-xl">
               <RecipeReading recipe={content.recipe} model={model} />
