@@ -50,7 +50,10 @@ export function DesignBench({ start }: Readonly<{ start: BenchStart }>) {
   // A recipe that cannot be sent is not asked a name for: its fields say first what is wrong.
   const open = (which: "revision" | "new") => (reading.recipe ? setDialog(which) : void bench.solve());
   const save = () => open(base.design ? "revision" : "new");
-  const close = () => setDialog(null);
+  const close = () => {
+    saving.stop();
+    setDialog(null);
+  };
   useBenchKeys({
     ...(mapByKey && { map: () => setDialog("keys") }),
     ...(mayEdit && {

@@ -56,8 +56,8 @@ export class Autosave<T extends object> {
   offer(content: T | null): void {
     if (content === this.latest) return;
     this.latest = content;
-    if (content === null) this.forgetTimer();
-    this.plan();
+    if (content === null) this.tryNow();
+    else this.plan();
   }
 
   /** From here on writes may replace whatever has one of `marks`. */
@@ -82,8 +82,7 @@ export class Autosave<T extends object> {
   /** The page is left: what is due is sent once more, and nothing is tried again. */
   stop(): void {
     this.stopped = true;
-    this.forgetTimer();
-    this.plan();
+    this.tryNow();
   }
 
   private get isDone(): boolean {

@@ -35,7 +35,10 @@ function Choices({
   const say = useToast();
   const submit = useSubmit(FIELDS);
   const { design, theirs, note } = conflict;
-  const close = () => saving.setConflict(null);
+  const close = () => {
+    saving.stop();
+    saving.setConflict(null);
+  };
   const next = theirs.number + 1;
   const differences = recipeDifferences(
     { recipe: theirs.recipe, model: theirs.model as PlantModel },
@@ -74,7 +77,7 @@ function Choices({
       }
     >
       <div className="flex flex-col gap-4">
-        <SaveRefusal submit={submit} model={bench.ground.model} />
+        <SaveRefusal submit={submit} waiting={saving.waiting} model={bench.ground.model} />
         <p>
           {theirs.createdBy ?? "Somebody"} saved it on {whenText(theirs.createdAt)}
           {theirs.note ? `: “${theirs.note}”` : "."} Yours is kept on this page until you choose; theirs stays in the list of

@@ -45,8 +45,8 @@ export function SaveNewDialog({ bench, saving, plantId, suggested, open, onClose
       title={bench.base.design ? "Save as a new design" : "Save the design"}
       leave="Go on editing"
       label="Save"
-      busyLabel="Solving and saving…"
-      refusal={<SaveRefusal submit={submit} model={bench.ground.model} />}
+      busyLabel={saving.waiting ? "Waiting for a connection…" : "Solving and saving…"}
+      refusal={<SaveRefusal submit={submit} waiting={saving.waiting} model={bench.ground.model} />}
       onSend={send}
     >
       <NameField

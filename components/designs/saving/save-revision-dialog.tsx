@@ -49,8 +49,8 @@ export function SaveRevisionDialog({ bench, saving, open, onClose }: SaveRevisio
       wide
       leave="Go on editing"
       label={`Save revision ${next}`}
-      busyLabel="Solving and saving…"
-      refusal={<SaveRefusal submit={submit} model={ground.model} />}
+      busyLabel={saving.waiting ? "Waiting for a connection…" : "Solving and saving…"}
+      refusal={<SaveRefusal submit={submit} waiting={saving.waiting} model={ground.model} />}
       onSend={send}
     >
       <RecipeChanges

@@ -1,7 +1,7 @@
 "use client";
 
 import { useQueryClient } from "@tanstack/react-query";
-import { useState } from "react";
+import { useRef, useState } from "react";
 import type { Recipe } from "@/control/design/recipe";
 import { addDesignRevision, createDesign, designKeys, fetchDesign, fetchDesignRevision } from "@/lib/client/designs";
 import { RequestProblem } from "@/lib/client/request";
@@ -10,15 +10,38 @@ import { useSession } from "../../providers/session-provider";
 import { useCreateKey } from "../../ui/use-create-key";
 import type { Bench } from "../bench/use-bench";
 import { computed } from "../evidence/figures-reply";
+import { recipeKey } from "../recipe/read-form";
+import { untilAnswered } from "./until-answered";
 
 /** Somebody saved a revision after this edit began. */
 export type Conflict = { readonly design: DesignSummary; readonly theirs: DesignRevision; readonly note: string };
 
 const isStale = (error: unknown) => error instanceof RequestProblem && error.code === "stale-version";
 
+/**
+ * One press, one save: without a connection it is sent again until it is answered. A create carries its key; a revision is sent from
+ * its version, so that it counts once, too.
+ */
+function useSending() {
+  const { resume } = useSession();
+  const [waiting, setWaiting] = useState(false);
+  const running = useRef<AbortController | null>(null);
+  const send = <T>(work: () => Promise<T>): Promise<T> => {
+    const { signal } = running.current ?? new AbortController();
+    return untilAnswered(() => resume(work), { signal, onWaiting: setWaiting });
+  };
+  /** Gives up what waits; what was sent already may still arrive. */
+  const stop = () => running.current?.abort();
+  const start = () => {
+    stop();
+    running.current = new AbortController();
+  };
+  return { send, start, stop, waiting };
+}
+
 /** Stores the recipe on the page. The server solves it again; what it stores is what is shown afterwards. */
 export function useSaving(bench: Bench, plantId: string) {
-  const { resume } = useSession();
+  const { send, start, stop, waiting } = useSending();
   const cache = useQueryClient();
   const [conflict, setConflict] = useState<Conflict | null>(null);
   const keyOf = useCreateKey();
@@ -39,21 +62,26 @@ export function useSaving(bench: Bench, plantId: string) {
       note,
       shown: shownGains(bench),
     };
-    const send = (at: number) => resume(() => addDesignRevision(design.id, at, body));
+    start();
+    const addAt = (at: number) => send(() => addDesignRevision(design.id, at, body));
     let saved: DesignSummary;
     try {
-      saved = await send(version);
+      saved = await addAt(version);
     } catch (error) {
       if (!isStale(error)) throw error;
-      const now = await resume(() => fetchDesign(design.id));
-      if (now.currentRevision.id !== from?.revisionId) {
-        setConflict({ design: now, theirs: await resume(() => fetchDesignRevision(now.currentRevision.id)), note });
-        return false;
+      saved = await send(() => fetchDesign(design.id));
+      if (saved.currentRevision.id === from?.revisionId) {
+        // Only its name or its place in the archive changed: nothing of theirs is saved over.
+        saved = await addAt(saved.version);
+      } else {
+        const theirs = await send(() => fetchDesignRevision(saved.currentRevision.id));
+        if (!isSame(theirs, body)) {
+          setConflict({ design: saved, theirs, note });
+          return false;
+        }
       }
-      // Only its name or its place in the archive changed: nothing of theirs is saved over.
-      saved = await send(now.version);
     }
-    bench.settle(saved, await resume(() => fetchDesignRevision(saved.currentRevision.id)));
+    bench.settle(saved, await send(() => fetchDesignRevision(saved.currentRevision.id)));
     setConflict(null);
     listsChanged(design.id);
     return true;
@@ -69,12 +97,13 @@ export function useSaving(bench: Bench, plantId: string) {
       note,
       shown: shownGains(bench),
     };
-    const made = await resume(() => createDesign(plantId, body, keyOf(body)));
+    start();
+    const made = await send(() => createDesign(plantId, body, keyOf(body)));
     listsChanged(made.id);
     return made;
   }
 
-  return { conflict, setConflict, saveRevision, saveAsNew };
+  return { conflict, setConflict, saveRevision, saveAsNew, waiting, stop };
 }
 
 export type Saving = ReturnType<typeof useSaving>;
@@ -84,6 +113,10 @@ function shownGains({ stale, solving: { solved } }: Bench): AddDesignRevision["s
   const gains = solved && !stale ? computed(solved.evidence.gains) : null;
   return solved && gains ? { methodVersion: solved.evidence.methodVersion, K: gains.K } : undefined;
 }
+
+/** The newest revision is the very one that was sent: only the answer to it was lost. */
+const isSame = ({ plantRevision, note, recipe }: DesignRevision, sent: AddDesignRevision): boolean =>
+  plantRevision.id === sent.plantRevisionId && note === (sent.note ?? "") && recipeKey(recipe) === recipeKey(sent.recipe);
 
 /** The body's type allows changing; the recipe's does not. */
 const asSent = (recipe: Recipe) => recipe as AddDesignRevision["recipe"];
