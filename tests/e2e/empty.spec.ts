@@ -30,6 +30,7 @@ test("every list of an empty team says what belongs there and offers one thing t
   await expectEmpty(page, "/plants?search=nothing-like-it", "No plant matches", "Show all plants");
   await expectEmpty(page, "/plants?archived=yes", "No plant matches", "Show all plants");
   await expectEmpty(page, `/plants/${plant.id}?tab=designs`, /No design|first design/i, /design/i);
+  await expectEmpty(page, `/plants/${plant.id}?tab=criteria`, "No acceptance criteria yet", "Add criterion");
   await expectEmpty(page, `/plants/${plant.id}?tab=parameters`, "Parameters", "Add parameter");
   await expectEmpty(page, `/plants/${plant.id}/side-by-side`, /design/i, /design/i);
 });

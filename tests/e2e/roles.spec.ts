@@ -29,6 +29,7 @@ const OFFERS: readonly Offer[] = [
   { right: "plant:write", path: plantPage, seen: button(/^More for/) },
   { right: "plant:write", path: (things) => `${plantPage(things)}?tab=signals`, seen: button("Add state") },
   { right: "plant:write", path: (things) => `${plantPage(things)}?tab=parameters`, seen: button("Add parameter") },
+  { right: "plant:write", path: (things) => `${plantPage(things)}?tab=criteria`, seen: button("Add criterion") },
   { right: "design:write", path: plantPage, seen: link("New design") },
   { right: "design:write", path: (things) => `${plantPage(things)}/designs/new`, seen: button("Save design") },
   { right: "design:write", path: designPage, seen: button("Save revision 2") },

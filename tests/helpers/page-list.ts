@@ -21,6 +21,12 @@ export async function teamPages(request: APIRequestContext): Promise<readonly Li
   const plant = await storedPlant(request);
   const [first, second] = [await storedDesign(request, plant), await storedDesign(request, plant, "The same again")];
   const template = await storedTemplate(request);
+  const criteria = [
+    { kind: "settling", signal: null, limit: 1000 },
+    { kind: "cross-peak", signal: "enc1", limit: 0.001 },
+    { kind: "effort", signal: "gone", limit: 80 },
+  ];
+  await told(request, `/api/v1/plants/${plant.id}/criteria`, { method: "PUT", data: { criteria }, version: plant.version });
   await told(request, `/api/v1/team/invitations`, { data: { email: `guest-${plant.id}@saltmarsh.example`, role: "engineer" } });
   const at = `/plants/${plant.id}`;
   const both = `${first.currentRevision.id},${second.currentRevision.id}`;
@@ -35,6 +41,7 @@ export async function teamPages(request: APIRequestContext): Promise<readonly Li
     { name: "signals", path: `${at}?tab=signals` },
     { name: "parameters", path: `${at}?tab=parameters` },
     { name: "designs", path: `${at}?tab=designs` },
+    { name: "acceptance criteria", path: `${at}?tab=criteria` },
     { name: "history", path: `${at}?tab=history` },
     { name: "new design", path: `${at}/designs/new` },
     { name: "design", path: `${at}/designs/${first.id}` },
