@@ -60,10 +60,11 @@ export class Autosave<T extends object> {
     else this.plan();
   }
 
-  /** From here on writes may replace whatever has one of `marks`. */
-  release(marks: readonly string[]): void {
+  /** From here on writes may replace whatever has one of `marks`; `stored` is what the server has already, where that is known. */
+  release(marks: readonly string[], stored: T | null = null): void {
     this.held = null;
     this.marks = marks;
+    this.stored = stored;
     this.tryNow();
   }
 

@@ -103,7 +103,7 @@ export class DraftKeeper {
     const { unsaved } = this.page.now();
     if (server && unsaved && !sameDraft(unsaved, fromServer(server))) return this.ask(fromServer(server), [server.mark]);
     this.asking = false;
-    this.autosave.release(server ? [server.mark] : []);
+    this.autosave.release(server ? [server.mark] : [], server && unsaved);
   }
 
   private async fetched(): Promise<Draft | null | RequestProblem> {
