@@ -4,9 +4,10 @@ import { type Dispatch, type SetStateAction, useMemo, useState } from "react";
 import { useSession } from "../../providers/session-provider";
 import { draftKey, fitsPlant, type RecipeDraft } from "../drafts/draft-store";
 import { useKeptDraft } from "../drafts/use-kept-draft";
+import { readForm } from "../recipe/read-form";
 import { rekeyed } from "../recipe/recipe-form";
 import type { useRecipeForm } from "../recipe/use-recipe-form";
-import { type Base, draftName, draftSubject, unsavedOf } from "./bench-base";
+import { type Base, draftName, draftSubject, isDirty, unsavedOf } from "./bench-base";
 import type { BenchStart, Ground } from "./bench-types";
 
 type BenchDraft = Readonly<{
@@ -34,6 +35,8 @@ export function useBenchDraft({ start, active, dirty, editing, base, setBase, gr
     const its = same ? start.ground : await plantRevision(draft.plantRevisionId).catch(() => null);
     if (!its || !fitsPlant(draft.form, its.model)) return;
     const back = rekeyed(draft.form);
+    // Saved already, in another tab or by one that ended right then: nothing is unsaved, and edits start from the newest revision.
+    if (!isDirty(base, its, readForm(back, its.model))) return;
     setGround(its);
     // In place of what somebody is at work on, it is a step that can be undone.
     if (canUndo && its.plantRevision.id === ground.plantRevision.id) change(null, () => back);
