@@ -40,7 +40,7 @@ export function computeDesign(model: PlantModel, recipe: Recipe): Evidence {
     recipe.reference.kind === "none" ? null : attemptAfter(gain, ({ K }) => referenceGain({ ...plant, K, sampled }));
   const { observer: wanted } = recipe;
   const observer = wanted.kind === "none" ? null : attempt(() => findObserver(plant, wanted, timeBase, scale));
-  const responses = attemptAfter(gain, ({ K }) =>
+  const responses = attemptAfter(gain, ({ K, poles }) =>
     respond({
       plant,
       period: timeBase.kind === "sampled" ? timeBase.period : null,
@@ -50,6 +50,7 @@ export function computeDesign(model: PlantModel, recipe: Recipe): Evidence {
       experiments: { ...recipe.test, amplitudes: model.commanded.map(({ amplitude }) => amplitude) },
       room: inputRoom(model),
       horizon: recipe.test.horizon,
+      poles: { regulator: poles, observer: observer?.state === "computed" ? observer.value.errorPoles : [] },
     }),
   );
   return {

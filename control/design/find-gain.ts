@@ -1,9 +1,10 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
+import { rightEigensystem } from "../linalg/eigensystem";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { weightsFromDeviations } from "../lqr/accepted-deviations";
 import { designLqr } from "../lqr/design-lqr";
-import type { TimeBase } from "../plant/model";
+import type { Complex, TimeBase } from "../plant/model";
 import { toMatrix, toRows } from "../plant/to-matrix";
 import { placePoles } from "../poles/place-poles";
 import { isStablePole, requireStablePoles } from "../poles/require-stable-poles";
@@ -13,7 +14,13 @@ import type { PlantMatrices } from "./plant-matrices";
 import type { PolesRecipe, Recipe, WeightsRecipe } from "./recipe";
 import { eigenvectorCondition } from "./report-poles";
 
-export type FoundGain = { readonly K: Matrix; readonly closed: Matrix; readonly evidence: GainEvidence };
+export type FoundGain = {
+  readonly K: Matrix;
+  readonly closed: Matrix;
+  /** Eigenvalues of `closed`. */
+  readonly poles: readonly Complex[];
+  readonly evidence: GainEvidence;
+};
 
 /**
  * Gain K of u = -K x by the recipe's method, verified to stabilise.
@@ -22,20 +29,24 @@ export type FoundGain = { readonly K: Matrix; readonly closed: Matrix; readonly 
  * Accuracy  as those
  */
 export function findGain(plant: PlantMatrices, recipe: Recipe, timeBase: TimeBase): FoundGain {
-  const { K, evidence } = recipe.method === "weights" ? byWeights(plant, recipe, timeBase) : byPoles(plant, recipe, timeBase);
-  const closed = Matrix.sub(plant.A, plant.B.mmul(K));
-  requireStable(closed, timeBase);
-  return { K, closed, evidence };
+  const found = recipe.method === "weights" ? byWeights(plant, recipe, timeBase) : byPoles(plant, recipe, timeBase);
+  requireInside(found.poles, timeBase);
+  return found;
 }
 
-/** Throws not-stabilising with the first pole that is not inside the stability boundary. */
-export function requireStable(dynamics: Matrix, timeBase: TimeBase): void {
-  if (dynamics.rows === 0) return;
-  const pole = eigenvalues(dynamics).find((value) => !isStablePole(value, timeBase.kind === "sampled"));
+/** The eigenvalues of dynamics; throws not-stabilising with the first one that is not inside the stability boundary. */
+export function stablePolesOf(dynamics: Matrix, timeBase: TimeBase): Complex[] {
+  const poles = dynamics.rows === 0 ? [] : eigenvalues(dynamics);
+  requireInside(poles, timeBase);
+  return poles;
+}
+
+function requireInside(poles: readonly Complex[], timeBase: TimeBase): void {
+  const pole = poles.find((value) => !isStablePole(value, timeBase.kind === "sampled"));
   if (pole) throw new NumericalError("not-stabilising", { pole });
 }
 
-function byWeights({ A, B }: PlantMatrices, recipe: WeightsRecipe, timeBase: TimeBase): Omit<FoundGain, "closed"> {
+function byWeights({ A, B }: PlantMatrices, recipe: WeightsRecipe, timeBase: TimeBase): FoundGain {
   const n = A.rows;
   const m = B.columns;
   const { weights } = recipe;
@@ -54,7 +65,8 @@ function byWeights({ A, B }: PlantMatrices, recipe: WeightsRecipe, timeBase: Tim
     timeBase,
   });
   const { K, X, residual, bound, errorBound, method } = found;
-  const condition = eigenvectorCondition(Matrix.sub(A, B.mmul(K)));
+  const closed = Matrix.sub(A, B.mmul(K));
+  const spectrum = rightEigensystem(closed);
   const evidence = {
     K: toRows(K),
     method,
@@ -62,10 +74,10 @@ function byWeights({ A, B }: PlantMatrices, recipe: WeightsRecipe, timeBase: Tim
     bound,
     errorBound,
     P: toRows(X),
-    eigenvectorCondition: condition,
+    eigenvectorCondition: eigenvectorCondition(spectrum),
     poleError: null,
   };
-  return { K, evidence };
+  return { K, closed, poles: spectrum.values, evidence };
 }
 
 function requireCounts(states: number, n: number, inputs: number, m: number): void {
@@ -73,7 +85,7 @@ function requireCounts(states: number, n: number, inputs: number, m: number): vo
     throw new NumericalError("shape-mismatch", { what: "weights", expected: [n, m], given: [states, inputs] });
 }
 
-function byPoles({ A, B }: PlantMatrices, recipe: PolesRecipe, timeBase: TimeBase): Omit<FoundGain, "closed"> {
+function byPoles({ A, B }: PlantMatrices, recipe: PolesRecipe, timeBase: TimeBase): FoundGain {
   const poles = resolvePoles(recipe.poles, timeBase);
   requireStablePoles(poles, timeBase);
   const { K, method, residual, bound, conditioning, poleError, poleShiftPerGainDigit, gainNorm } = placePoles({
@@ -82,8 +94,11 @@ function byPoles({ A, B }: PlantMatrices, recipe: PolesRecipe, timeBase: TimeBas
     poles,
     allowDefective: recipe.allowDefective,
   });
+  const closed = Matrix.sub(A, B.mmul(K));
   return {
     K,
+    closed,
+    poles: eigenvalues(closed),
     evidence: {
       K: toRows(K),
       method,

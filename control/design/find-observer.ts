@@ -3,18 +3,23 @@ import { NumericalError } from "../errors";
 import { observerByPoles } from "../observer/observer-by-poles";
 import { observerFromNoise } from "../observer/observer-from-noise";
 import { reducedObserver } from "../observer/reduced-observer";
-import type { TimeBase } from "../plant/model";
+import type { Complex, TimeBase } from "../plant/model";
 import { toMatrix, toRows } from "../plant/to-matrix";
 import { requireStablePoles } from "../poles/require-stable-poles";
 import { resolvePoles } from "../poles/resolve-poles";
 import type { ObserverInLoop } from "../response/close-loop";
 import type { ObserverEvidence } from "./evidence";
-import { requireStable } from "./find-gain";
+import { stablePolesOf } from "./find-gain";
 import type { PlantMatrices } from "./plant-matrices";
 import type { ObserverRecipe, PoleEntry, WantedPoles } from "./recipe";
 import { reportPlainPoles, reportPoles } from "./report-poles";
 
-export type FoundObserver = { readonly inLoop: ObserverInLoop; readonly evidence: ObserverEvidence };
+export type FoundObserver = {
+  readonly inLoop: ObserverInLoop;
+  /** Eigenvalues of the estimation error. */
+  readonly errorPoles: readonly Complex[];
+  readonly evidence: ObserverEvidence;
+};
 type Wanted = Exclude<ObserverRecipe, { kind: "none" }>;
 
 /**
@@ -47,9 +52,9 @@ function find(plant: PlantMatrices, wanted: Wanted, timeBase: TimeBase, scale: F
           sampled: timeBase.kind === "sampled",
         });
   const error = Matrix.sub(A, L.mmul(C));
-  requireStable(error, timeBase);
+  const errorPoles = stablePolesOf(error, timeBase);
   const poles = reportPoles(error, timeBase, scale);
-  return { inLoop: { kind: "full", L }, evidence: { kind: "full", L: toRows(L), residual, bound, poles, method } };
+  return { inLoop: { kind: "full", L }, errorPoles, evidence: { kind: "full", L: toRows(L), residual, bound, poles, method } };
 }
 
 function stablePoles(entries: readonly PoleEntry[], timeBase: TimeBase) {
@@ -62,10 +67,11 @@ function reduced({ A, B, C, D }: PlantMatrices, wanted: WantedPoles, timeBase: T
   const poles = stablePoles(wanted.poles, timeBase);
   const { allowDefective } = wanted;
   const { order, Fw, Fy, Fu, Gw, Gy, residual, bound, method } = reducedObserver({ A, B, C, D, poles, allowDefective });
-  requireStable(Fw, timeBase);
+  const errorPoles = stablePolesOf(Fw, timeBase);
   const rows = { Fw: toRows(Fw), Fy: toRows(Fy), Fu: toRows(Fu), Gw: toRows(Gw), Gy: toRows(Gy) };
   return {
     inLoop: { kind: "reduced", Fw, Fy, Fu, Gw, Gy },
-    evidence: { kind: "reduced", order, ...rows, residual, bound, poles: reportPlainPoles(Fw, timeBase), method },
+    errorPoles,
+    evidence: { kind: "reduced", order, ...rows, residual, bound, poles: reportPlainPoles(errorPoles, timeBase), method },
   };
 }

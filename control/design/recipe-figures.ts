@@ -6,7 +6,7 @@ import type { PlantModel, TimeBase } from "../plant/model";
 import type { Part } from "../plant/report";
 import { respond } from "../response/respond";
 import type { Summary } from "./evidence";
-import { findGain, requireStable } from "./find-gain";
+import { findGain, stablePolesOf } from "./find-gain";
 import { inputRoom } from "./input-room";
 import { type PlantMatrices, plantMatrices } from "./plant-matrices";
 import type { Recipe } from "./recipe";
@@ -53,7 +53,7 @@ export function recipeFigures(model: PlantModel, recipe: Recipe): Part<Summary> 
 /** The same with a gain that was found elsewhere; null where it does not hold the plant. */
 export function gainFigures(model: PlantModel, plant: PlantMatrices, K: Matrix): Summary | null {
   try {
-    requireStable(Matrix.sub(plant.A, plant.B.mmul(K)), model.timeBase);
+    stablePolesOf(Matrix.sub(plant.A, plant.B.mmul(K)), model.timeBase);
     return stepSummary(model, plant, K);
   } catch (error) {
     if (error instanceof NumericalError) return null;

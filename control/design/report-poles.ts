@@ -1,9 +1,9 @@
 import { Matrix } from "ml-matrix";
+import type { ComplexMatrix } from "../linalg/complex";
 import { type Eigensystem, eigensystem } from "../linalg/eigensystem";
-import { eigenvalues } from "../linalg/eigenvalues";
 import { toFlat } from "../linalg/flat";
 import { singularValues } from "../linalg/singular-values";
-import type { TimeBase } from "../plant/model";
+import type { Complex, TimeBase } from "../plant/model";
 import { poleFigures, stabilityMargin } from "../structure/continuous-pole";
 import { eigenvalueAccuracy } from "../structure/eigenvalue-accuracy";
 import { participation } from "../structure/modes";
@@ -33,9 +33,8 @@ export function reportPoles(dynamics: Matrix, timeBase: TimeBase, scale: Float64
   return slowestFirst(reports, timeBase);
 }
 
-/** The same for the dynamics of a reduced-order observer, whose states are none of the plant's. */
-export function reportPlainPoles(dynamics: Matrix, timeBase: TimeBase): PoleReport[] {
-  const poles = dynamics.rows === 0 ? [] : eigenvalues(dynamics);
+/** The same for the poles of a reduced-order observer, whose states are none of the plant's. */
+export function reportPlainPoles(poles: readonly Complex[], timeBase: TimeBase): PoleReport[] {
   const reports = poles.filter(({ im }) => im >= 0).map((pole) => ({ pole, ...poleFigures(pole, timeBase), mainState: null }));
   return slowestFirst(reports, timeBase);
 }
@@ -48,14 +47,14 @@ function slowestFirst(reports: PoleReport[], timeBase: TimeBase): PoleReport[] {
  * Condition of the unit eigenvectors of a matrix in the 2-norm, null when they do not span the space.
  * A complex pair v, conj v has the singular values of the real columns √2 Re v, √2 Im v.
  */
-export function eigenvectorCondition(dynamics: Matrix): number | null {
-  const n = dynamics.rows;
-  const values = singularValues(realForm(eigensystem(dynamics), n));
-  const condition = values[0] / values[n - 1];
+export function eigenvectorCondition({ values, right }: Omit<Eigensystem, "left">): number | null {
+  const n = values.length;
+  const sizes = singularValues(realForm(values, right, n));
+  const condition = sizes[0] / sizes[n - 1];
   return condition * n * Number.EPSILON < 1 ? condition : null;
 }
 
-function realForm({ values, right }: Eigensystem, n: number): Matrix {
+function realForm(values: readonly Complex[], right: ComplexMatrix, n: number): Matrix {
   const X = Matrix.zeros(n, n);
   values.forEach(({ im }, k) => {
     for (let i = 0; i < n; i++)

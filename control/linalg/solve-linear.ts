@@ -24,17 +24,28 @@ export function solveLinear(A: Matrix, B: Matrix): { X: Matrix; reciprocalCondit
   requireFinite("B", B);
   const n = A.rows;
   const columns = B.columns;
-  const { scaled, rows, cols } = equilibrate(toFlat(A), n);
+  const { x, reciprocalCondition } = solveFlat(toFlat(A), n, toFlat(B), columns);
+  return { X: fromFlat(x, n, columns), reciprocalCondition };
+}
+
+/** The same for finite row-major entries; a and b are left untouched. */
+export function solveFlat(
+  a: Float64Array,
+  n: number,
+  b: Float64Array,
+  columns: number,
+): { x: Float64Array; reciprocalCondition: number } {
+  const { scaled, rows, cols } = equilibrate(a, n);
   const factors = factorLu(scaled, n);
   if (factors.zeroPivot >= 0) throw new NumericalError("singular", { matrix: "A", row: factors.zeroPivot });
   const reciprocalCondition = n === 0 ? 1 : 1 / (flatOneNorm(scaled, n) * inverseOneNorm(factors));
   if (!(reciprocalCondition >= Number.EPSILON)) throw new NumericalError("singular", { matrix: "A", row: n - 1 });
-  const b = toFlat(B);
-  for (let i = 0; i < n; i++) for (let j = 0; j < columns; j++) b[i * columns + j] *= rows[i];
-  const x = solveLu(factors, b, columns);
+  const right = workCopy(b);
+  for (let i = 0; i < n; i++) for (let j = 0; j < columns; j++) right[i * columns + j] *= rows[i];
+  const x = solveLu(factors, right, columns);
   for (let i = 0; i < n; i++) for (let j = 0; j < columns; j++) x[i * columns + j] *= cols[i];
   if (!x.every(Number.isFinite)) throw new NumericalError("too-large", { what: "solution", limit: Number.MAX_VALUE });
-  return { X: fromFlat(x, n, columns), reciprocalCondition };
+  return { x, reciprocalCondition };
 }
 
 /** The same for complex A and B, by their real form of twice the size. */

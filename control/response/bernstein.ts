@@ -1,3 +1,5 @@
+import { workArray, workCopy } from "../linalg/work-array";
+
 /** Searches on a polynomial over [0, 1] given by its Bernstein coefficients, the smallest and largest of which enclose its values. */
 export type Extreme = { readonly value: number; readonly at: number };
 
@@ -9,8 +11,8 @@ type Piece = { readonly b: Float64Array; readonly from: number; readonly size: n
 /** de Casteljau's halving: what the rounds leave at the front is the left half, what they leave behind is the right one. */
 function halve({ b, from, size }: Piece): [Piece, Piece] {
   const n = b.length;
-  const left = new Float64Array(n);
-  const right = b.slice();
+  const left = workArray(n);
+  const right = workCopy(b);
   for (let k = 0; k < n; k++) {
     left[k] = right[0];
     for (let i = 0; i < n - 1 - k; i++) right[i] = (right[i] + right[i + 1]) / 2;
@@ -145,8 +147,11 @@ export function lastOutside(b: Float64Array, low: number, high: number): number 
   return null;
 }
 
+let mirrored = new Float64Array(0);
+
+/** -b, good until the next call. */
 export function negative(b: Float64Array): Float64Array {
-  const mirrored = new Float64Array(b.length);
+  if (mirrored.length !== b.length) mirrored = new Float64Array(b.length);
   for (let i = 0; i < b.length; i++) mirrored[i] = -b[i];
   return mirrored;
 }

@@ -1,7 +1,7 @@
-import { flatProduct } from "../linalg/flat";
+import { flatProduct, flatProductInto } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
-import { workArray } from "../linalg/work-array";
+import { workArray, workCopy } from "../linalg/work-array";
 import { NODES, POINTS } from "./cell-basis";
 
 /** Everything to cross a cell of length h: the state at its end, and all signals at its nodes, from the state at its start. */
@@ -85,14 +85,15 @@ function signalsAtNodes(growth: readonly Float64Array[], n: number, rows: Float6
   const by = [one, one, two, three, four];
   const signals = n === 0 ? 0 : rows.length / n;
   const nodes = workArray(signals * POINTS * n);
-  let moved = rows;
+  let [moved, more] = [workCopy(rows), workArray(rows.length)];
   for (let node = 0; node < POINTS; node++) {
     if (node > 0) {
-      const more = flatProduct(moved, by[NODES[node] - NODES[node - 1]], signals, n, n);
+      flatProductInto(more, moved, by[NODES[node] - NODES[node - 1]], signals, n, n);
       for (let i = 0; i < more.length; i++) more[i] += moved[i];
-      moved = more;
+      [moved, more] = [more, moved];
     }
-    for (let i = 0; i < signals; i++) nodes.set(moved.subarray(i * n, (i + 1) * n), (i * POINTS + node) * n);
+    for (let i = 0, from = 0; i < signals; i++)
+      for (let to = (i * POINTS + node) * n, end = to + n; to < end; to++) nodes[to] = moved[from++];
   }
   return nodes;
 }

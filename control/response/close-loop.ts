@@ -1,9 +1,11 @@
 import { Matrix } from "ml-matrix";
 import { NumericalError } from "../errors";
+import { flatIdentity, flatProduct, fromFlat, toFlat } from "../linalg/flat";
 import { frobeniusNorm } from "../linalg/norms";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import { solveLinear } from "../linalg/solve-linear";
+import { workArray, workCopy } from "../linalg/work-array";
 import { lostInDifference } from "./lost-digits";
 
 export type LoopPlant = {
@@ -53,13 +55,28 @@ export type ClosedLoop = {
   readonly startFrom: (x0: readonly number[]) => Float64Array;
 };
 
-/** o' = self o + disturbed d, xhat = x + seen o + misled d, o(0) = start x0. */
+export type FlatLoop = Omit<ClosedLoop, "A" | "lost" | "B" | "C" | "D"> & {
+  readonly order: number;
+  readonly signals: number;
+  readonly columns: number;
+  readonly a: Float64Array;
+  readonly lost: Float64Array;
+  readonly b: Float64Array;
+  readonly c: Float64Array;
+  readonly d: Float64Array;
+};
+
+/** Entries of the plant's matrices. */
+type Entries = { readonly a: Float64Array; readonly b: Float64Array; readonly c: Float64Array };
+
+/** o' = self o + disturbed d, xhat = x + seen o + misled d, o(0) = start x0; `order` numbers in o. */
 type ObserverError = {
-  readonly self: Matrix;
-  readonly disturbed: Matrix;
-  readonly seen: Matrix;
-  readonly misled: Matrix;
-  readonly start: Matrix;
+  readonly order: number;
+  readonly self: Float64Array;
+  readonly disturbed: Float64Array;
+  readonly seen: Float64Array;
+  readonly misled: Float64Array;
+  readonly start: Float64Array;
 };
 
 /**
@@ -75,61 +92,105 @@ type ObserverError = {
  * Source    Luenberger, IEEE Trans. Automatic Control 16 (1971) 596-602
  */
 export function closeLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observer: ObserverInLoop | null): ClosedLoop {
-  const { A, B, C, D, H, J } = plant;
-  const n = A.rows;
-  const m = B.columns;
-  const references = F ? H.rows : 0;
+  const loop = flatLoop(plant, K, F, observer);
+  const { order, signals, columns, references, disturbances, counts, startFrom } = loop;
+  return {
+    references,
+    disturbances,
+    counts,
+    startFrom,
+    A: fromFlat(loop.a, order, order),
+    lost: fromFlat(loop.lost, order, order),
+    B: fromFlat(loop.b, order, columns),
+    C: fromFlat(loop.c, signals, order),
+    D: fromFlat(loop.d, signals, columns),
+  };
+}
+
+/** The same with row-major entries: a order×order, b order×columns, c signals×order, d signals×columns. */
+export function flatLoop(plant: LoopPlant, K: Matrix, F: Matrix | null, observer: ObserverInLoop | null): FlatLoop {
+  const n = plant.A.rows;
+  const m = plant.B.columns;
+  const references = F ? plant.H.rows : 0;
   const feed = F ?? Matrix.zeros(m, 0);
   requireLoop(plant, K, feed, references);
-  const error = observerError(plant, observer);
-  const order = error.self.rows;
-  const fromState = Matrix.mul(K, -1);
-  const fromError = fromState.mmul(error.seen);
-  const fromDisturbance = fromState.mmul(error.misled);
-  const atInput = beside(feed, Matrix.add(Matrix.eye(m), fromDisturbance)); // u + d, from [r; d]
-  const through = (onState: Matrix, onInput: Matrix) =>
-    beside(Matrix.add(onState, onInput.mmul(fromState)), onInput.mmul(fromError));
-  const estimates = observer ? n : 0;
-  const system = {
-    A: stack([through(A, B), beside(Matrix.zeros(order, n), error.self)]),
-    B: stack([B.mmul(atInput), beside(Matrix.zeros(order, references), error.disturbed)]),
-    C: stack([
-      through(H, J),
-      through(C, D),
-      beside(Matrix.eye(n), Matrix.zeros(n, order)),
-      beside(Matrix.eye(estimates, n), observer ? error.seen : Matrix.zeros(0, order)),
-      beside(fromState, fromError),
-    ]),
-    D: stack([
-      J.mmul(atInput),
-      D.mmul(atInput),
-      Matrix.zeros(n, references + m),
-      beside(Matrix.zeros(estimates, references), observer ? error.misled : Matrix.zeros(0, m)),
-      beside(feed, fromDisturbance),
-    ]),
+  const given = { a: toFlat(plant.A), b: toFlat(plant.B), c: toFlat(plant.C), h: toFlat(plant.H) };
+  const [d, j, f, gain] = [toFlat(plant.D), toFlat(plant.J), toFlat(feed), toFlat(K)];
+  const counts = { commanded: plant.H.rows, outputs: plant.C.rows, states: n, estimates: observer ? n : 0, inputs: m };
+  const { commanded, outputs, estimates } = counts;
+  const error = observerError(plant, given, observer);
+  const order = n + error.order;
+  const columns = references + m;
+  const signals = commanded + outputs + n + estimates + m;
+  const fromState = gain.map((entry) => -entry);
+  const fromError = flatProduct(fromState, error.seen, m, n, error.order);
+  const fromDisturbance = flatProduct(fromState, error.misled, m, n, m);
+  const atInput = workArray(m * columns); // u + d, from [r; d]
+  put(atInput, columns, f, m, references, 0, 0);
+  put(atInput, columns, fromDisturbance, m, m, 0, references);
+  for (let i = 0; i < m; i++) atInput[i * columns + references + i] += 1;
+  const loop = {
+    a: workArray(order * order),
+    b: workArray(order * columns),
+    c: workArray(signals * order),
+    d: workArray(signals * columns),
   };
-  for (const M of Object.values(system)) requireRepresentable("closed loop", M.to1DArray());
+  /** Rows of the whole that see the state and the input like this. */
+  const through = (whole: Float64Array, row: number, onState: Float64Array, onInput: Float64Array, rows: number): void => {
+    put(whole, order, sum(onState, flatProduct(onInput, fromState, rows, m, n)), rows, n, row, 0);
+    put(whole, order, flatProduct(onInput, fromError, rows, m, error.order), rows, error.order, row, n);
+  };
+  through(loop.a, 0, given.a, given.b, n);
+  put(loop.a, order, error.self, error.order, error.order, n, n);
+  put(loop.b, columns, flatProduct(given.b, atInput, n, m, columns), n, columns, 0, 0);
+  put(loop.b, columns, error.disturbed, error.order, m, n, references);
+  through(loop.c, 0, given.h, j, commanded);
+  through(loop.c, commanded, given.c, d, outputs);
+  const ownStates = commanded + outputs;
+  for (let i = 0; i < n + estimates; i++) loop.c[(ownStates + i) * order + (i % n)] = 1;
+  const inputs = ownStates + n + estimates;
+  if (observer) put(loop.c, order, error.seen, n, error.order, ownStates + n, n);
+  put(loop.c, order, fromState, m, n, inputs, 0);
+  put(loop.c, order, fromError, m, error.order, inputs, n);
+  put(loop.d, columns, flatProduct(j, atInput, commanded, m, columns), commanded, columns, 0, 0);
+  put(loop.d, columns, flatProduct(d, atInput, outputs, m, columns), outputs, columns, commanded, 0);
+  if (observer) put(loop.d, columns, error.misled, n, m, ownStates + n, references);
+  put(loop.d, columns, f, m, references, inputs, 0);
+  put(loop.d, columns, fromDisturbance, m, m, inputs, references);
+  for (const part of Object.values(loop)) requireRepresentable("closed loop", part);
   return {
-    ...system,
-    lost: lostDigits(plant, K, observer, system.A),
+    ...loop,
+    lost: lostDigits(plant, given, gain, observer, loop.a, order),
+    order,
+    signals,
+    columns,
     references,
     disturbances: m,
-    counts: { commanded: H.rows, outputs: C.rows, states: n, estimates, inputs: m },
-    startFrom: (x0) => Float64Array.from([...x0, ...error.start.mmul(Matrix.columnVector([...x0])).to1DArray()]),
+    counts,
+    startFrom: (x0) => Float64Array.from([...x0, ...flatProduct(error.start, Float64Array.from(x0), error.order, n, 1)]),
   };
 }
 
 /** Digits lost in A - BK, A - LC and BK; a reduced-order observer brings its own matrices. */
-function lostDigits({ A, B, C }: LoopPlant, K: Matrix, observer: ObserverInLoop | null, closed: Matrix): Matrix {
+function lostDigits(
+  { A, B, C }: LoopPlant,
+  { a, b, c }: Entries,
+  gain: Float64Array,
+  observer: ObserverInLoop | null,
+  closed: Float64Array,
+  order: number,
+): Float64Array {
   const n = A.rows;
-  const lost = Matrix.zeros(closed.rows, closed.rows);
+  const m = B.columns;
+  const lost = workArray(order * order);
   if (n === 0) return lost;
-  lost.setSubMatrix(lostInDifference(A, B, K, closed.subMatrix(0, n - 1, 0, n - 1)), 0, 0);
+  const shape = { rows: n, inner: m, columns: n };
+  put(lost, order, lostInDifference(a, b, gain, cut(closed, order, 0, 0, n), shape), n, n, 0, 0);
   if (observer?.kind !== "full") return lost;
-  const last = 2 * n - 1;
-  const fed = closed.subMatrix(0, n - 1, n, last);
-  lost.setSubMatrix(lostInDifference(Matrix.zeros(n, n), B, Matrix.mul(K, -1), fed), 0, n);
-  lost.setSubMatrix(lostInDifference(A, observer.L, C, closed.subMatrix(n, last, n, last)), n, n);
+  const given = gain.map((entry) => -entry);
+  put(lost, order, lostInDifference(workArray(n * n), b, given, cut(closed, order, 0, n, n), shape), n, n, 0, n);
+  const error = cut(closed, order, n, n, n);
+  put(lost, order, lostInDifference(a, toFlat(observer.L), c, error, { ...shape, inner: C.rows }), n, n, n, n);
   return lost;
 }
 
@@ -146,30 +207,25 @@ function requireLoop({ A, B, C, D, H, J }: LoopPlant, K: Matrix, F: Matrix, refe
   for (const [name, M] of Object.entries({ A, B, C, D, H, J, K, F })) requireFinite(name, M);
 }
 
-function observerError(plant: LoopPlant, observer: ObserverInLoop | null): ObserverError {
-  const { A, B, C, D } = plant;
-  const n = A.rows;
-  const m = B.columns;
+function observerError(plant: LoopPlant, { a, b, c }: Entries, observer: ObserverInLoop | null): ObserverError {
+  const n = plant.A.rows;
+  const m = plant.B.columns;
+  const p = plant.C.rows;
   if (observer?.kind === "reduced") return reducedError(plant, observer);
-  if (observer === null) {
-    const none = Matrix.zeros(0, 0);
-    return {
-      self: none,
-      disturbed: Matrix.zeros(0, m),
-      seen: Matrix.zeros(n, 0),
-      misled: Matrix.zeros(n, m),
-      start: Matrix.zeros(0, n),
-    };
-  }
+  const misled = workArray(n * m);
+  const none = workArray(0);
+  if (observer === null) return { order: 0, self: none, disturbed: none, seen: none, misled, start: none };
   // o = x - xhat: o' = (A - L C) o + (B - L D) d
-  const { L } = observer;
-  requireShape("L", L, n, C.rows);
+  requireShape("L", observer.L, n, p);
+  const l = toFlat(observer.L);
+  const start = flatIdentity(n);
   return {
-    self: Matrix.sub(A, L.mmul(C)),
-    disturbed: Matrix.sub(B, L.mmul(D)),
-    seen: Matrix.mul(Matrix.eye(n), -1),
-    misled: Matrix.zeros(n, m),
-    start: Matrix.eye(n),
+    order: n,
+    self: difference(a, flatProduct(l, c, n, p, n)),
+    disturbed: difference(b, flatProduct(l, toFlat(plant.D), n, p, m)),
+    seen: start.map((entry) => -entry),
+    misled,
+    start,
   };
 }
 
@@ -188,7 +244,14 @@ function reducedError(
   requireEqual(Gw.mmul(T), hidden, [Gw, T], [Gy, C]);
   requireEqual(Matrix.add(Fw.mmul(T), Fy.mmul(C)), T.mmul(A), [Fw, T], [Fy, C], [T, A]);
   requireEqual(Matrix.add(Fu, FyD), TB, [Fy, D], [T, B]);
-  return { self: Fw, disturbed: Matrix.sub(FyD, TB), seen: Gw, misled: Gy.mmul(D), start: Matrix.mul(T, -1) };
+  return {
+    order: Fw.rows,
+    self: toFlat(Fw),
+    disturbed: toFlat(Matrix.sub(FyD, TB)),
+    seen: toFlat(Gw),
+    misled: toFlat(Gy.mmul(D)),
+    start: toFlat(Matrix.mul(T, -1)),
+  };
 }
 
 /** Both sides of an identity agree to half the digits of the products they are made of. */
@@ -199,22 +262,36 @@ function requireEqual(left: Matrix, right: Matrix, ...products: readonly (readon
   if (!(residual <= bound)) throw new NumericalError("inaccurate", { residual, bound });
 }
 
-function beside(left: Matrix, right: Matrix): Matrix {
-  const whole = Matrix.zeros(left.rows, left.columns + right.columns);
-  whole.setSubMatrix(left, 0, 0);
-  whole.setSubMatrix(right, 0, left.columns);
-  return whole;
+function sum(x: Float64Array, y: Float64Array): Float64Array {
+  const total = workCopy(x);
+  for (let at = 0; at < total.length; at++) total[at] += y[at];
+  return total;
 }
 
-function stack(blocks: readonly Matrix[]): Matrix {
-  const whole = Matrix.zeros(
-    blocks.reduce((rows, block) => rows + block.rows, 0),
-    blocks[0].columns,
-  );
-  let row = 0;
-  for (const block of blocks) {
-    whole.setSubMatrix(block, row, 0);
-    row += block.rows;
-  }
-  return whole;
+function difference(x: Float64Array, y: Float64Array): Float64Array {
+  const rest = workCopy(x);
+  for (let at = 0; at < rest.length; at++) rest[at] -= y[at];
+  return rest;
+}
+
+/** Puts a block of rows×width into a whole of so many columns, from a row and a column on. */
+function put(
+  whole: Float64Array,
+  columns: number,
+  block: Float64Array,
+  rows: number,
+  width: number,
+  row: number,
+  column: number,
+): void {
+  for (let i = 0, from = 0; i < rows; i++)
+    for (let to = (row + i) * columns + column, end = to + width; to < end; to++) whole[to] = block[from++];
+}
+
+/** The n×n block of a square whole from a row and a column on. */
+function cut(whole: Float64Array, order: number, row: number, column: number, n: number): Float64Array {
+  const block = workArray(n * n);
+  for (let i = 0, to = 0; i < n; i++)
+    for (let from = (row + i) * order + column, end = from + n; from < end; from++) block[to++] = whole[from];
+  return block;
 }

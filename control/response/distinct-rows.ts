@@ -27,7 +27,7 @@ export function distinctRows(dynamics: LoopDynamics, wanted: readonly number[]):
 
 function isSameSignal({ c, d, order, loop }: LoopDynamics, one: number, other: number): boolean {
   for (let k = 0; k < order; k++) if (c[one * order + k] !== c[other * order + k]) return false;
-  const columns = loop.B.columns;
+  const { columns } = loop;
   for (let j = 0; j < columns; j++) if (d[one * columns + j] !== d[other * columns + j]) return false;
   return true;
 }

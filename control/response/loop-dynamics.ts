@@ -1,17 +1,17 @@
 import { NumericalError } from "../errors";
 import { addNarrow, split, widen, wideProduct } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
-import { flatProduct, largestEntry, toFlat } from "../linalg/flat";
+import { flatProduct, fromFlat, largestEntry } from "../linalg/flat";
 import { factorLu, type Lu, solveLu } from "../linalg/lu";
 import { workArray, workCopy } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { isStablePole } from "../poles/require-stable-poles";
 import { balanceDynamics, rescaled } from "./balance-dynamics";
-import type { ClosedLoop } from "./close-loop";
+import type { FlatLoop } from "./close-loop";
 
 /** A closed loop in balanced coordinates, flat and row-major, with what every response of it needs. */
 export type LoopDynamics = {
-  readonly loop: ClosedLoop;
+  readonly loop: FlatLoop;
   readonly period: number | null;
   readonly order: number;
   readonly signals: number;
@@ -34,30 +34,29 @@ export type Drive = { readonly departure: Float64Array; readonly final: Float64A
 /**
  * Prepares a closed loop for its responses and refuses one that does not settle.
  *
- * Shapes    the loop as closed; period in seconds, null for a continuous plant
+ * Shapes    the loop as closed; period in seconds, null for a continuous plant; its poles where they are known, in any order
  * Throws    not-stabilising { pole }; not-finite; too-large; on-stability-boundary when it has no rest
  * Accuracy  balancing is exact
  */
-export function prepareLoop(loop: ClosedLoop, period: number | null): LoopDynamics {
-  const order = loop.A.rows;
-  const signals = loop.C.rows;
-  const poles = eigenvalues(loop.A);
+export function prepareLoop(loop: FlatLoop, period: number | null, known: readonly Complex[] | null): LoopDynamics {
+  const { order, signals, columns } = loop;
+  const poles = known ?? eigenvalues(fromFlat(loop.a, order, order));
   const unstable = poles.find((pole) => !isStablePole(pole, period !== null));
   if (unstable) throw new NumericalError("not-stabilising", { pole: unstable });
-  const { matrix, order: places, scale } = balanceDynamics(toFlat(loop.A), order);
-  const columns = loop.B.columns;
+  const { matrix, order: places, scale } = balanceDynamics(loop.a, order);
   const b = workArray(order * columns);
-  for (let k = 0; k < order; k++) for (let j = 0; j < columns; j++) b[k * columns + j] = loop.B.get(places[k], j) / scale[k];
+  for (let k = 0; k < order; k++)
+    for (let j = 0; j < columns; j++) b[k * columns + j] = loop.b[places[k] * columns + j] / scale[k];
   const c = workArray(signals * order);
-  for (let i = 0; i < signals; i++) for (let k = 0; k < order; k++) c[i * order + k] = loop.C.get(i, places[k]) * scale[k];
+  for (let i = 0; i < signals; i++) for (let k = 0; k < order; k++) c[i * order + k] = loop.c[i * order + places[k]] * scale[k];
   const lost = workArray(order * order);
   for (let i = 0; i < order; i++)
-    for (let j = 0; j < order; j++) lost[i * order + j] = rescaled(loop.lost.get(places[i], places[j]), scale[j], scale[i]);
+    for (let j = 0; j < order; j++) lost[i * order + j] = rescaled(loop.lost[places[i] * order + places[j]], scale[j], scale[i]);
   const shifted = workCopy(matrix);
   if (period !== null) for (let k = 0; k < order; k++) shifted[k * order + k] -= 1;
   const rest = factorLu(shifted, order);
   if (rest.zeroPivot >= 0) throw new NumericalError("on-stability-boundary", { distance: boundaryDistance({ poles, period }) });
-  return { loop, period, order, signals, a: matrix, lost, b, c, d: toFlat(loop.D), places, scale, poles, rest };
+  return { loop, period, order, signals, a: matrix, lost, b, c, d: loop.d, places, scale, poles, rest };
 }
 
 /** Least distance of a pole from the stability boundary: -Re s, or 1 - |z|. */
@@ -69,7 +68,7 @@ export function boundaryDistance({ poles, period }: Pick<LoopDynamics, "poles" |
 /** Response to a constant input (column `input`, size `amplitude`) from rest. Throws on-stability-boundary; too-large. */
 export function inputDrive(dynamics: LoopDynamics, input: number, amplitude: number): Drive {
   const { order, signals, b, d, c } = dynamics;
-  const columns = dynamics.loop.B.columns;
+  const columns = dynamics.loop.columns;
   const push = Float64Array.from({ length: order }, (_, k) => -b[k * columns + input] * amplitude);
   const rest = restOf(dynamics, push);
   const final = workArray(signals);

@@ -1,7 +1,8 @@
 import type { Matrix } from "ml-matrix";
 import type { ResponseEvidence, ResponseRecord } from "../design/evidence";
 import { NumericalError } from "../errors";
-import { closeLoop, type LoopPlant, type ObserverInLoop, type SignalCounts } from "./close-loop";
+import type { Complex } from "../plant/model";
+import { flatLoop, type LoopPlant, type ObserverInLoop, type SignalCounts } from "./close-loop";
 import { type LoopDynamics, prepareLoop } from "./loop-dynamics";
 import { type Experiment, type Experiments, loopExperiments } from "./loop-experiments";
 import { type InputRoom, type LoopFigures, loopFigures } from "./loop-figures";
@@ -21,6 +22,8 @@ export type ResponseRequest = {
   readonly room: readonly InputRoom[];
   /** Seconds; null: from the longest settling time */
   readonly horizon: number | null;
+  /** Eigenvalues of A - B K and of the observer's error, where they are at hand; found here otherwise. */
+  readonly poles?: { readonly regulator: readonly Complex[]; readonly observer: readonly Complex[] };
 };
 
 type Analysed = {
@@ -82,7 +85,8 @@ export function respond(request: ResponseRequest): ResponseEvidence {
 /** A loop with its experiments; a set point does not disturb the estimate, so steps are those of the full state. */
 function analyse(request: ResponseRequest, observer: ObserverInLoop | null): Analysed {
   const { plant, period, K, F, experiments, room, horizon } = request;
-  const dynamics = prepareLoop(closeLoop(plant, K, F, observer), period);
+  const known = request.poles ? [...request.poles.regulator, ...(observer ? request.poles.observer : [])] : null;
+  const dynamics = prepareLoop(flatLoop(plant, K, F, observer), period, known);
   const amplitudes = experiments.amplitudes.map((amplitude) => (observer ? 0 : amplitude));
   const list = loopExperiments(dynamics, { ...experiments, amplitudes });
   return { dynamics, experiments: list, figures: loopFigures(dynamics, list, room, horizon === null) };

@@ -45,10 +45,11 @@ export function recordMaker(dynamics: LoopDynamics, { step, samples }: TimeGrid)
   const starts = workArray(blocks * order);
   const departed = workArray(blocks * width);
   return ({ departure, final }) => {
-    starts.set(departure);
-    for (let k = 1; k < blocks; k++) {
-      const here = starts.subarray(k * order, (k + 1) * order);
-      timesVector(phiBlock, starts.subarray((k - 1) * order, k * order), order, here);
+    let [state, after] = [workCopy(departure), workArray(order)];
+    for (let to = 0; to < starts.length; to += order) {
+      starts.set(state, to);
+      timesVector(phiBlock, state, order, after);
+      [state, after] = [after, state];
     }
     flatProductInto(departed, starts, block, blocks, order, width);
     const values = new Float64Array(signals * samples);

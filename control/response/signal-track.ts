@@ -1,4 +1,5 @@
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import { type Extreme, firstReaching, largest, lastOutside, maximumAbove, negative, smallest } from "./bernstein";
 
 /** A polynomial that stands for the signal over [from, from + length]. */
@@ -105,8 +106,10 @@ export function followPiece(track: SignalTrack, b: Float64Array, from: number, l
   if (top <= track.final + width && bottom >= track.final - width) return;
   const last = b.length - 1;
   const surely = Math.abs(b[0] - track.final) > width || Math.abs(b[last] - track.final) > width;
+  const kept = (surely && track.excursions[0]?.b) || workArray(b.length);
+  kept.set(b);
   if (surely) track.excursions.length = 0;
-  track.excursions.push({ b: b.slice(), from, length });
+  track.excursions.push({ b: kept, from, length });
 }
 
 function followRise(track: SignalTrack, b: Float64Array, from: number, length: number): void {

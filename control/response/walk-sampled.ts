@@ -1,4 +1,4 @@
-import { flatProduct } from "../linalg/flat";
+import { flatProduct, flatProductInto } from "../linalg/flat";
 import { workArray, workCopy } from "../linalg/work-array";
 import { finishTracks, followSample, isHopeless, isUneventful, type SignalTrack } from "./signal-track";
 import type { TailBound } from "./tail-bound";
@@ -33,10 +33,14 @@ export function sampledWalker(
 export function signalBlock(a: Float64Array, order: number, rows: Float64Array): Float64Array {
   const signals = order === 0 ? 0 : rows.length / order;
   const block = workArray(rows.length * BLOCK);
-  let moved = rows;
+  let [moved, more] = [workCopy(rows), workArray(rows.length)];
   for (let k = 0; k < BLOCK; k++) {
-    if (k > 0) moved = flatProduct(moved, a, signals, order, order);
-    for (let i = 0; i < signals; i++) block.set(moved.subarray(i * order, (i + 1) * order), (i * BLOCK + k) * order);
+    if (k > 0) {
+      flatProductInto(more, moved, a, signals, order, order);
+      [moved, more] = [more, moved];
+    }
+    for (let i = 0, from = 0; i < signals; i++)
+      for (let to = (i * BLOCK + k) * order, end = to + order; to < end; to++) block[to] = moved[from++];
   }
   return block;
 }

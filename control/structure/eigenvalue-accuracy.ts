@@ -3,6 +3,7 @@ import type { Eigensystem } from "../linalg/eigensystem";
 import { flatNorm } from "../linalg/norms";
 import { powerOfTwo } from "../linalg/power-of-two";
 import { strongComponents } from "../linalg/strong-components";
+import { workArray } from "../linalg/work-array";
 
 /**
  * How far each computed eigenvalue may be from the true one: condition times rounding of the block that it belongs to.
@@ -15,9 +16,10 @@ import { strongComponents } from "../linalg/strong-components";
 export function eigenvalueAccuracy(a: Float64Array, n: number, { values, right, left }: Eigensystem): Float64Array {
   const { matrix, order, scale, shift } = balance(a, n);
   const { starts } = strongComponents(a, n);
+  const norms = starts.slice(1).map((to, b) => blockNorm(matrix, n, starts[b], to) * powerOfTwo(-shift));
   return Float64Array.from(values, (_, k) => {
-    const v = new Float64Array(n);
-    const w = new Float64Array(n);
+    const v = workArray(n);
+    const w = workArray(n);
     let re = 0;
     let im = 0;
     for (let i = 0; i < n; i++) {
@@ -29,24 +31,25 @@ export function eigenvalueAccuracy(a: Float64Array, n: number, { values, right, 
       v[i] = Math.sqrt(x * x + y * y) / scale[i];
       w[i] = Math.sqrt(p * p + q * q) * scale[i];
     }
-    const [from, to] = homeBlock(v, w, starts);
+    const home = homeBlock(v, w, starts);
+    const [from, to] = [starts[home], starts[home + 1]];
     const condition = (flatNorm(v.subarray(from, to)) * flatNorm(w.subarray(from, to))) / Math.sqrt(re * re + im * im);
-    const norm = blockNorm(matrix, n, from, to) * powerOfTwo(-shift);
+    const norm = norms[home];
     const limited = Math.min(condition, 1 / Number.EPSILON);
     return to - from === 1 ? 2 * Number.EPSILON * norm : 4 * (to - from) * Number.EPSILON * norm * limited;
   });
 }
 
 /** The diagonal block that holds most of the mode: the others can not move it. */
-function homeBlock(v: Float64Array, w: Float64Array, starts: readonly number[]): [number, number] {
-  let home: [number, number] = [starts[0], starts[1]];
+function homeBlock(v: Float64Array, w: Float64Array, starts: readonly number[]): number {
+  let home = 0;
   let most = -1;
   for (let b = 0; b + 1 < starts.length; b++) {
     let share = 0;
     for (let i = starts[b]; i < starts[b + 1]; i++) share += v[i] * w[i];
     if (share <= most) continue;
     most = share;
-    home = [starts[b], starts[b + 1]];
+    home = b;
   }
   return home;
 }
