@@ -5,6 +5,7 @@ import { closeNumericPool } from "@/lib/jobs/run-numeric";
 import type { DesignSummary } from "@/lib/schemas/design";
 import { DRAFT_LIMIT, type FoundDraft, type KeepDraft, type KeptDraft } from "@/lib/schemas/draft";
 import type { PlantSummary } from "@/lib/schemas/plant";
+import { spend } from "@/lib/services/limits/spend";
 import { type Api, member } from "../helpers/api";
 import { problemIn } from "../helpers/call-route";
 import { twoCarriages } from "../helpers/plant-content";
@@ -142,4 +143,13 @@ test("what is too large, nested without end or no form is refused, and the large
   const form = { state: rows(60, 60), process: rows(60, 60), cross: rows(60, 12), input: rows(12, 12), measured: rows(12, 12) };
   await who.put(pathOf(design.id), draftOf({ form }));
   expect((await found(who, design.id))?.form).toEqual(form);
+});
+
+test("drafts that a page keeps by itself use up nothing that a person's own changes need", async () => {
+  const { ctx, api: who } = await member(teamId, "engineer");
+  for (let sent = 0; sent < 120; sent++) await spend(ctx, "draft");
+  expect(await refusal(who, design.id, draftOf())).toEqual([429, "too-many-requests"]);
+  expect(
+    (await who.ask("PATCH", `/api/v1/designs/${design.id}`, { body: { name: "Still" }, version: design.version })).status,
+  ).toBe(200);
 });
