@@ -145,8 +145,12 @@ export function replacePair(frame: Frame, j: number, u: Float64Array, v: Float64
   }
   for (let i = 0; i < n; i++) {
     if (i === j || i === j + 1) continue;
-    const alongU = dotRow(duals, i * n, u, 0, n);
-    const alongV = dotRow(duals, i * n, v, 0, n);
+    let alongU = 0;
+    let alongV = 0;
+    for (let k = 0, at = i * n; k < n; k++, at++) {
+      alongU += duals[at] * u[k];
+      alongV += duals[at] * v[k];
+    }
     for (let k = 0, at = i * n; k < n; k++, at++) duals[at] -= alongU * duals[first + k] + alongV * duals[second + k];
   }
   measureDuals(frame);
@@ -157,6 +161,18 @@ function subtractMultiple(y: Float64Array, at: number, x: Float64Array, from: nu
   for (let k = 0; k < n; k++) y[at + k] -= factor * x[from + k];
 }
 
+/** Rows by twos, whose sums do not wait for each other. */
 function measureDuals({ n, duals, norms }: Frame): void {
-  for (let i = 0; i < n; i++) norms[i] = dotRow(duals, i * n, duals, i * n, n);
+  let i = 0;
+  for (; i + 1 < n; i += 2) {
+    let first = 0;
+    let second = 0;
+    for (let at = i * n, end = at + n; at < end; at++) {
+      first += duals[at] * duals[at];
+      second += duals[at + n] * duals[at + n];
+    }
+    norms[i] = first;
+    norms[i + 1] = second;
+  }
+  if (i < n) norms[i] = dotRow(duals, i * n, duals, i * n, n);
 }

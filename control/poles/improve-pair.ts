@@ -1,6 +1,5 @@
 import type { Admissible } from "./admissible-vectors";
 import { dotRow, type Frame, replacePair } from "./eigenvector-frame";
-import { projectRow } from "./improve-real";
 import { minimiseSmooth } from "./minimise-smooth";
 import { pairCost } from "./pair-cost";
 import { pairMetric } from "./pair-metric";
@@ -17,8 +16,8 @@ export function raiseDeterminantPair(frame: Frame, admissible: Admissible, scrat
   const { n, duals } = frame;
   const { size, pole } = admissible;
   const { a: p, b: q } = scratch;
-  projectComplex(duals, pole.column * n, admissible, n, p);
-  projectComplex(duals, (pole.column + 1) * n, admissible, n, q);
+  projectComplex(duals, pole.column * n, admissible, n, p, 0);
+  projectComplex(duals, (pole.column + 1) * n, admissible, n, q, 0);
   const g11 = dotRow(p, 0, p, 0, 2 * size);
   const g22 = dotRow(q, 0, q, 0, 2 * size);
   const re = dotRow(p, 0, q, 0, 2 * size);
@@ -55,7 +54,7 @@ export function lowerConditionPair(frame: Frame, admissible: Admissible, scratch
 }
 
 /** The forms that |X⁻¹|² is made of while one pair turns; false when its dual plane has collapsed. */
-function fillForms({ n, duals, norms }: Frame, admissible: Admissible, { forms, u: e1, v: e2, row }: Scratch): boolean {
+function fillForms({ n, duals, norms }: Frame, admissible: Admissible, { forms, u: e1, v: e2, rows }: Scratch): boolean {
   const { size, pole } = admissible;
   const first = pole.column * n;
   const scale = 1 / Math.sqrt(norms[pole.column]);
@@ -66,44 +65,47 @@ function fillForms({ n, duals, norms }: Frame, admissible: Admissible, { forms, 
   if (!(length > 0) || !Number.isFinite(1 / length)) return false;
   for (let k = 0; k < n; k++) e2[k] /= length;
   const { a, b } = forms;
-  projectComplex(e1, 0, admissible, n, a);
-  projectComplex(e2, 0, admissible, n, b);
-  startForms(forms);
+  projectComplex(e1, 0, admissible, n, a, 0);
+  projectComplex(e2, 0, admissible, n, b, 0);
+  let end = 0;
   for (let i = 0; i < n; i++) {
     if (i === pole.column || i === pole.column + 1) continue;
-    const alongFirst = dotRow(duals, i * n, e1, 0, n);
-    const alongSecond = dotRow(duals, i * n, e2, 0, n);
-    projectComplex(duals, i * n, admissible, n, row);
-    for (let k = 0; k < 2 * size; k++) row[k] -= alongFirst * a[k] + alongSecond * b[k];
-    addProducts(forms, row);
+    let alongFirst = 0;
+    let alongSecond = 0;
+    for (let k = 0, at = i * n; k < n; k++, at++) {
+      alongFirst += duals[at] * e1[k];
+      alongSecond += duals[at] * e2[k];
+    }
+    projectComplex(duals, i * n, admissible, n, rows, end);
+    for (let k = 0; k < 2 * size; k++) rows[end + k] -= alongFirst * a[k] + alongSecond * b[k];
+    end += 2 * size;
   }
+  sumProducts(forms, rows, end);
   mirrorForms(forms);
   return true;
 }
 
-function startForms({ size, pRe, pIm, rRe, rIm }: PairForms): void {
-  for (let at = 0; at < size * size; at++) {
-    pRe[at] = at % (size + 1) === 0 ? 1 : 0;
-    pIm[at] = 0;
-    rRe[at] = 0;
-    rIm[at] = 0;
-  }
-}
-
-/** Lower triangles only. */
-function addProducts({ size, pRe, pIm, rRe, rIm }: PairForms, v: Float64Array): void {
+/** P = I + Σ v̄ v' and R = Σ v v' over rows v, lower triangles only. */
+function sumProducts({ size, pRe, pIm, rRe, rIm }: PairForms, rows: Float64Array, end: number): void {
   for (let k = 0; k < size; k++) {
-    const re = v[k];
-    const im = v[size + k];
     for (let l = 0, at = k * size; l <= k; l++, at++) {
-      const rr = re * v[l];
-      const ii = im * v[size + l];
-      const ri = re * v[size + l];
-      const ir = im * v[l];
-      pRe[at] += rr + ii;
-      pIm[at] += ri - ir;
-      rRe[at] += rr - ii;
-      rIm[at] += ri + ir;
+      let [sumPRe, sumPIm, sumRRe, sumRIm] = [k === l ? 1 : 0, 0, 0, 0];
+      for (let row = 0; row < end; row += 2 * size) {
+        const re = rows[row + k];
+        const im = rows[row + size + k];
+        const rr = re * rows[row + l];
+        const ii = im * rows[row + size + l];
+        const ri = re * rows[row + size + l];
+        const ir = im * rows[row + l];
+        sumPRe += rr + ii;
+        sumPIm += ri - ir;
+        sumRRe += rr - ii;
+        sumRIm += ri + ir;
+      }
+      pRe[at] = sumPRe;
+      pIm[at] = sumPIm;
+      rRe[at] = sumRRe;
+      rIm[at] = sumRIm;
     }
   }
 }
@@ -121,10 +123,38 @@ function mirrorForms({ size, pRe, pIm, rRe, rIm }: PairForms): void {
   }
 }
 
-/** y'S for a real row y: real parts, then imaginary parts. */
-function projectComplex(rows: Float64Array, at: number, { size, re, im }: Admissible, n: number, out: Float64Array): void {
-  projectRow(rows, at, re, n, size, out, 0);
-  projectRow(rows, at, im, n, size, out, size);
+/** y'S for a real row y, into `out` from `to` on: real parts, then imaginary parts. */
+function projectComplex(
+  rows: Float64Array,
+  at: number,
+  { size, re, im }: Admissible,
+  n: number,
+  out: Float64Array,
+  to: number,
+): void {
+  let k = 0;
+  for (; k + 1 < size; k += 2) {
+    let [firstRe, secondRe, firstIm, secondIm] = [0, 0, 0, 0];
+    for (let i = 0, from = k; i < n; i++, from += size) {
+      const y = rows[at + i];
+      firstRe += y * re[from];
+      secondRe += y * re[from + 1];
+      firstIm += y * im[from];
+      secondIm += y * im[from + 1];
+    }
+    out[to + k] = firstRe;
+    out[to + k + 1] = secondRe;
+    out[to + size + k] = firstIm;
+    out[to + size + k + 1] = secondIm;
+  }
+  if (k === size) return;
+  let [lastRe, lastIm] = [0, 0];
+  for (let i = 0, from = k; i < n; i++, from += size) {
+    lastRe += rows[at + i] * re[from];
+    lastIm += rows[at + i] * im[from];
+  }
+  out[to + k] = lastRe;
+  out[to + size + k] = lastIm;
 }
 
 /** Sᴴx of the eigenvector that stands in the frame now. */

@@ -46,7 +46,7 @@ export function lowerConditionReal(frame: Frame, admissible: Admissible, { a, ro
 }
 
 /** y'S for one row y of duals and a real part S, into `out` from `to` on. */
-export function projectRow(
+function projectRow(
   rows: Float64Array,
   at: number,
   S: Float64Array,
@@ -55,23 +55,22 @@ export function projectRow(
   out: Float64Array,
   to: number,
 ): void {
-  if (size === 2) {
+  let k = 0;
+  for (; k + 1 < size; k += 2) {
     let first = 0;
     let second = 0;
-    for (let i = 0; i < n; i++) {
+    for (let i = 0, from = k; i < n; i++, from += size) {
       const y = rows[at + i];
-      first += y * S[2 * i];
-      second += y * S[2 * i + 1];
+      first += y * S[from];
+      second += y * S[from + 1];
     }
-    out[to] = first;
-    out[to + 1] = second;
-    return;
+    out[to + k] = first;
+    out[to + k + 1] = second;
   }
-  for (let k = to; k < to + size; k++) out[k] = 0;
-  for (let i = 0, from = 0; i < n; i++, from += size) {
-    const y = rows[at + i];
-    for (let k = 0; k < size; k++) out[to + k] += y * S[from + k];
-  }
+  if (k === size) return;
+  let last = 0;
+  for (let i = 0, from = k; i < n; i++, from += size) last += rows[at + i] * S[from];
+  out[to + k] = last;
 }
 
 /** The unit vector along S z, into x. */

@@ -28,6 +28,8 @@ export type Scratch = {
   readonly a: Float64Array;
   readonly b: Float64Array;
   readonly row: Float64Array;
+  /** One such row for each state. */
+  readonly rows: Float64Array;
   readonly square: Float64Array;
   readonly products: readonly [Float64Array, Float64Array];
   readonly forms: PairForms;
@@ -58,6 +60,7 @@ export function createScratch(n: number, size: number): Scratch {
     a: vector(),
     b: vector(),
     row: vector(),
+    rows: new Float64Array(2 * n * size),
     square: square(),
     products: [vector(), vector()],
     forms: { size, a: vector(), b: vector(), pRe: square(), pIm: square(), rRe: square(), rIm: square() },

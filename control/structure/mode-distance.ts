@@ -1,6 +1,7 @@
 import { largestEntry, pythagoras } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 
 export type ModeDistance = {
@@ -35,8 +36,8 @@ export function modeDistance(a: Float64Array, b: Float64Array, n: number, m: num
 /** Rows of [A - λ I, B], conjugated and brought to the size of 1, with the ratio of its norm to that of [A B]. */
 function conjugatedRows(a: Float64Array, b: Float64Array, n: number, m: number, pole: Complex) {
   const factor = unitFactor(Math.max(largestEntry(a), largestEntry(b), Math.abs(pole.re), Math.abs(pole.im)));
-  const re = Array.from({ length: n }, () => new Float64Array(n + m));
-  const im = Array.from({ length: n }, () => new Float64Array(n + m));
+  const re = Array.from({ length: n }, () => workArray(n + m));
+  const im = Array.from({ length: n }, () => workArray(n + m));
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) re[i][j] = a[i * n + j] * factor;
     for (let j = 0; j < m; j++) re[i][n + j] = b[i * m + j] * factor;
@@ -103,7 +104,7 @@ function smallestByInverseIteration(re: Float64Array[], im: Float64Array[], n: n
   }
   // Uneven start, so that a symmetric or antisymmetric shape is not missed.
   const u = Float64Array.from({ length: n }, (_, k) => 1 + ((k * 7) % 5) / 8 + k / (2 * n));
-  const w = new Float64Array(n);
+  const w = workArray(n);
   normalise(u, w);
   let value = Number.POSITIVE_INFINITY;
   for (let step = 0; step < MOST_STEPS; step++) {
@@ -130,23 +131,29 @@ function normalise(u: Float64Array, w: Float64Array): void {
 /** R* y = x, in place. */
 function solveTransposed(re: Float64Array[], im: Float64Array[], x: Float64Array, y: Float64Array): void {
   for (let k = 0; k < x.length; k++) {
+    const p = re[k];
+    const q = im[k];
     let sumRe = x[k];
     let sumIm = y[k];
     for (let j = 0; j < k; j++) {
-      sumRe -= re[k][j] * x[j] + im[k][j] * y[j];
-      sumIm -= re[k][j] * y[j] - im[k][j] * x[j];
+      sumRe -= p[j] * x[j] + q[j] * y[j];
+      sumIm -= p[j] * y[j] - q[j] * x[j];
     }
-    divide(x, y, k, sumRe, sumIm, re[k][k], -im[k][k]);
+    divide(x, y, k, sumRe, sumIm, p[k], -q[k]);
   }
 }
 
 /** R y = x, in place; column by column. */
 function solveUpper(re: Float64Array[], im: Float64Array[], x: Float64Array, y: Float64Array): void {
   for (let k = x.length - 1; k >= 0; k--) {
-    divide(x, y, k, x[k], y[k], re[k][k], im[k][k]);
+    const p = re[k];
+    const q = im[k];
+    divide(x, y, k, x[k], y[k], p[k], q[k]);
+    const u = x[k];
+    const w = y[k];
     for (let j = 0; j < k; j++) {
-      x[j] -= re[k][j] * x[k] - im[k][j] * y[k];
-      y[j] -= re[k][j] * y[k] + im[k][j] * x[k];
+      x[j] -= p[j] * u - q[j] * w;
+      y[j] -= p[j] * w + q[j] * u;
     }
   }
 }
@@ -159,12 +166,16 @@ function divide(x: Float64Array, y: Float64Array, k: number, re: number, im: num
 
 function lengthOfProduct(re: Float64Array[], im: Float64Array[], u: Float64Array, w: Float64Array): number {
   const n = u.length;
-  const x = new Float64Array(n);
-  const y = new Float64Array(n);
+  const x = workArray(n);
+  const y = workArray(n);
   for (let k = 0; k < n; k++) {
+    const p = re[k];
+    const q = im[k];
+    const s = u[k];
+    const t = w[k];
     for (let j = 0; j <= k; j++) {
-      x[j] += re[k][j] * u[k] - im[k][j] * w[k];
-      y[j] += re[k][j] * w[k] + im[k][j] * u[k];
+      x[j] += p[j] * s - q[j] * t;
+      y[j] += p[j] * t + q[j] * s;
     }
   }
   return pythagoras(flatNorm(x), flatNorm(y));
