@@ -13,7 +13,7 @@ import { GainsSection } from "../gains/gains-section";
 import { KeyMap } from "../keys/key-map";
 import { useBenchKeys } from "../keys/use-bench-keys";
 import { useMapKey } from "../keys/use-map-key";
-import { RecipeContext, type RecipeEditing } from "../recipe/recipe-context";
+import { RecipeActionsContext, RecipeContext, type RecipeEditing } from "../recipe/recipe-context";
 import { recipeFields } from "../recipe/recipe-fields";
 import { RecipeMatrices } from "../recipe/recipe-matrices";
 import { RecipePanel } from "../recipe/recipe-panel";
@@ -105,25 +105,29 @@ function Editing({ bench, plant }: Readonly<{ bench: Bench; plant: BenchStart["p
     }),
     [form, start, weightLines, change, undo, redo, setUsable, ground, problems],
   );
+  const actions = useMemo(() => ({ change, setUsable }), [change, setUsable]);
   const poles = solving.solved && computed(solving.solved.evidence.poles);
-  const loopPoles = useMemo(() => (poles ? polesOfReport(poles) : null), [poles]);
+  // Only proposals read them: they need not be there in the frame of the curves.
+  const loopPoles = useDeferredValue(useMemo(() => (poles ? polesOfReport(poles) : null), [poles]));
   return (
-    <RecipeContext value={editing}>
-      <div key={ground.plantRevision.id}>
-        <Columns
-          {...{ bench, plant }}
-          trade={form.method === "weights" ? <TradeSection /> : null}
-          recipe={
-            <>
-              <SolveBar bench={bench} />
-              <Refused bench={bench} />
-              <RecipePanel loopPoles={loopPoles} />
-            </>
-          }
-        />
-        <RecipeMatrices />
-      </div>
-    </RecipeContext>
+    <RecipeActionsContext value={actions}>
+      <RecipeContext value={editing}>
+        <div key={ground.plantRevision.id}>
+          <Columns
+            {...{ bench, plant }}
+            trade={form.method === "weights" ? <TradeSection /> : null}
+            recipe={
+              <>
+                <SolveBar bench={bench} />
+                <Refused bench={bench} />
+                <RecipePanel loopPoles={loopPoles} />
+              </>
+            }
+          />
+          <RecipeMatrices />
+        </div>
+      </RecipeContext>
+    </RecipeActionsContext>
   );
 }
 

@@ -64,15 +64,18 @@ const diagonalOf = (entries: Entries) =>
 const withDiagonal = (entries: Entries, index: number, value: number | null): Entries =>
   entries.map((row, i) => (i === index ? row.map((text, j) => (j === index ? String(value ?? 0) : text)) : row));
 
+const writeNoise =
+  (which: "process" | "measurement") =>
+  (now: RecipeForm, index: number, value: number | null): RecipeForm => ({
+    ...now,
+    observer: { ...now.observer, [which]: withDiagonal(now.observer[which], index, value) },
+  });
+const writeProcess = writeNoise("process");
+const writeMeasurement = writeNoise("measurement");
+
 function NoiseFields() {
   const { form, model } = useRecipe();
   const sampled = model.timeBase.kind === "sampled";
-  const write =
-    (which: "process" | "measurement") =>
-    (now: RecipeForm, index: number, value: number | null): RecipeForm => ({
-      ...now,
-      observer: { ...now.observer, [which]: withDiagonal(now.observer[which], index, value) },
-    });
   const place = (index: number) => `${index}/${index}`;
   return (
     <>
@@ -84,7 +87,7 @@ function NoiseFields() {
         pointer="/observer/process"
         place={place}
         unit={({ unit }) => noiseUnit(unit, unit, "rate", sampled)}
-        write={write("process")}
+        write={writeProcess}
       />
       <SignalFigures
         legend={sampled ? "Noise of the measurement, variance per sample" : "Noise of the measurement, spectral density"}
@@ -95,7 +98,7 @@ function NoiseFields() {
         pointer="/observer/measurement"
         place={place}
         unit={({ unit }) => noiseUnit(unit, unit, "value", sampled)}
-        write={write("measurement")}
+        write={writeMeasurement}
       />
     </>
   );

@@ -23,6 +23,17 @@ export type RecipeEditing = {
   readonly setUsable: (pointer: string, usable: boolean) => void;
 };
 
+/** What never changes while a recipe is written: parts that need no more are not drawn again with every keystroke. */
+export type RecipeActions = Pick<RecipeEditing, "change" | "setUsable">;
+
+export const RecipeActionsContext = createContext<RecipeActions | null>(null);
+
+export function useRecipeActions(): RecipeActions {
+  const actions = useContext(RecipeActionsContext);
+  if (!actions) throw new Error("useRecipeActions needs RecipeActionsContext above it");
+  return actions;
+}
+
 export const RecipeContext = createContext<RecipeEditing | null>(null);
 
 export function useRecipe(): RecipeEditing {

@@ -1,13 +1,14 @@
 "use client";
 
-import { useState } from "react";
+import { memo, useState } from "react";
 import { AxisBar } from "../../plots/axis-bar";
 import { Button } from "../../ui/button";
+import { NumberField } from "../../ui/number-field";
 import { FigureSlider } from "./figure-slider";
 import { ReasonField } from "./reason-field";
-import { useRecipe } from "./recipe-context";
+import { useRecipe, useRecipeActions } from "./recipe-context";
+import { fieldId } from "./recipe-fields";
 import type { RecipeForm } from "./recipe-form";
-import { RecipeNumber } from "./recipe-number";
 
 type Signal = { readonly name: string; readonly unit: string; readonly axis: number | null; readonly scale?: number | null };
 
@@ -20,6 +21,7 @@ type SignalFiguresProps = Readonly<{
   values: readonly (number | null)[];
   /** Of the list in the recipe. */
   pointer: string;
+  /** The same function from one drawing to the next, so that only the figure that changed is drawn again. */
   write: (form: RecipeForm, index: number, value: number | null) => RecipeForm;
   unit?: (signal: Signal) => string;
   /** Key of the reason beside a signal, without its place; none where a reason per signal makes no sense. */
@@ -44,23 +46,30 @@ export function SignalFigures({
   starts,
   place = String,
 }: SignalFiguresProps) {
+  const { form, weightLines, problemAt } = useRecipe();
   return (
     <fieldset className="min-w-0">
       <legend className="text-table font-semibold">{legend}</legend>
       {hint ? <p className="text-sm text-soft">{hint}</p> : null}
       <ul className="mt-1 divide-y divide-rule border-y border-rule">
-        {signals.map((signal, index) => (
-          <li key={signal.name} className="py-1">
-            <SignalFigure
-              {...{ signal, index, what, reasonOf }}
-              value={values[index] ?? null}
-              start={starts && (starts[index] ?? null)}
-              pointer={`${pointer}/${place(index)}`}
-              unit={unit ? unit(signal) : signal.unit}
-              write={(form, value) => write(form, index, value)}
-            />
-          </li>
-        ))}
+        {signals.map((signal, index) => {
+          const reason = reasonOf && `${reasonOf}:${index}`;
+          const at = `${pointer}/${place(index)}`;
+          return (
+            <li key={signal.name} className="py-1">
+              <SignalFigure
+                {...{ signal, index, what, reason, write }}
+                value={values[index] ?? null}
+                start={starts && (starts[index] ?? null)}
+                pointer={at}
+                problem={problemAt(at)}
+                unit={unit ? unit(signal) : signal.unit}
+                reasoned={reason !== undefined && Boolean(form.reasons[reason])}
+                line={reason && weightLines.get(reason)}
+              />
+            </li>
+          );
+        })}
       </ul>
     </fieldset>
   );
@@ -73,17 +82,22 @@ type SignalFigureProps = Readonly<{
   value: number | null;
   start: number | null | undefined;
   pointer: string;
+  problem: string | undefined;
   unit: string;
-  reasonOf: "state" | "input" | undefined;
-  write: (form: RecipeForm, value: number | null) => RecipeForm;
+  /** Key of its reason; undefined where it has none. */
+  reason: string | undefined;
+  /** Whether one is written. */
+  reasoned: boolean;
+  line: string | undefined;
+  write: SignalFiguresProps["write"];
 }>;
 
-function SignalFigure({ signal, index, what, value, start, pointer, unit, reasonOf, write }: SignalFigureProps) {
-  const { form, change, weightLines } = useRecipe();
-  const reason = reasonOf && `${reasonOf}:${index}`;
+const SignalFigure = memo(function SignalFigure(props: SignalFigureProps) {
+  const { signal, index, what, value, start, pointer, problem, unit, reason, reasoned, line, write } = props;
+  const { change, setUsable } = useRecipeActions();
   const [asked, setAsked] = useState(false);
-  const line = reason && weightLines.get(reason);
-  const open = reason !== undefined && (asked || Boolean(form.reasons[reason]));
+  const open = asked || reasoned;
+  const put = (next: number | null) => change(pointer, (form) => write(form, index, next));
   return (
     <>
       <div className="grid grid-cols-[minmax(2.5rem,1fr)_7.25rem_4.5rem_2.25rem] items-start gap-x-2">
@@ -91,7 +105,14 @@ function SignalFigure({ signal, index, what, value, start, pointer, unit, reason
           <AxisBar axis={signal.axis} />
           {signal.name}
         </span>
-        <RecipeNumber pointer={pointer} value={value} hideLabel label={`${what} ${signal.name}, ${unit}`} write={write} />
+        <NumberField
+          id={fieldId(pointer)}
+          label={`${what} ${signal.name}, ${unit}`}
+          hideLabel
+          {...{ value, problem }}
+          onUsable={(usable) => setUsable(pointer, usable)}
+          onChange={put}
+        />
         <span aria-hidden="true" className="flex min-h-9 items-center text-table text-soft">
           {unit}
         </span>
@@ -112,7 +133,7 @@ function SignalFigure({ signal, index, what, value, start, pointer, unit, reason
             label={`${what} ${signal.name}`}
             {...{ unit, value, start }}
             middle={start ?? signal.scale ?? 1}
-            onChange={(next) => change(pointer, (now) => write(now, next))}
+            onChange={put}
           />
         )}
         {line ? <p className="col-span-full text-xs text-soft">{line}</p> : null}
@@ -124,4 +145,4 @@ function SignalFigure({ signal, index, what, value, start, pointer, unit, reason
       ) : null}
     </>
   );
-}
+});

@@ -36,12 +36,17 @@ export function ReferenceFields() {
   );
 }
 
+const writing = (now: RecipeForm, test: Partial<Test>): RecipeForm => ({ ...now, test: { ...now.test, ...test } });
+const writeInitial = (now: RecipeForm, index: number, value: number | null) =>
+  writing(now, { initialState: withAt(now.test.initialState, index, value) });
+const writeDisturbance = (now: RecipeForm, index: number, value: number | null) =>
+  writing(now, { inputDisturbance: withAt(now.test.inputDisturbance, index, value) });
+
 /** What the responses are tried with. */
 export function TestFields() {
   const { form, model, problemAt } = useRecipe();
   const opened = useOnceTrue(problemAt("/test") !== undefined);
   const { horizon, initialState, inputDisturbance } = form.test;
-  const writing = (now: RecipeForm, test: Partial<Test>): RecipeForm => ({ ...now, test: { ...now.test, ...test } });
   return (
     <Disclosure summary="Test: length, initial state, disturbance" open={opened || undefined}>
       <div className="flex flex-col gap-4">
@@ -60,7 +65,7 @@ export function TestFields() {
           signals={model.states}
           values={initialState}
           pointer="/test/initialState"
-          write={(now, index, value) => writing(now, { initialState: withAt(now.test.initialState, index, value) })}
+          write={writeInitial}
         />
         <SignalFigures
           legend="Step disturbance on each input"
@@ -68,7 +73,7 @@ export function TestFields() {
           signals={model.inputs}
           values={inputDisturbance}
           pointer="/test/inputDisturbance"
-          write={(now, index, value) => writing(now, { inputDisturbance: withAt(now.test.inputDisturbance, index, value) })}
+          write={writeDisturbance}
         />
         <ReasonField of="test" about="the test" />
       </div>

@@ -70,6 +70,15 @@ export function WeightsFields() {
   );
 }
 
+const writeState = (now: RecipeForm, index: number, value: number | null): RecipeForm => ({
+  ...now,
+  weights: { ...now.weights, states: withAt(now.weights.states, index, value) },
+});
+const writeInput = (now: RecipeForm, index: number, value: number | null): RecipeForm => ({
+  ...now,
+  weights: { ...now.weights, inputs: withAt(now.weights.inputs, index, value) },
+});
+
 function Deviations() {
   const { form, model, start } = useRecipe();
   const { states, inputs } = form.weights;
@@ -84,7 +93,7 @@ function Deviations() {
         starts={start.weights.states}
         pointer="/weights/states"
         reasonOf="state"
-        write={(now, index, value) => ({ ...now, weights: { ...now.weights, states: withAt(now.weights.states, index, value) } })}
+        write={writeState}
       />
       <SignalFigures
         legend="Effort you would spend"
@@ -94,7 +103,7 @@ function Deviations() {
         starts={start.weights.inputs}
         pointer="/weights/inputs"
         reasonOf="input"
-        write={(now, index, value) => ({ ...now, weights: { ...now.weights, inputs: withAt(now.weights.inputs, index, value) } })}
+        write={writeInput}
       />
     </>
   );
