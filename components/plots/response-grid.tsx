@@ -109,7 +109,7 @@ function ResponseLine({ row, columns, cursor, onEnlarge, onPoint, onLeave }: Res
             onPointerMove={onPoint}
             onPointerLeave={onLeave}
             className={joinClasses(
-              "group response-cell relative h-28 border bg-sheet",
+              "group response-cell relative h-28 border bg-sheet contain-layout contain-paint",
               cell?.own ? "border-control" : "border-rule",
             )}
           >

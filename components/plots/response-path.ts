@@ -5,7 +5,7 @@ export const CELL = { width: 2000, height: 800 } as const;
 
 export const yOf = (value: number, { low, high }: Range) => ((high - value) / (high - low)) * CELL.height;
 
-const MOST_POINTS = 360;
+const MOST_POINTS = 240;
 
 /** An SVG path through the samples. Of many, each stretch keeps its lowest and highest, so that no peak is lost. */
 export function responsePath(values: ArrayLike<number>, range: Range, held = false): string {

@@ -181,7 +181,7 @@ function Columns({ bench, plant, recipe, trade }: ColumnsProps) {
         {solved ? <ResponsesPanel solved={solved} ghostOf={ghostOf} /> : <NothingSolved bench={bench} />}
         {trade}
       </section>
-      <section aria-labelledby="evidence-heading" aria-busy={settled !== solved} className="min-w-0 xl:row-span-2">
+      <section aria-labelledby="evidence-heading" aria-busy={settled !== solved} className="min-w-0 contain-layout xl:row-span-2">
         <h2 id="evidence-heading" className="mb-3">
           Evidence
         </h2>
@@ -198,7 +198,7 @@ function Columns({ bench, plant, recipe, trade }: ColumnsProps) {
   );
 }
 
-const MIDDLE = "min-w-0 xl:border-x xl:border-rule xl:px-6 xl:col-start-2 xl:-my-4 xl:py-4";
+const MIDDLE = "min-w-0 contain-layout xl:border-x xl:border-rule xl:px-6 xl:col-start-2 xl:-my-4 xl:py-4";
 
 function NothingSolved({ bench: { solving, solve, reading } }: Readonly<{ bench: Bench }>) {
   if (solving.live && reading.recipe && !solving.refusal)

@@ -10,7 +10,7 @@ type PoleFiguresProps = Readonly<{ title: string; poles: PolesReply; model: Plan
 /** Poles as a list, slow ones first: main state, value, and what the trade reads off. */
 export function PoleFigures({ title, poles, model }: PoleFiguresProps) {
   const unit = planeUnit(model.timeBase);
-  const lines = slowFirst(poles).map((report, place) => ({ report, key: `${place} ${report.pole.re} ${report.pole.im}` }));
+  const lines = slowFirst(poles).map((report, place) => ({ report, key: `place ${place}` }));
   return (
     <ul aria-label={title} className="divide-y divide-rule border-y border-rule text-table">
       {lines.map(({ report, key }) => {

@@ -60,13 +60,13 @@ type KeyMapProps = Readonly<{
 export function KeyMap({ open, onClose, mayEdit, byKey, onByKey }: KeyMapProps) {
   return (
     <Dialog open={open} onClose={onClose} title="Keyboard map" wide>
-      <div className="grid gap-x-8 gap-y-4 md:grid-cols-2">
+      <div className="gap-x-8 md:columns-2">
         {GROUPS.filter(({ writes }) => mayEdit || !writes).map(({ title, lines }) => (
-          <section key={title} aria-label={title}>
+          <section key={title} aria-label={title} className="mb-5 break-inside-avoid">
             <h3 className="mb-1 font-semibold">{title}</h3>
-            <dl className="grid grid-cols-[minmax(7rem,auto)_1fr] gap-x-4 gap-y-1 text-sm">
+            <dl className="text-sm">
               {lines.map(([keys, meaning]) => (
-                <div key={keys} className="contents">
+                <div key={keys} className="border-t border-rule py-1.5 sm:grid sm:grid-cols-[10rem_1fr] sm:gap-x-4">
                   <dt>
                     <kbd className="font-mono">{keys}</kbd>
                   </dt>
@@ -77,7 +77,7 @@ export function KeyMap({ open, onClose, mayEdit, byKey, onByKey }: KeyMapProps) 
           </section>
         ))}
       </div>
-      <p className="mt-3 mb-2 text-sm text-soft">On a Mac, Cmd in place of Ctrl.</p>
+      <p className="mb-2 text-sm text-soft">On a Mac, Cmd in place of Ctrl.</p>
       <Checkbox
         label="Open this map with the key ?"
         checked={byKey}

@@ -12,13 +12,15 @@ function isTyping(target: EventTarget | null): boolean {
   return target instanceof HTMLTextAreaElement || target instanceof HTMLSelectElement;
 }
 
+const isUnderDialog = () => document.querySelector("dialog[open]") !== null;
+
 /** Keys that work from anywhere on the page but over a dialog; what is missing in `acts` keeps its usual meaning. */
 export function useBenchKeys(acts: Acts): void {
   const latest = useRef(acts);
   latest.current = acts;
   useEffect(() => {
     const actOf = (event: KeyboardEvent) => {
-      if (event.defaultPrevented || event.isComposing || document.querySelector("dialog[open]")) return null;
+      if (event.defaultPrevented || event.isComposing) return null;
       const { key, shiftKey: shift, altKey: alt, target } = event;
       const act = benchAct({ key, ctrl: event.ctrlKey || event.metaKey, shift, alt, typing: isTyping(target) });
       return act && latest.current[act] ? act : null;
@@ -27,6 +29,11 @@ export function useBenchKeys(acts: Acts): void {
     const first = (event: KeyboardEvent) => {
       const act = actOf(event);
       if (act !== "solve" && act !== "save") return;
+      if (isUnderDialog()) {
+        // Nor is the page of the browser what is to be saved then.
+        if (act === "save") event.preventDefault();
+        return;
+      }
       event.preventDefault();
       event.stopPropagation();
       const focused = document.activeElement;
@@ -37,7 +44,7 @@ export function useBenchKeys(acts: Acts): void {
     // After the grids, which undo by themselves.
     const last = (event: KeyboardEvent) => {
       const act = actOf(event);
-      if (!act) return;
+      if (!act || isUnderDialog()) return;
       event.preventDefault();
       latest.current[act]?.();
     };
