@@ -1,3 +1,4 @@
+import { workScope } from "../linalg/work-array";
 import { type ReferenceGain, referenceGain } from "../lqr/reference-gain";
 import { attempt, attemptAfter, shown } from "../plant/attempt";
 import type { PlantModel } from "../plant/model";
@@ -35,11 +36,13 @@ export function computeDesign(model: PlantModel, recipe: Recipe): Evidence {
   const { plant, scale } = prepared.value;
   const { timeBase } = model;
   const sampled = timeBase.kind === "sampled";
-  const gain = attempt(() => findGain(plant, recipe, timeBase));
+  const gain = attempt(() => workScope(() => findGain(plant, recipe, timeBase)));
   const reference =
-    recipe.reference.kind === "none" ? null : attemptAfter(gain, ({ K }) => referenceGain({ ...plant, K, sampled }));
+    recipe.reference.kind === "none"
+      ? null
+      : attemptAfter(gain, ({ K }) => workScope(() => referenceGain({ ...plant, K, sampled })));
   const { observer: wanted } = recipe;
-  const observer = wanted.kind === "none" ? null : attempt(() => findObserver(plant, wanted, timeBase, scale));
+  const observer = wanted.kind === "none" ? null : attempt(() => workScope(() => findObserver(plant, wanted, timeBase, scale)));
   const responses = attemptAfter(gain, ({ K, poles }) =>
     respond({
       plant,
@@ -56,7 +59,7 @@ export function computeDesign(model: PlantModel, recipe: Recipe): Evidence {
   return {
     methodVersion: METHOD_VERSION,
     gains: shown(gain, ({ evidence }) => evidence),
-    poles: attemptAfter(gain, ({ closed }) => reportPoles(closed, timeBase, scale)),
+    poles: attemptAfter(gain, ({ closed }) => workScope(() => reportPoles(closed, timeBase, scale))),
     reference: reference === null ? ABSENT : shown(reference, referenceEvidence),
     observer: observer === null ? ABSENT : shown(observer, ({ evidence }) => evidence),
     responses,

@@ -1,6 +1,7 @@
 import { NumericalError } from "../errors";
 import { largestEntry } from "./flat";
 import { exponentOf, powerOfTwo, timesPowerOfTwo } from "./power-of-two";
+import { workArray } from "./work-array";
 
 /** Rows of complex numbers; `im` null when all are real. */
 export type Rows = { readonly re: Float64Array[]; readonly im: Float64Array[] | null };
@@ -34,7 +35,7 @@ export function orthogonaliseRows(given: Rows): OrthogonalRows {
     re: given.re.map((row) => row.map((x) => timesPowerOfTwo(x, shift))),
     im: given.im ? given.im.map((row) => row.map((x) => timesPowerOfTwo(x, shift))) : null,
   };
-  const unit = () => Array.from({ length: count }, () => new Float64Array(count));
+  const unit = () => Array.from({ length: count }, () => workArray(count));
   const turn = { re: unit(), im: given.im ? unit() : null };
   for (let i = 0; i < count; i++) turn.re[i][i] = 1;
   const tolerance = Number.EPSILON * Math.sqrt(Math.max(length, 1));

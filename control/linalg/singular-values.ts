@@ -5,6 +5,7 @@ import { largestEntry } from "./flat";
 import { orthogonaliseRows, type Rows } from "./orthogonalise-rows";
 import { requireFinite, requireShape } from "./require";
 import { requireRepresentable } from "./require-representable";
+import { workArray } from "./work-array";
 
 /**
  * Singular values, largest first.
@@ -65,7 +66,7 @@ function rowsOf(M: Matrix): Float64Array[] {
 }
 
 function rowOf({ re, im }: Rows, i: number): ComplexVector {
-  return { re: re[i], im: im ? im[i] : new Float64Array(re[i].length) };
+  return { re: re[i], im: im ? im[i] : workArray(re[i].length) };
 }
 
 function conjugate({ re, im }: ComplexVector): ComplexVector {
@@ -87,7 +88,7 @@ function outsideRows(rows: Rows, count: number): ComplexVector {
     .map(unit);
   const length = rows.re[0].length;
   const kept = Array.from({ length }, (_, k) => basis.reduce((rest, { re, im }) => rest - re[k] * re[k] - im[k] * im[k], 1));
-  const start = { re: new Float64Array(length), im: new Float64Array(length) };
+  const start = { re: workArray(length), im: workArray(length) };
   start.re[kept.indexOf(Math.max(...kept))] = 1;
   for (let round = 0; round < 2; round++) for (const row of basis) removePart(start, row);
   return unit(start);

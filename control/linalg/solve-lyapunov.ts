@@ -9,7 +9,7 @@ import { type FlatSchur, flatSchur } from "./real-schur";
 import { requireFinite, requireShape, requireSquare, requireSymmetric } from "./require";
 import { requireRepresentable } from "./require-representable";
 import { solveTriangularLyapunov } from "./triangular-lyapunov";
-import { workArray } from "./work-array";
+import { workArray, workScope } from "./work-array";
 
 export type LyapunovProblem = { readonly A: Matrix; readonly Q: Matrix; readonly timeBase: "continuous" | "sampled" };
 export type LyapunovSolution = { readonly X: Matrix; readonly residual: number; readonly bound: number };
@@ -30,7 +30,11 @@ const SETTLED = powerOfTwo(-62);
  * Accuracy  residual relative to |A||X| + |Q| after balancing, held against 4 n ε; refined with double-double residuals
  * Source    Bartels & Stewart, Commun. ACM 15 (1972) 820-826; Barraud, IEEE Trans. Autom. Control 22 (1977) 883-885
  */
-export function solveLyapunov({ A, Q, timeBase }: LyapunovProblem): LyapunovSolution {
+export function solveLyapunov(problem: LyapunovProblem): LyapunovSolution {
+  return workScope(() => solve(problem));
+}
+
+function solve({ A, Q, timeBase }: LyapunovProblem): LyapunovSolution {
   requireSquare("A", A);
   requireShape("Q", Q, A.rows, A.rows);
   requireFinite("A", A);

@@ -1,5 +1,6 @@
 import { fromFlat, toFlat } from "../linalg/flat";
 import { orthonormalBasis } from "../linalg/orthogonal";
+import { workArray } from "../linalg/work-array";
 import { type ComplexVectors, complementBasis } from "./complement-basis";
 import type { ScaledPlant } from "./scale-plant";
 import type { WantedPole } from "./wanted-poles";
@@ -33,8 +34,8 @@ export function inputRange({ n, m, b }: ScaledPlant): InputRange {
  */
 export function admissibleVectors({ n, a }: ScaledPlant, { rank, unreached }: InputRange, pole: WantedPole): Admissible {
   const count = n - rank;
-  const re = new Float64Array(count * n);
-  const im = new Float64Array(count * n);
+  const re = workArray(count * n);
+  const im = workArray(count * n);
   let norm = Math.abs(pole.re) + pole.im;
   for (let c = 0; c < count; c++) {
     const at = c * n;
@@ -51,8 +52,8 @@ export function admissibleVectors({ n, a }: ScaledPlant, { rank, unreached }: In
 }
 
 function transposed(pole: WantedPole, { re, im, count, length }: ComplexVectors): Admissible {
-  const rowsRe = new Float64Array(count * length);
-  const rowsIm = new Float64Array(count * length);
+  const rowsRe = workArray(count * length);
+  const rowsIm = workArray(count * length);
   for (let c = 0; c < count; c++) {
     for (let i = 0; i < length; i++) {
       rowsRe[i * count + c] = re[c * length + i];

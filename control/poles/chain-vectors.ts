@@ -1,3 +1,4 @@
+import { workArray } from "../linalg/work-array";
 import type { Admissible, InputRange } from "./admissible-vectors";
 import { chainStep } from "./chain-space";
 import { createFrame, dotRow, type Frame, frameCost, refreshDuals } from "./eigenvector-frame";
@@ -37,7 +38,7 @@ export function chainVectors(
   const { n } = plant;
   const links = linksOf(plant, range, spaces, chains);
   const variables = links.reduce((sum, { space }) => sum + space.pole.width * space.size, 0);
-  const side = { frame: createFrame(n), pull: new Float64Array(n * n), square: new Float64Array(n * n) };
+  const side = { frame: createFrame(n), pull: workArray(n * n), square: workArray(n * n) };
   let best: Frame | null = null;
   let least = Number.POSITIVE_INFINITY;
   for (let seed = 0; seed < SEEDS; seed++) {

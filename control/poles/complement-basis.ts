@@ -1,3 +1,4 @@
+import { workArray, workCopy } from "../linalg/work-array";
 /** Complex vectors of one length, stored one after another. */
 export type ComplexVectors = {
   readonly re: Float64Array;
@@ -18,8 +19,8 @@ export type ComplexVectors = {
  */
 export function complementBasis(given: ComplexVectors, tolerance: number): ComplexVectors {
   const { count, length } = given;
-  const re = given.re.slice();
-  const im = given.im.slice();
+  const re = workCopy(given.re);
+  const im = workCopy(given.im);
   const steps = Math.min(count, length);
   let rank = 0;
   for (; rank < steps; rank++) {
@@ -30,7 +31,7 @@ export function complementBasis(given: ComplexVectors, tolerance: number): Compl
     for (let c = rank + 1; c < count; c++) reflect(re, im, rank * length, re, im, c * length, rank, length);
   }
   const free = length - rank;
-  const out = { re: new Float64Array(free * length), im: new Float64Array(free * length), count: free, length };
+  const out = { re: workArray(free * length), im: workArray(free * length), count: free, length };
   for (let c = 0; c < free; c++) {
     const at = c * length;
     out.re[at + rank + c] = 1;

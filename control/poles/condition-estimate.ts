@@ -1,3 +1,4 @@
+import { workArray } from "../linalg/work-array";
 import { dotRow, type Frame } from "./eigenvector-frame";
 
 const ROUNDS = 40;
@@ -18,8 +19,8 @@ export function conditionEstimate({ n, columns, duals }: Frame): number {
 
 /** Largest singular value of a matrix given by its rows. */
 function largestValue(rows: Float64Array, n: number): number {
-  let x = new Float64Array(n);
-  let next = new Float64Array(n);
+  let x = workArray(n);
+  let next = workArray(n);
   for (let i = 0; i < n; i++) x[i] = 1 + i / n;
   let value = 0;
   for (let round = 0; round < ROUNDS; round++) {

@@ -1,4 +1,5 @@
 import { Matrix } from "ml-matrix";
+import { workArray } from "../linalg/work-array";
 
 /**
  * Closed-loop eigenvectors under construction, in real form: a real pole owns one unit column, a pair owns √2 Re x and √2 Im x
@@ -18,7 +19,7 @@ export type Frame = {
 
 export function createFrame(n: number): Frame {
   const places = new Int32Array(n);
-  return { n, columns: new Float64Array(n * n), duals: new Float64Array(n * n), norms: new Float64Array(n), places };
+  return { n, columns: workArray(n * n), duals: workArray(n * n), norms: workArray(n), places };
 }
 
 export function copyInto(from: Frame, to: Frame): void {

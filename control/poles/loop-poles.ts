@@ -2,6 +2,7 @@ import type { Matrix } from "ml-matrix";
 import { balance } from "../linalg/balance";
 import { toFlat } from "../linalg/flat";
 import { powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import type { WideComplex } from "./hyman-step";
 import { widePoles } from "./wide-poles";
@@ -18,14 +19,14 @@ import { addMultiple, type WideRows } from "./wide-rows";
  */
 export function loopPoles(A: Matrix, B: Matrix, K: Matrix, wanted: readonly Complex[]): WideComplex[] | null {
   const n = A.rows;
-  const loop: WideRows = { hi: toFlat(A), lo: new Float64Array(n * n) };
-  const gain: WideRows = { hi: toFlat(K), lo: new Float64Array(K.rows * n) };
+  const loop: WideRows = { hi: toFlat(A), lo: workArray(n * n) };
+  const gain: WideRows = { hi: toFlat(K), lo: workArray(K.rows * n) };
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < K.rows; j++) addMultiple(loop, i * n, gain, j * n, n, 1, { hi: -B.get(i, j), lo: 0 });
   }
   const { matrix, order, scale, shift } = balance(loop.hi, n);
   const factor = powerOfTwo(shift);
-  const lo = new Float64Array(n * n);
+  const lo = workArray(n * n);
   for (let i = 0; i < n; i++) {
     for (let j = 0; j < n; j++) lo[i * n + j] = ((loop.lo[order[i] * n + order[j]] * factor) / scale[i]) * scale[j];
   }

@@ -5,6 +5,7 @@ import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { requireFinite, requireShape, requireSquare } from "../linalg/require";
 import { requireRepresentable } from "../linalg/require-representable";
 import { singularValues } from "../linalg/singular-values";
+import { workScope } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { type Candidate, firstPlacement, freePlacement, robustPlacement } from "./choose-placement";
 import { keepFixedModes } from "./fixed-modes";
@@ -66,7 +67,11 @@ export type Placement = {
  * Source    Kautsky, Nichols & Van Dooren, Int. J. Control 41 (1985) 1129-1155; Tits & Yang, IEEE Trans. Autom. Control 41
  *           (1996) 1432-1452; one input: Ackermann 1972 in double-double; chains: Klein & Moore 1977 (from memory)
  */
-export function placePoles({ A, B, poles, allowDefective = false }: PlacementProblem): Placement {
+export function placePoles(problem: PlacementProblem): Placement {
+  return workScope(() => place(problem));
+}
+
+function place({ A, B, poles, allowDefective = false }: PlacementProblem): Placement {
   requireSquare("A", A);
   requireShape("B", B, A.rows, B.columns);
   requireFinite("A", A);

@@ -1,5 +1,6 @@
 import { largestEntry } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
+import { workArray } from "../linalg/work-array";
 import { evenStateUnits } from "./state-units";
 
 /** A plant in exact powers of two of its units: a = D⁻¹ A D · time, b = D⁻¹ B diag(input), so that K = diag(input) Ks D⁻¹ / time. */
@@ -30,10 +31,10 @@ export function scalePlant(
   fastest: number,
   balanced: boolean,
 ): ScaledPlant {
-  const state = balanced ? evenStateUnits(A, B, n, m) : new Float64Array(n).fill(1);
-  const a = new Float64Array(n * n);
-  const b = new Float64Array(n * m);
-  const input = new Float64Array(m);
+  const state = balanced ? evenStateUnits(A, B, n, m) : workArray(n).fill(1);
+  const a = workArray(n * n);
+  const b = workArray(n * m);
+  const input = workArray(m);
   const size = unitPower(largestEntry(A));
   for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) a[i * n + j] = (A[i * n + j] * size * state[j]) / state[i];
   const time = unitPower(Math.max(largestEntry(a) / size, fastest));

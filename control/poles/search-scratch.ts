@@ -1,3 +1,4 @@
+import { workArray } from "../linalg/work-array";
 /** Forms in the coordinates z of a pair's eigenvector: rows a and b (real, then imaginary parts), P Hermitian, R symmetric. */
 export type PairForms = {
   readonly size: number;
@@ -38,7 +39,7 @@ export type Scratch = {
 
 /** Room for k variables. */
 export function createDescentRoom(k: number): DescentRoom {
-  const vector = () => new Float64Array(k);
+  const vector = () => workArray(k);
   return {
     x: vector(),
     gradient: vector(),
@@ -46,21 +47,21 @@ export function createDescentRoom(k: number): DescentRoom {
     trial: vector(),
     trialGradient: vector(),
     bent: vector(),
-    inverse: new Float64Array(k * k),
+    inverse: workArray(k * k),
   };
 }
 
 /** Room for n states and admissible spaces of one size. */
 export function createScratch(n: number, size: number): Scratch {
-  const vector = () => new Float64Array(2 * size);
-  const square = () => new Float64Array(size * size);
+  const vector = () => workArray(2 * size);
+  const square = () => workArray(size * size);
   return {
-    u: new Float64Array(n),
-    v: new Float64Array(n),
+    u: workArray(n),
+    v: workArray(n),
     a: vector(),
     b: vector(),
     row: vector(),
-    rows: new Float64Array(2 * n * size),
+    rows: workArray(2 * n * size),
     square: square(),
     products: [vector(), vector()],
     forms: { size, a: vector(), b: vector(), pRe: square(), pIm: square(), rRe: square(), rIm: square() },

@@ -1,3 +1,4 @@
+import { workArray, workCopy } from "../linalg/work-array";
 import type { WantedPole } from "./wanted-poles";
 import { type EliminationStep, eliminateColumn, swapEntries } from "./wide-hessenberg";
 import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
@@ -15,8 +16,8 @@ import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wide
  *           Systems, 2004 (from memory)
  */
 export function singleInputGain(a: Float64Array, b: Float64Array, n: number, blocks: readonly WantedPole[]): Float64Array | null {
-  const h: WideRows = { hi: a.slice(), lo: new Float64Array(n * n) };
-  const input: WideRows = { hi: b.slice(), lo: new Float64Array(n) };
+  const h: WideRows = { hi: workCopy(a), lo: workArray(n * n) };
+  const input: WideRows = { hi: workCopy(b), lo: workArray(n) };
   const steps: EliminationStep[] = [];
   const divisors: WideNumber[] = [];
   for (let pivot = 0; pivot < n; pivot++) {
@@ -69,6 +70,6 @@ function timesShifted(row: WideRows, h: WideRows, n: number, shift: number): Wid
 
 function squareOf(x: number): WideNumber {
   const square = wideZeros(1);
-  addMultiple(square, 0, { hi: Float64Array.of(x), lo: new Float64Array(1) }, 0, 1, 1, { hi: x, lo: 0 });
+  addMultiple(square, 0, { hi: Float64Array.of(x), lo: workArray(1) }, 0, 1, 1, { hi: x, lo: 0 });
   return wideAt(square, 0);
 }

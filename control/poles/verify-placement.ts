@@ -6,6 +6,7 @@ import { factorLu, solveLu } from "../linalg/lu";
 import { flatNorm, frobeniusNorm } from "../linalg/norms";
 import { powerOfTwo } from "../linalg/power-of-two";
 import { singularValues } from "../linalg/singular-values";
+import { workArray } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { modeDistance } from "../structure/mode-distance";
 import { achievedPoles } from "./achieved-poles";
@@ -120,7 +121,7 @@ function simpleBounds(
 ) {
   const { matrix, order, scale: ordered, shift } = balance(toFlat(closed), n);
   const norm = flatNorm(matrix) * powerOfTwo(-shift);
-  const scale = new Float64Array(n);
+  const scale = workArray(n);
   order.forEach((i, place) => {
     scale[i] = ordered[place];
   });
@@ -209,7 +210,7 @@ function vectorResidual({ frame, plant }: Vectors, K: Matrix, blocks: readonly W
 
 /** Largest distance, relative, from A - B K to a matrix that has one of the poles exactly. */
 function distanceResidual({ closed, n }: Loop, blocks: readonly WantedPole[]) {
-  const none = new Float64Array(0);
+  const none = workArray(0);
   const distances = blocks.map(({ re, im }) => modeDistance(toFlat(closed), none, n, 0, { re, im }).relative);
   return { residual: Math.max(...distances), bound: SLACK * n * Number.EPSILON };
 }

@@ -1,3 +1,4 @@
+import { workArray } from "../linalg/work-array";
 /** Rows of numbers kept as unevaluated sums hi + lo, about 32 digits, in one flat array each. */
 export type WideRows = { readonly hi: Float64Array; readonly lo: Float64Array };
 
@@ -58,5 +59,5 @@ export function negative({ hi, lo }: WideNumber): WideNumber {
 }
 
 export function wideZeros(count: number): WideRows {
-  return { hi: new Float64Array(count), lo: new Float64Array(count) };
+  return { hi: workArray(count), lo: workArray(count) };
 }

@@ -1,6 +1,7 @@
 import type { Matrix } from "ml-matrix";
 import type { ResponseEvidence, ResponseRecord } from "../design/evidence";
 import { NumericalError } from "../errors";
+import { workScope } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
 import { flatLoop, type LoopPlant, type ObserverInLoop, type SignalCounts } from "./close-loop";
 import { type LoopDynamics, prepareLoop } from "./loop-dynamics";
@@ -49,6 +50,10 @@ const MOST_VALUES = 2 ** 21;
  * Source    the matrix exponential at the samples (see `matrixExponential`); figures: IEC 60050-351
  */
 export function respond(request: ResponseRequest): ResponseEvidence {
+  return workScope(() => responsesOf(request));
+}
+
+function responsesOf(request: ResponseRequest): ResponseEvidence {
   requireLengths(request);
   const { amplitudes } = request.experiments;
   const fullState = analyse(request, null);
@@ -89,20 +94,22 @@ function analyse(request: ResponseRequest, observer: ObserverInLoop | null): Ana
   const dynamics = prepareLoop(flatLoop(plant, K, F, observer), period, known);
   const amplitudes = experiments.amplitudes.map((amplitude) => (observer ? 0 : amplitude));
   const list = loopExperiments(dynamics, { ...experiments, amplitudes });
-  return { dynamics, experiments: list, figures: loopFigures(dynamics, list, room, horizon === null) };
+  return { dynamics, experiments: list, figures: workScope(() => loopFigures(dynamics, list, room, horizon === null)) };
 }
 
 function recordsOf(loop: ResponseRecord["loop"], { dynamics, experiments }: Analysed, grid: TimeGrid): ResponseRecord[] {
   if (experiments.length === 0) return [];
-  const valuesOf = recordMaker(dynamics, grid);
-  return experiments.map(({ kind, source, amplitude, drive }) => ({
-    kind,
-    loop,
-    source,
-    amplitude,
-    ...grid,
-    values: valuesOf(drive),
-  }));
+  return workScope(() => {
+    const valuesOf = recordMaker(dynamics, grid);
+    return experiments.map(({ kind, source, amplitude, drive }) => ({
+      kind,
+      loop,
+      source,
+      amplitude,
+      ...grid,
+      values: valuesOf(drive),
+    }));
+  });
 }
 
 /** The step of the loop with observer: that of the full state, with the states once more as their own estimates. */

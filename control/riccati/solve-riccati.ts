@@ -4,6 +4,7 @@ import { widen } from "../linalg/double-double";
 import { eigenvalues } from "../linalg/eigenvalues";
 import { flatProduct, flatTransposedProduct, fromFlat } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
+import { workScope } from "../linalg/work-array";
 import { checkReach, checkSight, leastReachable } from "./check-modes";
 import { checkProblem, type RiccatiProblem } from "./check-problem";
 import { roughGain } from "./gain";
@@ -45,6 +46,10 @@ const GAIN_SHIFTS = [0.3, 3, 0.03];
  *           Hewer 1971, with residuals in double-double and the step length of Benner & Byers 1998; scaling: Benner 2001
  */
 export function solveRiccati(given: RiccatiProblem): RiccatiSolution {
+  return workScope(() => solve(given));
+}
+
+function solve(given: RiccatiProblem): RiccatiSolution {
   const { problem: original, indefinite, definite } = checkProblem(given);
   const scaled = scaleProblem(original, scalingWeight);
   const problem = splitProblem(scaled.problem);

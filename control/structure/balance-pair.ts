@@ -2,6 +2,7 @@ import { largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { strongComponents } from "../linalg/strong-components";
+import { workArray, workCopy } from "../linalg/work-array";
 import { balanceStates, MOST_EXPONENT } from "./balance-states";
 
 /** a and b were multiplied by `timeScale`, so that eigenvalues were too; old state = stateScale · new state. */
@@ -29,10 +30,10 @@ const MOST_SIZE = powerOfTwo(MOST_EXPONENT);
 export function balancePair(a: Float64Array, b: Float64Array, n: number, m: number, spectralRadius: number): BalancedPair {
   const start = powerOfTwo(-exponentOf(largestEntry(a) || 1));
   const all = Array.from({ length: n }, (_, i) => i);
-  const ones = (length: number) => new Float64Array(length).fill(1);
-  const pair: Pair = { a: a.map((entry) => entry * start), b: b.slice(), n, m, stateScale: ones(n) };
+  const ones = (length: number) => workArray(length).fill(1);
+  const pair: Pair = { a: a.map((entry) => entry * start), b: workCopy(b), n, m, stateScale: ones(n) };
   for (let j = 0; j < m; j++) sizeInput(pair, all, j);
-  const plain = { a: pair.a.slice(), b: pair.b.slice(), stateScale: ones(n) };
+  const plain = { a: workCopy(pair.a), b: workCopy(pair.b), stateScale: ones(n) };
   const fastest = spectralRadius * start;
   const lost = 64 * n * Number.EPSILON * Math.max(fastest * fastest, strongestLoop(pair.a, n));
   for (let round = 0; round < MOST_ROUNDS && balanceStates(pair.a, n, pair.stateScale, lost, all); round++);

@@ -1,5 +1,6 @@
 import { flatIdentity, pythagoras } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
+import { workArray, workCopy } from "../linalg/work-array";
 import { compressRows } from "./compress-rows";
 import { reflectColumns, reflectRows } from "./reflections";
 
@@ -23,7 +24,7 @@ export type Staircase = {
  * Source    Paige, IEEE Trans. Automatic Control 26 (1981) 130-138
  */
 export function staircase(givenA: Float64Array, b: Float64Array, n: number, m: number): Staircase {
-  const a = givenA.slice();
+  const a = workCopy(givenA);
   const qt = flatIdentity(n);
   const tolerance = rankTolerance(givenA, b, n + m);
   let rank = 0;
@@ -57,7 +58,7 @@ export function rankTolerance(a: Float64Array, b: Float64Array, size: number): n
 
 /** Rows from `row` to the end, `width` columns from `column`. */
 function submatrix(a: Float64Array, n: number, row: number, column: number, width: number): Float64Array {
-  const block = new Float64Array((n - row) * width);
+  const block = workArray((n - row) * width);
   for (let i = row; i < n; i++) for (let j = 0; j < width; j++) block[(i - row) * width + j] = a[i * n + column + j];
   return block;
 }
