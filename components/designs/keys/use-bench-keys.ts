@@ -38,8 +38,8 @@ export function useBenchKeys(acts: Acts): void {
       event.stopPropagation();
       const focused = document.activeElement;
       if (focused instanceof HTMLInputElement) focused.closest<HTMLElement>("td")?.focus();
-      // One frame on, so that what leaving the cell changed is what is solved or saved.
-      requestAnimationFrame(() => latest.current[act]?.());
+      // One frame and a task on, so that what was typed last, or what leaving the cell changed, is what is solved or saved.
+      requestAnimationFrame(() => setTimeout(() => latest.current[act]?.()));
     };
     // After the grids, which undo by themselves.
     const last = (event: KeyboardEvent) => {
