@@ -15,8 +15,8 @@ type DialogProps = Readonly<{
   children: ReactNode;
 }>;
 
-/** Where a dialog asks for something, work starts there and not at the cross. */
-const FIRST_FIELD = "input:not([readonly]):not([hidden]), select, textarea";
+/** Where a dialog asks for something, work starts there and not at the cross; a box to tick is no question. */
+const FIRST_FIELD = "input:not([readonly], [hidden], [type=checkbox]), select, textarea";
 
 /** The browser's modal dialog: keeps focus inside, gives it back, and hides the rest from screen readers. */
 export function Dialog({ open, onClose, title, actions, wide, children }: DialogProps) {

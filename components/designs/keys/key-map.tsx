@@ -60,7 +60,7 @@ type KeyMapProps = Readonly<{
 export function KeyMap({ open, onClose, mayEdit, byKey, onByKey }: KeyMapProps) {
   return (
     <Dialog open={open} onClose={onClose} title="Keyboard map" wide>
-      <div className="gap-x-8 md:columns-2">
+      <div className="mb-4 gap-x-8 md:columns-2">
         {GROUPS.filter(({ writes }) => mayEdit || !writes).map(({ title, lines }) => (
           <section key={title} aria-label={title} className="mb-5 break-inside-avoid">
             <h3 className="mb-1 font-semibold">{title}</h3>
