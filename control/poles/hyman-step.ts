@@ -1,5 +1,6 @@
+import type { WideNumber } from "../linalg/wide-number";
 import type { Complex } from "../plant/model";
-import { addMultiple, divideWide, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
+import { addMultiple, divideWide, type WideRows, wideAt, wideZeros } from "./wide-rows";
 
 /** A complex number with the rounding of either part kept beside it. */
 export type WideComplex = Complex & { readonly reLow: number; readonly imLow: number };

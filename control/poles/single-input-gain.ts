@@ -1,7 +1,8 @@
+import type { WideNumber } from "../linalg/wide-number";
 import { workArray, workCopy } from "../linalg/work-array";
 import type { WantedPole } from "./wanted-poles";
 import { type EliminationStep, eliminateColumn, swapEntries } from "./wide-hessenberg";
-import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
+import { addMultiple, divideWide, negative, type WideRows, wideAt, wideZeros } from "./wide-rows";
 
 /**
  * The one gain that places the poles of a plant with a single input, with some 32 digits carried throughout:

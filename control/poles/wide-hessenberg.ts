@@ -1,4 +1,5 @@
-import { addMultiple, divideWide, negative, type WideNumber, type WideRows, wideAt, wideZeros } from "./wide-rows";
+import type { WideNumber } from "../linalg/wide-number";
+import { addMultiple, divideWide, negative, type WideRows, wideAt, wideZeros } from "./wide-rows";
 
 /** One elimination: rows `pivot` and `row` changed places, then multiples of row `pivot` left the rows below it. */
 export type EliminationStep = { readonly pivot: number; readonly row: number; readonly factors: WideRows };

@@ -1,11 +1,9 @@
+import type { WideNumber } from "../linalg/wide-number";
+import { SPLITTER } from "../linalg/wide-product-loops";
 import { workArray } from "../linalg/work-array";
+
 /** Rows of numbers kept as unevaluated sums hi + lo, about 32 digits, in one flat array each. */
 export type WideRows = { readonly hi: Float64Array; readonly lo: Float64Array };
-
-/** One such number. */
-export type WideNumber = { readonly hi: number; readonly lo: number };
-
-const SPLITTER = 134217729; // 2^27 + 1 (Veltkamp)
 
 /** y[at + stride k] += factor x[from + stride k] for k < count. Source: Dekker, Numer. Math. 18 (1971) 224-242. */
 export function addMultiple(

@@ -2,8 +2,9 @@ import { addNarrow, split, type Wide, wideProduct } from "../linalg/double-doubl
 import { flatProduct } from "../linalg/flat";
 import { exponentOf, powerOfTwo } from "../linalg/power-of-two";
 import { flatOneNorm } from "../linalg/solve-linear";
+import type { WideNumber } from "../linalg/wide-number";
 import { workArray } from "../linalg/work-array";
-import { addScaled, timesPower, type WideScalar, wideOver } from "./wide-scalar";
+import { addScaled, timesPower, wideOver } from "./wide-scalar";
 
 /** Terms of the series up to X¹⁹ with |X| ≤ 1/8, where the next one is below 1e-36; taken together by fives. */
 const TERMS = 20;
@@ -76,8 +77,8 @@ export function widePower(a: Wide, n: number, k: number): Wide {
   return power ?? a;
 }
 
-function inverseFactorials(): WideScalar[] {
-  const list: WideScalar[] = [{ hi: 1, lo: 0 }];
+function inverseFactorials(): WideNumber[] {
+  const list: WideNumber[] = [{ hi: 1, lo: 0 }];
   for (let k = 1; k < TERMS; k++) list.push(wideOver(list[k - 1], k));
   return list;
 }

@@ -1,23 +1,8 @@
 import type { Wide } from "../linalg/double-double";
-
-/** Unevaluated sum hi + lo, |lo| ≤ ulp(hi) / 2. */
-export type WideScalar = { readonly hi: number; readonly lo: number };
-
-const SPLITTER = 134217729; // 2^27 + 1 (Veltkamp)
-
-/** a·b minus its rounded value, exactly, for sizes below 2^990 (Dekker, Numer. Math. 18 (1971) 224-242). */
-export function productError(a: number, b: number, product: number): number {
-  const ac = SPLITTER * a;
-  const ah = ac - (ac - a);
-  const al = a - ah;
-  const bc = SPLITTER * b;
-  const bh = bc - (bc - b);
-  const bl = b - bh;
-  return al * bl - (product - ah * bh - al * bh - ah * bl);
-}
+import { productError, type WideNumber } from "../linalg/wide-number";
 
 /** (hi + lo) / k */
-export function wideOver({ hi, lo }: WideScalar, k: number): WideScalar {
+export function wideOver({ hi, lo }: WideNumber, k: number): WideNumber {
   const quotient = hi / k;
   const product = quotient * k;
   return { hi: quotient, lo: (hi - product - productError(quotient, k, product) + lo) / k };
@@ -35,7 +20,7 @@ export function timesPower({ hi, lo }: Wide, power: number): Wide {
 }
 
 /** sum + factor · x into sum. */
-export function addScaled(sum: Wide, factor: WideScalar, x: Wide): void {
+export function addScaled(sum: Wide, factor: WideNumber, x: Wide): void {
   for (let i = 0; i < x.hi.length; i++) {
     const product = factor.hi * x.hi[i];
     const below = productError(factor.hi, x.hi[i], product) + factor.hi * x.lo[i] + factor.lo * x.hi[i];

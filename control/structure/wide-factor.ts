@@ -1,5 +1,5 @@
 import type { Wide } from "../linalg/double-double";
-import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideTimes } from "./wide-number";
+import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideTimes } from "../linalg/wide-number";
 
 /** W = L L' with L n×rank, rows in their old order. */
 export type WideFactor = { readonly l: Wide; readonly rank: number };

@@ -1,7 +1,7 @@
 import { complexQuotient, modulus } from "../linalg/complex";
 import type { Wide } from "../linalg/double-double";
+import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideSum, wideTimes, ZERO } from "../linalg/wide-number";
 import type { Complex } from "../plant/model";
-import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideSum, wideTimes, ZERO } from "./wide-number";
 
 type WideComplex = { readonly re: WideNumber; readonly im: WideNumber };
 

@@ -1,7 +1,7 @@
 import { NumericalError } from "../errors";
 import type { Wide } from "../linalg/double-double";
 import { flatNorm } from "../linalg/norms";
-import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideSum, wideTimes } from "./wide-number";
+import { type WideNumber, wideDifference, wideQuotient, wideRoot, wideSum, wideTimes } from "../linalg/wide-number";
 
 const SWEEP_LIMIT = 60;
 /** A row this much shorter than another lies below what wide numbers hold beside it. */

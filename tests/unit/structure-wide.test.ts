@@ -1,7 +1,7 @@
 import { expect, test } from "vitest";
 import type { Wide } from "@/control/linalg/double-double";
+import { wideDifference, wideQuotient, wideRoot, wideSum, wideTimes } from "@/control/linalg/wide-number";
 import { wideFactor } from "@/control/structure/wide-factor";
-import { wideDifference, wideQuotient, wideRoot, wideSum, wideTimes } from "@/control/structure/wide-number";
 import { wideRoots } from "@/control/structure/wide-roots";
 import { wideSingularValues } from "@/control/structure/wide-singular-values";
 import { seededUniform } from "../helpers/seeded";

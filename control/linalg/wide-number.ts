@@ -1,9 +1,20 @@
+import { SPLITTER } from "./wide-product-loops";
+
 /** Unevaluated sum hi + lo of two doubles, |lo| ≤ ulp(hi) / 2: one number with about 32 decimal digits. */
 export type WideNumber = { readonly hi: number; readonly lo: number };
 
-const SPLITTER = 134217729; // 2^27 + 1 (Veltkamp)
-
 export const ZERO: WideNumber = { hi: 0, lo: 0 };
+
+/** a·b minus its rounded value, exactly, for sizes below 2^990 (Dekker, Numer. Math. 18 (1971) 224-242). */
+export function productError(a: number, b: number, product: number): number {
+  const ac = SPLITTER * a;
+  const ah = ac - (ac - a);
+  const al = a - ah;
+  const bc = SPLITTER * b;
+  const bh = bc - (bc - b);
+  const bl = b - bh;
+  return al * bl - (product - ah * bh - al * bh - ah * bl);
+}
 
 /**
  * Sums, products, quotients and square roots of single wide numbers.
@@ -24,14 +35,7 @@ export function wideDifference(x: WideNumber, y: WideNumber): WideNumber {
 
 export function wideTimes(x: WideNumber, y: WideNumber): WideNumber {
   const product = x.hi * y.hi;
-  const a = SPLITTER * x.hi;
-  const xh = a - (a - x.hi);
-  const xt = x.hi - xh;
-  const b = SPLITTER * y.hi;
-  const yh = b - (b - y.hi);
-  const yt = y.hi - yh;
-  const below = xt * yt - (product - xh * yh - xt * yh - xh * yt);
-  return normal(product, below + (x.hi * y.lo + x.lo * y.hi));
+  return normal(product, productError(x.hi, y.hi, product) + (x.hi * y.lo + x.lo * y.hi));
 }
 
 /** y ≠ 0. */
