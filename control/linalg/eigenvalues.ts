@@ -21,8 +21,12 @@ import { schurValues } from "./schur-values";
 export function eigenvalues(A: Matrix): Complex[] {
   requireSquare("A", A);
   requireFinite("A", A);
-  const n = A.rows;
-  const { matrix, shift } = balance(toFlat(A), n);
+  return flatEigenvalues(toFlat(A), A.rows);
+}
+
+/** The same for finite row-major entries, which are left untouched. */
+export function flatEigenvalues(a: Float64Array, n: number): Complex[] {
+  const { matrix, shift } = balance(a, n);
   reduceToHessenberg(matrix, n, null);
   francisIteration(matrix, n, false, null);
   const values = schurValues(matrix, n);

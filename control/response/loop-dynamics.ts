@@ -1,7 +1,7 @@
 import { NumericalError } from "../errors";
 import { addNarrow, split, widen, wideProduct } from "../linalg/double-double";
-import { eigenvalues } from "../linalg/eigenvalues";
-import { flatProduct, fromFlat, largestEntry } from "../linalg/flat";
+import { flatEigenvalues } from "../linalg/eigenvalues";
+import { flatProduct, largestEntry } from "../linalg/flat";
 import { factorLu, type Lu, solveLu } from "../linalg/lu";
 import { workArray, workCopy } from "../linalg/work-array";
 import type { Complex } from "../plant/model";
@@ -40,7 +40,7 @@ export type Drive = { readonly departure: Float64Array; readonly final: Float64A
  */
 export function prepareLoop(loop: FlatLoop, period: number | null, known: readonly Complex[] | null): LoopDynamics {
   const { order, signals, columns } = loop;
-  const poles = known ?? eigenvalues(fromFlat(loop.a, order, order));
+  const poles = known ?? flatEigenvalues(loop.a, order);
   const unstable = poles.find((pole) => !isStablePole(pole, period !== null));
   if (unstable) throw new NumericalError("not-stabilising", { pole: unstable });
   const { matrix, order: places, scale } = balanceDynamics(loop.a, order);

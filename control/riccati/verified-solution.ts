@@ -1,5 +1,5 @@
 import { NumericalError } from "../errors";
-import { eigenvalues } from "../linalg/eigenvalues";
+import { flatEigenvalues } from "../linalg/eigenvalues";
 import { flatTranspose, flatTransposedProduct, fromFlat, largestEntry } from "../linalg/flat";
 import { flatNorm } from "../linalg/norms";
 import { exponentOf, timesPowerOfTwo } from "../linalg/power-of-two";
@@ -70,7 +70,9 @@ export function verifiedSolution(
 
 /** Poles of the loop with the rounded gain: scaling by powers of two moves them by the unit of time alone. */
 function polesOf({ problem, time }: ScaledProblem, k: Float64Array): Complex[] {
-  const poles = eigenvalues(fromFlat(closedLoop(problem, k), problem.n, problem.n));
+  const loop = closedLoop(problem, k);
+  if (!Number.isFinite(largestEntry(loop))) throw new NumericalError("no-convergence", { routine: "riccati-newton", limit: 1 });
+  const poles = flatEigenvalues(loop, problem.n);
   if (time === 0) return poles;
   const moved = poles.map(({ re, im }) => ({ re: timesPowerOfTwo(re, time), im: timesPowerOfTwo(im, time) }));
   if (!moved.every(({ re, im }) => Number.isFinite(re) && Number.isFinite(im)))

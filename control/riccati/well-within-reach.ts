@@ -1,6 +1,5 @@
 import { factorShiftedHessenberg, shiftedHessenbergRoom, solveShiftedHessenberg } from "../linalg/complex-hessenberg";
-import { eigenvalues } from "../linalg/eigenvalues";
-import { fromFlat } from "../linalg/flat";
+import { flatEigenvalues } from "../linalg/eigenvalues";
 import { flatNorm } from "../linalg/norms";
 import { workArray } from "../linalg/work-array";
 import { boundaryMargin } from "./check-modes";
@@ -28,7 +27,7 @@ export function wellWithinReach(problem: FlatProblem, refined: Refined): boolean
   if (loopDistance(problem, refined) > CLEAR * needed) return true;
   const room = shiftedHessenbergRoom(n);
   const slack = Math.sqrt(Number.EPSILON) * (problem.sampled ? 1 : plant);
-  return eigenvalues(fromFlat(a, n, n)).every((pole) => {
+  return flatEigenvalues(a, n).every((pole) => {
     if (pole.im < 0 || boundaryMargin(pole, problem.sampled) > slack) return true;
     factorShiftedHessenberg(refined.schurForm, n, pole, room);
     return room.zeroPivot < 0 && CLEAR_AT_MODE * needed * inverseSize(room, n) < 1;
