@@ -1,17 +1,9 @@
 import type { Page } from "@playwright/test";
-import { expectAccessible, untilSettled } from "../helpers/axe-page";
+import { inBothThemes, untilSettled } from "../helpers/axe-page";
 import { cellOf, openPlant, pasteAt, untilTakenOver } from "../helpers/matrix-page";
 import { type Listed, PUBLIC_PAGES, teamPages } from "../helpers/page-list";
 import { changeEntry } from "../helpers/plant-page";
 import { expect, storedPlant, test } from "../helpers/team-test";
-
-/** Colours are all that the second theme can change. */
-async function inBothThemes(page: Page, what: string) {
-  await page.emulateMedia({ colorScheme: "light" });
-  await expectAccessible(page, `${what}, light`);
-  await page.emulateMedia({ colorScheme: "dark" });
-  await expectAccessible(page, `${what}, dark`, "colours");
-}
 
 async function everyPage(page: Page, pages: readonly Listed[]) {
   for (const { name, path } of pages) {

@@ -1,7 +1,7 @@
 import type { APIRequestContext, Page } from "@playwright/test";
 import type { DesignRevisionEntry, DesignSummary } from "@/lib/schemas/design";
 import type { Draft } from "@/lib/schemas/draft";
-import { expectAccessible } from "../helpers/axe-page";
+import { inBothThemes } from "../helpers/axe-page";
 import { told } from "../helpers/browser-requests";
 import {
   designPath,
@@ -80,7 +80,7 @@ test.describe("a tab that is killed in the middle of an edit", () => {
     await expect(again.getByText("You have another draft of this design.")).toBeVisible({ timeout: 10_000 });
     await expect(again.getByText("Draft not saved, kept in this browser")).toBeVisible();
     await untilOnServer(request, design, "58.5");
-    await expectAccessible(again, "two drafts");
+    await inBothThemes(again, "two drafts");
     await press(again, "Show that one");
     await expect(figure(again, EFFORT)).toHaveValue("58.5");
     await expect(figure(again, DEVIATION)).toHaveValue("0.00077");
@@ -150,7 +150,7 @@ test.describe("without a connection", () => {
     await expect(page.getByText(NO_CONNECTION)).toBeVisible({ timeout: 10_000 });
     await expect(page.getByText("Draft not saved, kept in this browser")).toBeVisible();
     await untilSolved(page);
-    await expectAccessible(page, "no connection");
+    await inBothThemes(page, "no connection");
     await context.setOffline(false);
     await untilOnServer(request, design, "47.5");
     await expect(page.getByText(NO_CONNECTION)).toBeHidden();
@@ -270,7 +270,7 @@ test.describe("the keys of the bench", () => {
     await page.keyboard.press("?");
     await expect(map).toContainText("Ctrl+Enter");
     await expect(map.getByRole("region", { name: "On a pole in the plane" })).toContainText("Ten times as far");
-    await expectAccessible(page, "keyboard map");
+    await inBothThemes(page, "keyboard map");
     await page.keyboard.press("Escape");
     await expect(map).toBeHidden();
 

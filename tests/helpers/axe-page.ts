@@ -55,6 +55,14 @@ export async function expectAccessible(page: Page, what: string, only: "everythi
   expect.soft(told(open), `${what}: left to look at`).toEqual([]);
 }
 
+/** Colours are all that the second theme can change. */
+export async function inBothThemes(page: Page, what: string): Promise<void> {
+  await page.emulateMedia({ colorScheme: "light" });
+  await expectAccessible(page, `${what}, light`);
+  await page.emulateMedia({ colorScheme: "dark" });
+  await expectAccessible(page, `${what}, dark`, "colours");
+}
+
 /** Until nothing on the page says that it is still loading or solving. */
 export async function untilSettled(page: Page): Promise<void> {
   await expect(page.getByRole("heading", { level: 1 }).first()).toBeVisible();
