@@ -47,7 +47,7 @@ function OtherDraftNotice({ drafting: { other, decide }, dirty }: Readonly<{ dra
   return (
     <Notice kind="caution" role="status" title="You have another draft of this design." action={action}>
       It was written {where === "server" ? "on another page or in another browser" : "in this browser"} on {whenText(at)}.
-      {dirty ? " What stands here is not saved over it; shown in its place, it can be undone." : ""}
+      {dirty ? " What stands here is not saved over it. Showing the other one can be undone." : ""}
     </Notice>
   );
 }
