@@ -6,8 +6,7 @@ import { twoTanks } from "./example";
 
 export const POST = route(
   {
-    summary:
-      "Compute checks, gains, poles, residuals, responses and acceptance of a plant and a recipe without storing anything",
+    summary: "Compute checks, gains, poles, residuals, responses and acceptance of a plant and a recipe without storing anything",
     body: Compute,
     example: twoTanks,
     reply: Computation,
