@@ -74,13 +74,17 @@ describe("the pool", () => {
         ),
       );
     await Promise.all(Array.from({ length: 8 }, () => inTransaction(team, (tx) => tx.execute(sql`select pg_sleep(0.05)`))));
+    /** The ends arrive as events of their own, a moment later. */
+    const noticed = () => expect.poll(() => pool().totalCount, { timeout: 5_000 }).toBe(0);
     await cut();
+    await noticed();
     const inUse = inTransaction(team, async (tx) => {
       await cut();
       await new Promise((resolve) => setTimeout(resolve, 50));
       return tx.execute(sql`select 1`);
     });
     await expect(inUse).rejects.toThrow();
+    await noticed();
     for (let round = 0; round < 30; round++) await inTransaction(team, (tx) => tx.execute(sql`select 1`));
     expect(pool().totalCount - pool().idleCount).toBe(0);
   });
