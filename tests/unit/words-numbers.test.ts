@@ -1,6 +1,7 @@
 import { expect, test } from "vitest";
 import { formatComplex } from "@/control/words/format-complex";
 import { formatFrequency, formatNumber, formatPercent, formatSeconds } from "@/control/words/format-number";
+import { leadingNames } from "@/control/words/join-names";
 
 test.each([
   [0, "0"],
@@ -50,4 +51,12 @@ test("frequencies come in Hz, times in the unit people say, shares in percent", 
   expect(formatSeconds(1060)).toBe("17.7 min");
   expect(formatSeconds(36_000)).toBe("10 h");
   expect(formatPercent(0.0168)).toBe("1.7 %");
+});
+
+test("signals that take part alike are named in the plant's order, whatever rounding made of their shares", () => {
+  const signals = ["x1", "x2", "v1", "v2"].map((name) => ({ name }));
+  const third = 1 / 3;
+  expect(leadingNames([third, third + 1e-15, third - 1e-15, 0], signals)).toEqual(["x1", "x2", "v1"]);
+  expect(leadingNames([0.2, 0.5, -0.25, 0.05], signals)).toEqual(["x2", "v1"]);
+  expect(leadingNames([0, 0, 0, 0], signals)).toEqual([]);
 });
