@@ -67,5 +67,13 @@ export async function buildIfChanged() {
     env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" },
   });
   if (code !== 0) throw new Stop("The pages could not be built:", lastLines(child, 60));
+  dropSourceMaps(join(root, ".next", "static"));
   writeFileSync(fingerprintFile, wanted);
+}
+
+/** The bundler writes an empty source map for every worker, whatever its settings say. @param {string} folder */
+function dropSourceMaps(folder) {
+  for (const file of readdirSync(folder, { recursive: true, encoding: "utf8" })) {
+    if (file.endsWith(".map")) rmSync(join(folder, file));
+  }
 }
