@@ -50,7 +50,7 @@ test("the classical margins of Seiler, Packard & Gahinet's first example are 3.6
   expect((phase.value ?? 0) / DEGREE).toBeCloseTo(29.1, 1);
 });
 
-// The spinning satellite of J. C. Doyle's lectures of 1986, repeated in the paper above and in Skogestad & Postlethwaite,
+// The spinning satellite of J. C. Doyle, 1986, repeated in the paper above and in Skogestad & Postlethwaite,
 // Multivariable Feedback Control, 2nd ed. 2005, section 3.7.1 (from memory): each loop alone has a phase margin of
 // 90 degrees and any gain, while both together bear about 10 %.
 test("the spinning satellite has perfect loops one at a time and next to no margin in both together", () => {
